@@ -1,0 +1,99 @@
+//! The release page: built by Trunk, copied to where a host wants it.
+
+use std::fs;
+use std::path::{Path, PathBuf};
+
+use anyhow::{Context, Result, bail};
+
+use crate::{place, run, tools};
+
+/// Builds the release page and gives its folder.
+pub(crate) fn build() -> Result<PathBuf> {
+    let builders = tools::Builders::ensure()?;
+    run::run(builders.trunk()?.args(["build", "--release", "--offline", "--skip-version-check"]))?;
+    let dist = place::dist();
+    if !dist.join("index.html").is_file() {
+        bail!("Trunk ended well, but wrote no {}", dist.join("index.html").display());
+    }
+    Ok(dist)
+}
+
+/// `cargo xtask trunk …`: Trunk with our tools and compiler, for work on the page (`serve` rebuilds as you save).
+pub(crate) fn trunk(arguments: &[String]) -> Result<()> {
+    let mut command = tools::Builders::ensure()?.trunk()?;
+    command.args(arguments);
+    if arguments.first().is_some_and(|name| ["build", "serve", "watch"].contains(&name.as_str())) {
+        command.args(["--offline", "--skip-version-check"]);
+    }
+    run::run(&mut command)
+}
+
+/// `cargo xtask dist [DIR]`: the page as one folder for any static host.
+pub(crate) fn dist(arguments: &[String]) -> Result<()> {
+    let built = match arguments {
+        [] => build()?,
+        [folder] if !folder.starts_with('-') => {
+            let to = PathBuf::from(folder);
+            refuse_foreign(&to)?;
+            let built = build()?;
+            if to.exists() && to.canonicalize()? == built.canonicalize()? {
+                built
+            } else {
+                replace(&built, &to)?;
+                to
+            }
+        }
+        _ => bail!("usage: cargo xtask dist [DIR]"),
+    };
+    println!("{} is ready: put its contents anywhere on a static host, at any path", built.display());
+    Ok(())
+}
+
+/// The folder may be new, empty, or an earlier build; anything else is somebody's and is left alone.
+fn refuse_foreign(folder: &Path) -> Result<()> {
+    if !folder.exists() {
+        return Ok(());
+    }
+    let empty =
+        fs::read_dir(folder).with_context(|| format!("{} is no folder", folder.display()))?.next().is_none();
+    let ours = fs::read_to_string(folder.join("sw.js")).is_ok_and(|text| text.contains("Lampladder"));
+    if empty || ours {
+        return Ok(());
+    }
+    bail!("{} holds other files; name a new or empty folder", folder.display())
+}
+
+fn replace(from: &Path, to: &Path) -> Result<()> {
+    if to.exists() {
+        fs::remove_dir_all(to)?;
+    }
+    for (name, file) in files(from)? {
+        let target = to.join(&name);
+        if let Some(folder) = target.parent() {
+            fs::create_dir_all(folder)?;
+        }
+        fs::copy(&file, &target).with_context(|| format!("{} cannot be written", target.display()))?;
+    }
+    Ok(())
+}
+
+/// All files below a folder, sorted by name; names are relative and use `/`.
+pub(crate) fn files(folder: &Path) -> Result<Vec<(String, PathBuf)>> {
+    let mut found = Vec::new();
+    let mut folders = vec![folder.to_path_buf()];
+    while let Some(next) = folders.pop() {
+        for entry in fs::read_dir(&next).with_context(|| format!("{} cannot be read", next.display()))? {
+            let path = entry?.path();
+            if path.is_dir() {
+                folders.push(path);
+            } else {
+                let relative = path.strip_prefix(folder)?.components();
+                let name: Vec<_> =
+                    relative.map(|part| part.as_os_str().to_string_lossy().into_owned()).collect();
+                found.push((name.join("/"), path));
+            }
+        }
+    }
+    found.sort();
+    Ok(found)
+}

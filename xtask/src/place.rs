@@ -1,0 +1,49 @@
+//! Where things are: the checkout, and the cache of tools outside it.
+
+use std::env;
+use std::path::{Path, PathBuf};
+
+use anyhow::{Context, Result};
+
+/// The root of the checkout, known since this program was compiled in it.
+///
+/// `cargo xtask` sets the variable again at run time; that one wins, so a checkout may be moved.
+pub(crate) fn root() -> PathBuf {
+    let package =
+        env::var_os("CARGO_MANIFEST_DIR").map_or_else(|| env!("CARGO_MANIFEST_DIR").into(), PathBuf::from);
+    // Cargo run from another member still names xtask's own folder here, for it is xtask's binary that runs; the
+    // compiled-in path covers the hook that Trunk starts, where the variable is absent.
+    match package.parent() {
+        Some(root) if root.join("Trunk.toml").exists() => root.to_path_buf(),
+        _ => Path::new(env!("CARGO_MANIFEST_DIR")).parent().map_or_else(PathBuf::new, Path::to_path_buf),
+    }
+}
+
+/// The built page.
+pub(crate) fn dist() -> PathBuf {
+    root().join("dist")
+}
+
+/// The folder of tools: outside the checkout, so that a fresh clone finds them again.
+pub(crate) fn cache() -> Result<PathBuf> {
+    if let Some(folder) = set("LAMPLADDER_CACHE") {
+        return Ok(folder.into());
+    }
+    if let Some(folder) = set("XDG_CACHE_HOME") {
+        return Ok(Path::new(&folder).join("lampladder"));
+    }
+    let home =
+        set("HOME").or_else(|| set("USERPROFILE")).context("neither LAMPLADDER_CACHE nor HOME is set")?;
+    Ok(Path::new(&home).join(".cache").join("lampladder"))
+}
+
+/// The first program of this name on PATH.
+pub(crate) fn on_path(program: &str) -> Option<PathBuf> {
+    let path = env::var_os("PATH")?;
+    env::split_paths(&path).map(|folder| folder.join(program)).find(|file| file.is_file())
+}
+
+/// An environment variable that is set to something.
+pub(crate) fn set(name: &str) -> Option<String> {
+    env::var(name).ok().filter(|value| !value.is_empty())
+}

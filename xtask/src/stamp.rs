@@ -1,0 +1,149 @@
+//! What Trunk's output still needs: no inline script, and a service worker that knows its files.
+
+use std::fs;
+use std::path::Path;
+
+use anyhow::{Context, Result, bail};
+
+use crate::{page, place};
+
+/// `xtask stamp`, called by Trunk between building and publishing.
+pub(crate) fn from_hook(arguments: &[String]) -> Result<()> {
+    let folder = match arguments {
+        [] => place::set("TRUNK_STAGING_DIR")
+            .context("`stamp` is called by Trunk; to use it by hand, name a folder")?,
+        [folder] => folder.clone(),
+        _ => bail!("usage: xtask stamp [DIR]"),
+    };
+    let folder = Path::new(&folder);
+    let index = folder.join("index.html");
+    let html = fs::read_to_string(&index).with_context(|| format!("{} cannot be read", index.display()))?;
+    let (html, scripts) = externalise(&html)?;
+    for script in &scripts {
+        fs::write(folder.join(&script.name), &script.text)?;
+    }
+    fs::write(&index, html)?;
+
+    let template =
+        fs::read_to_string(place::root().join("static/sw.js")).context("static/sw.js cannot be read")?;
+    let mut contents = Vec::new();
+    for (name, path) in page::files(folder)? {
+        // The worker itself is looked after by the browser, not by its own cache.
+        if name != "sw.js" {
+            contents.push((name, fs::read(path)?));
+        }
+    }
+    fs::write(folder.join("sw.js"), worker(&template, &contents)?)?;
+    println!("  stamped the service worker with {} files", contents.len());
+    Ok(())
+}
+
+/// A script taken out of the page.
+#[derive(Debug, PartialEq, Eq)]
+struct Script {
+    name: String,
+    text: String,
+}
+
+/// Moves every inline script into a file named by its contents, so that the page runs under a content security
+/// policy that allows scripts from the page's own host only. Trunk starts the program by such a script.
+fn externalise(html: &str) -> Result<(String, Vec<Script>)> {
+    let mut out = String::new();
+    let mut scripts = Vec::new();
+    let mut rest = html;
+    while let Some(start) = rest.find("<script") {
+        let (before, tag) = rest.split_at(start);
+        let open = tag.find('>').context("index.html ends inside a script tag")?;
+        let end = tag.find("</script>").context("index.html has a script that does not end")?;
+        let attributes = tag[..open].trim_start_matches("<script").trim();
+        out.push_str(before);
+        let inline = !attributes.split_whitespace().any(|attribute| attribute.starts_with("src="));
+        // Data in a script tag is not run, and no policy forbids it.
+        if inline && !attributes.contains("json") {
+            let text = tag[open + 1..end].trim().to_owned() + "\n";
+            let name = format!("start-{:016x}.js", hash(text.as_bytes()));
+            let space = if attributes.is_empty() { "" } else { " " };
+            out.extend(["<script", space, attributes, " src=\"./", &name, "\"></script>"]);
+            scripts.push(Script { name, text });
+        } else {
+            out.push_str(&tag[..end + "</script>".len()]);
+        }
+        rest = &tag[end + "</script>".len()..];
+    }
+    out.push_str(rest);
+    Ok((out, scripts))
+}
+
+const VERSION: &str = "const VERSION = \"unstamped\";";
+const FILES: &str = "const FILES = [];";
+
+/// The service worker with the list of files and a version that changes when any of them (or the worker) does.
+fn worker(template: &str, contents: &[(String, Vec<u8>)]) -> Result<String> {
+    for line in [VERSION, FILES] {
+        if template.matches(line).count() != 1 {
+            bail!("static/sw.js must hold exactly one line `{line}`");
+        }
+    }
+    let mut all = template.as_bytes().to_vec();
+    let mut list = String::new();
+    for (name, bytes) in contents {
+        all.extend_from_slice(name.as_bytes());
+        all.push(0);
+        all.extend_from_slice(bytes);
+        // A host may answer `index.html` with a redirect to its folder; the folder's own address always works.
+        let address = if name == "index.html" { "./" } else { name };
+        list.extend(["\n  ", &serde_json::Value::from(address).to_string(), ","]);
+    }
+    let version = format!("const VERSION = \"{:016x}\";", hash(&all));
+    Ok(template.replace(VERSION, &version).replace(FILES, &format!("const FILES = [{list}\n];")))
+}
+
+/// FNV-1a, 64 bits: tells versions apart; it is no protection against anybody.
+fn hash(bytes: &[u8]) -> u64 {
+    bytes
+        .iter()
+        .fold(0xcbf2_9ce4_8422_2325, |state, byte| (state ^ u64::from(*byte)).wrapping_mul(0x100_0000_01b3))
+}
+
+#[cfg(test)]
+mod tests {
+    use super::{externalise, hash, worker};
+
+    #[test]
+    fn hash_agrees_with_the_published_test_vectors() {
+        // Landon Curt Noll's table of FNV-1a 64-bit results.
+        assert_eq!(hash(b""), 0xcbf2_9ce4_8422_2325);
+        assert_eq!(hash(b"a"), 0xaf63_dc4c_8601_ec8c);
+        assert_eq!(hash(b"foobar"), 0x8594_4171_f739_67e8);
+    }
+
+    #[test]
+    fn inline_scripts_move_out_and_others_stay() {
+        let html = "<head><script src=\"a.js\"></script><script type=\"application/ld+json\">{}</script></head>\
+                    <script type=\"module\">\nimport init from './x.js';\n</script><p>end";
+        let (out, scripts) = externalise(html).expect("well-formed");
+        assert_eq!(scripts.len(), 1);
+        assert_eq!(scripts[0].text, "import init from './x.js';\n");
+        let name = &scripts[0].name;
+        assert!(out.contains(&format!("<script type=\"module\" src=\"./{name}\"></script><p>end")), "{out}");
+        assert!(
+            out.contains("<script src=\"a.js\"></script><script type=\"application/ld+json\">{}</script>"),
+            "{out}"
+        );
+        assert!(externalise("<script>never ends").is_err());
+    }
+
+    #[test]
+    fn the_version_changes_with_any_file_and_with_the_worker() {
+        let template = "const VERSION = \"unstamped\";\nconst FILES = [];\n";
+        let page = |text: &str| vec![("index.html".to_owned(), text.as_bytes().to_vec())];
+        let first = worker(template, &page("a")).expect("stamped");
+        assert!(first.contains("const FILES = [\n  \"./\",\n];"), "{first}");
+        assert_ne!(first, worker(template, &page("b")).expect("stamped"));
+        assert_ne!(
+            first.lines().next(),
+            worker(&format!("{template}// changed"), &page("a")).expect("stamped").lines().next()
+        );
+        assert!(worker("const FILES = [];", &page("a")).is_err());
+    }
+}
