@@ -1,1 +1,12 @@
+//! Driving the built page in a real Chromium, as a person would, with its server under our control.
+//!
+//! The tests find the page and the browser through variables that `cargo xtask test e2e` sets; without them they
+//! fail and say so.
+#![forbid(unsafe_code)]
 
+pub mod accessibility;
+pub mod browser;
+pub mod devtools;
+mod driver;
+pub mod folder;
+pub mod surroundings;

@@ -1,4 +1,6 @@
-//! The part of xtask that the end-to-end tests use too: the server of the built page.
+//! The part of xtask that the end-to-end tests use too: finishing and serving a built page.
 #![forbid(unsafe_code)]
 
+pub mod files;
 pub mod site;
+pub mod stamp;

@@ -12,7 +12,6 @@ mod place;
 mod run;
 mod serve;
 mod size;
-mod stamp;
 mod tally;
 mod target;
 mod tools;
@@ -60,7 +59,7 @@ fn dispatch(arguments: &[String]) -> anyhow::Result<ExitCode> {
         "dist" => page::dist(rest),
         "oracle" => oracle::regenerate(rest),
         "trunk" => page::trunk(rest),
-        "stamp" => stamp::from_hook(rest),
+        "stamp" => page::stamp(rest),
         "help" | "--help" | "-h" => {
             println!("{HELP}");
             Ok(())

@@ -5,6 +5,8 @@ use std::path::{Path, PathBuf};
 
 use anyhow::{Context, Result, bail};
 
+use xtask::{files, stamp};
+
 use crate::{place, run, tools};
 
 /// Builds the release page and gives its folder.
@@ -67,7 +69,7 @@ fn replace(from: &Path, to: &Path) -> Result<()> {
     if to.exists() {
         fs::remove_dir_all(to)?;
     }
-    for (name, file) in files(from)? {
+    for (name, file) in files::below(from)? {
         let target = to.join(&name);
         if let Some(folder) = target.parent() {
             fs::create_dir_all(folder)?;
@@ -77,23 +79,17 @@ fn replace(from: &Path, to: &Path) -> Result<()> {
     Ok(())
 }
 
-/// All files below a folder, sorted by name; names are relative and use `/`.
-pub(crate) fn files(folder: &Path) -> Result<Vec<(String, PathBuf)>> {
-    let mut found = Vec::new();
-    let mut folders = vec![folder.to_path_buf()];
-    while let Some(next) = folders.pop() {
-        for entry in fs::read_dir(&next).with_context(|| format!("{} cannot be read", next.display()))? {
-            let path = entry?.path();
-            if path.is_dir() {
-                folders.push(path);
-            } else {
-                let relative = path.strip_prefix(folder)?.components();
-                let name: Vec<_> =
-                    relative.map(|part| part.as_os_str().to_string_lossy().into_owned()).collect();
-                found.push((name.join("/"), path));
-            }
-        }
-    }
-    found.sort();
-    Ok(found)
+/// `xtask stamp`, called by Trunk between building and publishing.
+pub(crate) fn stamp(arguments: &[String]) -> Result<()> {
+    let folder = match arguments {
+        [] => place::set("TRUNK_STAGING_DIR")
+            .context("`stamp` is called by Trunk; to use it by hand, name a folder")?,
+        [folder] => folder.clone(),
+        _ => bail!("usage: xtask stamp [DIR]"),
+    };
+    let template =
+        fs::read_to_string(place::root().join("static/sw.js")).context("static/sw.js cannot be read")?;
+    let count = stamp::finish(Path::new(&folder), &template)?;
+    println!("  stamped the service worker with {count} files");
+    Ok(())
 }

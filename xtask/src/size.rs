@@ -4,7 +4,7 @@ use std::fs;
 use std::path::Path;
 
 use anyhow::{Result, bail};
-use xtask::site;
+use xtask::{files, site};
 
 use crate::page;
 
@@ -22,7 +22,7 @@ pub(crate) fn size(arguments: &[String]) -> Result<()> {
 pub(crate) fn report(folder: &Path) -> Result<()> {
     println!("{:>10} {:>10}  file", "bytes", "gzipped");
     let (mut raw_sum, mut small_sum) = (0, 0);
-    for (name, path) in page::files(folder)? {
+    for (name, path) in files::below(folder)? {
         let bytes = fs::read(path)?;
         let small = site::compress(&bytes)?.len();
         println!("{:>10} {small:>10}  {name}", bytes.len());

@@ -5,17 +5,14 @@ use std::path::Path;
 
 use anyhow::{Context, Result, bail};
 
-use crate::{page, place};
+use crate::files;
 
-/// `xtask stamp`, called by Trunk between building and publishing.
-pub(crate) fn from_hook(arguments: &[String]) -> Result<()> {
-    let folder = match arguments {
-        [] => place::set("TRUNK_STAGING_DIR")
-            .context("`stamp` is called by Trunk; to use it by hand, name a folder")?,
-        [folder] => folder.clone(),
-        _ => bail!("usage: xtask stamp [DIR]"),
-    };
-    let folder = Path::new(&folder);
+/// Finishes the page in `folder`: `template` is the text of static/sw.js. Gives the number of files that the worker
+/// will keep.
+///
+/// # Errors
+/// When the page or the worker is not as expected, or cannot be read or written.
+pub fn finish(folder: &Path, template: &str) -> Result<usize> {
     let index = folder.join("index.html");
     let html = fs::read_to_string(&index).with_context(|| format!("{} cannot be read", index.display()))?;
     let (html, scripts) = externalise(&html)?;
@@ -23,19 +20,15 @@ pub(crate) fn from_hook(arguments: &[String]) -> Result<()> {
         fs::write(folder.join(&script.name), &script.text)?;
     }
     fs::write(&index, html)?;
-
-    let template =
-        fs::read_to_string(place::root().join("static/sw.js")).context("static/sw.js cannot be read")?;
     let mut contents = Vec::new();
-    for (name, path) in page::files(folder)? {
+    for (name, path) in files::below(folder)? {
         // The worker itself is looked after by the browser, not by its own cache.
         if name != "sw.js" {
             contents.push((name, fs::read(path)?));
         }
     }
-    fs::write(folder.join("sw.js"), worker(&template, &contents)?)?;
-    println!("  stamped the service worker with {} files", contents.len());
-    Ok(())
+    fs::write(folder.join("sw.js"), worker(template, &contents)?)?;
+    Ok(contents.len())
 }
 
 /// A script taken out of the page.

@@ -1,0 +1,39 @@
+//! The page as people see and hear it who do not see, hear or point as most do: checked by axe-core.
+
+use anyhow::{Context, Result, ensure};
+use serde_json::{Value, json};
+
+use crate::browser::Browser;
+use crate::surroundings;
+
+/// The rules of WCAG 2.2 at levels A and AA, and what axe-core calls best practice.
+const RULES: [&str; 6] = ["wcag2a", "wcag2aa", "wcag21a", "wcag21aa", "wcag22aa", "best-practice"];
+
+/// Fails with the list of violations, if the page has any as it stands.
+///
+/// # Errors
+/// When there are violations, or the checker cannot run.
+pub fn check(browser: &Browser, screen: &str) -> Result<()> {
+    let axe = surroundings::axe()?;
+    // Through DevTools, since a content security policy would rightly refuse a script of ours in the page.
+    let loaded = browser.devtools("Runtime.evaluate", json!({"expression": axe}))?;
+    ensure!(loaded["exceptionDetails"].is_null(), "axe-core does not load: {loaded}");
+    let body = "const done = arguments[arguments.length - 1]; const rules = arguments[0]; \
+                window.axe.run(document, {runOnly: {type: 'tag', values: rules}, resultTypes: ['violations']}) \
+                .then((r) => done({violations: r.violations, passes: r.passes.length}), (e) => done({error: String(e)}))";
+    let result = browser.script_later(body, vec![json!(RULES)])?;
+    ensure!(result["error"].is_null(), "axe-core failed on {screen}: {}", result["error"]);
+    let passes = result["passes"].as_u64().context("axe-core gave no result")?;
+    ensure!(passes > 5, "axe-core found hardly anything to check on {screen}");
+    let violations: Vec<String> =
+        result["violations"].as_array().into_iter().flatten().map(described).collect();
+    ensure!(violations.is_empty(), "accessibility of {screen}:\n{}", violations.join("\n"));
+    Ok(())
+}
+
+fn described(violation: &Value) -> String {
+    let nodes = violation["nodes"].as_array().into_iter().flatten();
+    let nodes: Vec<_> =
+        nodes.map(|node| format!("    {}\n      {}", node["html"], node["failureSummary"])).collect();
+    format!("  {}: {}\n{}", violation["id"], violation["help"], nodes.join("\n"))
+}
