@@ -1,0 +1,196 @@
+//! What can be wrong with an input: the field, the value and the range that is allowed.
+
+use core::fmt;
+
+/// A property that a person or a request can set, named as in the JSON contract.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+#[non_exhaustive]
+pub enum Field {
+    /// RMS or DC potential difference, volts.
+    Volts,
+    /// Real power, watts.
+    Watts,
+    /// Current, amperes.
+    Amps,
+    /// Supply frequency, hertz; 0 is direct current.
+    Hertz,
+    /// Resistance, ohms.
+    Ohms,
+    /// Reactance at the supply frequency, ohms.
+    ReactanceOhms,
+    /// Power factor, 0 to 1.
+    PowerFactor,
+    /// Printed luminous flux, lumens.
+    Lumens,
+    /// Resistance measured on the cold lamp, ohms.
+    ColdOhms,
+    /// Measured volts and amperes of a lamp.
+    Points,
+    /// Filament temperature at the rating, kelvin.
+    RatedKelvin,
+    /// Share of the input carried away by the filling gas at the rating.
+    GasShare,
+    /// A filament temperature, kelvin.
+    Kelvin,
+    /// Reservoir capacitance, farads.
+    Farads,
+    /// Resistance in series with a rectifier, ohms.
+    SeriesOhms,
+    /// Forward voltage of the conducting diodes together, volts.
+    DiodeVolts,
+    /// DC voltage above which a switch-mode supply starts, volts.
+    StartVolts,
+    /// DC voltage below which a switch-mode supply stops, volts.
+    StopVolts,
+    /// The lamps in use.
+    Bank,
+    /// How many lamps.
+    Count,
+}
+
+impl Field {
+    /// The property's name in the JSON contract.
+    pub const fn name(self) -> &'static str {
+        match self {
+            Self::Volts => "volts",
+            Self::Watts => "watts",
+            Self::Amps => "amps",
+            Self::Hertz => "hertz",
+            Self::Ohms => "ohms",
+            Self::ReactanceOhms => "reactance_ohms",
+            Self::PowerFactor => "power_factor",
+            Self::Lumens => "lumens",
+            Self::ColdOhms => "cold_ohms",
+            Self::Points => "points",
+            Self::RatedKelvin => "rated_kelvin",
+            Self::GasShare => "gas_share",
+            Self::Kelvin => "kelvin",
+            Self::Farads => "farads",
+            Self::SeriesOhms => "series_ohms",
+            Self::DiodeVolts => "diode_volts",
+            Self::StartVolts => "start_volts",
+            Self::StopVolts => "stop_volts",
+            Self::Bank => "bank",
+            Self::Count => "count",
+        }
+    }
+
+    /// The SI unit symbol; empty for a ratio or a count.
+    pub const fn unit(self) -> &'static str {
+        match self {
+            Self::Volts | Self::DiodeVolts | Self::StartVolts | Self::StopVolts => "V",
+            Self::Watts => "W",
+            Self::Amps => "A",
+            Self::Hertz => "Hz",
+            Self::Ohms | Self::ReactanceOhms | Self::ColdOhms | Self::SeriesOhms => "Ω",
+            Self::Lumens => "lm",
+            Self::RatedKelvin | Self::Kelvin => "K",
+            Self::Farads => "F",
+            Self::PowerFactor | Self::Points | Self::GasShare | Self::Bank | Self::Count => "",
+        }
+    }
+}
+
+/// Why an input was refused.
+#[derive(Debug, Clone, Copy, PartialEq)]
+#[non_exhaustive]
+pub enum InputError {
+    /// Not a finite number.
+    NotFinite {
+        /// The refused property.
+        field: Field,
+    },
+    /// A number outside what is allowed.
+    OutOfRange {
+        /// The refused property.
+        field: Field,
+        /// What was given.
+        value: f64,
+        /// Least allowed value.
+        low: f64,
+        /// Greatest allowed value.
+        high: f64,
+    },
+    /// Two properties that cannot both be true.
+    Conflict {
+        /// The refused property.
+        field: Field,
+        /// What was given.
+        value: f64,
+        /// The property it contradicts.
+        with: Field,
+        /// The limit that the other property sets.
+        limit: f64,
+    },
+    /// A reactance or a transformer on direct current.
+    NeedsAlternating {
+        /// The refused property.
+        field: Field,
+    },
+}
+
+impl InputError {
+    /// The refused property.
+    pub const fn field(&self) -> Field {
+        match *self {
+            Self::NotFinite { field }
+            | Self::OutOfRange { field, .. }
+            | Self::Conflict { field, .. }
+            | Self::NeedsAlternating { field } => field,
+        }
+    }
+}
+
+impl fmt::Display for InputError {
+    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        let name = self.field().name();
+        match *self {
+            Self::NotFinite { .. } => write!(f, "{name} must be a finite number"),
+            Self::OutOfRange { field, value, low, high } => {
+                let unit = field.unit();
+                let gap = if unit.is_empty() { "" } else { " " };
+                write!(f, "{name} must be from {low} to {high}{gap}{unit}, not {value:?}")
+            }
+            Self::Conflict { field, value, with, limit } => write!(
+                f,
+                "{name} of {value:?} {} contradicts {}, which allows at most {limit:?}",
+                field.unit(),
+                with.name()
+            ),
+            Self::NeedsAlternating { .. } => write!(f, "{name} has no meaning on direct current (0 Hz)"),
+        }
+    }
+}
+
+impl core::error::Error for InputError {}
+
+/// Passes a number that is finite and inside `low..=high`.
+///
+/// # Errors
+/// [`InputError::NotFinite`] and [`InputError::OutOfRange`].
+pub fn within(field: Field, value: f64, low: f64, high: f64) -> Result<f64, InputError> {
+    if !value.is_finite() {
+        return Err(InputError::NotFinite { field });
+    }
+    if (low..=high).contains(&value) {
+        Ok(value)
+    } else {
+        Err(InputError::OutOfRange { field, value, low, high })
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use alloc::string::ToString;
+
+    #[test]
+    fn a_refusal_names_field_range_and_value() {
+        let refused = within(Field::Watts, 1e300, 0.05, 5000.0).expect_err("far out of range");
+        assert_eq!(refused.to_string(), "watts must be from 0.05 to 5000 W, not 1e300");
+        assert_eq!(
+            within(Field::PowerFactor, f64::NAN, 0.0, 1.0),
+            Err(InputError::NotFinite { field: Field::PowerFactor })
+        );
+    }
+}

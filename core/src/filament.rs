@@ -1,0 +1,209 @@
+//! A filament's resistance and power against its temperature: the one curve behind every lamp.
+//!
+//! `R(T) = R0 rho(T)/rho(T0)` and
+//! `P(T) = W0 [(1-g) (M(T)-M(Ta))/(M(T0)-M(Ta)) + g (T^n-Ta^n)/(T0^n-Ta^n)]`, with `M = eps sigma T^4` and
+//! `n = 1.7` for conduction through a stagnant film of argon (I. Langmuir, Physical Review 34 (1912) 401).
+
+use crate::roots::{self, Tolerance};
+use crate::tungsten::{AMBIENT_KELVIN, HIGHEST_KELVIN, Properties};
+
+/// Exponent of the heat that an argon film conducts, against temperature (Langmuir 1912).
+const FILM_EXPONENT: f64 = 1.7;
+
+/// The least rise above ambient that the curve resolves, kelvin: picoamperes in any lamp.
+const LEAST_RISE: f64 = 1e-20;
+
+const LEAST_LN_RISE: f64 = -46.051_701_859_880_914;
+const MOST_LN_RISE: f64 = 8.101_677_747_454_572;
+
+/// The numbers that fix one filament.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Shape {
+    /// Volts at the rating.
+    pub volts: f64,
+    /// Watts at the rating.
+    pub watts: f64,
+    /// Temperature at the rating, kelvin.
+    pub kelvin: f64,
+    /// Share of the input carried away by the filling gas at the rating, 0 to 0.5.
+    pub gas_share: f64,
+}
+
+/// A filament as a curve in its temperature.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Filament {
+    shape: Shape,
+    tungsten: &'static Properties,
+    ohms_per_resistivity: f64,
+    watts_per_exitance: f64,
+    watts_per_film: f64,
+}
+
+/// One point of the curve. `volts` and `amps` are RMS, or DC.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct FilamentPoint {
+    /// Temperature above 300 K, kelvin.
+    pub rise: f64,
+    /// Resistance, ohms.
+    pub ohms: f64,
+    /// Power that holds this temperature, watts.
+    pub watts: f64,
+}
+
+impl FilamentPoint {
+    /// Temperature, kelvin.
+    pub fn kelvin(&self) -> f64 {
+        AMBIENT_KELVIN + self.rise
+    }
+
+    /// RMS or DC volts that hold this temperature.
+    pub fn volts(&self) -> f64 {
+        libm::sqrt(self.watts * self.ohms)
+    }
+
+    /// RMS or DC amperes that hold this temperature.
+    pub fn amps(&self) -> f64 {
+        libm::sqrt(self.watts / self.ohms)
+    }
+}
+
+impl Filament {
+    /// Fixes the curve; `shape` has been validated by the lamp that owns it.
+    pub fn new(shape: Shape, tungsten: &'static Properties) -> Self {
+        let rise = shape.kelvin - AMBIENT_KELVIN;
+        let exitance = tungsten.exitance_above_ambient(rise);
+        Self {
+            shape,
+            tungsten,
+            ohms_per_resistivity: shape.volts * shape.volts
+                / shape.watts
+                / tungsten.resistivity.at(shape.kelvin),
+            watts_per_exitance: (1.0 - shape.gas_share) * shape.watts / exitance,
+            watts_per_film: shape.gas_share * shape.watts / film(rise),
+        }
+    }
+
+    /// The numbers that fix it.
+    pub const fn shape(&self) -> Shape {
+        self.shape
+    }
+
+    /// The same filament with other tables of tungsten.
+    pub fn with_tungsten(&self, tungsten: &'static Properties) -> Self {
+        Self::new(self.shape, tungsten)
+    }
+
+    /// Resistance at 300 K, ohms.
+    pub fn cold_ohms(&self) -> f64 {
+        self.ohms_per_resistivity * self.tungsten.resistivity.at(AMBIENT_KELVIN)
+    }
+
+    /// Heat radiated at `kelvin`, watts, without what the surroundings give back.
+    pub fn radiated_watts(&self, kelvin: f64) -> f64 {
+        self.watts_per_exitance * self.tungsten.exitance_above_ambient(kelvin - AMBIENT_KELVIN)
+    }
+
+    /// The point at a rise above 300 K, kelvin, up to 3300.
+    pub fn at_rise(&self, rise: f64) -> FilamentPoint {
+        let rise = rise.clamp(0.0, HIGHEST_KELVIN - AMBIENT_KELVIN);
+        let cold = self.tungsten.resistivity.at(AMBIENT_KELVIN);
+        let gas = if self.watts_per_film > 0.0 { self.watts_per_film * film(rise) } else { 0.0 };
+        FilamentPoint {
+            rise,
+            ohms: self.ohms_per_resistivity * (cold + self.tungsten.resistivity.above_ambient(rise)),
+            watts: self.watts_per_exitance * self.tungsten.exitance_above_ambient(rise) + gas,
+        }
+    }
+
+    /// The point at a logarithm of the rise: the variable in which every search runs, since current, voltage
+    /// and power are close to powers of the rise over ten decades.
+    pub fn at_ln_rise(&self, ln_rise: f64) -> FilamentPoint {
+        self.at_rise(libm::exp(ln_rise))
+    }
+
+    /// The span of [`Self::at_ln_rise`].
+    pub const fn ln_rise_span() -> (f64, f64) {
+        (LEAST_LN_RISE, MOST_LN_RISE)
+    }
+
+    /// A first guess of the logarithm of the rise for a share of the rated voltage.
+    pub fn guess_ln_rise(&self, share_of_volts: f64) -> f64 {
+        let ln_share = libm::log(share_of_volts.max(1e-30));
+        let rated = libm::log(self.shape.kelvin - AMBIENT_KELVIN);
+        // Slopes of this curve itself for a gas-filled mains lamp: radiating, then conducting, then barely warm.
+        let bend = -3.0;
+        if ln_share > bend { rated + 0.49 * ln_share } else { rated + 0.49 * bend + 1.6 * (ln_share - bend) }
+    }
+
+    /// The point at a voltage, or the hottest of the curve where the voltage would melt the filament.
+    pub fn at_volts(&self, volts: f64) -> FilamentPoint {
+        let target = 2.0 * libm::log(volts);
+        self.search(volts / self.shape.volts, |point| target - libm::log(point.watts * point.ohms))
+    }
+
+    /// The point at a current, or the hottest of the curve where the current would melt the filament.
+    pub fn at_amps(&self, amps: f64) -> FilamentPoint {
+        let target = 2.0 * libm::log(amps);
+        let share = amps * self.shape.volts / self.shape.watts;
+        self.search(libm::pow(share, 1.85), |point| target - libm::log(point.watts / point.ohms))
+    }
+
+    fn search(&self, share: f64, excess: impl Fn(&FilamentPoint) -> f64) -> FilamentPoint {
+        if share <= 0.0 {
+            return self.at_rise(0.0);
+        }
+        let span = Self::ln_rise_span();
+        let guess = self.guess_ln_rise(share);
+        let tolerance = Tolerance { x: 1e-14, residual: 1e-13 };
+        let found = roots::decreasing_from(|x| excess(&self.at_ln_rise(x)), span, guess, tolerance);
+        match found {
+            Some(root) => self.at_ln_rise(root.x),
+            None if share < 1.0 => self.at_rise(LEAST_RISE),
+            None => self.at_rise(HIGHEST_KELVIN - AMBIENT_KELVIN),
+        }
+    }
+}
+
+/// `(T^n - Ta^n) / Ta^n`, free of cancellation for a small rise.
+fn film(rise: f64) -> f64 {
+    libm::expm1(FILM_EXPONENT * libm::log1p(rise / AMBIENT_KELVIN))
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::tungsten::STANDARD;
+
+    fn mains_lamp() -> Filament {
+        Filament::new(Shape { volts: 230.0, watts: 100.0, kelvin: 2800.0, gas_share: 0.2 }, &STANDARD)
+    }
+
+    #[test]
+    fn the_span_is_the_logarithm_of_its_ends() {
+        assert!((libm::log(LEAST_RISE) - LEAST_LN_RISE).abs() < 1e-12);
+        assert!((libm::log(HIGHEST_KELVIN - AMBIENT_KELVIN) - MOST_LN_RISE).abs() < 1e-12);
+    }
+
+    #[test]
+    fn the_rating_is_on_the_curve() {
+        let point = mains_lamp().at_volts(230.0);
+        assert!((point.kelvin() - 2800.0).abs() < 1e-6);
+        assert!((point.watts - 100.0).abs() < 1e-8);
+    }
+
+    #[test]
+    fn voltage_and_current_find_the_same_point() {
+        let filament = mains_lamp();
+        for volts in [1e-9, 1e-6, 1e-3, 0.1, 1.0, 7.0, 28.0, 67.0, 230.0, 260.0] {
+            let point = filament.at_volts(volts);
+            assert!((point.volts() / volts - 1.0).abs() < 1e-12, "{volts} V: {}", point.volts());
+            let again = filament.at_amps(point.amps());
+            assert!((again.volts() / volts - 1.0).abs() < 1e-11, "{volts} V: {}", again.volts());
+        }
+    }
+
+    #[test]
+    fn an_overdriven_filament_ends_at_the_hottest_row() {
+        assert!((mains_lamp().at_volts(2000.0).kelvin() - HIGHEST_KELVIN).abs() < 1e-9);
+    }
+}

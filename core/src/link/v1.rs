@@ -1,0 +1,132 @@
+//! Version 1 of the link: the record as it stands for ever. Do not change the order or types of its fields; write
+//! a version 2 beside it.
+
+use alloc::vec::Vec;
+
+use serde::{Deserialize, Serialize};
+
+use super::LinkError;
+use super::decimal::Decimal;
+use crate::bank::Bank;
+use crate::lamp::{Fill, Lamp, LampSpec, Point};
+use crate::plate::{Family, Plate};
+use crate::setup::Setup;
+use crate::supply::Supply;
+
+#[derive(Serialize, Deserialize)]
+struct Record {
+    supply: [Decimal; 3],
+    bank: Vec<Vec<LampRecord>>,
+    family: u8,
+    plate: [Decimal; 2],
+    power_factor: Option<Decimal>,
+}
+
+#[derive(Serialize, Deserialize)]
+struct LampRecord {
+    volts: Decimal,
+    watts: Decimal,
+    /// Fill code, 0 where not given, and the measured or printed extras, most lamps having none.
+    fill: u8,
+    extras: Option<Extras>,
+}
+
+#[derive(Serialize, Deserialize)]
+struct Extras {
+    lumens: Option<Decimal>,
+    cold_ohms: Option<Decimal>,
+    rated_kelvin: Option<Decimal>,
+    gas_share: Option<Decimal>,
+    points: Vec<(Decimal, Decimal)>,
+}
+
+/// Fill and its code for ever; 0 is "not given".
+const FILLS: [(Fill, u8); 3] = [(Fill::Vacuum, 1), (Fill::Gas, 2), (Fill::Halogen, 3)];
+
+/// Family and its code for ever. New families take new numbers.
+const FAMILIES: [(Family, u8); 3] = [(Family::Heater, 1), (Family::TransformerSupply, 2), (Family::Plain, 3)];
+
+fn code_of<T: PartialEq>(codes: &[(T, u8)], wanted: &T) -> u8 {
+    codes.iter().find(|(known, _)| known == wanted).map_or(0, |&(_, code)| code)
+}
+
+fn known<T: Copy>(codes: &[(T, u8)], code: u8) -> Option<T> {
+    codes.iter().find(|&&(_, known)| known == code).map(|&(value, _)| value)
+}
+
+pub(super) fn encode(setup: &Setup) -> Vec<u8> {
+    let Setup { supply, bank, plate } = setup;
+    let lamp = |lamp: &Lamp| {
+        let LampSpec { volts, watts, fill, lumens, cold_ohms, ref points, rated_kelvin, gas_share } =
+            *lamp.spec();
+        let plain = lumens.is_none()
+            && cold_ohms.is_none()
+            && points.is_empty()
+            && rated_kelvin.is_none()
+            && gas_share.is_none();
+        LampRecord {
+            volts: volts.into(),
+            watts: watts.into(),
+            fill: fill.map_or(0, |fill| code_of(&FILLS, &fill)),
+            extras: (!plain).then(|| Extras {
+                lumens: lumens.map(Into::into),
+                cold_ohms: cold_ohms.map(Into::into),
+                rated_kelvin: rated_kelvin.map(Into::into),
+                gas_share: gas_share.map(Into::into),
+                points: points.iter().map(|point| (point.volts.into(), point.amps.into())).collect(),
+            }),
+        }
+    };
+    let record = Record {
+        supply: [supply.volts(), supply.hertz(), supply.ohms()].map(Into::into),
+        bank: bank.groups().iter().map(|group| group.iter().map(lamp).collect()).collect(),
+        family: code_of(&FAMILIES, &plate.family()),
+        plate: [plate.volts(), plate.watts()].map(Into::into),
+        power_factor: plate.power_factor().map(Into::into),
+    };
+    // Writing into a growing vector cannot fail; an empty record would be refused by its check byte.
+    postcard::to_allocvec(&record).unwrap_or_default()
+}
+
+pub(super) fn decode(bytes: &[u8]) -> Result<Setup, LinkError> {
+    let (record, rest): (Record, &[u8]) = postcard::take_from_bytes(bytes).map_err(|_| LinkError::Damaged)?;
+    if !rest.is_empty() {
+        return Err(LinkError::Damaged);
+    }
+    let number = |value: Decimal| value.to_f64().ok_or(LinkError::Damaged);
+    let optional = |value: Option<Decimal>| value.map(number).transpose();
+    let lamp = |lamp: LampRecord| -> Result<Lamp, LinkError> {
+        let fill = match lamp.fill {
+            0 => None,
+            code => Some(known(&FILLS, code).ok_or(LinkError::Newer)?),
+        };
+        let mut spec =
+            LampSpec { volts: number(lamp.volts)?, watts: number(lamp.watts)?, fill, ..LampSpec::default() };
+        if let Some(extras) = lamp.extras {
+            spec.lumens = optional(extras.lumens)?;
+            spec.cold_ohms = optional(extras.cold_ohms)?;
+            spec.rated_kelvin = optional(extras.rated_kelvin)?;
+            spec.gas_share = optional(extras.gas_share)?;
+            for (volts, amps) in extras.points {
+                spec.points.push(Point { volts: number(volts)?, amps: number(amps)? });
+            }
+        }
+        Lamp::from_spec(spec).map_err(LinkError::Refused)
+    };
+    let [volts, hertz, ohms] = record.supply;
+    let supply = Supply::new(number(volts)?, number(hertz)?, number(ohms)?).map_err(LinkError::Refused)?;
+    // Refuse a crowded bank before building its lamps.
+    if record.bank.iter().map(Vec::len).sum::<usize>() > Bank::MOST_LAMPS {
+        return Err(LinkError::Damaged);
+    }
+    let mut groups = Vec::new();
+    for group in record.bank {
+        groups.push(group.into_iter().map(lamp).collect::<Result<Vec<_>, _>>()?);
+    }
+    let bank = Bank::new(groups).map_err(LinkError::Refused)?;
+    let family = known(&FAMILIES, record.family).ok_or(LinkError::Newer)?;
+    let [plate_volts, watts] = record.plate;
+    let plate = Plate::new(family, number(plate_volts)?, number(watts)?, optional(record.power_factor)?)
+        .map_err(LinkError::Refused)?;
+    Ok(Setup { supply, bank, plate })
+}
