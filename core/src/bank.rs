@@ -72,6 +72,7 @@ impl Bank {
     }
 
     /// The same bank with every lamp replaced by its [`Lamp::variant`].
+    #[must_use]
     pub fn variant(&self, index: usize) -> Self {
         let groups = self.groups.iter().map(|group| group.iter().map(|lamp| lamp.variant(index)).collect());
         Self { groups: groups.collect() }

@@ -89,6 +89,7 @@ impl Filament {
     }
 
     /// The same filament with other tables of tungsten.
+    #[must_use]
     pub fn with_tungsten(&self, tungsten: &'static Properties) -> Self {
         Self::new(self.shape, tungsten)
     }

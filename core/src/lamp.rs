@@ -251,6 +251,7 @@ impl Lamp {
     ///
     /// 0 to 5 are one standard deviation up and down along each independent direction of (watts, temperature,
     /// gas share): even is up, odd is down. 6 and 7 use the other published resistivity and emissivity.
+    #[must_use]
     pub fn variant(&self, index: usize) -> Self {
         let filament = match index {
             6 => self.filament.with_tungsten(&OTHER_RESISTIVITY),

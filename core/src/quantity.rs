@@ -93,7 +93,7 @@ pub fn parse(text: &str, field: Field) -> Result<f64, QuantityError> {
             exponent += digits[at + 1..].parse::<i32>().map_err(|_| not_a_number)?;
             digits.truncate(at);
         }
-        digits.push_str(&alloc::format!("e{exponent}"));
+        digits = alloc::format!("{digits}e{exponent}");
     }
     match digits.parse::<f64>() {
         Ok(value) if value.is_finite() => Ok(value),

@@ -228,20 +228,13 @@ impl Circuit<'_> {
     /// Which lamp ends the search at the top of the span.
     fn melts(&self, ln_rise: f64) -> SteadyError {
         let states = self.bank.lamps_at_amps(self.bank.at_ln_rise(ln_rise).amps);
-        self.melting(&states).unwrap_or(SteadyError::FilamentMelts { group: 0, lamp: 0 })
-    }
-
-    fn melting(&self, states: &[Vec<LampState>]) -> Option<SteadyError> {
-        states.iter().enumerate().find_map(|(group, lamps)| {
-            let lamp = lamps.iter().position(|state| state.kelvin > HIGHEST_KELVIN - 1e-6)?;
-            Some(SteadyError::FilamentMelts { group, lamp })
-        })
+        melting(&states).unwrap_or(SteadyError::FilamentMelts { group: 0, lamp: 0 })
     }
 
     fn point_at(&self, root: Root) -> Result<Equilibrium, SteadyError> {
         let bank = self.bank.at_ln_rise(root.x);
         let lamps = self.bank.lamps_at_amps(bank.amps);
-        if let Some(error) = self.melting(&lamps) {
+        if let Some(error) = melting(&lamps) {
             return Err(error);
         }
         let feed = self.feed(&bank);
@@ -302,6 +295,14 @@ impl Circuit<'_> {
     }
 }
 
+/// The first lamp that stands at the end of the curve.
+fn melting(states: &[Vec<LampState>]) -> Option<SteadyError> {
+    states.iter().enumerate().find_map(|(group, lamps)| {
+        let lamp = lamps.iter().position(|state| state.kelvin > HIGHEST_KELVIN - 1e-6)?;
+        Some(SteadyError::FilamentMelts { group, lamp })
+    })
+}
+
 fn crossing(f: impl FnMut(f64) -> f64, start: Sample, end: Sample) -> Option<Root> {
     if start.1 == 0.0 {
         return Some(Root { x: start.0, residual: 0.0, evaluations: 2 });
@@ -323,9 +324,9 @@ fn lowest(mut f: impl FnMut(f64) -> f64, mut left: f64, mut here: Sample, mut ri
         evaluations += 1;
         if probe.1 < here.1 {
             if to_right {
-                left = here.0
+                left = here.0;
             } else {
-                right = here.0
+                right = here.0;
             }
             here = probe;
         } else if to_right {
