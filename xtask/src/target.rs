@@ -47,7 +47,15 @@ impl Route {
             .env("CARGO_UNSTABLE_BUILD_STD", libraries)
             .env("CARGO_UNSTABLE_BUILD_STD_FEATURES", if target == WASM { "optimize_for_size" } else { "" })
             .env("CARGO_TARGET_WASM32_UNKNOWN_UNKNOWN_LINKER", "wasm-ld-19")
+            // This linker, when it strips, throws away the list of processor features too, without which wasm-opt
+            // refuses the file. wasm-opt strips what is left.
+            .env("CARGO_PROFILE_RELEASE_STRIP", "none")
             .env("CARGO_TARGET_DIR", place::root().join("target-debian"));
+    }
+
+    /// Downloads what a build for `target` will compile: Trunk, told to fetch no tools, lets cargo fetch nothing either.
+    pub(crate) fn fetch(self, target: &str) -> Result<()> {
+        run::run(self.cargo(target).args(["fetch", "--quiet", "--locked", "--target", target]))
     }
 
     /// A cargo command for this route and target.
@@ -77,15 +85,20 @@ fn ordinary_then_debian(target: &str) -> Result<Route> {
     if installed(target) {
         return Ok(Route::Installed);
     }
-    // A machine where rustup was refused before: its second run shall not ask again.
-    if debian_is_there() {
-        return debian(target);
+    // Where rustup was refused once, later runs shall not ask again and wait for the same answer.
+    let refused = place::cache()?.join(format!("rustup-refused-{target}"));
+    if !(refused.exists() && debian_is_there()) {
+        if add_by_rustup(target) {
+            return Ok(Route::Installed);
+        }
+        println!("set-up: rustup could not add {target}; trying Debian's compiler");
     }
-    if add_by_rustup(target) {
-        return Ok(Route::Installed);
+    let route = debian(target)?;
+    if !refused.exists() {
+        std::fs::create_dir_all(place::cache()?)?;
+        std::fs::write(refused, "Remove this file to let `cargo xtask` ask rustup again.\n")?;
     }
-    println!("set-up: rustup could not add {target}; trying Debian's compiler");
-    debian(target)
+    Ok(route)
 }
 
 /// Whether the compiler on PATH has the target's standard library (core at least), from wherever it came.

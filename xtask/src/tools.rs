@@ -31,6 +31,7 @@ impl Builders {
     /// Trunk with its helpers on PATH, told to fetch none of them itself, and this very program for its hook.
     pub(crate) fn trunk(&self) -> Result<Command> {
         let route = target::ensure(target::WASM)?;
+        route.fetch(target::WASM)?;
         let mut command = run::command(&self.trunk);
         route.apply(&mut command, target::WASM);
         let outer = command
@@ -43,7 +44,8 @@ impl Builders {
         // Debian's route has put /usr/bin first; it must stay before rustup's cargo, and comes after these folders,
         // which hold no cargo.
         let path = std::env::join_paths(folders.chain(std::env::split_paths(&outer)))?;
-        command.env("PATH", path).env("TRUNK_OFFLINE", "true").env("TRUNK_SKIP_VERSION_CHECK", "true");
+        // Trunk's own stack is of no use to anybody here, and hides the compiler's message.
+        command.env("PATH", path).env("RUST_BACKTRACE", "0");
         // Trunk reads NO_COLOR as a boolean and refuses the usual value 1.
         command.env_remove("NO_COLOR");
         Ok(command)
