@@ -47,9 +47,6 @@ impl Route {
             .env("CARGO_UNSTABLE_BUILD_STD", libraries)
             .env("CARGO_UNSTABLE_BUILD_STD_FEATURES", if target == WASM { "optimize_for_size" } else { "" })
             .env("CARGO_TARGET_WASM32_UNKNOWN_UNKNOWN_LINKER", "wasm-ld-19")
-            // This linker, when it strips, throws away the list of processor features too, without which wasm-opt
-            // refuses the file. wasm-opt strips what is left.
-            .env("CARGO_PROFILE_RELEASE_STRIP", "none")
             .env("CARGO_TARGET_DIR", place::root().join("target-debian"));
     }
 
