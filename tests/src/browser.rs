@@ -129,6 +129,14 @@ impl Browser {
         if console.is_empty() { String::new() } else { format!("; the page said: {}", console.join(" | ")) }
     }
 
+    /// Whether something can be seen at this moment.
+    ///
+    /// # Errors
+    /// When the browser is gone.
+    pub fn sees(&self, css: &str) -> Result<bool> {
+        Ok(truthy(&self.script(&format!("return {}", visible(css)?))?))
+    }
+
     /// Waits until something can be seen.
     ///
     /// # Errors

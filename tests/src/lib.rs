@@ -9,4 +9,5 @@ pub mod browser;
 pub mod devtools;
 mod driver;
 pub mod folder;
+pub mod page;
 pub mod surroundings;

@@ -88,7 +88,12 @@ fn worker(template: &str, contents: &[(String, Vec<u8>)]) -> Result<String> {
         list.extend(["\n  ", &serde_json::Value::from(address).to_string(), ","]);
     }
     let version = format!("const VERSION = \"{:016x}\";", hash(&all));
-    Ok(template.replace(VERSION, &version).replace(FILES, &format!("const FILES = [{list}\n];")))
+    // The comments are for the reader of static/sw.js, not for every phone; the first line says whose worker it is.
+    let comment = |line: &&str| line.trim_start().starts_with("//") || line.trim_start().starts_with("/**");
+    let mut lines: Vec<&str> = template.lines().take(1).collect();
+    lines.extend(template.lines().skip(1).filter(|line| !comment(line) && !line.is_empty()));
+    let code = lines.join("\n") + "\n";
+    Ok(code.replace(VERSION, &version).replace(FILES, &format!("const FILES = [{list}\n];")))
 }
 
 /// FNV-1a, 64 bits: tells versions apart; it is no protection against anybody.

@@ -1,0 +1,70 @@
+//! How long a person waits for a new result after a keystroke, with the processor throttled 6 times.
+//!
+//! Run by `cargo xtask bench typing`. Real keys go through Chromium's input queue; in the page, a listener takes the
+//! time of the key's event, and an observer the times when the answer's text has changed and when it has been drawn.
+
+use anyhow::{Context, Result, ensure};
+use lampladder_tests::browser::Browser;
+use lampladder_tests::{page, surroundings};
+use serde_json::{Value, json};
+
+/// How many times slower than this machine: about a cheap phone.
+const THROTTLE: u32 = 6;
+const KEYS: usize = 40;
+/// Milliseconds from the key to the changed answer; the median must be below.
+const BUDGET: f64 = 50.0;
+
+const RECORDER: &str = "
+    const answer = document.querySelector(arguments[0]);
+    const input = document.querySelector(arguments[1]);
+    window.recorded = [];
+    let start = null;
+    input.addEventListener('input', (event) => { start = event.timeStamp; }, true);
+    new MutationObserver(() => {
+        if (start === null) return;
+        const [from, changed] = [start, performance.now()];
+        start = null;
+        requestAnimationFrame(() => setTimeout(() => {
+            window.recorded.push([changed - from, performance.now() - from]);
+        }));
+    }).observe(answer, {subtree: true, childList: true, characterData: true, attributes: true});
+    input.focus(); input.select(); arguments[2](null);";
+
+fn main() -> Result<()> {
+    let site = surroundings::site()?;
+    let browser = Browser::start()?;
+    page::enter(&browser, &site.url())?;
+    browser.until_offline_ready()?;
+    let input = page::open_field(&browser, "plate-watts")?;
+    browser.script_later(RECORDER, vec![json!(page::answer("amps")), json!(input)])?;
+    browser.devtools("Emulation.setCPUThrottlingRate", json!({"rate": THROTTLE}))?;
+    // The first key replaces the selected text; then the second digit comes and goes: 45, 4, 45, 4 … watts.
+    for count in 0..KEYS {
+        let key = match count {
+            0 => json!({"type": "char", "text": "4"}),
+            odd if odd % 2 == 1 => json!({"type": "char", "text": "5"}),
+            _ => json!({"type": "rawKeyDown", "key": "Backspace", "windowsVirtualKeyCode": 8}),
+        };
+        browser.devtools("Input.dispatchKeyEvent", key)?;
+        browser
+            .until(&format!("return window.recorded.length > {count}"))
+            .context("the answer does not change")?;
+    }
+    let recorded: Vec<[f64; 2]> = serde_json::from_value(browser.script("return window.recorded")?)?;
+    ensure!(recorded.len() == KEYS, "{KEYS} keys, {} answers", recorded.len());
+    let changed = report("key to changed answer", recorded.iter().map(|times| times[0]).collect())?;
+    report("key to drawn answer", recorded.iter().map(|times| times[1]).collect())?;
+    let agent: Value = browser.script("return navigator.userAgent")?;
+    println!("{KEYS} keys, processor throttled {THROTTLE} times, {agent}");
+    ensure!(changed < BUDGET, "the median of {changed:.1} ms is over the budget of {BUDGET} ms");
+    Ok(())
+}
+
+/// Prints the spread and gives the median.
+fn report(what: &str, mut times: Vec<f64>) -> Result<f64> {
+    times.sort_by(f64::total_cmp);
+    let at = |share: usize| times.get((times.len() - 1) * share / 100).copied().context("no times");
+    let (median, late, worst) = (at(50)?, at(95)?, at(100)?);
+    println!("{what:<24} median {median:6.1} ms   95 % {late:6.1} ms   worst {worst:6.1} ms");
+    Ok(median)
+}

@@ -1,0 +1,55 @@
+//! Where things are on the page, and the steps that most tests begin with.
+//!
+//! Only `data-testid` attributes are used to find things; their names are all in this file.
+
+use anyhow::Result;
+
+use crate::browser::Browser;
+
+/// The cautions, and the button that accepts them.
+pub const CAUTIONS: &str = "[data-testid=cautions]";
+/// Accepts the cautions.
+pub const ACCEPT: &str = "[data-testid=accept]";
+/// The one line that is always in view, and opens the cautions again.
+pub const REMINDER: &str = "[data-testid=reminder]";
+
+/// An input, by the name of its field: `supply-volts`, `lamp-volts`, `lamp-watts`, `plate-volts`, `plate-watts`.
+pub fn field(name: &str) -> String {
+    format!("[data-testid={name}]")
+}
+
+/// The message beside a field.
+pub fn message(name: &str) -> String {
+    format!("[data-testid=error-{name}]")
+}
+
+/// A number of the answer: `amps`, `bank-volts`, `load-volts`.
+pub fn answer(name: &str) -> String {
+    format!("[data-testid=answer-{name}]")
+}
+
+/// Opens the page and accepts the cautions.
+///
+/// # Errors
+/// When there are none, or they stay.
+pub fn enter(browser: &Browser, url: &str) -> Result<()> {
+    browser.open(url)?;
+    browser.see(CAUTIONS)?;
+    browser.tap(ACCEPT)?;
+    browser.not_see(CAUTIONS)?;
+    browser.see(&answer("amps"))
+}
+
+/// Makes a field visible by opening the part of the circuit that it belongs to; gives its selector.
+///
+/// # Errors
+/// When it does not show.
+pub fn open_field(browser: &Browser, name: &str) -> Result<String> {
+    let css = field(name);
+    if !browser.sees(&css)? {
+        let (part, _) = name.split_once('-').unwrap_or((name, ""));
+        browser.tap(&format!("[data-testid=part-{part}]"))?;
+        browser.see(&css)?;
+    }
+    Ok(css)
+}
