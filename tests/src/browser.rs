@@ -164,6 +164,40 @@ impl Browser {
         Ok(self.wait_for(element.text())??)
     }
 
+    /// The text of the first such element, read past the page's own scripts, which may be forbidden.
+    ///
+    /// # Errors
+    /// When there is none, or it cannot be seen.
+    pub fn words(&self, css: &str) -> Result<String> {
+        let expression = format!("{} && document.querySelector({}).innerText", visible(css)?, json!(css));
+        let answer = self.devtools("Runtime.evaluate", json!({"expression": expression}))?;
+        let text = answer["result"]["value"].as_str();
+        text.map(ToOwned::to_owned).with_context(|| format!("`{css}` is not to be seen: {answer}"))
+    }
+
+    /// Lets the pages opened from now on run no scripts of their own, or run them again.
+    ///
+    /// # Errors
+    /// When the browser is gone.
+    pub fn forbid_scripts(&self, forbidden: bool) -> Result<()> {
+        self.devtools("Emulation.setScriptExecutionDisabled", json!({"value": forbidden}))?;
+        Ok(())
+    }
+
+    /// Whether the whole of the first such element lies within the window as it is scrolled now.
+    ///
+    /// # Errors
+    /// When there is no such element.
+    pub fn is_in_window(&self, css: &str) -> Result<bool> {
+        let css = json!(css);
+        let inside = self.script(&format!(
+            "const r = document.querySelector({css}).getBoundingClientRect(); \
+             return r.width > 0 && r.height > 0 && r.left >= 0 && r.top >= 0 \
+                 && r.right <= window.innerWidth && r.bottom <= window.innerHeight"
+        ))?;
+        Ok(inside == true)
+    }
+
     /// An attribute of the first such element.
     ///
     /// # Errors

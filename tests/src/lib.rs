@@ -9,5 +9,6 @@ pub mod browser;
 pub mod devtools;
 mod driver;
 pub mod folder;
+pub mod numbers;
 pub mod page;
 pub mod surroundings;

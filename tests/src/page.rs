@@ -13,6 +13,9 @@ pub const ACCEPT: &str = "[data-testid=accept]";
 /// The one line that is always in view, and opens the cautions again.
 pub const REMINDER: &str = "[data-testid=reminder]";
 
+/// Closes the editor of a part.
+pub const CLOSE: &str = "[data-testid=close]";
+
 /// An input, by the name of its field: `supply-volts`, `lamp-volts`, `lamp-watts`, `plate-volts`, `plate-watts`.
 pub fn field(name: &str) -> String {
     format!("[data-testid={name}]")
@@ -47,9 +50,31 @@ pub fn enter(browser: &Browser, url: &str) -> Result<()> {
 pub fn open_field(browser: &Browser, name: &str) -> Result<String> {
     let css = field(name);
     if !browser.sees(&css)? {
+        close(browser)?;
         let (part, _) = name.split_once('-').unwrap_or((name, ""));
         browser.tap(&format!("[data-testid=part-{part}]"))?;
         browser.see(&css)?;
     }
     Ok(css)
+}
+
+/// Types into a field, wherever it is.
+///
+/// # Errors
+/// When it does not show or takes no text.
+pub fn fill(browser: &Browser, name: &str, text: &str) -> Result<()> {
+    let css = open_field(browser, name)?;
+    browser.fill(&css, text)
+}
+
+/// Closes an editor that covers the answer, if one is open.
+///
+/// # Errors
+/// When it stays open.
+pub fn close(browser: &Browser) -> Result<()> {
+    if browser.sees(CLOSE)? {
+        browser.tap(CLOSE)?;
+        browser.not_see(CLOSE)?;
+    }
+    Ok(())
 }

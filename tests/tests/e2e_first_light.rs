@@ -1,0 +1,167 @@
+//! The main job, as a person does it: cautions, a lamp, a rating plate, an answer; then the network goes away.
+
+use anyhow::{Context, Result, ensure};
+use lampladder_core::bank::Bank;
+use lampladder_core::expect::{Shown, prospect};
+use lampladder_core::lamp::Lamp;
+use lampladder_core::link;
+use lampladder_core::plate::{Condition, Family, Plate};
+use lampladder_core::setup::Setup;
+use lampladder_core::supply::Supply;
+use lampladder_tests::browser::Browser;
+use lampladder_tests::numbers::ensure_shown;
+use lampladder_tests::page::{self, ACCEPT, CAUTIONS, REMINDER, answer};
+use lampladder_tests::surroundings;
+
+fn setup(lamp_watts: f64, plate_watts: f64) -> Result<Setup> {
+    Ok(Setup {
+        supply: Supply::new(230.0, 50.0, 0.0)?,
+        bank: Bank::single(Lamp::new(230.0, lamp_watts)?),
+        plate: Plate::new(Family::TransformerSupply, 230.0, plate_watts, None)?,
+    })
+}
+
+/// What the core says that healthy equipment shows.
+fn healthy(setup: &Setup) -> Result<Shown> {
+    prospect(setup, Condition::Healthy)?.shown.context("the core finds a steady state")
+}
+
+/// Fails unless the page's main answer is the core's.
+fn ensure_answers(browser: &Browser, setup: &Setup) -> Result<()> {
+    let shown = healthy(setup)?;
+    ensure_shown(&browser.text(&answer("amps"))?, shown.amps.value, "A")?;
+    ensure_shown(&browser.text(&answer("bank-volts"))?, shown.bank_volts.value, "V")?;
+    ensure_shown(&browser.text(&answer("load-volts"))?, shown.load_volts.value, "V")
+}
+
+/// Types the numbers of a set-up with one lamp.
+fn type_in(browser: &Browser, setup: &Setup) -> Result<()> {
+    let lamp = &setup.bank.groups()[0][0];
+    for (name, value) in [
+        ("supply-volts", setup.supply.volts()),
+        ("lamp-volts", lamp.rated_volts()),
+        ("lamp-watts", lamp.rated_watts()),
+        ("plate-volts", setup.plate.volts()),
+        ("plate-watts", setup.plate.watts()),
+    ] {
+        page::fill(browser, name, &value.to_string())?;
+    }
+    page::close(browser)
+}
+
+fn linked(browser: &Browser) -> Result<Setup> {
+    let url = browser.url()?;
+    let (_, fragment) = url.split_once('#').with_context(|| format!("{url} has no fragment"))?;
+    link::decode(fragment).with_context(|| format!("the core cannot read `{fragment}`"))
+}
+
+#[test]
+fn cautions_come_before_everything_and_need_no_program() -> Result<()> {
+    let site = surroundings::site()?;
+    let browser = Browser::start()?;
+    browser.forbid_scripts(true)?;
+    browser.open(&site.url())?;
+    let text = browser.words(CAUTIONS)?.to_lowercase();
+    for word in ["isolat", "shock", "fuse", "capacitor", "unattended", "microwave"] {
+        ensure!(text.contains(word), "the cautions do not speak of `{word}` without the program: {text}");
+    }
+    browser.picture("cautions-without-program")?;
+
+    browser.forbid_scripts(false)?;
+    browser.open(&site.url())?;
+    browser.see(CAUTIONS)?;
+    browser.see(ACCEPT)?;
+    ensure!(!browser.sees(&answer("amps"))?, "an answer shows before the cautions are accepted");
+    browser.picture("cautions")?;
+    browser.tap(ACCEPT)?;
+    browser.not_see(CAUTIONS)?;
+    browser.see(&answer("amps"))?;
+
+    // One tap away, from a line that never leaves.
+    browser.see(REMINDER)?;
+    browser.script("window.scrollTo(0, document.documentElement.scrollHeight)")?;
+    ensure!(browser.is_in_window(REMINDER)?, "the reminder scrolls out of view");
+    browser.tap(REMINDER)?;
+    browser.see(CAUTIONS)?;
+    browser.tap(ACCEPT)?;
+    browser.not_see(CAUTIONS)
+}
+
+#[test]
+fn sixty_watt_lamp_with_a_radio_then_without_a_server() -> Result<()> {
+    let mut site = surroundings::site()?;
+    let browser = Browser::start()?;
+    page::enter(&browser, &site.url())?;
+    // Something else first, or a page that knew only its example would do.
+    let other = setup(100.0, 80.0)?;
+    type_in(&browser, &other)?;
+    ensure_answers(&browser, &other)?;
+    let radio = setup(60.0, 45.0)?;
+    type_in(&browser, &radio)?;
+    ensure_answers(&browser, &radio)?;
+    ensure!(linked(&browser)? == radio, "the address does not hold the set-up");
+    browser.picture("radio")?;
+
+    // A colleague's phone gets the link of another set-up than the page starts with.
+    type_in(&browser, &other)?;
+    let colleague = Browser::start()?;
+    page::enter(&colleague, &browser.url()?)?;
+    ensure_answers(&colleague, &other)?;
+    ensure!(linked(&colleague)? == other, "the link was changed by opening it");
+    ensure!(colleague.value(&page::open_field(&colleague, "lamp-watts")?)?.starts_with("100"));
+    drop(colleague);
+
+    type_in(&browser, &radio)?;
+    browser.until_offline_ready()?;
+    site.stop();
+    browser.reload()?;
+    ensure_answers(&browser, &radio).context("after the server stopped")?;
+    // Kept on the phone: the bare address, without the link, brings the same set-up, and asks for no acceptance.
+    browser.open("about:blank")?;
+    browser.open(&site.url())?;
+    ensure_answers(&browser, &radio).context("at the bare address, without a server")?;
+    type_in(&browser, &other)?;
+    ensure_answers(&browser, &other).context("computed without a server")
+}
+
+#[test]
+fn the_main_answer_needs_no_scrolling_on_a_small_phone() -> Result<()> {
+    let site = surroundings::site()?;
+    let browser = Browser::start()?;
+    page::enter(&browser, &site.url())?;
+    for part in ["amps", "bank-volts", "load-volts", "healthy", "overloaded", "shorted"].map(answer) {
+        ensure!(browser.is_in_window(&part)?, "{part} is not within 360 x 640");
+    }
+    ensure!(browser.is_in_window(REMINDER)?, "the reminder is not within 360 x 640");
+    let wide = browser.script("return document.documentElement.scrollWidth > window.innerWidth")?;
+    ensure!(wide == false, "the page is wider than the phone");
+    Ok(())
+}
+
+#[test]
+fn nothing_is_asked_of_any_other_host() -> Result<()> {
+    let site = surroundings::site()?;
+    let browser = Browser::start()?;
+    page::enter(&browser, &site.url())?;
+    browser.until_offline_ready()?;
+    type_in(&browser, &setup(100.0, 80.0)?)?;
+    browser.reload()?;
+    browser.see(&answer("amps"))?;
+    let requests = browser.requests()?;
+    ensure!(
+        requests.iter().any(|url| url.contains("_bg.wasm")),
+        "the log of requests is blind: {requests:?}"
+    );
+    let own = site.url();
+    let foreign: Vec<_> = requests
+        .iter()
+        .filter(|url| !url.starts_with(&own) && !url.starts_with("data:") && !url.starts_with("blob:"))
+        .collect();
+    ensure!(foreign.is_empty(), "asked elsewhere: {foreign:?}");
+    let outside: Vec<_> =
+        site.asked().into_iter().filter(|path| !path.starts_with(surroundings::PREFIX)).collect();
+    ensure!(outside.is_empty(), "asked above its own path: {outside:?}");
+    let console = browser.console()?;
+    ensure!(console.is_empty(), "the console holds complaints: {console:?}");
+    Ok(())
+}
