@@ -2,9 +2,11 @@
 //!
 //! Only `data-testid` attributes are used to find things; their names are all in this file.
 
+use std::time::Instant;
+
 use anyhow::Result;
 
-use crate::browser::Browser;
+use crate::browser::{Browser, PATIENCE};
 
 /// The cautions, and the button that accepts them.
 pub const CAUTIONS: &str = "[data-testid=cautions]";
@@ -13,6 +15,10 @@ pub const ACCEPT: &str = "[data-testid=accept]";
 /// The one line that is always in view, and opens the cautions again.
 pub const REMINDER: &str = "[data-testid=reminder]";
 
+/// What is said about a link that cannot be read, or about storage that cannot be used.
+pub const NOTICE: &str = "[data-testid=notice]";
+/// The caution that a lamp is over its rated voltage.
+pub const OVER_RATED: &str = "[data-testid=over-rated]";
 /// Closes the editor of a part.
 pub const CLOSE: &str = "[data-testid=close]";
 
@@ -38,9 +44,27 @@ pub fn answer(name: &str) -> String {
 pub fn enter(browser: &Browser, url: &str) -> Result<()> {
     browser.open(url)?;
     browser.see(CAUTIONS)?;
-    browser.tap(ACCEPT)?;
-    browser.not_see(CAUTIONS)?;
-    browser.see(&answer("amps"))
+    accept(browser)
+}
+
+/// Accepts the cautions unless they have been accepted before, and waits for the answer.
+///
+/// # Errors
+/// When no answer comes.
+pub fn accept(browser: &Browser) -> Result<()> {
+    let start = Instant::now();
+    while !browser.sees(&answer("amps"))? {
+        if start.elapsed() > PATIENCE {
+            // This says why.
+            return browser.see(&answer("amps"));
+        }
+        // The cautions stand in the HTML; until the program has started, a tap does nothing, and where they have
+        // been accepted before, the program takes them away, maybe in the middle of the tap.
+        if browser.sees(ACCEPT)? {
+            let _ = browser.tap(ACCEPT);
+        }
+    }
+    browser.not_see(CAUTIONS)
 }
 
 /// Makes a field visible by opening the part of the circuit that it belongs to; gives its selector.

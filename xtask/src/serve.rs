@@ -20,7 +20,8 @@ pub(crate) fn serve(arguments: &[String]) -> Result<()> {
             other => bail!("`serve` knows --open and --port N, not `{other}`"),
         }
     }
-    let folder = page::build()?;
+    // The port first: nobody should wait for a build to hear that it is taken.
+    let folder = place::dist();
     let site = match port {
         Some(port) => {
             Site::start(&folder, "/", port).with_context(|| format!("port {port} cannot be used"))?
@@ -28,6 +29,7 @@ pub(crate) fn serve(arguments: &[String]) -> Result<()> {
         // Nobody asked for the usual port in particular, so another one will do.
         None => Site::start(&folder, "/", USUAL_PORT).or_else(|_| Site::start(&folder, "/", 0))?,
     };
+    page::build()?;
     println!("\nLampladder is at {}  (Ctrl-C ends it)", site.url());
     if open {
         let opener = ["xdg-open", "open", "explorer"].iter().find_map(|name| place::on_path(name));

@@ -1,0 +1,77 @@
+//! Every screen in both themes and at two sizes: nothing for the accessibility checker to find, and pictures to look
+//! at when `LAMPLADDER_SHOTS` names a folder.
+
+use anyhow::{Context, Result, ensure};
+use lampladder_tests::browser::Browser;
+use lampladder_tests::page::{self, ACCEPT, CAUTIONS, REMINDER};
+use lampladder_tests::{accessibility, surroundings};
+
+const SIZES: [(u32, u32); 2] = [(360, 640), (1280, 800)];
+const THEMES: [&str; 2] = ["light", "dark"];
+
+#[test]
+fn every_screen_passes_the_accessibility_checker_in_both_themes() -> Result<()> {
+    let site = surroundings::site()?;
+    let browser = Browser::start()?;
+    browser.open(&site.url())?;
+    browser.see(ACCEPT)?;
+    look(&browser, "cautions")?;
+    page::accept(&browser)?;
+    look(&browser, "main")?;
+    for name in ["supply-volts", "lamp-watts", "plate-watts"] {
+        let css = page::open_field(&browser, name)?;
+        look(&browser, name)?;
+        browser.fill(&css, "nonsense")?;
+        browser.see(&page::message(name))?;
+        look(&browser, &format!("{name}-refused"))?;
+        browser.fill(&css, "100")?;
+        page::close(&browser)?;
+    }
+    browser.tap(REMINDER)?;
+    browser.see(CAUTIONS)?;
+    look(&browser, "cautions-again")
+}
+
+/// Checks and pictures the screen as it stands, in each size and theme.
+fn look(browser: &Browser, screen: &str) -> Result<()> {
+    for (width, height) in SIZES {
+        browser.resize(width, height)?;
+        for theme in THEMES {
+            browser.prefer(theme)?;
+            let name = format!("{screen}-{theme}-{width}");
+            browser.picture(&name)?;
+            accessibility::check(browser, &name)?;
+        }
+    }
+    browser.resize(360, 640)?;
+    let wide = browser.script("return document.documentElement.scrollWidth - window.innerWidth")?;
+    ensure!(wide.as_i64().context("a width")? <= 0, "{screen} is wider than a small phone by {wide}");
+    Ok(())
+}
+
+#[test]
+fn what_can_be_tapped_is_as_big_as_a_thumb_needs() -> Result<()> {
+    let site = surroundings::site()?;
+    let browser = Browser::start()?;
+    page::enter(&browser, &site.url())?;
+    for name in [None, Some("supply-volts"), Some("lamp-watts"), Some("plate-watts")] {
+        if let Some(name) = name {
+            page::open_field(&browser, name)?;
+        }
+        // A control within a label is as big as the label.
+        let small = browser.script(
+            "const size = (e) => (e.closest('label') || e).getBoundingClientRect(); \
+             return [...document.querySelectorAll('button, a[href], input, select, summary, [role=button], [tabindex=\"0\"]')] \
+               .filter((e) => e.checkVisibility({opacityProperty: true, visibilityProperty: true})) \
+               .filter((e) => e.getBoundingClientRect().width > 0) \
+               .filter((e) => size(e).width < 44 || size(e).height < 44) \
+               .map((e) => e.outerHTML.slice(0, 120) + ' ' + size(e).width + ' x ' + size(e).height)",
+        )?;
+        ensure!(
+            small.as_array().context("a list")?.is_empty(),
+            "too small to tap with {name:?} open: {small:#}"
+        );
+        page::close(&browser)?;
+    }
+    Ok(())
+}
