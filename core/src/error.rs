@@ -2,6 +2,9 @@
 
 use core::fmt;
 
+use crate::condition::Condition;
+use crate::detail::Detail;
+
 /// A property that a person or a request can set, named as in the JSON contract.
 #[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
 #[non_exhaustive]
@@ -44,8 +47,16 @@ pub enum Field {
     StopVolts,
     /// The lamps in use.
     Bank,
+    /// Seconds before a converter starts.
+    RestartSeconds,
     /// How many lamps.
     Count,
+    /// Apparent power, volt-amperes.
+    VoltAmps,
+    /// A class default of a family of equipment.
+    Details,
+    /// A state that equipment can be in.
+    Condition,
 }
 
 impl Field {
@@ -71,7 +82,11 @@ impl Field {
             Self::StartVolts => "start_volts",
             Self::StopVolts => "stop_volts",
             Self::Bank => "bank",
+            Self::RestartSeconds => "restart_seconds",
             Self::Count => "count",
+            Self::VoltAmps => "volt_amps",
+            Self::Details => "details",
+            Self::Condition => "condition",
         }
     }
 
@@ -86,7 +101,9 @@ impl Field {
             Self::Lumens => "lm",
             Self::RatedKelvin | Self::Kelvin => "K",
             Self::Farads => "F",
-            Self::PowerFactor | Self::Points | Self::GasShare | Self::Bank | Self::Count => "",
+            Self::VoltAmps => "VA",
+            Self::RestartSeconds => "s",
+            _ => "",
         }
     }
 }
@@ -122,6 +139,32 @@ pub enum InputError {
         /// The limit that the other property sets.
         limit: f64,
     },
+    /// A property that is needed and was not given.
+    Missing {
+        /// The missing property.
+        field: Field,
+    },
+    /// A class default that this family of equipment does not have.
+    Unknown {
+        /// The refused detail.
+        detail: Detail,
+    },
+    /// A class default outside what is allowed.
+    DetailOutOfRange {
+        /// The refused detail.
+        detail: Detail,
+        /// What was given.
+        value: f64,
+        /// Least allowed value.
+        low: f64,
+        /// Greatest allowed value.
+        high: f64,
+    },
+    /// A condition that this family of equipment does not have.
+    Unlikely {
+        /// The refused condition.
+        condition: Condition,
+    },
     /// A reactance or a transformer on direct current.
     NeedsAlternating {
         /// The refused property.
@@ -136,7 +179,10 @@ impl InputError {
             Self::NotFinite { field }
             | Self::OutOfRange { field, .. }
             | Self::Conflict { field, .. }
+            | Self::Missing { field }
             | Self::NeedsAlternating { field } => field,
+            Self::Unknown { .. } | Self::DetailOutOfRange { .. } => Field::Details,
+            Self::Unlikely { .. } => Field::Condition,
         }
     }
 }
@@ -147,10 +193,21 @@ impl fmt::Display for InputError {
         match *self {
             Self::NotFinite { .. } => write!(f, "{name} must be a finite number"),
             Self::OutOfRange { field, value, low, high } => {
-                let unit = field.unit();
-                let gap = if unit.is_empty() { "" } else { " " };
-                write!(f, "{name} must be from {low} to {high}{gap}{unit}, not {value:?}")
+                let gap = if field.unit().is_empty() { "" } else { " " };
+                write!(f, "{name} must be from {low} to {high}{gap}{}, not {value:?}", field.unit())
             }
+            Self::DetailOutOfRange { detail, value, low, high } => {
+                let gap = if detail.unit().is_empty() { "" } else { " " };
+                write!(
+                    f,
+                    "{} must be from {low} to {high}{gap}{}, not {value:?}",
+                    detail.name(),
+                    detail.unit()
+                )
+            }
+            Self::Missing { .. } => write!(f, "{name} is missing"),
+            Self::Unknown { detail } => write!(f, "this family has no {}", detail.name()),
+            Self::Unlikely { condition } => write!(f, "this family is never {}", condition.name()),
             Self::Conflict { field, value, with, limit } => write!(
                 f,
                 "{name} of {value:?} {} contradicts {}, which allows at most {limit:?}",

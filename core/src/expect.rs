@@ -3,9 +3,9 @@
 use alloc::vec::Vec;
 
 use crate::band::{Band, COVERAGE, Spread};
+use crate::condition::Condition;
 use crate::glow::Glow;
 use crate::lamp::{Lamp, LampState};
-use crate::plate::Condition;
 use crate::setup::Setup;
 use crate::steady::{self, Equilibrium, Outcome, SteadyError};
 

@@ -9,7 +9,7 @@ use core::f64::consts::SQRT_2;
 
 use crate::bank::Bank;
 use crate::lamp::Lamp;
-use crate::load::{Draw, Load, Rectifier};
+use crate::load::{Load, Rectifier, Thresholds};
 use crate::supply::Supply;
 use crate::tungsten::AMBIENT_KELVIN;
 use crate::wire::Wire;
@@ -24,11 +24,17 @@ const SAME: f64 = 0.01;
 
 /// Time from one start to the next, seconds; `None` where fewer than two starts fit into 30 s.
 pub(crate) fn period_seconds(supply: &Supply, bank: &Bank, load: &Load) -> Option<f64> {
-    let Load::Rectifier(rectifier) = load else { return None };
-    let Draw::Watts { start_volts, stop_volts, .. } = rectifier.spec().draw else { return None };
-    let model = Averaged::new(supply, bank, rectifier);
+    let Thresholds { start_volts, stop_volts, restart_seconds } = load.thresholds()?;
+    let rectifier = match load {
+        Load::Rectifier(rectifier) => *rectifier,
+        Load::Degauss(degauss) => *degauss.warm(),
+        Load::Corrected(corrected) => corrected.as_rectifier().ok()?,
+        _ => return None,
+    };
+    let model = Averaged::new(supply, bank, &rectifier);
     let mut state = model.cold();
     let mut running = false;
+    let mut waited = 0.0;
     let (mut last_start, mut last_period) = (None, None);
     let steps = LONGEST_SECONDS / STEP_SECONDS;
     let mut seconds = 0.0;
@@ -38,8 +44,11 @@ pub(crate) fn period_seconds(supply: &Supply, bank: &Bank, load: &Load) -> Optio
         let dc_volts = state[0];
         if running && dc_volts < stop_volts {
             running = false;
+        } else if !running && dc_volts >= start_volts && waited < restart_seconds {
+            waited += STEP_SECONDS;
         } else if !running && dc_volts >= start_volts {
             running = true;
+            waited = 0.0;
             let period = last_start.map(|start: f64| seconds - start);
             if let (Some(now), Some(before)) = (period, last_period)
                 && libm::fabs(now / before - 1.0) < SAME

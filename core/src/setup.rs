@@ -25,7 +25,7 @@ impl Setup {
         Ok(Self {
             supply: Supply::new(230.0, 50.0, 0.0)?,
             bank: Bank::single(crate::lamp::Lamp::new(230.0, 60.0)?),
-            plate: Plate::new(crate::plate::Family::TransformerSupply, 230.0, 45.0, None)?,
+            plate: Plate::new(crate::family::Family::TransformerSupply, 230.0, 45.0, None)?,
         })
     }
 }

@@ -9,12 +9,14 @@ use alloc::vec::Vec;
 use core::fmt;
 
 use crate::bank::{Bank, BankPoint};
+use crate::complex::Complex;
 use crate::error::{Field, InputError};
 use crate::filament::Filament;
 use crate::hunt;
 use crate::lamp::LampState;
-use crate::load::{Draw, Feed, Load};
-use crate::roots::{self, Root, Sample, Tolerance};
+use crate::load::{Feed, InductionMotor, Load, Mode};
+use crate::roots::{self, Root, Tolerance};
+use crate::scan;
 use crate::supply::Supply;
 use crate::tungsten::{AMBIENT_KELVIN, HIGHEST_KELVIN};
 
@@ -23,6 +25,8 @@ use crate::tungsten::{AMBIENT_KELVIN, HIGHEST_KELVIN};
 pub struct Equilibrium {
     /// Whether a small disturbance dies away.
     pub stable: bool,
+    /// In which of several ways the load works here.
+    pub mode: Mode,
     /// Current in the loop, amperes.
     pub amps: f64,
     /// Volts across the bank.
@@ -68,9 +72,11 @@ pub struct Steady {
 }
 
 impl Steady {
-    /// The stable point that a circuit reaches from its lowest current, if it settles.
+    /// The stable point that equipment which was off comes to, if it settles: the mode in which it begins where that
+    /// lasts, else the lowest current.
     pub fn settled(&self) -> Option<&Equilibrium> {
-        self.equilibria.iter().find(|point| point.stable)
+        let mut stable = self.equilibria.iter().filter(|point| point.stable);
+        stable.clone().find(|point| point.mode.is_first()).or_else(|| stable.next())
     }
 }
 
@@ -116,6 +122,12 @@ impl core::error::Error for SteadyError {}
 /// Samples over the range of a load that may have several points.
 const SAMPLES: u32 = 40;
 
+/// Relative step of a numerical slope.
+const NUDGE: f64 = 1e-6;
+
+/// Least slip of a motor that is looked at.
+const LEAST_SLIP: f64 = 1e-6;
+
 /// Finds every steady point.
 ///
 /// Accuracy: the current at each point agrees with what the load wants to 1e-11. A bank of one lamp with a load
@@ -125,27 +137,17 @@ const SAMPLES: u32 = 40;
 /// A load that has no meaning on this supply; a lamp that would burn out.
 pub fn solve(supply: &Supply, bank: &Bank, load: &Load) -> Result<Steady, SteadyError> {
     load.check(supply)?;
-    let circuit = Circuit { supply, bank, load };
-    if matches!(load, Load::Open) {
-        let point = circuit.open_point();
-        return Ok(Steady { outcome: Outcome::Settles, equilibria: alloc::vec![point] });
+    let mut equilibria = Vec::new();
+    for (mode, load) in load.modes() {
+        let circuit = Circuit { supply, bank, load: &load, mode };
+        equilibria.extend(circuit.points()?);
     }
-    if let Load::Rectifier(rectifier) = load
-        && let Draw::Watts { start_volts, .. } = rectifier.spec().draw
-        && rectifier.open_volts(supply.volts(), supply.hertz()) < start_volts
-    {
-        let mut point = circuit.open_point();
-        point.load_dc_volts = Some(rectifier.open_volts(supply.volts(), supply.hertz()));
-        return Ok(Steady { outcome: Outcome::DoesNotStart, equilibria: alloc::vec![point] });
-    }
-    let roots = if load.may_have_several() { circuit.all_roots()? } else { alloc::vec![circuit.one_root()?] };
-    let mut equilibria = Vec::with_capacity(roots.len());
-    for root in roots {
-        equilibria.push(circuit.point_at(root)?);
-    }
-    equilibria.retain(|point| circuit.keeps_running(point));
-    let outcome = if equilibria.iter().any(|point| point.stable) {
+    equilibria.retain(|point| load.lasts(point.mode, point.amps));
+    equilibria.sort_by(|a, b| a.amps.total_cmp(&b.amps));
+    let outcome = if equilibria.iter().any(|point| point.stable && point.mode != Mode::Off) {
         Outcome::Settles
+    } else if equilibria.iter().any(|point| point.mode == Mode::Off) {
+        Outcome::DoesNotStart
     } else {
         Outcome::Hunts {
             period_seconds: hunt::period_seconds(supply, bank, load).unwrap_or(hunt::LONGEST_SECONDS),
@@ -158,9 +160,49 @@ struct Circuit<'a> {
     supply: &'a Supply,
     bank: &'a Bank,
     load: &'a Load,
+    mode: Mode,
 }
 
 impl Circuit<'_> {
+    /// Every steady point of this mode.
+    fn points(&self) -> Result<Vec<Equilibrium>, SteadyError> {
+        if matches!(self.load, Load::Open) {
+            return Ok(alloc::vec![self.open_point()]);
+        }
+        if let Some(thresholds) = self.load.thresholds()
+            && self.open_dc_volts() < thresholds.start_volts
+        {
+            let off = Equilibrium {
+                mode: Mode::Off,
+                load_dc_volts: Some(self.open_dc_volts()),
+                ..self.open_point()
+            };
+            return Ok(alloc::vec![off]);
+        }
+        if let Load::InductionMotor(motor) = self.load {
+            return self.turning_points(motor);
+        }
+        if !self.load.may_have_several() {
+            return Ok(alloc::vec![self.point_at(self.one_root()?)?]);
+        }
+        let mut points = Vec::new();
+        for scan::Crossing { x, residual, evaluations, .. } in self.all_roots()? {
+            points.push(self.point_at(Root { x, residual, evaluations })?);
+        }
+        points.retain(|point| self.keeps_running(point));
+        Ok(points)
+    }
+
+    /// DC volts to which an idle reservoir charges.
+    fn open_dc_volts(&self) -> f64 {
+        let (volts, hertz) = (self.supply.volts(), self.supply.hertz());
+        match self.load {
+            Load::Rectifier(rectifier) => rectifier.open_volts(volts, hertz),
+            _ if hertz == 0.0 => volts,
+            _ => core::f64::consts::SQRT_2 * volts,
+        }
+    }
+
     fn feed(&self, bank: &BankPoint) -> Feed {
         Feed {
             volts: self.supply.volts(),
@@ -175,54 +217,55 @@ impl Circuit<'_> {
     }
 
     fn one_root(&self) -> Result<Root, SteadyError> {
-        let guess = self.bank.guess_ln_rise(0.5 * self.supply.volts());
+        self.one_root_from(self.bank.guess_ln_rise(0.5 * self.supply.volts()))
+    }
+
+    fn one_root_from(&self, guess: f64) -> Result<Root, SteadyError> {
         roots::decreasing_from(|x| self.excess(x), Filament::ln_rise_span(), guess, Tolerance::FINE)
             .ok_or_else(|| self.melts(Filament::ln_rise_span().1))
     }
 
     /// Every root from next to no current up to what a dead short would take.
-    fn all_roots(&self) -> Result<Vec<Root>, SteadyError> {
+    fn all_roots(&self) -> Result<Vec<scan::Crossing>, SteadyError> {
         let hottest = Circuit { load: &Load::Short, ..*self }.one_root()?;
         // Twenty e-folds of temperature rise are nine decades of power: below, no constant power lives.
-        let low = hottest.x - 20.0;
-        let width = 20.0 / f64::from(SAMPLES);
-        let mut samples: Vec<Sample> = (0..=SAMPLES)
-            .map(|step| {
-                let x = low + width * f64::from(step);
-                (x, self.excess(x))
-            })
-            .collect();
-        let mut evaluations = hottest.evaluations + SAMPLES + 1;
-        // Two crossings can hide between samples: follow every dip that stays above zero, and every hump below.
-        let mut index = 1;
-        while index + 1 < samples.len() {
-            let (left, here, right) = (samples[index - 1], samples[index], samples[index + 1]);
-            let sign = here.1.signum();
-            let dips = here.1 * sign <= left.1 * sign && here.1 * sign <= right.1 * sign;
-            if dips && left.1 * sign > 0.0 && right.1 * sign > 0.0 {
-                let (lowest, cost) =
-                    lowest(|x| sign * self.excess(x), left.0, (here.0, sign * here.1), right.0);
-                evaluations += cost;
-                let found = (lowest.0, sign * lowest.1);
-                if found.1 * sign < 0.0 {
-                    let after = usize::from(found.0 > here.0);
-                    samples.insert(index + after, found);
-                    index += 1;
-                }
+        Ok(scan::all(|x| self.excess(x), (hottest.x - 20.0, hottest.x), SAMPLES))
+    }
+
+    /// Every steady point of a turning motor. At one bank temperature two slips can take the same current, so this
+    /// search runs in the slip, with the bank settled for each.
+    fn turning_points(&self, motor: &InductionMotor) -> Result<Vec<Equilibrium>, SteadyError> {
+        let mut guess = self.bank.guess_ln_rise(0.5 * self.supply.volts());
+        let mut settle = |slip: f64| {
+            let circuit = Circuit { load: &motor.frozen(slip), ..*self };
+            let root = circuit.one_root_from(guess);
+            if let Ok(root) = root {
+                guess = root.x;
             }
-            index += 1;
+            root
+        };
+        let slowing = |ln_slip: f64| {
+            let slip = libm::exp(ln_slip);
+            settle(slip).map_or(f64::NAN, |root| motor.slowing(slip, self.bank.at_ln_rise(root.x).amps))
+        };
+        let roots = scan::all(slowing, (libm::log(LEAST_SLIP), 0.0), SAMPLES);
+        let mut points = Vec::new();
+        for root in roots {
+            let slip = libm::exp(root.x);
+            let load = motor.frozen(slip);
+            let circuit = Circuit { load: &load, ..*self };
+            let settled = circuit.one_root()?;
+            let point = circuit.point_at(Root { evaluations: root.evaluations, ..settled })?;
+            // At a frozen bank a faster shaft must find less torque to spare, and so it must with a settled one.
+            let ohms = point.bank_volts / point.amps + self.supply.ohms();
+            let frozen = |slip: f64| {
+                let total = motor.impedance(slip) + Complex::new(ohms, 0.0);
+                motor.slowing(slip, self.supply.volts() / total.magnitude())
+            };
+            let fast = frozen(slip * (1.0 + NUDGE)) < frozen(slip * (1.0 - NUDGE));
+            points.push(Equilibrium { stable: fast && root.falling, ..point });
         }
-        let mut found = Vec::new();
-        for pair in samples.windows(2) {
-            if let Some(root) = crossing(|x| self.excess(x), pair[0], pair[1]) {
-                evaluations += root.evaluations - 2;
-                found.push(root);
-            }
-        }
-        for root in &mut found {
-            root.evaluations = evaluations;
-        }
-        Ok(found)
+        Ok(points)
     }
 
     /// Which lamp ends the search at the top of the span.
@@ -241,6 +284,7 @@ impl Circuit<'_> {
         let terminal = self.load.terminal(&feed);
         let apparent = terminal.volts * bank.amps;
         Ok(Equilibrium {
+            mode: self.mode,
             stable: !self.load.may_have_several() || self.is_stable(root.x, &feed),
             amps: bank.amps,
             bank_volts: bank.volts,
@@ -257,7 +301,6 @@ impl Circuit<'_> {
     /// Stable where the fast state returns (at a frozen bank, more current lowers what the load wants) and the
     /// slow one does (a hotter bank leaves the load wanting less than the bank needs to stay hot).
     fn is_stable(&self, ln_rise: f64, feed: &Feed) -> bool {
-        const NUDGE: f64 = 1e-6;
         let here = self.load.excess(feed);
         let more = Feed { amps: feed.amps * (1.0 + NUDGE), ..*feed };
         let fast = self.load.excess(&more) < here;
@@ -267,21 +310,16 @@ impl Circuit<'_> {
 
     /// A point below the voltage at which a converter stops is none.
     fn keeps_running(&self, point: &Equilibrium) -> bool {
-        match self.load {
-            Load::Rectifier(rectifier) => match rectifier.spec().draw {
-                Draw::Watts { stop_volts, .. } => {
-                    point.load_dc_volts.is_some_and(|volts| volts >= stop_volts)
-                }
-                _ => true,
-            },
-            _ => true,
-        }
+        let crest = if self.supply.is_direct() { 1.0 } else { core::f64::consts::SQRT_2 };
+        let dc_volts = point.load_dc_volts.unwrap_or(crest * point.load_volts);
+        self.load.thresholds().is_none_or(|thresholds| dc_volts >= thresholds.stop_volts)
     }
 
     fn open_point(&self) -> Equilibrium {
         let cold = LampState { volts: 0.0, amps: 0.0, watts: 0.0, kelvin: AMBIENT_KELVIN };
         Equilibrium {
             stable: true,
+            mode: self.mode,
             amps: 0.0,
             bank_volts: 0.0,
             load_volts: self.supply.volts(),
@@ -301,41 +339,6 @@ fn melting(states: &[Vec<LampState>]) -> Option<SteadyError> {
         let lamp = lamps.iter().position(|state| state.kelvin > HIGHEST_KELVIN - 1e-6)?;
         Some(SteadyError::FilamentMelts { group, lamp })
     })
-}
-
-fn crossing(f: impl FnMut(f64) -> f64, start: Sample, end: Sample) -> Option<Root> {
-    if start.1 == 0.0 {
-        return Some(Root { x: start.0, residual: 0.0, evaluations: 2 });
-    }
-    // An end that is exactly zero belongs to the next interval.
-    if end.1 == 0.0 { None } else { roots::between(f, start, end, Tolerance::FINE) }
-}
-
-/// The lowest sample that golden-section search finds in a valley, stopping as soon as it is below zero, and how
-/// many evaluations it took.
-fn lowest(mut f: impl FnMut(f64) -> f64, mut left: f64, mut here: Sample, mut right: f64) -> (Sample, u32) {
-    /// Part of the wider side to step into: 2 minus the golden ratio.
-    const GOLDEN: f64 = 0.381_966_011_250_105_1;
-    let mut evaluations = 0;
-    while here.1 >= 0.0 && right - left > 1e-7 && evaluations < 60 {
-        let to_right = right - here.0 > here.0 - left;
-        let x = here.0 + if to_right { GOLDEN * (right - here.0) } else { -GOLDEN * (here.0 - left) };
-        let probe = (x, f(x));
-        evaluations += 1;
-        if probe.1 < here.1 {
-            if to_right {
-                left = here.0;
-            } else {
-                right = here.0;
-            }
-            here = probe;
-        } else if to_right {
-            right = x;
-        } else {
-            left = x;
-        }
-    }
-    (here, evaluations)
 }
 
 /// The first property of a request that [`solve`] would refuse, for callers that check before they show.

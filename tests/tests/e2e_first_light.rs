@@ -2,10 +2,12 @@
 
 use anyhow::{Context, Result, ensure};
 use lampladder_core::bank::Bank;
+use lampladder_core::condition::Condition;
 use lampladder_core::expect::{Shown, prospect};
+use lampladder_core::family::Family;
 use lampladder_core::lamp::Lamp;
 use lampladder_core::link;
-use lampladder_core::plate::{Condition, Family, Plate};
+use lampladder_core::plate::Plate;
 use lampladder_core::setup::Setup;
 use lampladder_core::supply::Supply;
 use lampladder_tests::browser::Browser;

@@ -1,10 +1,12 @@
 //! The parts that requests share: supply, lamp, bank, load.
 
 use lampladder_core::bank::Bank;
+use lampladder_core::condition::Condition;
 use lampladder_core::error::Field;
+use lampladder_core::family::Family;
 use lampladder_core::lamp::{Fill, Lamp, LampSpec, Point};
 use lampladder_core::load::{Draw, Impedance, Load, Rectifier, RectifierSpec};
-use lampladder_core::plate::{Condition, Family, Plate};
+use lampladder_core::plate::{Plate, PlateSpec};
 use lampladder_core::supply::Supply;
 
 use crate::fields::{Fields, Node, Refusal};
@@ -136,6 +138,7 @@ fn rectifier(fields: &mut Fields<'_>) -> Result<Rectifier, Refusal> {
         series_ohms: fields.number("series_ohms")?,
         diode_volts: fields.number("diode_volts")?,
         draw: read_draw(&draw)?,
+        shunt_ohms: None,
     };
     Rectifier::new(spec).map_err(|error| match error.field() {
         Field::Farads | Field::SeriesOhms | Field::DiodeVolts => Refusal::inside(fields.path(), &error),
@@ -153,6 +156,7 @@ fn read_draw(node: &Node<'_>) -> Result<Draw, Refusal> {
                 watts,
                 start_volts: fields.number("start_volts")?,
                 stop_volts: fields.number("stop_volts")?,
+                restart_seconds: fields.maybe_number("restart_seconds")?.unwrap_or(0.0),
             },
             _ => return Err(node.refuse("must have exactly one of ohms, amps, watts")),
         };
@@ -167,9 +171,17 @@ fn plate(fields: &mut Fields<'_>) -> Result<Load, Refusal> {
         None => Condition::Healthy,
     };
     let family = one_of(&family, &Family::ALL, Family::name)?;
-    let (volts, watts) = (fields.number("volts")?, fields.number("watts")?);
-    let power_factor = fields.maybe_number("power_factor")?;
-    Plate::new(family, volts, watts, power_factor)
+    let mut spec = PlateSpec::new(family, fields.number("volts")?);
+    spec.watts = fields.maybe_number("watts")?;
+    spec.amps = fields.maybe_number("amps")?;
+    spec.volt_amps = fields.maybe_number("volt_amps")?;
+    spec.power_factor = fields.maybe_number("power_factor")?;
+    for default in family.details() {
+        if let Some(value) = fields.maybe_number(default.detail.name())? {
+            spec.details.push((default.detail, value));
+        }
+    }
+    Plate::from_spec(spec)
         .and_then(|plate| plate.load(condition, 1.0))
         .map_err(|error| Refusal::inside(fields.path(), &error))
 }

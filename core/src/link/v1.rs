@@ -8,8 +8,10 @@ use serde::{Deserialize, Serialize};
 use super::LinkError;
 use super::decimal::Decimal;
 use crate::bank::Bank;
+use crate::detail::Detail;
+use crate::family::Family;
 use crate::lamp::{Fill, Lamp, LampSpec, Point};
-use crate::plate::{Family, Plate};
+use crate::plate::{Plate, PlateSpec};
 use crate::setup::Setup;
 use crate::supply::Supply;
 
@@ -17,9 +19,18 @@ use crate::supply::Supply;
 struct Record {
     supply: [Decimal; 3],
     bank: Vec<Vec<LampRecord>>,
+    plate: PlateRecord,
+}
+
+#[derive(Serialize, Deserialize)]
+struct PlateRecord {
     family: u8,
-    plate: [Decimal; 2],
+    volts: Decimal,
+    watts: Option<Decimal>,
+    amps: Option<Decimal>,
+    volt_amps: Option<Decimal>,
     power_factor: Option<Decimal>,
+    details: Vec<(u8, Decimal)>,
 }
 
 #[derive(Serialize, Deserialize)]
@@ -44,7 +55,42 @@ struct Extras {
 const FILLS: [(Fill, u8); 3] = [(Fill::Vacuum, 1), (Fill::Gas, 2), (Fill::Halogen, 3)];
 
 /// Family and its code for ever. New families take new numbers.
-const FAMILIES: [(Family, u8); 3] = [(Family::Heater, 1), (Family::TransformerSupply, 2), (Family::Plain, 3)];
+const FAMILIES: [(Family, u8); 12] = [
+    (Family::Heater, 1),
+    (Family::TransformerSupply, 2),
+    (Family::Plain, 3),
+    (Family::ValveTransformer, 4),
+    (Family::ValveSeries, 5),
+    (Family::SwitchMode, 6),
+    (Family::SwitchModeCorrected, 7),
+    (Family::CrtSet, 8),
+    (Family::UniversalMotor, 9),
+    (Family::InductionMotor, 10),
+    (Family::Lamp, 11),
+    (Family::Measured, 12),
+];
+
+/// Detail and its code for ever. New details take new numbers.
+const DETAILS: [(Detail, u8); 18] = [
+    (Detail::MagnetisingShare, 1),
+    (Detail::CoreShare, 2),
+    (Detail::WindingShare, 3),
+    (Detail::ReservoirSeconds, 4),
+    (Detail::HeaterShare, 5),
+    (Detail::NoLoadShare, 6),
+    (Detail::StallMultiple, 7),
+    (Detail::IdleShare, 8),
+    (Detail::StartVolts, 9),
+    (Detail::StopVolts, 10),
+    (Detail::MicrofaradsPerWatt, 11),
+    (Detail::SeriesOhms, 12),
+    (Detail::DegaussColdOhms, 13),
+    (Detail::DegaussWarmAmps, 14),
+    (Detail::DegaussTripWatts, 15),
+    (Detail::BreakawayShare, 16),
+    (Detail::MeasuredOhms, 17),
+    (Detail::RestartSeconds, 18),
+];
 
 fn code_of<T: PartialEq>(codes: &[(T, u8)], wanted: &T) -> u8 {
     codes.iter().find(|(known, _)| known == wanted).map_or(0, |&(_, code)| code)
@@ -80,12 +126,26 @@ pub(super) fn encode(setup: &Setup) -> Vec<u8> {
     let record = Record {
         supply: [supply.volts(), supply.hertz(), supply.ohms()].map(Into::into),
         bank: bank.groups().iter().map(|group| group.iter().map(lamp).collect()).collect(),
-        family: code_of(&FAMILIES, &plate.family()),
-        plate: [plate.volts(), plate.watts()].map(Into::into),
-        power_factor: plate.power_factor().map(Into::into),
+        plate: plate_record(plate.spec()),
     };
     // Writing into a growing vector cannot fail; an empty record would be refused by its check byte.
     postcard::to_allocvec(&record).unwrap_or_default()
+}
+
+fn plate_record(spec: &PlateSpec) -> PlateRecord {
+    PlateRecord {
+        family: code_of(&FAMILIES, &spec.family),
+        volts: spec.volts.into(),
+        watts: spec.watts.map(Into::into),
+        amps: spec.amps.map(Into::into),
+        volt_amps: spec.volt_amps.map(Into::into),
+        power_factor: spec.power_factor.map(Into::into),
+        details: spec
+            .details
+            .iter()
+            .map(|&(detail, value)| (code_of(&DETAILS, &detail), value.into()))
+            .collect(),
+    }
 }
 
 pub(super) fn decode(bytes: &[u8]) -> Result<Setup, LinkError> {
@@ -124,9 +184,16 @@ pub(super) fn decode(bytes: &[u8]) -> Result<Setup, LinkError> {
         groups.push(group.into_iter().map(lamp).collect::<Result<Vec<_>, _>>()?);
     }
     let bank = Bank::new(groups).map_err(LinkError::Refused)?;
-    let family = known(&FAMILIES, record.family).ok_or(LinkError::Newer)?;
-    let [plate_volts, watts] = record.plate;
-    let plate = Plate::new(family, number(plate_volts)?, number(watts)?, optional(record.power_factor)?)
-        .map_err(LinkError::Refused)?;
+    let plate = record.plate;
+    let family = known(&FAMILIES, plate.family).ok_or(LinkError::Newer)?;
+    let mut spec = PlateSpec::new(family, number(plate.volts)?);
+    spec.watts = optional(plate.watts)?;
+    spec.amps = optional(plate.amps)?;
+    spec.volt_amps = optional(plate.volt_amps)?;
+    spec.power_factor = optional(plate.power_factor)?;
+    for (code, value) in plate.details {
+        spec.details.push((known(&DETAILS, code).ok_or(LinkError::Newer)?, number(value)?));
+    }
+    let plate = Plate::from_spec(spec).map_err(LinkError::Refused)?;
     Ok(Setup { supply, bank, plate })
 }

@@ -1,10 +1,11 @@
 //! A bridge rectifier and reservoir straight on the mains, and what draws from the reservoir.
 
-use core::f64::consts::SQRT_2;
+use core::f64::consts::{FRAC_PI_2, SQRT_2};
 
 use super::conduction::Pulse;
 use super::{FAR, Feed, Terminal};
 use crate::error::{Field, InputError, within};
+use crate::roots::{self, Tolerance};
 
 /// What draws from the reservoir.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -22,6 +23,8 @@ pub enum Draw {
         start_volts: f64,
         /// DC volts below which it stops.
         stop_volts: f64,
+        /// Seconds that it waits before it starts, again or at first (0 to 60).
+        restart_seconds: f64,
     },
 }
 
@@ -36,6 +39,8 @@ pub struct RectifierSpec {
     pub diode_volts: f64,
     /// What draws from the reservoir.
     pub draw: Draw,
+    /// Resistance across the mains side, ohms (1 to 1e12), if any.
+    pub shunt_ohms: Option<f64>,
 }
 
 /// A full-wave rectifier with a reservoir large enough that its ripple is small, which a series lamp makes true.
@@ -56,22 +61,16 @@ impl Rectifier {
         within(Field::Farads, spec.farads, 1e-9, 1.0)?;
         within(Field::SeriesOhms, spec.series_ohms, 0.0, 1e6)?;
         within(Field::DiodeVolts, spec.diode_volts, 0.0, 10.0)?;
+        if let Some(ohms) = spec.shunt_ohms {
+            within(Field::Ohms, ohms, 1.0, 1e12)?;
+        }
         match spec.draw {
             Draw::Ohms(ohms) => within(Field::Ohms, ohms, 1e-3, 1e9)?,
             Draw::Amps(amps) => within(Field::Amps, amps, 0.0, 1e3)?,
-            Draw::Watts { watts, start_volts, stop_volts } => {
-                within(Field::Watts, watts, 1e-3, 1e6)?;
-                within(Field::StartVolts, start_volts, 1.0, 1000.0)?;
-                within(Field::StopVolts, stop_volts, 0.0, 1000.0)?;
-                if stop_volts > start_volts {
-                    return Err(InputError::Conflict {
-                        field: Field::StopVolts,
-                        value: stop_volts,
-                        with: Field::StartVolts,
-                        limit: start_volts,
-                    });
-                }
-                watts
+            Draw::Watts { watts, start_volts, stop_volts, restart_seconds } => {
+                within(Field::RestartSeconds, restart_seconds, 0.0, 60.0)?;
+                check_thresholds(start_volts, stop_volts)?;
+                within(Field::Watts, watts, 1e-3, 1e6)?
             }
         };
         Ok(Self { spec })
@@ -97,16 +96,24 @@ impl Rectifier {
 
     /// The reservoir's volts and the mean current into it, for the current that the bank stands at; `None` where
     /// that is more than even an empty reservoir would take.
-    pub(crate) fn reservoir(&self, feed: &Feed) -> Option<(f64, f64)> {
-        let ohms = feed.ohms + self.spec.series_ohms;
-        let (dc_volts, amps) = if feed.hertz == 0.0 {
-            (feed.volts - feed.amps * ohms - self.spec.diode_volts, feed.amps)
+    pub(crate) fn reservoir(&self, feed: &Feed) -> Option<Reservoir> {
+        let share = self.spec.shunt_ohms.map_or(1.0, |shunt| shunt / (shunt + feed.ohms));
+        let ohms = feed.ohms * share + self.spec.series_ohms;
+        let (dc_volts, mean_amps, rms_amps) = if feed.hertz == 0.0 {
+            let beside =
+                self.spec.shunt_ohms.map_or(0.0, |shunt| (feed.volts - feed.amps * feed.ohms) / shunt);
+            let amps = feed.amps - beside;
+            (feed.volts * share - amps * ohms - self.spec.diode_volts, amps, amps)
         } else {
-            let crest = SQRT_2 * feed.volts;
-            let pulse = Pulse::of_rms(feed.amps * ohms / crest)?;
-            (crest * pulse.share() - self.spec.diode_volts, crest / ohms * pulse.mean())
+            let crest = SQRT_2 * feed.volts * share;
+            let pulse = match self.spec.shunt_ohms {
+                None => Pulse::of_rms(feed.amps * ohms / crest)?,
+                Some(shunt) => beside_shunt(feed, shunt, crest / ohms, share)?,
+            };
+            let unit = crest / ohms;
+            (crest * pulse.share() - self.spec.diode_volts, unit * pulse.mean(), unit * pulse.rms())
         };
-        (dc_volts > 0.0).then_some((dc_volts, amps))
+        (dc_volts > 0.0 && mean_amps > 0.0).then_some(Reservoir { dc_volts, mean_amps, rms_amps })
     }
 
     /// DC volts that an idle reservoir charges to.
@@ -117,9 +124,9 @@ impl Rectifier {
 
     pub(super) fn excess(&self, feed: &Feed) -> f64 {
         match self.reservoir(feed) {
-            Some((dc_volts, amps)) => {
+            Some(Reservoir { dc_volts, mean_amps, .. }) => {
                 let drawn = self.drawn_amps(dc_volts, self.open_volts(feed.volts, feed.hertz));
-                libm::log(drawn / amps).clamp(-FAR, FAR)
+                libm::log(drawn / mean_amps).clamp(-FAR, FAR)
             }
             // A constant-power draw wants ever more from a falling reservoir.
             None if self.is_constant_power() => FAR,
@@ -128,8 +135,55 @@ impl Rectifier {
     }
 
     pub(super) fn terminal(&self, feed: &Feed) -> Terminal {
-        let (dc_volts, amps) = self.reservoir(feed).unwrap_or((0.0, 0.0));
-        let watts = amps * (dc_volts + self.spec.diode_volts) + feed.amps * feed.amps * self.spec.series_ohms;
-        Terminal::from_power(feed, watts, Some(dc_volts))
+        let Some(Reservoir { dc_volts, mean_amps, rms_amps }) = self.reservoir(feed) else {
+            return Terminal::from_power(feed, 0.0, Some(0.0));
+        };
+        let rectified =
+            mean_amps * (dc_volts + self.spec.diode_volts) + rms_amps * rms_amps * self.spec.series_ohms;
+        let Some(shunt) = self.spec.shunt_ohms else {
+            return Terminal::from_power(feed, rectified, Some(dc_volts));
+        };
+        // P = rectified + V^2/shunt and V^2 = Vs^2 - (RI)^2 - 2RP, solved for P.
+        let drop = feed.ohms * feed.amps;
+        let square = (feed.volts * feed.volts - drop * drop - 2.0 * feed.ohms * rectified)
+            / (1.0 + 2.0 * feed.ohms / shunt);
+        Terminal::from_power(feed, rectified + square.max(0.0) / shunt, Some(dc_volts))
     }
+}
+
+/// What reaches the reservoir.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub(crate) struct Reservoir {
+    pub(crate) dc_volts: f64,
+    pub(crate) mean_amps: f64,
+    pub(crate) rms_amps: f64,
+}
+
+/// The pulse that, together with a sinusoid into a shunt, makes the RMS current of the feed.
+fn beside_shunt(feed: &Feed, shunt: f64, unit: f64, share: f64) -> Option<Pulse> {
+    let idle = SQRT_2 * feed.volts / (feed.ohms + shunt);
+    let gap = |theta: f64| {
+        let pulse = Pulse { theta };
+        let rms = share * unit * pulse.rms();
+        let square = 0.5 * idle * idle + share * idle * unit * pulse.fundamental() + rms * rms;
+        libm::sqrt(square) - feed.amps
+    };
+    let tolerance = Tolerance { x: 1e-14, residual: 1e-14 * feed.amps };
+    roots::between(gap, (0.0, gap(0.0)), (FRAC_PI_2, gap(FRAC_PI_2)), tolerance)
+        .map(|root| Pulse { theta: root.x })
+}
+
+/// A converter starts at 1 to 1000 DC volts and stops at no more.
+pub(super) fn check_thresholds(start_volts: f64, stop_volts: f64) -> Result<(), InputError> {
+    within(Field::StartVolts, start_volts, 1.0, 1000.0)?;
+    within(Field::StopVolts, stop_volts, 0.0, 1000.0)?;
+    if stop_volts > start_volts {
+        return Err(InputError::Conflict {
+            field: Field::StopVolts,
+            value: stop_volts,
+            with: Field::StartVolts,
+            limit: start_volts,
+        });
+    }
+    Ok(())
 }
