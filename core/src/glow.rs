@@ -90,7 +90,8 @@ impl Glow {
         let rated = tristimulus(rated_kelvin, |nanometre| spectral_emissivity(nanometre, rated_kelvin));
         let (x, y) = chromaticity(here);
         let relative_luminance = here[1] / rated[1];
-        Self { x, y, relative_luminance, srgb: display_colour(here, rated), word: word(kelvin, rated_kelvin) }
+        let srgb = if kelvin < DRAPER_KELVIN { [0; 3] } else { display_colour(here, rated) };
+        Self { x, y, relative_luminance, srgb, word: word(kelvin, rated_kelvin) }
     }
 }
 
@@ -139,7 +140,7 @@ pub fn display_colour(here: [f64; 3], rated: [f64; 3]) -> [u8; 3] {
     // Linear sRGB of the adapted colour at unit luminance.
     let unit = here.map(|value| value / here[1].max(f64::MIN_POSITIVE));
     let linear = to_linear_srgb(adapt(unit));
-    let shown = if relative < INVISIBLE { 0.0 } else { libm::pow(relative, 0.25).min(1.0) };
+    let shown = libm::pow(relative, 0.25).min(1.0);
     // Towards grey of luminance 1 until no channel is negative.
     let least = linear[0].min(linear[1]).min(linear[2]);
     let fade = if least < 0.0 { 1.0 / (1.0 - least) } else { 1.0 };
@@ -152,9 +153,6 @@ pub fn display_colour(here: [f64; 3], rated: [f64; 3]) -> [u8; 3] {
     }
     scaled.map(encode)
 }
-
-/// Relative luminance under which the eye sees nothing: that of the Draper point against 2800 K.
-const INVISIBLE: f64 = 2e-9;
 
 /// Tristimulus of the half-adapted white: the Planckian radiator midway in mired between 2800 K (357 mired) and
 /// 6504 K (154 mired), 3915 K (derived).
