@@ -1,6 +1,7 @@
-//! Driving the built page in a real Chromium, as a person would, with its server under our control.
+//! Published numbers for the core to be held against, and the built page driven in a real Chromium, as a person would,
+//! with its server under our control.
 //!
-//! The tests find the page and the browser through variables that `cargo xtask test e2e` sets; without them they
+//! The browser tests find the page and the browser through variables that `cargo xtask test e2e` sets; without them they
 //! fail and say so.
 #![forbid(unsafe_code)]
 
@@ -9,6 +10,8 @@ pub mod browser;
 pub mod devtools;
 mod driver;
 pub mod folder;
+pub mod lamps;
 pub mod numbers;
 pub mod page;
+pub mod reference;
 pub mod surroundings;
