@@ -230,7 +230,7 @@ pub struct Observer {
     pub zbar: f64,
 }
 
-/// CIE 1931 2-degree observer as shipped in PyPI `colour-science` 0.4.7 and `luxpy` 1.12.5. Published second hand.
+/// CIE 1931 2-degree observer as shipped in the Python packages `colour-science` 0.4.7 and `luxpy` 1.12.5. Published second hand.
 pub fn observer() -> Vec<Observer> {
     rows("cie1931_2deg.csv")
 }

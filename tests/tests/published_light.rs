@@ -5,8 +5,8 @@ use lampladder_core::observer::LUMENS_PER_WATT;
 use lampladder_core::tungsten::STEFAN_BOLTZMANN;
 use lampladder_tests::reference;
 
-/// The reference integrates the observer at 1 nm, the core at 5 nm; a tenth of what an eye tells apart (0.002 near
-/// the Planckian locus, MacAdam 1942).
+/// The reference integrates the observer at 1 nm, the core at 5 nm: a tenth of the smallest difference that an eye tells
+/// apart, about 0.002.
 const CHROMATICITY: f64 = 2e-4;
 
 /// The same difference of steps, in the luminous efficacy.
