@@ -120,8 +120,8 @@ fn a_motor_tool_behind_a_100_watt_lamp_reads_what_the_trade_reads() {
 
 /// A constant-power draw on direct current, which never stops.
 fn hungry(watts: f64) -> Load {
-    let draw = Draw::Watts { watts, start_volts: 1.0, stop_volts: 0.0 };
-    let spec = RectifierSpec { farads: 1e-4, series_ohms: 0.0, diode_volts: 0.0, draw };
+    let draw = Draw::Watts { watts, start_volts: 1.0, stop_volts: 0.0, restart_seconds: 0.0 };
+    let spec = RectifierSpec { farads: 1e-4, series_ohms: 0.0, diode_volts: 0.0, draw, shunt_ohms: None };
     Load::Rectifier(Rectifier::new(spec).expect("in range"))
 }
 
