@@ -3,7 +3,7 @@
 use alloc::vec::Vec;
 
 use crate::error::{Field, InputError, within};
-use crate::filament::{Filament, FilamentPoint};
+use crate::filament::Filament;
 use crate::lamp::{Lamp, LampState};
 
 /// A series chain of parallel groups of lamps, one to eight lamps in all.
@@ -122,6 +122,12 @@ impl Bank {
         BankPoint { volts, amps, hottest_kelvin: crate::tungsten::AMBIENT_KELVIN + hottest }
     }
 
+    /// The logarithm of the lead's rise at a current, amperes.
+    pub(crate) fn ln_rise_at_amps(&self, amps: f64) -> f64 {
+        let (volts, _) = group_at_amps(&self.groups[0], amps);
+        libm::log(self.lead().at_volts(volts).rise).max(Filament::ln_rise_span().0)
+    }
+
     /// A first guess of the logarithm of the lead's rise when the bank takes about `volts`.
     pub(crate) fn guess_ln_rise(&self, volts: f64) -> f64 {
         #[expect(clippy::cast_precision_loss, reason = "at most eight groups")]
@@ -202,29 +208,49 @@ fn group_at_amps(group: &[Lamp], amps: f64) -> (f64, f64) {
     if amps <= 0.0 {
         return (0.0, 0.0);
     }
-    let at = |ln_volts: f64| {
-        let volts = libm::exp(ln_volts);
-        let mut total = 0.0;
-        let mut hottest: f64 = 0.0;
-        for_each_kind(group, first, |filament, _, count| {
-            let point: FilamentPoint = filament.at_volts(volts);
-            total += count * point.amps();
-            hottest = hottest.max(point.rise);
-        });
-        (total, hottest)
-    };
+    // Newton for all filaments at once: along their slopes, one common voltage brings the wanted current.
     let rated_amps: f64 = group.iter().map(|lamp| lamp.rated_watts() / lamp.rated_volts()).sum();
-    let rated_volts = group[0].rated_volts();
-    let guess = libm::log(rated_volts) + 1.7 * libm::log(amps / rated_amps);
-    let found = crate::roots::decreasing_from(
-        |x| libm::log(amps / at(x).0),
-        (guess - 30.0, libm::log(rated_volts * 4.0).max(guess)),
-        guess,
-        crate::roots::Tolerance::FINE,
-    );
-    let ln_volts = found.map_or_else(|| libm::log(rated_volts * 4.0), |root| root.x);
-    (libm::exp(ln_volts), at(ln_volts).1)
+    let share = libm::pow(amps / rated_amps, 1.85);
+    let (low, high) = Filament::ln_rise_span();
+    let mut rises = [0.0; Bank::MOST_LAMPS];
+    for (rise, lamp) in rises.iter_mut().zip(group) {
+        *rise = lamp.filament().guess_ln_rise(share * group[0].rated_volts() / lamp.rated_volts());
+    }
+    let mut ln_volts = 0.0;
+    let mut hottest: f64 = 0.0;
+    for _ in 0..MOST_STEPS {
+        let mut points = [first.at_rise(0.0); Bank::MOST_LAMPS];
+        // sum of I (1 + g (v - v_k)) = amps, with v_k = ln volts of filament k and g = d ln I / d ln V.
+        let (mut total, mut slope, mut weighted) = (0.0, 0.0, 0.0);
+        for ((point, lamp), &rise) in points.iter_mut().zip(group).zip(&rises) {
+            *point = lamp.filament().at_ln_rise(rise);
+            let gain = point.amps() * point.amps_slope() / point.volts_slope();
+            total += point.amps();
+            slope += gain;
+            weighted += gain * libm::log(point.volts());
+        }
+        ln_volts = (amps - total + weighted) / slope;
+        let mut largest: f64 = 0.0;
+        for (rise, point) in rises.iter_mut().zip(&points).take(group.len()) {
+            let step = ((ln_volts - libm::log(point.volts())) / point.volts_slope()).clamp(-3.0, 3.0);
+            let moved = (*rise + step).clamp(low, high);
+            largest = largest.max((moved - *rise).abs());
+            *rise = moved;
+            hottest = hottest.max(libm::exp(moved));
+        }
+        if largest < CONVERGED {
+            break;
+        }
+        hottest = 0.0;
+    }
+    (libm::exp(ln_volts), hottest)
 }
+
+/// More steps than crossing the whole span of temperature by clamped ones takes.
+const MOST_STEPS: usize = 60;
+
+/// A Newton step this small leaves an error of its square, below the last bits.
+const CONVERGED: f64 = 1e-7;
 
 #[cfg(test)]
 mod tests {

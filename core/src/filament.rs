@@ -4,16 +4,15 @@
 //! `P(T) = W0 [(1-g) (M(T)-M(Ta))/(M(T0)-M(Ta)) + g (T^n-Ta^n)/(T0^n-Ta^n)]`, with `M = eps sigma T^4` and
 //! `n = 1.7` for conduction through a stagnant film of argon (I. Langmuir, Physical Review 34 (1912) 401).
 
-use crate::roots::{self, Tolerance};
 use crate::tungsten::{AMBIENT_KELVIN, HIGHEST_KELVIN, Properties};
 
 /// Exponent of the heat that an argon film conducts, against temperature (Langmuir 1912).
 const FILM_EXPONENT: f64 = 1.7;
 
-/// The least rise above ambient that the curve resolves, kelvin: picoamperes in any lamp.
-const LEAST_RISE: f64 = 1e-20;
-
+/// Logarithm of the least rise above ambient that the curve resolves, 1e-20 K: picoamperes in any lamp.
 const LEAST_LN_RISE: f64 = -46.051_701_859_880_914;
+
+/// Logarithm of the greatest rise, 3300 K.
 const MOST_LN_RISE: f64 = 8.101_677_747_454_572;
 
 /// The numbers that fix one filament.
@@ -48,6 +47,10 @@ pub struct FilamentPoint {
     pub ohms: f64,
     /// Power that holds this temperature, watts.
     pub watts: f64,
+    /// Slope of ln ohms against ln rise.
+    ohms_slope: f64,
+    /// Slope of ln watts against ln rise.
+    watts_slope: f64,
 }
 
 impl FilamentPoint {
@@ -65,13 +68,23 @@ impl FilamentPoint {
     pub fn amps(&self) -> f64 {
         libm::sqrt(self.watts / self.ohms)
     }
+
+    /// Slope of ln volts against ln rise: 0.5 when barely warm, up to 1.3.
+    pub fn volts_slope(&self) -> f64 {
+        0.5 * (self.watts_slope + self.ohms_slope)
+    }
+
+    /// Slope of ln amperes against ln rise.
+    pub fn amps_slope(&self) -> f64 {
+        0.5 * (self.watts_slope - self.ohms_slope)
+    }
 }
 
 impl Filament {
     /// Fixes the curve; `shape` has been validated by the lamp that owns it.
     pub fn new(shape: Shape, tungsten: &'static Properties) -> Self {
         let rise = shape.kelvin - AMBIENT_KELVIN;
-        let exitance = tungsten.exitance_above_ambient(rise);
+        let exitance = tungsten.exitance_above_ambient(rise).0;
         Self {
             shape,
             tungsten,
@@ -79,7 +92,7 @@ impl Filament {
                 / shape.watts
                 / tungsten.resistivity.at(shape.kelvin),
             watts_per_exitance: (1.0 - shape.gas_share) * shape.watts / exitance,
-            watts_per_film: shape.gas_share * shape.watts / film(rise),
+            watts_per_film: shape.gas_share * shape.watts / film(rise).0,
         }
     }
 
@@ -101,18 +114,28 @@ impl Filament {
 
     /// Heat radiated at `kelvin`, watts, without what the surroundings give back.
     pub fn radiated_watts(&self, kelvin: f64) -> f64 {
-        self.watts_per_exitance * self.tungsten.exitance_above_ambient(kelvin - AMBIENT_KELVIN)
+        self.watts_per_exitance * self.tungsten.exitance_above_ambient(kelvin - AMBIENT_KELVIN).0
     }
 
     /// The point at a rise above 300 K, kelvin, up to 3300.
     pub fn at_rise(&self, rise: f64) -> FilamentPoint {
         let rise = rise.clamp(0.0, HIGHEST_KELVIN - AMBIENT_KELVIN);
-        let cold = self.tungsten.resistivity.at(AMBIENT_KELVIN);
-        let gas = if self.watts_per_film > 0.0 { self.watts_per_film * film(rise) } else { 0.0 };
+        let (more, resistivity_slope) = self.tungsten.resistivity.above_ambient(rise);
+        let resistivity = self.tungsten.resistivity.at(AMBIENT_KELVIN) + more;
+        let (exitance, exitance_slope) = self.tungsten.exitance_above_ambient(rise);
+        let mut watts = self.watts_per_exitance * exitance;
+        let mut growth = self.watts_per_exitance * exitance_slope;
+        if self.watts_per_film > 0.0 {
+            let (film, film_slope) = film(rise);
+            watts += self.watts_per_film * film;
+            growth += self.watts_per_film * film_slope;
+        }
         FilamentPoint {
             rise,
-            ohms: self.ohms_per_resistivity * (cold + self.tungsten.resistivity.above_ambient(rise)),
-            watts: self.watts_per_exitance * self.tungsten.exitance_above_ambient(rise) + gas,
+            ohms: self.ohms_per_resistivity * resistivity,
+            watts,
+            ohms_slope: rise * resistivity_slope / resistivity,
+            watts_slope: if watts > 0.0 { rise * growth / watts } else { 1.0 },
         }
     }
 
@@ -139,35 +162,56 @@ impl Filament {
     /// The point at a voltage, or the hottest of the curve where the voltage would melt the filament.
     pub fn at_volts(&self, volts: f64) -> FilamentPoint {
         let target = 2.0 * libm::log(volts);
-        self.search(volts / self.shape.volts, |point| target - libm::log(point.watts * point.ohms))
+        self.search(volts / self.shape.volts, |point| {
+            (target - libm::log(point.watts * point.ohms)) / (2.0 * point.volts_slope())
+        })
     }
 
     /// The point at a current, or the hottest of the curve where the current would melt the filament.
     pub fn at_amps(&self, amps: f64) -> FilamentPoint {
         let target = 2.0 * libm::log(amps);
         let share = amps * self.shape.volts / self.shape.watts;
-        self.search(libm::pow(share, 1.85), |point| target - libm::log(point.watts / point.ohms))
+        self.search(libm::pow(share, 1.85), |point| {
+            (target - libm::log(point.watts / point.ohms)) / (2.0 * point.amps_slope())
+        })
     }
 
-    fn search(&self, share: f64, excess: impl Fn(&FilamentPoint) -> f64) -> FilamentPoint {
+    /// Newton's method in the logarithm of the rise, where both curves are nearly straight: their slopes change by
+    /// less than a factor of four over the whole span, so a clamped step cannot run away.
+    fn search(&self, share: f64, step_from: impl Fn(&FilamentPoint) -> f64) -> FilamentPoint {
         if share <= 0.0 {
             return self.at_rise(0.0);
         }
-        let span = Self::ln_rise_span();
-        let guess = self.guess_ln_rise(share);
-        let tolerance = Tolerance { x: 1e-14, residual: 1e-13 };
-        let found = roots::decreasing_from(|x| excess(&self.at_ln_rise(x)), span, guess, tolerance);
-        match found {
-            Some(root) => self.at_ln_rise(root.x),
-            None if share < 1.0 => self.at_rise(LEAST_RISE),
-            None => self.at_rise(HIGHEST_KELVIN - AMBIENT_KELVIN),
+        let (low, high) = Self::ln_rise_span();
+        let mut x = self.guess_ln_rise(share).clamp(low, high);
+        let mut point = self.at_ln_rise(x);
+        for _ in 0..MOST_STEPS {
+            let step = step_from(&point).clamp(-3.0, 3.0);
+            let next = (x + step).clamp(low, high);
+            if next == x {
+                break;
+            }
+            x = next;
+            point = self.at_ln_rise(x);
+            if step.abs() < CONVERGED {
+                break;
+            }
         }
+        point
     }
 }
 
-/// `(T^n - Ta^n) / Ta^n`, free of cancellation for a small rise.
-fn film(rise: f64) -> f64 {
-    libm::expm1(FILM_EXPONENT * libm::log1p(rise / AMBIENT_KELVIN))
+/// More steps than crossing the whole span by clamped ones takes.
+const MOST_STEPS: usize = 60;
+
+/// A Newton step this small leaves an error of its square, below the last bit.
+const CONVERGED: f64 = 1e-8;
+
+/// `(T^n - Ta^n) / Ta^n`, free of cancellation for a small rise, and its slope, per kelvin.
+fn film(rise: f64) -> (f64, f64) {
+    let ln_ratio = libm::log1p(rise / AMBIENT_KELVIN);
+    let film = libm::expm1(FILM_EXPONENT * ln_ratio);
+    (film, FILM_EXPONENT * (film + 1.0) / (AMBIENT_KELVIN + rise))
 }
 
 #[cfg(test)]
@@ -181,7 +225,7 @@ mod tests {
 
     #[test]
     fn the_span_is_the_logarithm_of_its_ends() {
-        assert!((libm::log(LEAST_RISE) - LEAST_LN_RISE).abs() < 1e-12);
+        assert!((libm::log(1e-20) - LEAST_LN_RISE).abs() < 1e-12);
         assert!((libm::log(HIGHEST_KELVIN - AMBIENT_KELVIN) - MOST_LN_RISE).abs() < 1e-12);
     }
 

@@ -123,6 +123,33 @@ pub fn decreasing_from(
     }
 }
 
+/// Finds where a decreasing or slowly rising `g` gives back its argument, inside `low..=high`, from a guess.
+///
+/// The secant method on `g(x) - x`, its first step being `g` itself: three or four evaluations where `g` hardly
+/// depends on its argument. `None` where it has not met `tolerance.residual` after a dozen.
+pub fn fixed_point(
+    mut g: impl FnMut(f64) -> f64,
+    (low, high): (f64, f64),
+    guess: f64,
+    tolerance: Tolerance,
+) -> Option<Root> {
+    let mut before = (guess, g(guess) - guess);
+    let mut x = (guess + before.1).clamp(low, high);
+    for evaluations in 2..=12 {
+        let residual = g(x) - x;
+        if residual.abs() <= tolerance.residual {
+            return Some(Root { x, residual, evaluations });
+        }
+        let slope = (residual - before.1) / (x - before.0);
+        before = (x, residual);
+        x = (x - residual / slope).clamp(low, high);
+        if x.is_nan() {
+            return None;
+        }
+    }
+    None
+}
+
 #[cfg(test)]
 mod tests {
     use super::*;
@@ -140,6 +167,14 @@ mod tests {
     fn equal_signs_are_no_bracket() {
         assert!(between(|x| x * x + 1.0, (-1.0, 2.0), (1.0, 2.0), Tolerance::FINE).is_none());
         assert!(decreasing_from(|x| 9.0 - x, (0.0, 5.0), 1.0, Tolerance::FINE).is_none());
+    }
+
+    #[test]
+    fn a_weak_dependence_settles_in_a_few_steps() {
+        // The Dottie number, cos x = x (OEIS A003957).
+        let root =
+            fixed_point(libm::cos, (0.0, 2.0), 0.7, Tolerance { x: 0.0, residual: 1e-12 }).expect("0.739");
+        assert!((root.x - 0.739_085_133_215_160_6).abs() < 1e-12 && root.evaluations <= 6);
     }
 
     #[test]

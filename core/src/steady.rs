@@ -120,7 +120,7 @@ impl fmt::Display for SteadyError {
 impl core::error::Error for SteadyError {}
 
 /// Samples over the range of a load that may have several points.
-const SAMPLES: u32 = 40;
+const SAMPLES: u32 = 16;
 
 /// Relative step of a numerical slope.
 const NUDGE: f64 = 1e-6;
@@ -225,11 +225,13 @@ impl Circuit<'_> {
             .ok_or_else(|| self.melts(Filament::ln_rise_span().1))
     }
 
-    /// Every root from next to no current up to what a dead short would take.
+    /// Every root from the least possible current up to what a dead short would take.
     fn all_roots(&self) -> Result<Vec<scan::Crossing>, SteadyError> {
         let hottest = Circuit { load: &Load::Short, ..*self }.one_root()?;
-        // Twenty e-folds of temperature rise are nine decades of power: below, no constant power lives.
-        Ok(scan::all(|x| self.excess(x), (hottest.x - 20.0, hottest.x), SAMPLES))
+        // No power comes from less current than if all of it stood at the supply's voltage.
+        let least_amps = 0.99 * self.load.least_watts() / self.supply.volts();
+        let low = self.bank.ln_rise_at_amps(least_amps).min(hottest.x - 1.0);
+        Ok(scan::all(|x| self.excess(x), (low, hottest.x), SAMPLES))
     }
 
     /// Every steady point of a turning motor. At one bank temperature two slips can take the same current, so this

@@ -44,11 +44,12 @@ impl Table {
 
     /// The value at `kelvin`; below and above the table, the value at its end.
     pub fn at(&self, kelvin: f64) -> f64 {
-        self.values[0] + self.above_ambient(kelvin - AMBIENT_KELVIN)
+        self.values[0] + self.above_ambient(kelvin - AMBIENT_KELVIN).0
     }
 
-    /// The value at 300 K + `rise` less the value at 300 K, without cancellation for a small `rise`.
-    pub fn above_ambient(&self, rise: f64) -> f64 {
+    /// The value at 300 K + `rise` less the value at 300 K, without cancellation for a small `rise`, and the slope
+    /// there, per kelvin.
+    pub fn above_ambient(&self, rise: f64) -> (f64, f64) {
         let rise = rise.clamp(0.0, HIGHEST_KELVIN - AMBIENT_KELVIN);
         #[expect(
             clippy::cast_possible_truncation,
@@ -61,8 +62,10 @@ impl Table {
         let (y0, y1) = (self.values[row], self.values[row + 1]);
         let (m0, m1) = (self.slopes[row] * STEP_KELVIN, self.slopes[row + 1] * STEP_KELVIN);
         let step = y1 - y0;
-        let in_row = t * (m0 + t * ((3.0 * step - 2.0 * m0 - m1) + t * (m0 + m1 - 2.0 * step)));
-        (y0 - self.values[0]) + in_row
+        let (square, cube) = (3.0 * step - 2.0 * m0 - m1, m0 + m1 - 2.0 * step);
+        let in_row = t * (m0 + t * (square + t * cube));
+        let slope = (m0 + t * (2.0 * square + t * 3.0 * cube)) / STEP_KELVIN;
+        ((y0 - self.values[0]) + in_row, slope)
     }
 }
 
@@ -139,13 +142,17 @@ pub struct Properties {
 }
 
 impl Properties {
-    /// Exitance at 300 K + `rise` less that at 300 K, W/m²: `eps sigma T^4`, free of cancellation.
-    pub fn exitance_above_ambient(&self, rise: f64) -> f64 {
+    /// Exitance `eps sigma T^4` at 300 K + `rise` less that at 300 K, W/m², free of cancellation, and its slope,
+    /// W/m² per kelvin.
+    pub fn exitance_above_ambient(&self, rise: f64) -> (f64, f64) {
         let kelvin = AMBIENT_KELVIN + rise;
-        let fourth_powers = rise * (kelvin + AMBIENT_KELVIN) * (kelvin * kelvin + SQUARE_AMBIENT);
-        STEFAN_BOLTZMANN
-            * (self.emissivity.at(kelvin) * fourth_powers
-                + self.emissivity.above_ambient(rise) * SQUARE_AMBIENT * SQUARE_AMBIENT)
+        let (more, slope) = self.emissivity.above_ambient(rise);
+        let emissivity = self.emissivity.values[0] + more;
+        let square = kelvin * kelvin;
+        let fourth_powers = rise * (kelvin + AMBIENT_KELVIN) * (square + SQUARE_AMBIENT);
+        let exitance = emissivity * fourth_powers + more * SQUARE_AMBIENT * SQUARE_AMBIENT;
+        let growth = (slope * kelvin + 4.0 * emissivity) * square * kelvin;
+        (STEFAN_BOLTZMANN * exitance, STEFAN_BOLTZMANN * growth)
     }
 }
 
@@ -222,8 +229,9 @@ mod tests {
     #[test]
     fn a_small_rise_keeps_its_digits() {
         let rise = 1e-9;
-        let slope = STANDARD.exitance_above_ambient(rise) / rise;
-        let coarse = STANDARD.exitance_above_ambient(1e-3) / 1e-3;
+        let (exitance, slope) = STANDARD.exitance_above_ambient(rise);
+        assert!((exitance / rise / slope - 1.0).abs() < 1e-9);
+        let coarse = STANDARD.exitance_above_ambient(1e-3).0 / 1e-3;
         assert!((slope / coarse - 1.0).abs() < 1e-4);
     }
 

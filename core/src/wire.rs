@@ -24,7 +24,7 @@ impl Wire {
     pub fn of(filament: &Filament) -> Self {
         let shape = filament.shape();
         let resistivity = STANDARD.resistivity.at(shape.kelvin) * 1e-8;
-        let exitance = STANDARD.exitance_above_ambient(shape.kelvin - crate::tungsten::AMBIENT_KELVIN);
+        let exitance = STANDARD.exitance_above_ambient(shape.kelvin - crate::tungsten::AMBIENT_KELVIN).0;
         let length_over_area = shape.volts * shape.volts / shape.watts / resistivity;
         let surface = (1.0 - shape.gas_share) * shape.watts / (COIL_SHARE * exitance);
         // L = k pi d^2 / 4 and surface = pi d L, hence d^3 = 4 surface / (k pi^2).

@@ -218,6 +218,19 @@ impl Load {
         }
     }
 
+    /// What a constant-power load must at least take, watts: no steady point lies below that power over the supply's
+    /// voltage.
+    pub(crate) fn least_watts(&self) -> f64 {
+        match self {
+            Self::Rectifier(rectifier) => match rectifier.spec().draw {
+                Draw::Watts { watts, .. } => watts,
+                _ => 0.0,
+            },
+            Self::Corrected(corrected) => corrected.spec().watts,
+            _ => 0.0,
+        }
+    }
+
     /// Start and stop volts, where the load has them.
     pub(crate) fn thresholds(&self) -> Option<Thresholds> {
         match self {

@@ -147,17 +147,13 @@ impl PowerSupply {
                 emission: self.emission(point.kelvin()),
             }
         };
-        let ln_gap = |ln_volts: f64| {
-            let (_, volts) = self.with(feed, beside(libm::exp(ln_volts)));
-            libm::log(volts) - ln_volts
-        };
+        let left = |ln_volts: f64| libm::log(self.with(feed, beside(libm::exp(ln_volts))).1);
         let most = libm::log(feed.volts);
-        let found = roots::decreasing_from(
-            ln_gap,
-            (most - 20.0, most),
-            most - libm::log1p(0.5 * feed.ohms / heater.at_volts(0.6 * feed.volts).ohms),
-            Tolerance { x: 1e-13, residual: 1e-12 },
-        );
+        let span = (most - 20.0, most);
+        let guess = most - libm::log1p(0.7 * feed.ohms / heater.at_volts(0.6 * feed.volts).ohms);
+        let tolerance = Tolerance { x: 1e-13, residual: 1e-12 };
+        let found = roots::fixed_point(left, span, guess, tolerance)
+            .or_else(|| roots::decreasing_from(|x| left(x) - x, span, guess, tolerance));
         self.with(feed, beside(libm::exp(found.map_or(most, |root| root.x)))).0
     }
 
@@ -166,10 +162,13 @@ impl PowerSupply {
         // Find the magnetising current that belongs to the voltage it leaves.
         let direct = feed.hertz == 0.0;
         let most = if direct { 0.0 } else { self.magnetising_amps(feed.volts).min(feed.volts / feed.ohms) };
-        let gap = |amps: f64| self.magnetising_amps(self.behind(feed, amps, beside).fundamental_volts) - amps;
+        let wanted = |amps: f64| self.magnetising_amps(self.behind(feed, amps, beside).fundamental_volts);
         let magnetising = if most > 0.0 {
             let tolerance = Tolerance { x: 1e-13 * most, residual: 1e-12 * most };
-            roots::between(gap, (0.0, gap(0.0)), (most, gap(most)), tolerance).map_or(most, |root| root.x)
+            let gap = |amps: f64| wanted(amps) - amps;
+            roots::fixed_point(wanted, (0.0, most), wanted(0.0).min(most), tolerance)
+                .or_else(|| roots::between(gap, (0.0, gap(0.0)), (most, gap(most)), tolerance))
+                .map_or(most, |root| root.x)
         } else {
             0.0
         };
