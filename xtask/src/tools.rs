@@ -92,7 +92,6 @@ fn crate_tool(package: &str, program: &str, version: &str) -> Result<PathBuf> {
     // the downloads and updates that are not wanted here.
     install
         .env("CARGO_PROFILE_DEV_DEBUG", "0")
-        .env("CARGO_PROFILE_DEV_OPT_LEVEL", "1")
         .env_remove("CARGO_TARGET_DIR")
         .args(["install", package, "--version", version, "--debug", "--force", "--root"])
         .arg(&folder);
