@@ -10,6 +10,7 @@ pub mod browser;
 pub mod devtools;
 mod driver;
 pub mod folder;
+pub mod golden;
 pub mod lamps;
 pub mod numbers;
 pub mod page;
