@@ -25,7 +25,7 @@ pub struct Tolerance {
 
 impl Tolerance {
     /// Tight enough that every number the core reports is limited by the model, not by the search.
-    pub const FINE: Self = Self { x: 1e-13, residual: 1e-11 };
+    pub const FINE: Self = Self { x: 1e-13, residual: 1e-10 };
 }
 
 /// A point of a function: where, and its value.

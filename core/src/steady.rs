@@ -125,12 +125,16 @@ const SAMPLES: u32 = 16;
 /// Relative step of a numerical slope.
 const NUDGE: f64 = 1e-6;
 
+/// How closely the bank is settled for each slip that a motor is tried at: the slip found is as good, and at it the
+/// bank is settled again, finely.
+const SETTLED: Tolerance = Tolerance { x: 1e-10, residual: 1e-8 };
+
 /// Least slip of a motor that is looked at.
 const LEAST_SLIP: f64 = 1e-6;
 
 /// Finds every steady point.
 ///
-/// Accuracy: the current at each point agrees with what the load wants to 1e-11. A bank of one lamp with a load
+/// Accuracy: the current at each point agrees with what the load wants to 1e-10. A bank of one lamp with a load
 /// that has one point takes about eight evaluations of the lamp's curve.
 ///
 /// # Errors
@@ -217,11 +221,11 @@ impl Circuit<'_> {
     }
 
     fn one_root(&self) -> Result<Root, SteadyError> {
-        self.one_root_from(self.bank.guess_ln_rise(0.5 * self.supply.volts()))
+        self.one_root_from(self.bank.guess_ln_rise(0.5 * self.supply.volts()), Tolerance::FINE)
     }
 
-    fn one_root_from(&self, guess: f64) -> Result<Root, SteadyError> {
-        roots::decreasing_from(|x| self.excess(x), Filament::ln_rise_span(), guess, Tolerance::FINE)
+    fn one_root_from(&self, guess: f64, tolerance: Tolerance) -> Result<Root, SteadyError> {
+        roots::decreasing_from(|x| self.excess(x), Filament::ln_rise_span(), guess, tolerance)
             .ok_or_else(|| self.melts(Filament::ln_rise_span().1))
     }
 
@@ -240,7 +244,7 @@ impl Circuit<'_> {
         let mut guess = self.bank.guess_ln_rise(0.5 * self.supply.volts());
         let mut settle = |slip: f64| {
             let circuit = Circuit { load: &motor.frozen(slip), ..*self };
-            let root = circuit.one_root_from(guess);
+            let root = circuit.one_root_from(guess, SETTLED);
             if let Ok(root) = root {
                 guess = root.x;
             }

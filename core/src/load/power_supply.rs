@@ -56,6 +56,10 @@ const HEATER_KELVIN: f64 = 1350.0;
 /// Shares of that temperature between which a cathode goes from no emission to enough (design values, no source).
 const EMISSION: (f64, f64) = (0.75, 0.93);
 
+/// How closely heater voltage and magnetising current are found, relatively: a tenth of what the search around them
+/// asks for.
+const INNER: f64 = 1e-11;
+
 /// Source resistance that stands for none, ohms.
 const STIFF_OHMS: f64 = 1e-6;
 
@@ -151,7 +155,7 @@ impl PowerSupply {
         let most = libm::log(feed.volts);
         let span = (most - 20.0, most);
         let guess = most - libm::log1p(0.7 * feed.ohms / heater.at_volts(0.6 * feed.volts).ohms);
-        let tolerance = Tolerance { x: 1e-13, residual: 1e-12 };
+        let tolerance = Tolerance { x: 1e-12, residual: INNER };
         let found = roots::fixed_point(left, span, guess, tolerance)
             .or_else(|| roots::decreasing_from(|x| left(x) - x, span, guess, tolerance));
         self.with(feed, beside(libm::exp(found.map_or(most, |root| root.x)))).0
@@ -164,7 +168,7 @@ impl PowerSupply {
         let most = if direct { 0.0 } else { self.magnetising_amps(feed.volts).min(feed.volts / feed.ohms) };
         let wanted = |amps: f64| self.magnetising_amps(self.behind(feed, amps, beside).fundamental_volts);
         let magnetising = if most > 0.0 {
-            let tolerance = Tolerance { x: 1e-13 * most, residual: 1e-12 * most };
+            let tolerance = Tolerance { x: 1e-13 * most, residual: INNER * most };
             let gap = |amps: f64| wanted(amps) - amps;
             roots::fixed_point(wanted, (0.0, most), wanted(0.0).min(most), tolerance)
                 .or_else(|| roots::between(gap, (0.0, gap(0.0)), (most, gap(most)), tolerance))
