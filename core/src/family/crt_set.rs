@@ -4,7 +4,7 @@
 //! its coil adds about as much again (design value).
 
 use super::Card;
-use super::switch_mode::{self, DETAILS as SWITCH_MODE};
+use super::switch_mode::{self, CONDITIONS, DETAILS as SWITCH_MODE};
 use crate::condition::Condition;
 use crate::detail::{ClassDefault, Detail, Standing};
 use crate::error::InputError;
@@ -13,15 +13,7 @@ use crate::plate::Plate;
 
 pub(super) static CARD: Card = Card {
     name: "crt-set",
-    conditions: &[
-        Condition::Healthy,
-        Condition::Idle,
-        Condition::Overloaded,
-        Condition::ShortedReservoir,
-        Condition::ShortedDiode,
-        Condition::Shorted,
-        Condition::OpenCircuit,
-    ],
+    conditions: &CONDITIONS,
     healthy_shares: (0.6, 1.05),
     // Published second hand.
     usual_power_factor: 0.7,

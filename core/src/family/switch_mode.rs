@@ -11,7 +11,7 @@ use crate::error::InputError;
 use crate::load::{Corrected, CorrectedSpec, Draw, HalfShort, Impedance, Load, Rectifier, RectifierSpec};
 use crate::plate::Plate;
 
-const CONDITIONS: [Condition; 7] = [
+pub(super) const CONDITIONS: [Condition; 7] = [
     Condition::Healthy,
     Condition::Idle,
     Condition::Overloaded,

@@ -40,7 +40,7 @@ pub(super) static TRANSFORMER: Card = Card {
 
 pub(super) static SERIES: Card = Card {
     name: "valve-series",
-    // No windings: the first seven of the list, and the last.
+    // No windings that could short.
     conditions: &[
         Condition::Healthy,
         Condition::Overloaded,
