@@ -57,6 +57,16 @@ pub enum Field {
     Details,
     /// A state that equipment can be in.
     Condition,
+    /// A duration, seconds.
+    Seconds,
+    /// Times or distance of samples, seconds.
+    SampleSeconds,
+    /// Angle of the mains at which the switch closes, degrees.
+    SwitchDegrees,
+    /// Flux left in a core, over the crest of its rated flux.
+    Remanence,
+    /// Relative error that a solver may leave.
+    Tolerance,
 }
 
 impl Field {
@@ -87,6 +97,11 @@ impl Field {
             Self::VoltAmps => "volt_amps",
             Self::Details => "details",
             Self::Condition => "condition",
+            Self::Seconds => "seconds",
+            Self::SampleSeconds => "sample_seconds",
+            Self::SwitchDegrees => "switch_degrees",
+            Self::Remanence => "remanence",
+            Self::Tolerance => "tolerance",
         }
     }
 
@@ -102,7 +117,8 @@ impl Field {
             Self::RatedKelvin | Self::Kelvin => "K",
             Self::Farads => "F",
             Self::VoltAmps => "VA",
-            Self::RestartSeconds => "s",
+            Self::RestartSeconds | Self::Seconds | Self::SampleSeconds => "s",
+            Self::SwitchDegrees => "°",
             _ => "",
         }
     }

@@ -47,5 +47,6 @@ mod scan;
 pub mod setup;
 pub mod steady;
 pub mod supply;
+pub mod switch_on;
 pub mod tungsten;
 pub mod wire;

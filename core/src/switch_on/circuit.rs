@@ -1,0 +1,282 @@
+//! Supply, bank and load as one system of differential equations.
+
+use alloc::vec::Vec;
+use core::f64::consts::{PI, SQRT_2};
+
+use super::body::{Body, Heat, MELTS_KELVIN};
+use super::branch::{Branch, Half, Inside, Line, Mode};
+use super::rosenbrock::System;
+use crate::bank::Bank;
+use crate::filament::Filament;
+use crate::supply::Supply;
+
+/// The loop: a source, the bank's filaments and the parts of the load side by side.
+#[derive(Debug, Clone)]
+pub(super) struct Circuit {
+    source: Source,
+    /// Filaments of the bank that differ; their temperatures come first in the state.
+    bodies: Vec<Body>,
+    groups: Vec<Group>,
+    pub(super) branches: Vec<Branch>,
+    pub(super) modes: Vec<Mode>,
+    pub(super) scale: Vec<f64>,
+    /// Difference, volts, that a diode or converter may be past its edge before it counts.
+    pub(super) edge_volts: f64,
+}
+
+/// The source behind its resistance.
+#[derive(Debug, Clone, Copy)]
+pub(super) struct Source {
+    pub(super) crest: f64,
+    /// Radian per second; 0 on direct current.
+    pub(super) omega: f64,
+    /// Phase at switch-on, radian.
+    pub(super) phase: f64,
+    pub(super) ohms: f64,
+}
+
+impl Source {
+    pub(super) fn new(supply: &Supply, switch_degrees: f64) -> Self {
+        if supply.is_direct() {
+            // The crest of a wave that never moves on.
+            return Self { crest: supply.volts(), omega: 0.0, phase: PI / 2.0, ohms: supply.ohms() };
+        }
+        Self {
+            crest: SQRT_2 * supply.volts(),
+            omega: 2.0 * PI * supply.hertz(),
+            phase: switch_degrees * PI / 180.0,
+            ohms: supply.ohms(),
+        }
+    }
+
+    fn volts(&self, seconds: f64) -> f64 {
+        self.crest * libm::sin(self.omega * seconds + self.phase)
+    }
+}
+
+/// Equal parallel groups of the bank.
+#[derive(Debug, Clone)]
+struct Group {
+    /// How many such groups are in series.
+    in_series: f64,
+    /// Places in [`Circuit::bodies`], and how many such lamps are in parallel.
+    members: Vec<(usize, f64)>,
+}
+
+/// What the loop does at one instant.
+#[derive(Debug, Clone, Copy, Default)]
+pub(super) struct Instant {
+    /// Current, amperes.
+    pub(super) amps: f64,
+    /// Volts across the load.
+    pub(super) volts: f64,
+    /// Power into all lamps of the bank, watts.
+    pub(super) bank_watts: f64,
+    /// Heat given off by all lamps of the bank, watts.
+    pub(super) lost_watts: f64,
+}
+
+/// How far past its edge a diode goes before it switches, over the crest and the tolerance: where a reservoir follows
+/// the mains closely, the solver's own error must not look like an edge. Never below the second number.
+const EDGE: f64 = 0.3;
+const LEAST_EDGE: f64 = 1e-6;
+
+/// Size of a filament's temperature, kelvin: a twentieth of what it becomes, because its error is a loss of energy,
+/// which adds up, while that of a voltage or current dies away.
+pub(super) const KELVIN_SIZE: f64 = 100.0;
+
+const MOST_BODIES: usize = Bank::MOST_LAMPS;
+
+/// Ohms of each group and heat of each body.
+struct Hot {
+    heats: [Heat; MOST_BODIES],
+    group_ohms: [f64; MOST_BODIES],
+    ohms: f64,
+}
+
+impl Circuit {
+    /// A loop without a load yet; no bank is the mains alone.
+    pub(super) fn new(source: Source, bank: Option<&Bank>, tolerance: f64) -> (Self, Vec<usize>) {
+        let mut bodies = Vec::new();
+        let mut groups: Vec<Group> = Vec::new();
+        let mut places = Vec::new();
+        let mut seen: Vec<&[crate::lamp::Lamp]> = Vec::new();
+        let mut placed: Vec<Vec<usize>> = Vec::new();
+        for group in bank.map_or(&[][..], Bank::groups) {
+            if let Some(same) = seen.iter().position(|other| *other == group.as_slice()) {
+                groups[same].in_series += 1.0;
+                places.extend_from_slice(&placed[same]);
+                continue;
+            }
+            let mut kinds: Vec<(&Filament, usize)> = Vec::new();
+            let mut members: Vec<(usize, f64)> = Vec::new();
+            let mut here = Vec::new();
+            for lamp in group {
+                let known = kinds.iter().position(|(filament, _)| *filament == lamp.filament());
+                let kind = known.unwrap_or_else(|| {
+                    kinds.push((lamp.filament(), bodies.len()));
+                    members.push((bodies.len(), 0.0));
+                    bodies.push(Body::of(lamp.filament()));
+                    members.len() - 1
+                });
+                members[kind].1 += 1.0;
+                here.push(members[kind].0);
+            }
+            places.extend_from_slice(&here);
+            seen.push(group);
+            placed.push(here);
+            groups.push(Group { in_series: 1.0, members });
+        }
+        let scale = alloc::vec![KELVIN_SIZE; bodies.len()];
+        let edge_volts = (EDGE * tolerance).max(LEAST_EDGE) * source.crest;
+        (Self { source, bodies, groups, branches: Vec::new(), modes: Vec::new(), scale, edge_volts }, places)
+    }
+
+    /// Resistance of source and bank at a state, ohms.
+    pub(super) fn loop_ohms(&self, state: &[f64]) -> f64 {
+        self.hot(state).ohms + self.source.ohms
+    }
+
+    pub(super) const fn source(&self) -> &Source {
+        &self.source
+    }
+
+    fn hot(&self, state: &[f64]) -> Hot {
+        let mut hot =
+            Hot { heats: [Heat::default(); MOST_BODIES], group_ohms: [0.0; MOST_BODIES], ohms: 0.0 };
+        for ((heat, body), kelvin) in hot.heats.iter_mut().zip(&self.bodies).zip(state) {
+            *heat = body.at(*kelvin);
+        }
+        for (ohms, group) in hot.group_ohms.iter_mut().zip(&self.groups) {
+            let siemens: f64 = group.members.iter().map(|&(at, count)| count / hot.heats[at].ohms).sum();
+            *ohms = 1.0 / siemens;
+            hot.ohms += group.in_series * *ohms;
+        }
+        hot
+    }
+
+    fn terminals(&self, seconds: f64, state: &[f64], ohms: f64) -> (f64, f64) {
+        let mut line = Line::default();
+        for branch in &self.branches {
+            let part = branch.line(state, &self.modes);
+            line.siemens += part.siemens;
+            line.source_amps += part.source_amps;
+        }
+        let volts = self.source.volts(seconds);
+        let share = 1.0 / (1.0 + ohms * line.siemens);
+        ((line.siemens * volts + line.source_amps) * share, (volts - ohms * line.source_amps) * share)
+    }
+
+    /// The loop at one instant.
+    pub(super) fn instant(&self, seconds: f64, state: &[f64]) -> Instant {
+        let hot = self.hot(state);
+        let (amps, volts) = self.terminals(seconds, state, hot.ohms + self.source.ohms);
+        let mut lost_watts = 0.0;
+        for group in &self.groups {
+            for &(at, count) in &group.members {
+                lost_watts += group.in_series * count * hot.heats[at].lost_watts;
+            }
+        }
+        Instant { amps, volts, bank_watts: amps * amps * hot.ohms, lost_watts }
+    }
+
+    /// Heat stored in all lamps of the bank, joule.
+    pub(super) fn stored_joules(&self, state: &[f64]) -> f64 {
+        let each = |group: &Group| -> f64 {
+            group.members.iter().map(|&(at, count)| count * self.bodies[at].stored_joules(state[at])).sum()
+        };
+        self.groups.iter().map(|group| group.in_series * each(group)).sum()
+    }
+
+    /// The first filament of the bank that is about to melt.
+    pub(super) fn melting(&self, state: &[f64]) -> Option<usize> {
+        state[..self.bodies.len()].iter().position(|&kelvin| kelvin > MELTS_KELVIN)
+    }
+
+    /// How far the rectifiers are from changing, each with what would change.
+    pub(super) fn edges(
+        &self,
+        seconds: f64,
+        state: &[f64],
+        volts: Option<f64>,
+        offer: &mut dyn FnMut(f64, usize, Half),
+    ) {
+        if self.modes.is_empty() {
+            return;
+        }
+        let volts = volts.unwrap_or_else(|| self.terminals(seconds, state, self.loop_ohms(state)).1);
+        for branch in &self.branches {
+            branch.edges(volts, state, &self.modes, offer);
+        }
+    }
+
+    /// The least of all margins.
+    pub(super) fn margin(&self, seconds: f64, state: &[f64], volts: Option<f64>) -> f64 {
+        let mut least = f64::INFINITY;
+        self.edges(seconds, state, volts, &mut |margin, _, _| least = least.min(margin));
+        least
+    }
+
+    /// A margin that counts as none, volts: a tenth of the distance between the edges of two modes.
+    pub(super) fn slack(&self) -> f64 {
+        0.1 * self.edge_volts
+    }
+
+    /// Changes every mode whose edge has been reached, until all agree with the state; tells of every converter that
+    /// started.
+    pub(super) fn settle_modes(&mut self, seconds: f64, state: &[f64], mut started: impl FnMut()) {
+        let slack = self.slack();
+        // Each rectifier has two halves; more changes than that at one instant would be a dispute without end.
+        for _ in 0..2 * self.modes.len() {
+            let mut due = None;
+            self.edges(seconds, state, None, &mut |margin, place, half| {
+                if margin <= slack && due.is_none() {
+                    due = Some((place, half));
+                }
+            });
+            let Some((place, half)) = due else { return };
+            let (_, volts) = self.terminals(seconds, state, self.loop_ohms(state));
+            for branch in &self.branches {
+                branch.turn(volts, state, &mut self.modes, place, half);
+            }
+            if half == Half::Runs && self.modes[place].runs {
+                started();
+            }
+        }
+    }
+
+    /// What the load shows.
+    pub(super) fn show(&self, state: &[f64]) -> Inside {
+        let mut inside = Inside::default();
+        for branch in &self.branches {
+            branch.show(state, &mut inside);
+        }
+        inside
+    }
+}
+
+impl System for Circuit {
+    fn len(&self) -> usize {
+        self.scale.len()
+    }
+
+    fn slope(&self, seconds: f64, state: &[f64], slope: &mut [f64]) {
+        let hot = self.hot(state);
+        let (amps, volts) = self.terminals(seconds, state, hot.ohms + self.source.ohms);
+        for (group, ohms) in self.groups.iter().zip(&hot.group_ohms) {
+            let square = amps * amps * ohms * ohms;
+            for &(at, _) in &group.members {
+                let heat = &hot.heats[at];
+                slope[at] = (square / heat.ohms - heat.lost_watts) / heat.joules_per_kelvin;
+            }
+        }
+        for branch in &self.branches {
+            branch.slopes(volts, state, &self.modes, slope);
+        }
+    }
+
+    fn scale(&self) -> &[f64] {
+        &self.scale
+    }
+
+}

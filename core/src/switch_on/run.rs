@@ -1,0 +1,408 @@
+//! One run through the first seconds, in slices of any size.
+
+use alloc::vec::Vec;
+use core::f64::consts::{FRAC_PI_2, PI};
+
+use super::build::Builder;
+use super::circuit::{Circuit, Instant, Source};
+use super::record::{Recorder, settle_seconds};
+use super::rosenbrock::{Stepper, System};
+use super::worst::Search;
+use super::{MAINS_OHMS, Moment, Options, Sample, SwitchOn, SwitchOnError};
+use crate::bank::Bank;
+use crate::load::Load;
+use crate::roots::{self, Tolerance};
+use crate::supply::Supply;
+
+/// Whether a run has come to its end.
+#[derive(Debug, Clone, Copy, PartialEq)]
+#[non_exhaustive]
+pub enum Progress {
+    /// It has come this far, seconds; negative while the worst angle is still sought.
+    Reached(f64),
+    /// It is complete.
+    Done,
+}
+
+/// A simulation that can be advanced a little at a time, so that a page never blocks.
+///
+/// ```
+/// # use lampladder_core::{bank::Bank, lamp::Lamp, load::Load, supply::Supply};
+/// use lampladder_core::switch_on::{Options, Progress, Run};
+/// # let supply = Supply::new(230.0, 50.0, 0.0)?;
+/// # let bank = Bank::single(Lamp::new(230.0, 100.0)?);
+/// let mut run = Run::new(&supply, Some(&bank), &Load::Short, &Options::default())?;
+/// while run.advance(500)? != Progress::Done {
+///     // Let the page breathe.
+/// }
+/// let result = run.finish();
+/// # Ok::<(), Box<dyn std::error::Error>>(())
+/// ```
+#[derive(Debug, Clone)]
+pub struct Run {
+    given: Given,
+    search: Option<Search>,
+    /// Place in the state of every lamp, in the order of the bank.
+    places: Vec<usize>,
+    switch_degrees: f64,
+    circuit: Circuit,
+    stepper: Stepper,
+    state: Vec<f64>,
+    middle: Vec<f64>,
+    seconds: f64,
+    /// The step to try next, seconds.
+    next: f64,
+    /// The step never exceeds this, seconds.
+    longest: f64,
+    now: Instant,
+    recorder: Recorder,
+    samples: Vec<Sample>,
+    asked: Vec<Sample>,
+    grid: f64,
+    /// Steps tried.
+    tries: u32,
+    steps: u32,
+}
+
+/// What a run was asked for; kept so that a search can start it again.
+#[derive(Debug, Clone)]
+pub(super) struct Given {
+    pub(super) supply: Supply,
+    pub(super) bank: Option<Bank>,
+    pub(super) load: Load,
+    pub(super) options: Options,
+}
+
+/// More steps than any run within the limits of [`Options`] needs unless it chatters.
+const MOST_TRIES: u32 = 2_000_000;
+
+/// Most samples on an automatic grid.
+const MOST_SAMPLES: f64 = 2000.0;
+
+/// Least and greatest factor from one step to the next, and the safety factor (Hairer and Wanner, IV.7).
+const SHRINK: f64 = 0.2;
+const GROW: f64 = 5.0;
+const SAFETY: f64 = 0.9;
+
+impl Run {
+    /// A run of a load behind a bank, or straight on the mains.
+    ///
+    /// # Errors
+    /// An option out of range; a load that has no meaning on this supply.
+    pub fn new(
+        supply: &Supply,
+        bank: Option<&Bank>,
+        load: &Load,
+        options: &Options,
+    ) -> Result<Self, SwitchOnError> {
+        options.check(supply)?;
+        load.check(supply)?;
+        let supply = if bank.is_none() && supply.ohms() == 0.0 {
+            Supply::new(supply.volts(), supply.hertz(), MAINS_OHMS)?
+        } else {
+            *supply
+        };
+        let given =
+            Given { supply, bank: bank.cloned(), load: load.clone(), options: options.clone() };
+        let (degrees, search) = match options.moment {
+            Moment::Worst if !supply.is_direct() => (0.0, Some(Search::new(&given))),
+            Moment::Worst => (90.0, None),
+            Moment::Degrees(degrees) => (degrees, None),
+        };
+        Ok(Self::at(given, degrees, search))
+    }
+
+    pub(super) fn at(given: Given, switch_degrees: f64, search: Option<Search>) -> Self {
+        let Given { supply, bank, load, options } = &given;
+        let source = Source::new(supply, switch_degrees);
+        let (circuit, places) = Circuit::new(source, bank.as_ref(), options.tolerance);
+        let (mut circuit, state) = Builder::new(circuit, options.remanence).finish(load);
+        let mut starts = Vec::new();
+        circuit.settle_modes(0.0, &state, || starts.push(0.0));
+        let now = circuit.instant(0.0, &state);
+        let period = if supply.is_direct() { 0.0 } else { 1.0 / supply.hertz() };
+        // A tenth of a period keeps Simpson's rule for the RMS within 1e-4; on direct current, a fiftieth of the run.
+        let longest = if supply.is_direct() { options.seconds / 50.0 } else { period / 10.0 };
+        let grid = sample_grid(options, period);
+        let mut recorder = Recorder::new(period);
+        recorder.starts = starts;
+        let mut run = Self {
+            search,
+            places,
+            switch_degrees,
+            stepper: Stepper::new(circuit.len()),
+            middle: state.clone(),
+            seconds: 0.0,
+            next: longest * 1e-3,
+            longest,
+            now,
+            recorder,
+            samples: Vec::new(),
+            asked: Vec::new(),
+            grid,
+            tries: 0,
+            steps: 0,
+            circuit,
+            state,
+            given,
+        };
+        run.take_samples(0.0, 0.0);
+        run
+    }
+
+    /// Goes on for at most `steps` steps of the solver, about a microsecond each in native code.
+    ///
+    /// # Errors
+    /// A lamp that would burn out; a circuit that changes too fast to follow. Both are final.
+    pub fn advance(&mut self, steps: u32) -> Result<Progress, SwitchOnError> {
+        let mut left = steps;
+        if let Some(search) = &mut self.search {
+            let Some(degrees) = search.advance(&mut left)? else { return Ok(Progress::Reached(-1.0)) };
+            *self = Self::at(self.given.clone(), degrees, None);
+        }
+        while self.seconds < self.given.options.seconds {
+            if left == 0 {
+                return Ok(Progress::Reached(self.seconds));
+            }
+            left -= 1;
+            self.step()?;
+        }
+        Ok(Progress::Done)
+    }
+
+    pub(super) fn complete(mut self) -> Result<SwitchOn, SwitchOnError> {
+        while self.advance(u32::MAX)? != Progress::Done {}
+        Ok(self.finish())
+    }
+
+    /// The samples so far, for a page that shows them as they come.
+    pub fn samples(&self) -> &[Sample] {
+        &self.samples
+    }
+
+    /// Highest current so far and when it flowed: seconds, amperes.
+    pub(super) const fn peak(&self) -> (f64, f64) {
+        self.recorder.peak
+    }
+
+    /// Steps taken so far.
+    pub(super) const fn steps(&self) -> u32 {
+        self.steps
+    }
+
+    /// The result, of as far as the run has come.
+    pub fn finish(self) -> SwitchOn {
+        let mut energy = self.recorder.energy;
+        energy.stored_joules = self.circuit.stored_joules(&self.state);
+        SwitchOn {
+            switch_degrees: self.switch_degrees,
+            peak_amps: self.recorder.peak.1,
+            peak_seconds: self.recorder.peak.0,
+            i2t_amp2_seconds: self.recorder.i2t,
+            settle_seconds: settle_seconds(&self.samples),
+            samples: self.samples,
+            asked: self.asked,
+            heating: self.recorder.heating,
+            starts: self.recorder.starts,
+            energy,
+            steps: self.steps,
+            evaluations: self.stepper.evaluations,
+        }
+    }
+
+    /// Where the next step must end at the latest: a zero or crest of the supply, or the end.
+    fn stop(&self) -> f64 {
+        let end = self.given.options.seconds;
+        let source = self.circuit.source();
+        if source.omega == 0.0 {
+            return end;
+        }
+        let phase = source.omega * self.seconds + source.phase;
+        let quarter = libm::floor(phase / FRAC_PI_2 + 1e-6) + 1.0;
+        let stop = (quarter * FRAC_PI_2 - source.phase) / source.omega;
+        // No sliver of a step where a quarter period ends at the end but for rounding.
+        if stop > end - 1e-6 / source.omega { end } else { stop }
+    }
+
+    /// One accepted step.
+    fn step(&mut self) -> Result<(), SwitchOnError> {
+        let stop = self.stop();
+        let room = stop - self.seconds;
+        let omega = self.circuit.source().omega;
+        let rush = 1e-6 / if omega > 0.0 { omega } else { 2.0 * PI };
+        self.stepper.start(&self.circuit, self.seconds, &self.state, rush);
+        let length = loop {
+            let wanted = self.next.min(self.longest);
+            // Neither a sliver left over nor a step much longer than wanted.
+            let length = if wanted > 0.99 * room {
+                room
+            } else if wanted > 0.5 * room {
+                0.5 * room
+            } else {
+                wanted
+            };
+            self.tries += 1;
+            if self.tries > MOST_TRIES || length < self.seconds * 1e-15 || length <= 0.0 {
+                return Err(SwitchOnError::TooManySteps { seconds: self.seconds });
+            }
+            let tolerance = self.given.options.tolerance;
+            let error = self.stepper.attempt(&self.circuit, self.seconds, length, tolerance);
+            let factor =
+                if error.is_finite() { SAFETY / libm::sqrt(libm::sqrt(error)) } else { SHRINK };
+            self.next = length * factor.clamp(SHRINK, GROW);
+            if error <= 1.0 {
+                break length;
+            }
+        };
+        self.steps += 1;
+        self.stepper.keep();
+        let start = self.seconds;
+        let (middle, end, share) = self.until_edge(start, length);
+        let seconds = share * length;
+        self.recorder.segment(start, seconds, &[self.now, middle, end]);
+        self.seconds = if share == 1.0 && length == room { stop } else { start + seconds };
+        self.take_samples(start, length);
+        self.now = end;
+        if share < 1.0 {
+            let starts = &mut self.recorder.starts;
+            let seconds = self.seconds;
+            self.circuit.settle_modes(seconds, &self.state, || starts.push(seconds));
+            self.now = self.circuit.instant(seconds, &self.state);
+        }
+        if let Some(body) = self.circuit.melting(&self.state) {
+            return Err(self.melts(body));
+        }
+        Ok(())
+    }
+
+    /// Moves the state to the end of the step or to the first edge in it; gives the loop half way there and there,
+    /// and the share of the step that is used.
+    fn until_edge(&mut self, start: f64, length: f64) -> (Instant, Instant, f64) {
+        self.stepper.inside(0.5, &mut self.middle);
+        let half = start + 0.5 * length;
+        let middle = self.circuit.instant(half, &self.middle);
+        self.state.copy_from_slice(&self.stepper.to);
+        let end = self.circuit.instant(start + length, &self.state);
+        if self.circuit.modes.is_empty() {
+            return (middle, end, 1.0);
+        }
+        let at_middle = self.circuit.margin(half, &self.middle, Some(middle.volts));
+        let (from, to) = if at_middle <= 0.0 {
+            ((0.0, 1.0), (0.5, at_middle))
+        } else {
+            let at_end = self.circuit.margin(start + length, &self.state, Some(end.volts));
+            if at_end > 0.0 {
+                return (middle, end, 1.0);
+            }
+            ((0.5, at_middle), (1.0, at_end))
+        };
+        let share = self.edge(start, length, from, to);
+        self.stepper.inside(0.5 * share, &mut self.middle);
+        let middle = self.circuit.instant(start + 0.5 * share * length, &self.middle);
+        self.stepper.inside(share, &mut self.state);
+        let end = self.circuit.instant(start + share * length, &self.state);
+        (middle, end, share)
+    }
+
+    /// The share of the step at which the first mode changes, between two shares with their margins.
+    fn edge(&mut self, start: f64, length: f64, mut from: (f64, f64), to: (f64, f64)) -> f64 {
+        if from.0 == 0.0 {
+            from.1 = self.circuit.margin(start, &self.given_state(0.0), None);
+            if from.1 <= 0.0 {
+                // The margin at the start is only rounded below zero: the edge is here.
+                return LEAST_SHARE;
+            }
+        }
+        let mut point = core::mem::take(&mut self.middle);
+        let found = roots::between(
+            |share| {
+                self.stepper.inside(share, &mut point);
+                self.circuit.margin(start + share * length, &point, None)
+            },
+            from,
+            to,
+            Tolerance { x: 1e-10, residual: 0.5 * self.circuit.slack() },
+        );
+        self.middle = point;
+        found.map_or(to.0, |root| root.x.max(LEAST_SHARE))
+    }
+
+    fn given_state(&self, share: f64) -> Vec<f64> {
+        let mut state = self.state.clone();
+        self.stepper.inside(share, &mut state);
+        state
+    }
+
+    /// Samples that fall due up to the present; the last step began at `start` and would have been `length` long.
+    fn take_samples(&mut self, start: f64, length: f64) {
+        loop {
+            #[expect(clippy::cast_precision_loss, reason = "a count of samples")]
+            let (taken, asked) = (self.samples.len() as f64, self.asked.len());
+            let on_grid = taken * self.grid;
+            // The last point of the grid may miss the end by rounding.
+            let on_grid = if (on_grid - self.given.options.seconds).abs() < 1e-9 * on_grid {
+                self.given.options.seconds
+            } else {
+                on_grid
+            };
+            let wanted = self.given.options.at.get(asked).copied().unwrap_or(f64::INFINITY);
+            let seconds = on_grid.min(wanted);
+            if seconds > self.seconds || seconds > self.given.options.seconds {
+                return;
+            }
+            let share = if length > 0.0 { ((seconds - start) / length).min(1.0) } else { 0.0 };
+            if length > 0.0 {
+                self.stepper.inside(share, &mut self.middle);
+            } else {
+                self.middle.copy_from_slice(&self.state);
+            }
+            let kelvins = self.places.iter().map(|&place| self.middle[place]).collect();
+            let inside = self.circuit.show(&self.middle);
+            // Only direct current needs the instant itself.
+            let instant = if self.circuit.source().omega == 0.0 {
+                self.circuit.instant(seconds, &self.middle)
+            } else {
+                self.now
+            };
+            let sample = self.recorder.sample(seconds, &instant, kelvins, inside);
+            if seconds == wanted {
+                self.asked.push(sample.clone());
+            }
+            if seconds == on_grid {
+                self.samples.push(sample);
+            }
+        }
+    }
+
+    fn melts(&self, body: usize) -> SwitchOnError {
+        let seconds = self.seconds;
+        let place = self.places.iter().position(|&place| place == body).unwrap_or(0);
+        let mut left = place;
+        let groups = self.given.bank.as_ref().map_or(&[][..], Bank::groups);
+        for (group, lamps) in groups.iter().enumerate() {
+            if left < lamps.len() {
+                return SwitchOnError::FilamentMelts { group, lamp: left, seconds };
+            }
+            left -= lamps.len();
+        }
+        SwitchOnError::FilamentMelts { group: 0, lamp: 0, seconds }
+    }
+}
+
+/// The smallest share of a step that counts as progress.
+const LEAST_SHARE: f64 = 1e-9;
+
+fn sample_grid(options: &Options, period: f64) -> f64 {
+    let finest = if options.sample_seconds > 0.0 {
+        options.sample_seconds
+    } else if period > 0.0 {
+        period / 2.0
+    } else {
+        options.seconds / 1000.0
+    };
+    if finest <= 0.0 {
+        return 1.0;
+    }
+    // Whole multiples, so that every sample lies at the same place in the mains cycle.
+    finest * libm::ceil(options.seconds / finest / MOST_SAMPLES).max(1.0)
+}
