@@ -19,11 +19,15 @@
 
 mod body;
 mod branch;
+mod bridge;
 mod build;
 mod circuit;
+mod motor;
 mod record;
 mod rosenbrock;
 mod run;
+mod thermistor;
+mod winding;
 mod worst;
 
 use alloc::vec::Vec;
@@ -120,6 +124,8 @@ pub struct Sample {
     pub load_dc_volts: Option<f64>,
     /// Temperature of the lamp or heater in the load, where it has one, kelvin.
     pub load_kelvin: Option<f64>,
+    /// Speed of a motor in the load over its rated or synchronous speed, where it has one.
+    pub load_speed: Option<f64>,
 }
 
 /// Integral of the squared current from the start to a time.

@@ -49,8 +49,14 @@ impl Body {
         Self::with_mass(filament, Wire::of(filament).kilograms())
     }
 
+    /// The filament with so much mass that it stores `joules` at its rating: heaters in their cathodes.
+    pub(super) fn storing(filament: &Filament, joules: f64) -> Self {
+        let unit = Self::with_mass(filament, 1.0).stored_joules(filament.shape().kelvin);
+        Self::with_mass(filament, joules / unit)
+    }
+
     /// The filament with `kilograms` of tungsten to heat.
-    pub(super) fn with_mass(filament: &Filament, kilograms: f64) -> Self {
+    fn with_mass(filament: &Filament, kilograms: f64) -> Self {
         let ohms = |rise: f64| filament.at_rise(rise).ohms;
         let lost = |rise: f64| filament.at_rise(rise).watts;
         let heat = |rise: f64| kilograms * heat_capacity(AMBIENT_KELVIN + rise);

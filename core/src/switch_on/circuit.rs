@@ -4,7 +4,7 @@ use alloc::vec::Vec;
 use core::f64::consts::{PI, SQRT_2};
 
 use super::body::{Body, Heat, MELTS_KELVIN};
-use super::branch::{Branch, Half, Inside, Line, Mode};
+use super::branch::{At, Branch, Half, Inside, Line, Mode, Offer};
 use super::rosenbrock::System;
 use crate::bank::Bank;
 use crate::filament::Filament;
@@ -156,11 +156,10 @@ impl Circuit {
     }
 
     fn terminals(&self, seconds: f64, state: &[f64], ohms: f64) -> (f64, f64) {
+        let here = At { seconds, state, modes: &self.modes };
         let mut line = Line::default();
         for branch in &self.branches {
-            let part = branch.line(state, &self.modes);
-            line.siemens += part.siemens;
-            line.source_amps += part.source_amps;
+            line += branch.line(here);
         }
         let volts = self.source.volts(seconds);
         let share = 1.0 / (1.0 + ohms * line.siemens);
@@ -199,14 +198,15 @@ impl Circuit {
         seconds: f64,
         state: &[f64],
         volts: Option<f64>,
-        offer: &mut dyn FnMut(f64, usize, Half),
+        offer: &mut Offer,
     ) {
         if self.modes.is_empty() {
             return;
         }
         let volts = volts.unwrap_or_else(|| self.terminals(seconds, state, self.loop_ohms(state)).1);
+        let here = At { seconds, state, modes: &self.modes };
         for branch in &self.branches {
-            branch.edges(volts, state, &self.modes, offer);
+            branch.edges(volts, here, offer);
         }
     }
 
@@ -226,8 +226,8 @@ impl Circuit {
     /// started.
     pub(super) fn settle_modes(&mut self, seconds: f64, state: &[f64], mut started: impl FnMut()) {
         let slack = self.slack();
-        // Each rectifier has two halves; more changes than that at one instant would be a dispute without end.
-        for _ in 0..2 * self.modes.len() {
+        // Diodes, wait and start: more changes than these at one instant would be a dispute without end.
+        for _ in 0..3 * self.modes.len() {
             let mut due = None;
             self.edges(seconds, state, None, &mut |margin, place, half| {
                 if margin <= slack && due.is_none() {
@@ -236,13 +236,19 @@ impl Circuit {
             });
             let Some((place, half)) = due else { return };
             let (_, volts) = self.terminals(seconds, state, self.loop_ohms(state));
-            for branch in &self.branches {
-                branch.turn(volts, state, &mut self.modes, place, half);
-            }
+            let here = At { seconds, state, modes: &self.modes };
+            let turned = self.branches.iter().find_map(|branch| branch.turned(volts, here, place, half));
+            let Some(turned) = turned else { return };
+            self.modes[place] = turned;
             if half == Half::Runs && self.modes[place].runs {
                 started();
             }
         }
+    }
+
+    /// When the next waiting converter starts, seconds; infinite where none waits.
+    pub(super) fn due(&self) -> f64 {
+        self.modes.iter().map(|mode| mode.due).fold(f64::INFINITY, f64::min)
     }
 
     /// What the load shows.
@@ -270,8 +276,9 @@ impl System for Circuit {
                 slope[at] = (square / heat.ohms - heat.lost_watts) / heat.joules_per_kelvin;
             }
         }
+        let here = At { seconds, state, modes: &self.modes };
         for branch in &self.branches {
-            branch.slopes(volts, state, &self.modes, slope);
+            branch.slopes(volts, here, slope);
         }
     }
 

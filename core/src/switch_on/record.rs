@@ -138,6 +138,7 @@ impl Recorder {
             load_volts_rms,
             load_dc_volts: inside.dc_volts,
             load_kelvin: inside.kelvin,
+            load_speed: inside.speed,
         }
     }
 

@@ -210,9 +210,9 @@ impl Run {
         }
     }
 
-    /// Where the next step must end at the latest: a zero or crest of the supply, or the end.
+    /// Where the next step must end at the latest: a zero or crest of the supply, the start of a converter, the end.
     fn stop(&self) -> f64 {
-        let end = self.given.options.seconds;
+        let end = self.given.options.seconds.min(self.circuit.due());
         let source = self.circuit.source();
         if source.omega == 0.0 {
             return end;
@@ -263,7 +263,7 @@ impl Run {
         self.seconds = if share == 1.0 && length == room { stop } else { start + seconds };
         self.take_samples(start, length);
         self.now = end;
-        if share < 1.0 {
+        if share < 1.0 || self.seconds >= self.circuit.due() {
             let starts = &mut self.recorder.starts;
             let seconds = self.seconds;
             self.circuit.settle_modes(seconds, &self.state, || starts.push(seconds));
