@@ -8,9 +8,9 @@ use alloc::boxed::Box;
 
 use super::body::Body;
 use super::bridge::{Bridge, Corrector};
+use super::core_flux::Core;
 use super::motor::{Brushed, Squirrel};
 use super::thermistor::Thermistor;
-use super::winding::Winding;
 
 /// A straight line between volts and amperes.
 #[derive(Debug, Clone, Copy, Default)]
@@ -103,8 +103,8 @@ pub(super) enum Branch {
     Bridge(Box<Bridge>),
     /// What makes a converter take a sinusoidal current.
     Corrector(Corrector),
-    /// A transformer and what stands behind it.
-    Winding(Box<Winding>),
+    /// A transformer's core.
+    Core(Core),
     /// A degauss thermistor.
     Thermistor(Thermistor),
     /// A motor with brushes.
@@ -138,7 +138,7 @@ impl Branch {
             Self::HalfShort { siemens, mode, .. } => Line::resistor(here.modes[*mode].conducts * siemens),
             Self::Bridge(bridge) => bridge.line(here),
             Self::Corrector(corrector) => Line::resistor(corrector.siemens(here)),
-            Self::Winding(winding) => winding.line(here),
+            Self::Core(core) => Line::source(core.amps(here)),
             Self::Thermistor(thermistor) => Line::resistor(thermistor.siemens(here)),
             Self::Brushed(motor) => motor.line(here),
             Self::Squirrel(motor) => Line::source(here.state[motor.at]),
@@ -160,7 +160,7 @@ impl Branch {
             }
             Self::Bridge(bridge) => bridge.slopes(volts, here, slope),
             Self::Corrector(corrector) => corrector.slopes(volts, here, slope),
-            Self::Winding(winding) => winding.slopes(volts, here, slope),
+            Self::Core(core) => core.slopes(volts, here, slope),
             Self::Thermistor(thermistor) => thermistor.slopes(volts, here, slope),
             Self::Brushed(motor) => motor.slopes(volts, here, slope),
             Self::Squirrel(motor) => motor.slopes(volts, here, slope),
@@ -175,7 +175,6 @@ impl Branch {
                 offer(edge_volts + sign * volts, *mode, Half::Conducts);
             }
             Self::Bridge(bridge) => bridge.edges(volts, here, offer),
-            Self::Winding(winding) => winding.edges(volts, here, offer),
             _ => {}
         }
     }
@@ -187,7 +186,6 @@ impl Branch {
                 Some(Mode { conducts: 1.0 - here.modes[place].conducts, ..Mode::OFF })
             }
             Self::Bridge(bridge) if bridge.mode == place => Some(bridge.turned(volts, here, half)),
-            Self::Winding(winding) => winding.turned(volts, here, place, half),
             _ => None,
         }
     }
@@ -197,7 +195,6 @@ impl Branch {
         match self {
             Self::Filament { at, .. } => inside.kelvin = Some(state[*at]),
             Self::Bridge(bridge) => inside.dc_volts = Some(state[bridge.at].max(0.0)),
-            Self::Winding(winding) => winding.behind.iter().for_each(|branch| branch.show(state, inside)),
             Self::Brushed(motor) => inside.speed = Some(state[motor.speed_at]),
             Self::Squirrel(motor) => inside.speed = Some(state[motor.speed_at]),
             _ => {}

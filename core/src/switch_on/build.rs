@@ -7,9 +7,9 @@ use super::body::Body;
 use super::branch::{Branch, Mode, siemens};
 use super::bridge::{BOOST, Bridge, Corrector};
 use super::circuit::{Circuit, KELVIN_SIZE};
+use super::core_flux::{Core, Magnetising};
 use super::motor::{Brushed, Squirrel};
 use super::thermistor::Thermistor;
-use super::winding::{Magnetising, Winding};
 use crate::load::{Corrected, Degauss, Draw, Load, PowerSupply, Rectifier};
 use crate::tungsten::AMBIENT_KELVIN;
 
@@ -95,8 +95,7 @@ impl Builder {
                     spec.stator_ohms + spec.rotor_ohms,
                     spec.stator_reactance_ohms + spec.rotor_reactance_ohms,
                 );
-                let places =
-                    [self.variable(0.0, scale), self.variable(0.0, scale), self.variable(0.0, 1.0)];
+                let places = [self.variable(0.0, scale), self.variable(0.0, scale), self.variable(0.0, 1.0)];
                 branches.push(Branch::Squirrel(Squirrel::new(spec, self.omega(), places)));
             }
         }
@@ -173,36 +172,24 @@ impl Builder {
 
     fn power_supply(&mut self, supply: &PowerSupply, branches: &mut Vec<Branch>) {
         let spec = supply.spec();
-        let has_core = spec.magnetising_amps > 0.0;
-        let primary_ohms = if has_core { PRIMARY_SHARE * spec.winding_ohms } else { 0.0 };
+        branches.push(Branch::Resistor(1.0 / spec.core_ohms));
+        if spec.magnetising_amps > 0.0 {
+            branches.push(Branch::Core(Core {
+                primary_ohms: PRIMARY_SHARE * spec.winding_ohms,
+                magnetising: Magnetising::of(spec.rated_volts, spec.magnetising_amps, self.omega()),
+                at: self.variable(self.remanence, 1.0),
+            }));
+        }
         let draw = Draw::Ohms(spec.draw_ohms);
-        let mut bridge =
-            self.bridge(spec.winding_ohms - primary_ohms, spec.diode_volts, spec.farads, draw);
-        bridge.edge_ohms += primary_ohms;
+        let mut bridge = self.bridge(spec.winding_ohms, spec.diode_volts, spec.farads, draw);
         bridge.half_wave = spec.half_wave;
-        let mut parts = Vec::new();
         if let Some(heater) = supply.heater() {
             let body = Body::storing(heater, HEATER_SECONDS * spec.heater_watts);
             let at = self.variable(AMBIENT_KELVIN, KELVIN_SIZE);
-            parts.push(Branch::Filament { body, at });
+            branches.push(Branch::Filament { body, at });
             bridge.valves = Some((Box::new(supply.clone()), at));
         }
-        parts.push(Branch::Bridge(Box::new(bridge)));
-        if !has_core {
-            branches.push(Branch::Resistor(1.0 / spec.core_ohms));
-            branches.append(&mut parts);
-            return;
-        }
-        let magnetising = Magnetising::of(spec.rated_volts, spec.magnetising_amps, self.omega());
-        let at = self.variable(self.remanence, 1.0);
-        let core_ohms = spec.core_ohms;
-        branches.push(Branch::Winding(Box::new(Winding {
-            primary_ohms,
-            core_ohms,
-            magnetising,
-            behind: parts,
-            at,
-        })));
+        branches.push(Branch::Bridge(Box::new(bridge)));
     }
 
     fn corrected(&mut self, corrected: &Corrected, branches: &mut Vec<Branch>) {

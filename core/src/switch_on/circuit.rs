@@ -193,13 +193,7 @@ impl Circuit {
     }
 
     /// How far the rectifiers are from changing, each with what would change.
-    pub(super) fn edges(
-        &self,
-        seconds: f64,
-        state: &[f64],
-        volts: Option<f64>,
-        offer: &mut Offer,
-    ) {
+    pub(super) fn edges(&self, seconds: f64, state: &[f64], volts: Option<f64>, offer: &mut Offer) {
         if self.modes.is_empty() {
             return;
         }
@@ -285,5 +279,4 @@ impl System for Circuit {
     fn scale(&self) -> &[f64] {
         &self.scale
     }
-
 }

@@ -71,8 +71,7 @@ impl Squirrel {
     pub(super) fn new(spec: InductionMotorSpec, omega: f64, places: [usize; 3]) -> Self {
         let magnetising = spec.magnetising_ohms / omega;
         let leakage = |ohms: f64| (ohms / omega).max(LEAST_LEAKAGE * magnetising);
-        let henries =
-            [leakage(spec.stator_reactance_ohms), magnetising, leakage(spec.rotor_reactance_ohms)];
+        let henries = [leakage(spec.stator_reactance_ohms), magnetising, leakage(spec.rotor_reactance_ohms)];
         let [at, rotor_at, speed_at] = places;
         Self { spec, henries, at, rotor_at, speed_at }
     }
@@ -93,8 +92,7 @@ impl Squirrel {
         let breakaway = self.spec.breakaway_watts.min(BLOCKED * (turning + self.spec.windage_watts + 1.0));
         let ratio = speed / LOOSE;
         let standing = turning + (breakaway - turning).max(0.0) * libm::exp(-ratio * ratio);
-        let load =
-            standing * libm::tanh(speed / CREEP) + self.spec.windage_watts * speed * speed.abs();
+        let load = standing * libm::tanh(speed / CREEP) + self.spec.windage_watts * speed * speed.abs();
         slope[self.speed_at] = (torque - load) / (2.0 * self.spec.joules);
     }
 }

@@ -59,8 +59,9 @@ pub struct Run {
     samples: Vec<Sample>,
     asked: Vec<Sample>,
     grid: f64,
-    /// Steps tried.
+    /// Steps tried, and at which number to give up.
     tries: u32,
+    most_tries: u32,
     steps: u32,
 }
 
@@ -73,8 +74,9 @@ pub(super) struct Given {
     pub(super) options: Options,
 }
 
-/// More steps than any run within the limits of [`Options`] needs unless it chatters.
-const MOST_TRIES: u32 = 2_000_000;
+/// Most steps of any run, and more for every period of the mains: several times what a run needs unless it chatters.
+const MOST_TRIES: f64 = 100_000.0;
+const MOST_TRIES_PER_PERIOD: f64 = 300.0;
 
 /// Most samples on an automatic grid.
 const MOST_SAMPLES: f64 = 2000.0;
@@ -102,8 +104,7 @@ impl Run {
         } else {
             *supply
         };
-        let given =
-            Given { supply, bank: bank.cloned(), load: load.clone(), options: options.clone() };
+        let given = Given { supply, bank: bank.cloned(), load: load.clone(), options: options.clone() };
         let (degrees, search) = match options.moment {
             Moment::Worst if !supply.is_direct() => (0.0, Some(Search::new(&given))),
             Moment::Worst => (90.0, None),
@@ -124,6 +125,13 @@ impl Run {
         // A tenth of a period keeps Simpson's rule for the RMS within 1e-4; on direct current, a fiftieth of the run.
         let longest = if supply.is_direct() { options.seconds / 50.0 } else { period / 10.0 };
         let grid = sample_grid(options, period);
+        let periods = options.seconds * supply.hertz();
+        #[expect(
+            clippy::cast_possible_truncation,
+            clippy::cast_sign_loss,
+            reason = "at most 20,000 periods: a few million"
+        )]
+        let most_tries = (MOST_TRIES + MOST_TRIES_PER_PERIOD * periods) as u32;
         let mut recorder = Recorder::new(period);
         recorder.starts = starts;
         let mut run = Self {
@@ -141,6 +149,7 @@ impl Run {
             asked: Vec::new(),
             grid,
             tries: 0,
+            most_tries,
             steps: 0,
             circuit,
             state,
@@ -242,13 +251,12 @@ impl Run {
                 wanted
             };
             self.tries += 1;
-            if self.tries > MOST_TRIES || length < self.seconds * 1e-15 || length <= 0.0 {
+            if self.tries > self.most_tries || length < self.seconds * 1e-15 || length <= 0.0 {
                 return Err(SwitchOnError::TooManySteps { seconds: self.seconds });
             }
             let tolerance = self.given.options.tolerance;
             let error = self.stepper.attempt(&self.circuit, self.seconds, length, tolerance);
-            let factor =
-                if error.is_finite() { SAFETY / libm::sqrt(libm::sqrt(error)) } else { SHRINK };
+            let factor = if error.is_finite() { SAFETY / libm::sqrt(libm::sqrt(error)) } else { SHRINK };
             self.next = length * factor.clamp(SHRINK, GROW);
             if error <= 1.0 {
                 break length;

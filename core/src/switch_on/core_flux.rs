@@ -1,19 +1,17 @@
-//! A transformer in the time domain: its core's flux, with saturation and remanence, and what stands behind it.
+//! A transformer's core in the time domain: its flux, with saturation and remanence.
 
 use core::f64::consts::{FRAC_1_SQRT_2, SQRT_2};
 
-use alloc::vec::Vec;
+use super::branch::At;
 
-use super::branch::{At, Branch, Half, Line, Mode, Offer};
-
-/// A transformer's primary and core, and what stands behind it, referred to the primary; its variable is the flux
-/// linkage over its crest at the rating.
-#[derive(Debug, Clone)]
-pub(super) struct Winding {
+/// A magnetising branch, referred to the primary; its variable is the flux linkage over its crest at the rating.
+///
+/// As in the steady solver it stands beside the rectifier's windings. The primary's resistance is in series with it
+/// here, because it is what limits the current of a full core.
+#[derive(Debug, Clone, Copy)]
+pub(super) struct Core {
     pub(super) primary_ohms: f64,
-    pub(super) core_ohms: f64,
     pub(super) magnetising: Magnetising,
-    pub(super) behind: Vec<Branch>,
     pub(super) at: usize,
 }
 
@@ -70,47 +68,13 @@ fn eighth(x: f64) -> f64 {
     square * square * square * square
 }
 
-impl Winding {
-    /// The line of everything behind the primary's resistance.
-    fn inner(&self, here: At) -> Line {
-        let magnetising = self.magnetising.amps(here.state[self.at]);
-        let mut line = Line { siemens: 1.0 / self.core_ohms, source_amps: magnetising };
-        for branch in &self.behind {
-            line += branch.line(here);
-        }
-        line
-    }
-
-    pub(super) fn line(&self, here: At) -> Line {
-        let inner = self.inner(here);
-        let share = 1.0 / (1.0 + self.primary_ohms * inner.siemens);
-        Line { siemens: inner.siemens * share, source_amps: inner.source_amps * share }
-    }
-
-    /// Volts of the windings themselves, the drop in the primary taken off.
-    fn node_volts(&self, volts: f64, here: At) -> f64 {
-        let inner = self.inner(here);
-        (volts - self.primary_ohms * inner.source_amps) / (1.0 + self.primary_ohms * inner.siemens)
+impl Core {
+    pub(super) fn amps(&self, here: At) -> f64 {
+        self.magnetising.amps(here.state[self.at])
     }
 
     pub(super) fn slopes(&self, volts: f64, here: At, slope: &mut [f64]) {
-        let node = self.node_volts(volts, here);
-        slope[self.at] = node / self.magnetising.rated_flux;
-        for branch in &self.behind {
-            branch.slopes(node, here, slope);
-        }
-    }
-
-    pub(super) fn edges(&self, volts: f64, here: At, offer: &mut Offer) {
-        let node = self.node_volts(volts, here);
-        for branch in &self.behind {
-            branch.edges(node, here, offer);
-        }
-    }
-
-    pub(super) fn turned(&self, volts: f64, here: At, place: usize, half: Half) -> Option<Mode> {
-        let node = self.node_volts(volts, here);
-        self.behind.iter().find_map(|branch| branch.turned(node, here, place, half))
+        slope[self.at] = (volts - self.primary_ohms * self.amps(here)) / self.magnetising.rated_flux;
     }
 }
 
