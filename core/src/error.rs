@@ -67,6 +67,10 @@ pub enum Field {
     Remanence,
     /// Relative error that a solver may leave.
     Tolerance,
+    /// Rated current of a fuse, amperes.
+    RatedAmps,
+    /// Sheet of a fuse standard.
+    Sheet,
 }
 
 impl Field {
@@ -102,6 +106,8 @@ impl Field {
             Self::SwitchDegrees => "switch_degrees",
             Self::Remanence => "remanence",
             Self::Tolerance => "tolerance",
+            Self::RatedAmps => "rated_amps",
+            Self::Sheet => "sheet",
         }
     }
 
@@ -110,7 +116,7 @@ impl Field {
         match self {
             Self::Volts | Self::DiodeVolts | Self::StartVolts | Self::StopVolts => "V",
             Self::Watts => "W",
-            Self::Amps => "A",
+            Self::Amps | Self::RatedAmps => "A",
             Self::Hertz => "Hz",
             Self::Ohms | Self::ReactanceOhms | Self::ColdOhms | Self::SeriesOhms => "Ω",
             Self::Lumens => "lm",

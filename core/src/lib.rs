@@ -34,6 +34,7 @@ pub mod error;
 pub mod expect;
 pub mod family;
 pub mod filament;
+pub mod fuse;
 pub mod glow;
 mod hunt;
 pub mod lamp;
