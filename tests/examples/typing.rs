@@ -36,7 +36,7 @@ fn main() -> Result<()> {
     page::enter(&browser, &site.url())?;
     browser.until_offline_ready()?;
     let input = page::open_field(&browser, "plate-watts")?;
-    browser.script_later(RECORDER, vec![json!(page::answer("amps")), json!(input)])?;
+    browser.script_later(RECORDER, vec![json!(page::AMPS), json!(input)])?;
     browser.devtools("Emulation.setCPUThrottlingRate", json!({"rate": THROTTLE}))?;
     // The first key replaces the selected text; then the second digit comes and goes: 45, 4, 45, 4 … watts.
     for count in 0..KEYS {

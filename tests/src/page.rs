@@ -8,33 +8,38 @@ use anyhow::Result;
 
 use crate::browser::{Browser, PATIENCE};
 
-/// The cautions, and the button that accepts them.
+/// The cautions.
 pub const CAUTIONS: &str = "[data-testid=cautions]";
-/// Accepts the cautions.
+/// Accepts the cautions, or closes them again.
 pub const ACCEPT: &str = "[data-testid=accept]";
-/// The one line that is always in view, and opens the cautions again.
+/// The line that is always in view.
 pub const REMINDER: &str = "[data-testid=reminder]";
-
-/// What is said about a link that cannot be read, or about storage that cannot be used.
-pub const NOTICE: &str = "[data-testid=notice]";
-/// The caution that a lamp is over its rated voltage.
-pub const OVER_RATED: &str = "[data-testid=over-rated]";
+/// Opens the cautions again.
+pub const OPEN_CAUTIONS: &str = "[data-testid=open-cautions]";
 /// Closes the editor of a part.
-pub const CLOSE: &str = "[data-testid=close]";
+pub const DONE: &str = "[data-testid=done]";
+/// What is said about a link that cannot be read, or about storage that cannot be used.
+pub const NOTE: &str = "[data-testid=note]";
+/// The caution that a lamp is over its rated voltage.
+pub const LAMP_CAUTION: &str = "[data-testid=lamp-caution]";
+/// The current, in the middle of the loop.
+pub const AMPS: &str = "[data-testid=result-amps]";
+/// The bar with the voltages across lamps and equipment, in this order.
+pub const VOLTAGES: &str = "[data-testid=voltage-bar]";
 
-/// An input, by the name of its field: `supply-volts`, `lamp-volts`, `lamp-watts`, `plate-volts`, `plate-watts`.
+/// One of the three cells of the comparison: `healthy`, `overloaded`, `shorted`.
+pub fn cell(condition: &str) -> String {
+    format!("[data-testid=cell-{condition}]")
+}
+
+/// An input, by the name of its field: `supply-volts`, `lamp-volts`, `lamp-watts`, `plate-volts`, `plate-watts`, …
 pub fn field(name: &str) -> String {
-    format!("[data-testid={name}]")
+    format!("[data-testid=field-{name}]")
 }
 
 /// The message beside a field.
 pub fn message(name: &str) -> String {
     format!("[data-testid=error-{name}]")
-}
-
-/// A number of the answer: `amps`, `bank-volts`, `load-volts`.
-pub fn answer(name: &str) -> String {
-    format!("[data-testid=answer-{name}]")
 }
 
 /// Opens the page and accepts the cautions.
@@ -53,10 +58,10 @@ pub fn enter(browser: &Browser, url: &str) -> Result<()> {
 /// When no answer comes.
 pub fn accept(browser: &Browser) -> Result<()> {
     let start = Instant::now();
-    while !browser.sees(&answer("amps"))? {
+    while !browser.sees(AMPS)? {
         if start.elapsed() > PATIENCE {
             // This says why.
-            return browser.see(&answer("amps"));
+            return browser.see(AMPS);
         }
         // The cautions stand in the HTML; until the program has started, a tap does nothing, and where they have
         // been accepted before, the program takes them away, maybe in the middle of the tap.
@@ -75,8 +80,12 @@ pub fn open_field(browser: &Browser, name: &str) -> Result<String> {
     let css = field(name);
     if !browser.sees(&css)? {
         close(browser)?;
-        let (part, _) = name.split_once('-').unwrap_or((name, ""));
-        browser.tap(&format!("[data-testid=part-{part}]"))?;
+        let part = match name.split_once('-') {
+            Some(("supply", _)) => "supply",
+            Some(("plate", _)) => "equipment",
+            _ => "bank",
+        };
+        browser.tap(&format!("[data-testid=edit-{part}]"))?;
         browser.see(&css)?;
     }
     Ok(css)
@@ -96,9 +105,9 @@ pub fn fill(browser: &Browser, name: &str, text: &str) -> Result<()> {
 /// # Errors
 /// When it stays open.
 pub fn close(browser: &Browser) -> Result<()> {
-    if browser.sees(CLOSE)? {
-        browser.tap(CLOSE)?;
-        browser.not_see(CLOSE)?;
+    if browser.sees(DONE)? {
+        browser.tap(DONE)?;
+        browser.not_see(DONE)?;
     }
     Ok(())
 }

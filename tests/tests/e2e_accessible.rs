@@ -3,7 +3,7 @@
 
 use anyhow::{Context, Result, ensure};
 use lampladder_tests::browser::Browser;
-use lampladder_tests::page::{self, ACCEPT, CAUTIONS, REMINDER};
+use lampladder_tests::page::{self, ACCEPT, CAUTIONS, OPEN_CAUTIONS};
 use lampladder_tests::{accessibility, surroundings};
 
 const SIZES: [(u32, u32); 2] = [(360, 640), (1280, 800)];
@@ -18,6 +18,10 @@ fn every_screen_passes_the_accessibility_checker_in_both_themes() -> Result<()> 
     look(&browser, "cautions")?;
     page::accept(&browser)?;
     look(&browser, "main")?;
+    browser.tap("[data-testid=tab-curve]")?;
+    browser.see("[data-testid=chart]")?;
+    look(&browser, "curve")?;
+    browser.tap("[data-testid=tab-expect]")?;
     for name in ["supply-volts", "lamp-watts", "plate-watts"] {
         let css = page::open_field(&browser, name)?;
         look(&browser, name)?;
@@ -27,7 +31,7 @@ fn every_screen_passes_the_accessibility_checker_in_both_themes() -> Result<()> 
         browser.fill(&css, "100")?;
         page::close(&browser)?;
     }
-    browser.tap(REMINDER)?;
+    browser.tap(OPEN_CAUTIONS)?;
     browser.see(CAUTIONS)?;
     look(&browser, "cautions-again")
 }

@@ -4,7 +4,7 @@ use anyhow::{Context, Result, ensure};
 use lampladder_core::link;
 use lampladder_core::setup::Setup;
 use lampladder_tests::browser::Browser;
-use lampladder_tests::page::{self, NOTICE, answer, message};
+use lampladder_tests::page::{self, AMPS, NOTE, message};
 use lampladder_tests::surroundings;
 use serde_json::json;
 
@@ -39,7 +39,7 @@ fn nonsense_in_a_field_is_answered_beside_it_and_stays_to_be_corrected() -> Resu
         browser.fill(&css, &good)?;
         browser.not_see(&message(name))?;
         page::close(&browser)?;
-        browser.see(&answer("amps"))?;
+        browser.see(AMPS)?;
     }
     no_complaints(&browser)
 }
@@ -49,11 +49,11 @@ fn a_lamp_for_another_voltage_is_cautioned() -> Result<()> {
     let site = surroundings::site()?;
     let browser = Browser::start()?;
     page::enter(&browser, &site.url())?;
-    browser.not_see(page::OVER_RATED)?;
+    browser.not_see(page::LAMP_CAUTION)?;
     page::fill(&browser, "lamp-volts", "12")?;
     page::fill(&browser, "lamp-watts", "20")?;
     page::close(&browser)?;
-    browser.see(page::OVER_RATED)?;
+    browser.see(page::LAMP_CAUTION)?;
     browser.picture("over-rated")?;
     no_complaints(&browser)
 }
@@ -71,8 +71,8 @@ fn a_link_that_cannot_be_read_says_so_and_leaves_what_was_there() -> Result<()> 
         browser.open("about:blank")?;
         browser.open(&format!("{}#{broken}", site.url()))?;
         let context = || format!("link `{}`", broken.get(..20).unwrap_or(broken));
-        browser.see(NOTICE).with_context(context)?;
-        browser.see(&answer("amps")).with_context(context)?;
+        browser.see(NOTE).with_context(context)?;
+        browser.see(AMPS).with_context(context)?;
         let css = page::open_field(&browser, "plate-watts")?;
         ensure!(browser.value(&css)?.starts_with("123"), "a bad link destroyed what was kept");
     }
@@ -98,8 +98,8 @@ fn storage_that_is_full_or_forbidden_only_costs_the_keeping() -> Result<()> {
         page::enter(&browser, &site.url()).with_context(|| format!("storage {name}"))?;
         page::fill(&browser, "plate-watts", "77")?;
         page::close(&browser)?;
-        browser.see(&answer("amps"))?;
-        browser.see(NOTICE).with_context(|| format!("storage {name}: nobody is told"))?;
+        browser.see(AMPS)?;
+        browser.see(NOTE).with_context(|| format!("storage {name}: nobody is told"))?;
         // The address still holds it all.
         browser.reload()?;
         page::accept(&browser)?;
@@ -117,14 +117,14 @@ fn a_number_is_read_as_people_write_it() -> Result<()> {
     page::enter(&browser, &site.url())?;
     page::fill(&browser, "plate-watts", "45")?;
     page::close(&browser)?;
-    let expected = browser.text(&answer("amps"))?;
+    let expected = browser.text(AMPS)?;
     page::fill(&browser, "plate-watts", "200")?;
     page::close(&browser)?;
-    ensure!(browser.text(&answer("amps"))? != expected, "the answer does not follow the field");
+    ensure!(browser.text(AMPS)? != expected, "the answer does not follow the field");
     for same in ["45 W", "45,0", " 45.00 ", "0,045 kW", "45000 mW"] {
         page::fill(&browser, "plate-watts", same)?;
         page::close(&browser)?;
-        let shown = browser.text(&answer("amps"))?;
+        let shown = browser.text(AMPS)?;
         ensure!(shown == expected, "`{same}` gives {shown}, `45` {expected}");
     }
     no_complaints(&browser)
