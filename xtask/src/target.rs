@@ -52,7 +52,7 @@ impl Route {
 
     /// Downloads what a build for `target` will compile: Trunk, told to fetch no tools, lets cargo fetch nothing either.
     pub(crate) fn fetch(self, target: &str) -> Result<()> {
-        run::run(self.cargo(target).args(["fetch", "--quiet", "--locked", "--target", target]))
+        run::run(self.cargo(target).args(["fetch", "--quiet", "--target", target]))
     }
 
     /// A cargo command for this route and target.
