@@ -16,6 +16,7 @@ pub fn finish(folder: &Path, template: &str) -> Result<usize> {
     let index = folder.join("index.html");
     let html = fs::read_to_string(&index).with_context(|| format!("{} cannot be read", index.display()))?;
     let (html, scripts) = externalise(&html)?;
+    let html = without_idle_integrity(&html);
     for script in &scripts {
         fs::write(folder.join(&script.name), &script.text)?;
     }
@@ -67,6 +68,24 @@ fn externalise(html: &str) -> Result<(String, Vec<Script>)> {
     Ok((out, scripts))
 }
 
+/// Takes the `integrity` of `<link rel="preload" … as="fetch">` away: browsers ignore it there, and warn on every visit.
+fn without_idle_integrity(html: &str) -> String {
+    let mut out = String::new();
+    let mut rest = html;
+    while let Some(start) = rest.find("<link ") {
+        let length = rest[start..].find('>').unwrap_or(rest.len() - start);
+        let (before, tag) = (&rest[..start], &rest[start..start + length]);
+        out.push_str(before);
+        rest = &rest[start + length..];
+        let idle = tag.contains("rel=\"preload\"") && tag.contains("as=\"fetch\"");
+        match tag.split_once(" integrity=\"").filter(|_| idle) {
+            Some((head, tail)) => out.extend([head, tail.split_once('"').map_or("", |(_, after)| after)]),
+            None => out.push_str(tag),
+        }
+    }
+    out + rest
+}
+
 const VERSION: &str = "const VERSION = \"unstamped\";";
 const FILES: &str = "const FILES = [];";
 
@@ -105,7 +124,7 @@ fn hash(bytes: &[u8]) -> u64 {
 
 #[cfg(test)]
 mod tests {
-    use super::{externalise, hash, worker};
+    use super::{externalise, hash, without_idle_integrity, worker};
 
     #[test]
     fn hash_agrees_with_the_published_test_vectors() {
@@ -129,6 +148,16 @@ mod tests {
             "{out}"
         );
         assert!(externalise("<script>never ends").is_err());
+    }
+
+    #[test]
+    fn integrity_goes_where_browsers_ignore_it_only() {
+        let style = "<link rel=\"stylesheet\" href=\"a.css\" integrity=\"x\">";
+        let wasm =
+            |integrity: &str| format!("<link rel=\"preload\" href=\"a.wasm\"{integrity} as=\"fetch\">");
+        let html = format!("<head>{style}{}</head>", wasm(" integrity=\"sha384-+/=\""));
+        assert_eq!(without_idle_integrity(&html), format!("<head>{style}{}</head>", wasm("")));
+        assert_eq!(without_idle_integrity("<link "), "<link ");
     }
 
     #[test]
