@@ -149,7 +149,7 @@ impl Bank {
 
     /// The bank at a voltage across the whole chain; beyond what melts a filament, the hottest point.
     pub fn at_volts(&self, volts: f64) -> BankPoint {
-        if volts <= 0.0 {
+        if volts.is_nan() || volts <= 0.0 {
             return BankPoint { volts: 0.0, amps: 0.0, hottest_kelvin: crate::tungsten::AMBIENT_KELVIN };
         }
         let span = Filament::ln_rise_span();
@@ -205,7 +205,7 @@ fn group_at_amps(group: &[Lamp], amps: f64) -> (f64, f64) {
         let point = first.at_amps(amps / group.len() as f64);
         return (point.volts(), point.rise);
     }
-    if amps <= 0.0 {
+    if amps.is_nan() || amps <= 0.0 {
         return (0.0, 0.0);
     }
     // Newton for all filaments at once: along their slopes, one common voltage brings the wanted current.

@@ -159,19 +159,21 @@ impl Filament {
         if ln_share > bend { rated + 0.49 * ln_share } else { rated + 0.49 * bend + 1.6 * (ln_share - bend) }
     }
 
-    /// The point at a voltage, or the hottest of the curve where the voltage would melt the filament.
+    /// The point at a voltage, or the hottest of the curve where the voltage would melt the filament; the cold one for
+    /// anything that is not above zero.
     pub fn at_volts(&self, volts: f64) -> FilamentPoint {
         let target = 2.0 * libm::log(volts);
-        self.search(volts / self.shape.volts, |point| {
+        self.search((volts / self.shape.volts).max(0.0), |point| {
             (target - libm::log(point.watts * point.ohms)) / (2.0 * point.volts_slope())
         })
     }
 
-    /// The point at a current, or the hottest of the curve where the current would melt the filament.
+    /// The point at a current, or the hottest of the curve where the current would melt the filament; the cold one for
+    /// anything that is not above zero.
     pub fn at_amps(&self, amps: f64) -> FilamentPoint {
         let target = 2.0 * libm::log(amps);
         let share = amps * self.shape.volts / self.shape.watts;
-        self.search(libm::pow(share, 1.85), |point| {
+        self.search(libm::pow(share.max(0.0), 1.85), |point| {
             (target - libm::log(point.watts / point.ohms)) / (2.0 * point.amps_slope())
         })
     }
