@@ -53,6 +53,9 @@ pub(crate) fn fit(start: Shape, deviations: [f64; 3], evidence: &Evidence<'_>) -
     // In units of the deviations, the prior is the identity matrix.
     let mut z = [0.0_f64; 3];
     let mut normal = identity();
+    // Stay where the shape is not clamped, or the slopes vanish and the step runs away.
+    let low_share = (Lamp::GAS_SHARE.0 - start.gas_share) / deviations[2];
+    let high_share = (Lamp::GAS_SHARE.1 - start.gas_share) / deviations[2] - DIFFERENCE;
     let place = |z: [f64; 3]| shifted(start, core::array::from_fn(|axis| z[axis] * deviations[axis]));
     for _ in 0..MOST_STEPS {
         normal = identity();
@@ -82,15 +85,11 @@ pub(crate) fn fit(start: Shape, deviations: [f64; 3], evidence: &Evidence<'_>) -
         for point in evidence.points {
             observe(&|filament| filament.at_volts(point.volts).amps(), point.amps, POINT_DEVIATION);
         }
-        let step = solve(&cholesky(&normal), gradient);
+        let step = bounded_step(&normal, gradient, (low_share - z[2], high_share - z[2]));
         for axis in 0..3 {
             // A stride of at most two deviations keeps far-off evidence from overshooting.
             z[axis] += step[axis].clamp(-2.0, 2.0);
         }
-        // Stay where the shape is not clamped, or the slopes vanish and the step runs away.
-        let low_share = (Lamp::GAS_SHARE.0 - start.gas_share) / deviations[2];
-        let high_share = (Lamp::GAS_SHARE.1 - start.gas_share) / deviations[2];
-        z[2] = z[2].clamp(low_share, high_share - DIFFERENCE);
         if step.iter().all(|value| value.abs() < CONVERGED) {
             break;
         }
@@ -120,6 +119,26 @@ fn cholesky(matrix: &[[f64; 3]; 3]) -> [[f64; 3]; 3] {
         }
     }
     factor
+}
+
+/// The Gauss-Newton step with the last axis kept between two bounds: where it would pass one it goes up to it, and the
+/// others take the best step that goes with that.
+fn bounded_step(normal: &[[f64; 3]; 3], mut gradient: [f64; 3], (low, high): (f64, f64)) -> [f64; 3] {
+    let free = solve(&cholesky(normal), gradient);
+    // Not `clamp`: with an exact share both bounds can lie on one side of zero by rounding.
+    let held = free[2].min(high).max(low);
+    if held == free[2] {
+        return free;
+    }
+    let mut matrix = *normal;
+    for axis in 0..2 {
+        gradient[axis] -= matrix[axis][2] * held;
+        matrix[axis][2] = 0.0;
+        matrix[2][axis] = 0.0;
+    }
+    matrix[2][2] = 1.0;
+    gradient[2] = held;
+    solve(&cholesky(&matrix), gradient)
 }
 
 /// Solves `L L' x = b`.
@@ -173,6 +192,22 @@ mod tests {
         let fitted = fit_to(&Evidence { cold_ohms: None, points: &[] });
         assert_eq!(fitted.shape, START);
         assert_eq!(fitted.spread[1][1], 80.0);
+    }
+
+    #[test]
+    fn a_share_at_its_bound_leaves_the_others_at_their_best() {
+        // Found at random: a gas share at its upper bound once dragged the temperature to where no point agreed.
+        let start = Shape { volts: 1.0, watts: 0.087, kelvin: 2750.0, gas_share: 0.499 };
+        let deviations = [0.046, 200.0, 0.21];
+        let truth = Filament::new(Shape { kelvin: 3127.0, gas_share: 0.5, ..start }, &STANDARD);
+        let points: [Point; 3] =
+            [0.5, 0.7, 0.07].map(|volts| Point { volts, amps: truth.at_volts(volts).amps() });
+        let off = |shape: Shape| -> f64 {
+            let filament = Filament::new(shape, &STANDARD);
+            points.iter().map(|p| libm::pow(filament.at_volts(p.volts).amps() / p.amps - 1.0, 2.0)).sum()
+        };
+        let fitted = fit(start, deviations, &Evidence { cold_ohms: None, points: &points });
+        assert!(off(fitted.shape) < off(start), "{} {}", off(fitted.shape), off(start));
     }
 
     #[test]

@@ -47,8 +47,11 @@ pub(crate) fn gas_share(fill: Fill, volts: f64, watts: f64) -> f64 {
         // Denser gas in a small capsule, on a hotter wire: half as much (design value, no source).
         Fill::Halogen => 0.5 * ordinary,
     };
-    gas + end_share(volts)
+    (gas + end_share(volts)).min(MOST_SHARE)
 }
+
+/// Greatest default of the gas share, short of what the model takes, so that its spread goes both ways.
+const MOST_SHARE: f64 = 0.4;
 
 /// Usual share of the input that the filament's ends lose to its leads at the rating, counted as gas loss.
 ///
