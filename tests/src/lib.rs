@@ -14,5 +14,6 @@ pub mod golden;
 pub mod lamps;
 pub mod numbers;
 pub mod page;
+pub mod random;
 pub mod reference;
 pub mod surroundings;

@@ -1,0 +1,128 @@
+//! Random lamps, banks, supplies, loads and plates for the laws.
+
+use lampladder_core::bank::Bank;
+use lampladder_core::condition::Condition;
+use lampladder_core::family::Family;
+use lampladder_core::lamp::{Fill, Lamp, LampSpec};
+use lampladder_core::load::{Draw, Impedance, Load, Rectifier, RectifierSpec};
+use lampladder_core::plate::Plate;
+use lampladder_core::supply::Supply;
+use proptest::prelude::*;
+use proptest::test_runner::Config;
+
+/// How many cases a law is tried on: `usual`, or `LAMPLADDER_CASES` for a long run.
+pub fn cases(usual: u32) -> Config {
+    let asked = std::env::var("LAMPLADDER_CASES").ok().and_then(|text| text.parse().ok());
+    // Failing cases belong into a named test of their own, not into a file beside this one.
+    Config { cases: asked.unwrap_or(usual), failure_persistence: None, ..Config::default() }
+}
+
+/// Evenly spread in the logarithm.
+pub fn log_uniform(low: f64, high: f64) -> impl Strategy<Value = f64> + Clone {
+    (low.ln()..high.ln()).prop_map(f64::exp)
+}
+
+/// Any lamp that can be described.
+pub fn any_lamp() -> impl Strategy<Value = Lamp> {
+    let rating = (log_uniform(1.0, 500.0), log_uniform(0.05, 5000.0));
+    let fill =
+        prop_oneof![Just(None), Just(Some(Fill::Gas)), Just(Some(Fill::Vacuum)), Just(Some(Fill::Halogen))];
+    let known = (prop::option::of(1500.0..3400.0), prop::option::of(0.0..0.5));
+    (rating, fill, known).prop_map(|((volts, watts), fill, (rated_kelvin, gas_share))| {
+        let spec = LampSpec { volts, watts, fill, rated_kelvin, gas_share, ..LampSpec::default() };
+        Lamp::from_spec(spec).expect("every number is in range")
+    })
+}
+
+/// A lamp for the mains, of a stock size or not.
+pub fn mains_lamp() -> impl Strategy<Value = Lamp> {
+    let watts = prop_oneof![
+        prop::sample::select(&[15.0, 25.0, 40.0, 60.0, 75.0, 100.0, 150.0, 200.0][..]),
+        log_uniform(5.0, 1000.0)
+    ];
+    (prop_oneof![Just(230.0), 200.0..260.0], watts)
+        .prop_map(|(volts, watts)| Lamp::new(volts, watts).expect("every number is in range"))
+}
+
+/// One to eight lamps of a kind, grouped at random.
+pub fn bank(lamp: impl Strategy<Value = Lamp> + Clone) -> impl Strategy<Value = Bank> {
+    prop::collection::vec(prop::collection::vec(lamp, 1..=4), 1..=3).prop_map(|mut groups| {
+        let mut left = Bank::MOST_LAMPS;
+        groups.retain_mut(|group| {
+            group.truncate(left);
+            left -= group.len();
+            !group.is_empty()
+        });
+        Bank::new(groups).expect("one to eight lamps")
+    })
+}
+
+/// A mains, 50 or 60 Hz, stiff or weak.
+pub fn mains() -> impl Strategy<Value = Supply> {
+    (80.0..250.0, prop_oneof![Just(50.0), Just(60.0)], prop_oneof![Just(0.0), log_uniform(0.01, 100.0)])
+        .prop_map(|(volts, hertz, ohms)| Supply::new(volts, hertz, ohms).expect("in range"))
+}
+
+/// A mains or a battery.
+pub fn supply() -> impl Strategy<Value = Supply> {
+    prop_oneof![3 => mains(), 1 => (10.0..250.0).prop_map(|volts| Supply::new(volts, 0.0, 0.0).expect("in range"))]
+}
+
+/// A constant-power draw behind a rectifier, that never stops by itself.
+pub fn hungry() -> impl Strategy<Value = Rectifier> {
+    let numbers = (log_uniform(0.01, 2000.0), prop_oneof![Just(0.0), log_uniform(0.01, 100.0)], 0.0..3.0);
+    numbers.prop_map(|(watts, series_ohms, diode_volts)| {
+        let draw = Draw::Watts { watts, start_volts: 1.0, stop_volts: 0.0, restart_seconds: 0.0 };
+        Rectifier::new(RectifierSpec { farads: 1e-4, series_ohms, diode_volts, draw, shunt_ohms: None })
+            .expect("in range")
+    })
+}
+
+/// A rectifier with any draw.
+pub fn rectifier() -> impl Strategy<Value = Rectifier> {
+    let draw = prop_oneof![
+        log_uniform(10.0, 1e6).prop_map(Draw::Ohms),
+        log_uniform(1e-3, 3.0).prop_map(Draw::Amps),
+        (log_uniform(0.1, 500.0), 60.0..200.0, 0.3..1.0).prop_map(|(watts, start_volts, share)| {
+            Draw::Watts { watts, start_volts, stop_volts: share * start_volts, restart_seconds: 0.1 }
+        }),
+    ];
+    let rest = (log_uniform(1e-6, 1e-2), 0.0..50.0, 0.0..5.0, prop::option::of(log_uniform(100.0, 1e6)));
+    (draw, rest).prop_map(|(draw, (farads, series_ohms, diode_volts, shunt_ohms))| {
+        Rectifier::new(RectifierSpec { farads, series_ohms, diode_volts, draw, shunt_ohms })
+            .expect("in range")
+    })
+}
+
+/// A linear load.
+pub fn impedance() -> impl Strategy<Value = Impedance> {
+    let reactance =
+        prop_oneof![Just(0.0), log_uniform(0.1, 1e5), log_uniform(0.1, 1e5).prop_map(|ohms| -ohms)];
+    (prop_oneof![Just(0.0), log_uniform(0.01, 1e6)], reactance)
+        .prop_map(|(ohms, reactance)| Impedance::new(ohms, reactance).expect("in range"))
+}
+
+/// Equipment from its plate, in any condition that its family has.
+pub fn equipment() -> impl Strategy<Value = (Plate, Condition, Load)> {
+    let rating = (prop_oneof![Just(230.0), 100.0..250.0], log_uniform(1.0, 2000.0));
+    (prop::sample::select(&Family::ALL[..]), rating, any::<prop::sample::Index>()).prop_map(
+        |(family, (volts, watts), index)| {
+            let plate = Plate::new(family, volts, watts, None).expect("in range");
+            let condition = *index.get(family.conditions());
+            let load = plate.load(condition, 1.0).expect("one of its own");
+            (plate, condition, load)
+        },
+    )
+}
+
+/// Any load.
+pub fn load() -> impl Strategy<Value = Load> {
+    prop_oneof![
+        1 => Just(Load::Short),
+        1 => Just(Load::Open),
+        3 => impedance().prop_map(Load::Impedance),
+        1 => mains_lamp().prop_map(|lamp| Load::Lamp(Box::new(lamp))),
+        4 => rectifier().prop_map(Load::Rectifier),
+        6 => equipment().prop_map(|(_, _, load)| load),
+    ]
+}
