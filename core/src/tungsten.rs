@@ -4,6 +4,8 @@
 //! cubic (F. N. Fritsch, R. E. Carlson, SIAM J. Numer. Anal. 17 (1980) 238, with the harmonic-mean slopes of
 //! F. N. Fritsch, J. Butland, SIAM J. Sci. Stat. Comput. 5 (1984) 300): no overshoot, continuous slope.
 
+use core::fmt;
+
 /// Ambient temperature, kelvin: where the tables and every cold lamp start.
 pub const AMBIENT_KELVIN: f64 = 300.0;
 
@@ -14,10 +16,17 @@ const STEP_KELVIN: f64 = 100.0;
 const ROWS: usize = 34;
 
 /// One property of tungsten against temperature.
-#[derive(Debug, Clone, PartialEq)]
+#[derive(Clone, PartialEq)]
 pub struct Table {
     values: [f64; ROWS],
     slopes: [f64; ROWS],
+}
+
+impl fmt::Debug for Table {
+    /// Only its ends: a lamp that prints itself should fit on a screen.
+    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        write!(f, "Table({} to {})", self.values[0], self.values[ROWS - 1])
+    }
 }
 
 impl Table {
