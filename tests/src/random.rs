@@ -45,7 +45,7 @@ pub fn mains_lamp() -> impl Strategy<Value = Lamp> {
 }
 
 /// One to eight lamps of a kind, grouped at random.
-pub fn bank(lamp: impl Strategy<Value = Lamp> + Clone) -> impl Strategy<Value = Bank> {
+pub fn bank(lamp: impl Strategy<Value = Lamp>) -> impl Strategy<Value = Bank> {
     prop::collection::vec(prop::collection::vec(lamp, 1..=4), 1..=3).prop_map(|mut groups| {
         let mut left = Bank::MOST_LAMPS;
         groups.retain_mut(|group| {
