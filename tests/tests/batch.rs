@@ -30,8 +30,8 @@ fn answers(input: &[u8]) -> Vec<Value> {
 }
 
 fn answers_to(requests: &[Value]) -> Vec<Value> {
-    let lines: String = requests.iter().map(|request| format!("{request}\n")).collect();
-    let found = answers(lines.as_bytes());
+    let lines: Vec<String> = requests.iter().map(Value::to_string).collect();
+    let found = answers(lines.join("\n").as_bytes());
     assert_eq!(found.len(), requests.len(), "one answer a line");
     found
 }
@@ -151,21 +151,15 @@ fn assert_all_finite(value: &Value) {
 }
 
 /// A request, the field that its answer must name, and a part of what it must say.
-fn bad_requests() -> Vec<(Value, &'static str, &'static str)> {
+type Bad = (Value, &'static str, &'static str);
+
+fn bad_lamps() -> Vec<Bad> {
     let lamp = |change: Value| {
         let mut lamp = json!({"volts": 230, "watts": 60});
         lamp.as_object_mut().expect("one").extend(change.as_object().expect("one").clone());
         json!({"id": 7, "ask": "lamp", "lamp": lamp})
     };
-    let steady = |bank: Value, load: Value| json!({"id": 7, "ask": "steady", "supply": {"volts": 230, "hertz": 50}, "bank": bank, "load": load});
     let good = json!({"volts": 230, "watts": 60});
-    let short = json!({"kind": "short"});
-    let fed = |supply: Value| json!({"id": 7, "ask": "steady", "supply": supply, "bank": [[{"volts": 230, "watts": 60}]], "load": {"kind": "short"}});
-    let rectifier = |change: Value| {
-        let mut load = json!({"kind": "rectifier", "farads": 1e-4, "series_ohms": 1, "diode_volts": 1.4, "draw": {"ohms": 100}});
-        load.as_object_mut().expect("one").extend(change.as_object().expect("one").clone());
-        json!({"id": 7, "ask": "steady", "supply": {"volts": 230, "hertz": 50}, "bank": [[good]], "load": load})
-    };
     vec![
         (lamp(json!({"watts": 0})), "lamp.watts", "not 0"),
         (lamp(json!({"watts": -60})), "lamp.watts", "not -60"),
@@ -202,6 +196,20 @@ fn bad_requests() -> Vec<(Value, &'static str, &'static str)> {
         (json!({"id": 7, "ask": "future"}), "ask", "one of"),
         (json!({"id": 7, "ask": 3}), "ask", "must be a text"),
         (json!({"id": 7}), "ask", "missing"),
+    ]
+}
+
+fn bad_circuits() -> Vec<Bad> {
+    let steady = |bank: Value, load: Value| json!({"id": 7, "ask": "steady", "supply": {"volts": 230, "hertz": 50}, "bank": bank, "load": load});
+    let good = json!({"volts": 230, "watts": 60});
+    let short = json!({"kind": "short"});
+    let fed = |supply: Value| json!({"id": 7, "ask": "steady", "supply": supply, "bank": [[{"volts": 230, "watts": 60}]], "load": {"kind": "short"}});
+    let rectifier = |change: Value| {
+        let mut load = json!({"kind": "rectifier", "farads": 1e-4, "series_ohms": 1, "diode_volts": 1.4, "draw": {"ohms": 100}});
+        load.as_object_mut().expect("one").extend(change.as_object().expect("one").clone());
+        json!({"id": 7, "ask": "steady", "supply": {"volts": 230, "hertz": 50}, "bank": [[good]], "load": load})
+    };
+    vec![
         (fed(json!({"volts": 0, "hertz": 50})), "supply.volts", "not 0"),
         (fed(json!({"volts": 230, "hertz": 5})), "supply.hertz", "not 5"),
         (fed(json!({"volts": 230, "hertz": 50, "ohms": -1})), "supply.ohms", "not -1"),
@@ -271,7 +279,7 @@ fn bad_requests() -> Vec<(Value, &'static str, &'static str)> {
 #[test]
 fn a_bad_line_names_its_field_and_the_next_is_served() {
     let good = json!({"id": "good", "ask": "glow", "kelvin": 1500});
-    let bad = bad_requests();
+    let bad = [bad_lamps(), bad_circuits()].concat();
     // A good line after every bad one.
     let requests: Vec<Value> = bad.iter().flat_map(|(request, ..)| [request.clone(), good.clone()]).collect();
     let found = answers_to(&requests);

@@ -13,6 +13,9 @@ use proptest::prelude::*;
 const KIRCHHOFF: f64 = 1e-9;
 const POWER: f64 = 1e-6;
 
+/// What two thousand midpoints of half a wave with two kinks leave over.
+const QUADRATURE: f64 = 3e-4;
+
 /// The answer; none where a lamp would burn out or the load has no meaning on this supply, which are refusals.
 fn solved(supply: &Supply, bank: &Bank, load: &Load) -> Option<Steady> {
     match steady::solve(supply, bank, load) {
@@ -104,8 +107,6 @@ proptest! {
         let Some(solved) = solved(&supply, &bank, &Load::Rectifier(rectifier)) else { return Ok(()) };
         for point in solved.equilibria.iter().filter(|point| point.amps > 0.0) {
             let wave = waveform(&supply, point, &rectifier);
-            /// Two thousand midpoints of half a wave with two kinks.
-            const QUADRATURE: f64 = 3e-4;
             prop_assert!((wave.amps / point.amps - 1.0).abs() < QUADRATURE, "{wave:?} {point:?}");
             prop_assert!((wave.volts / point.load_volts - 1.0).abs() < QUADRATURE, "{wave:?} {point:?}");
             prop_assert!((wave.watts / point.load_watts - 1.0).abs() < 2.0 * QUADRATURE, "{wave:?} {point:?}");
