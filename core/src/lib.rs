@@ -28,6 +28,7 @@ pub mod bank;
 mod calibrate;
 pub mod complex;
 pub mod condition;
+pub mod curve;
 mod defaults;
 pub mod detail;
 pub mod error;
