@@ -1,1 +1,59 @@
+//! The page of Lampladder: what a repairer types, and what core says to it, on a phone first.
+//!
+//! No physics here. [`bench`] is the one state and its pure reducer; [`browser`] is all that touches the browser;
+//! [`panels`], [`charts`] and [`parts`] draw; [`words`] has every text; [`mod@format`] turns numbers into text.
+//!
+//! # Names for tests
+//! Tests of the whole page find its parts by `data-testid`. They are kept stable:
+//!
+//! | name | what |
+//! |---|---|
+//! | `cautions`, `accept` | the cautions (in static/index.html) and the button under them |
+//! | `open-cautions`, `reminder`, `theme` | header; `theme` has `data-value` `auto`, `paper` or `dusk` |
+//! | `edit-supply`, `edit-bank`, `edit-equipment` | the parts of the loop |
+//! | `result-amps` | the current; `data-value`, `data-low`, `data-high` hold it in full |
+//! | `stale` | there while the result is not that of what is typed |
+//! | `voltage-bar`, `voltage-why` | the bar and its explanation |
+//! | `cell-healthy`, `cell-overloaded`, `cell-shorted` | with `data-amps`, `data-bank-volts`, `data-load-volts`, `data-glow` |
+//! | `advice`, `assumes`, `stale-note`, `lamp-caution` | the sentence to act on and what stands around it |
+//! | `life` | cells of lamp life in the details |
+//! | `note`, `dismiss`, `use-kept` | notes |
+//! | `sheet`, `done` | the editor |
+//! | `field-*`, `error-*`, `step-*-more`, `step-*-less` | `supply-volts`, `supply-hertz`, `supply-ohms`, `plate-volts`, `plate-watts`, `plate-power-factor`, `lamp-volts`, `lamp-watts`, `lamp-lumens`, `lamp-cold-ohms`, `point-0-volts`, `point-0-amps` |
+//! | `quick-volts-230`, `quick-hertz-50`, `quick-hertz-0`, `follow-supply` | one tap in the supply's editor |
+//! | `lamp-0-0` | the lamp of a group, in the bank's editor |
+//! | `add-parallel`, `add-series`, `remove-lamp` | |
+//! | `quick-watts-60`, `quick-lamp-volts-230` | one tap for a lamp |
+//! | `kind-ordinary`, `kind-halogen`, `kind-led`, `kind-compact-fluorescent`, `kind-carbon-filament`, `refusal` | kinds of lamp |
+//! | `fill-auto`, `fill-vacuum`, `fill-gas`, `add-point`, `remove-point-0`, `lamp-life` | more of a lamp |
+//! | `family-transformer-supply`, `family-heater`, `family-plain` | kinds of equipment |
+//! | `tab-expect`, `tab-curve`, `chart`, `crossings`, `bank-curve` | panels |
 
+pub mod advice;
+pub mod answers;
+pub mod app;
+pub mod bench;
+pub mod browser;
+pub mod charts;
+pub mod describe;
+pub mod draft;
+pub mod format;
+pub mod panels;
+pub mod parts;
+mod reading;
+pub mod start;
+pub mod step;
+pub mod words;
+
+use app::{App, AppProps};
+use browser::{cautions, theme, worker};
+
+/// Starts the page. Without the elements of static/index.html there is nothing to start.
+pub fn start() {
+    let Some(root) = cautions::element(cautions::APP) else { return };
+    let Some(bench) = start::bench() else { return };
+    theme::apply(bench.theme);
+    cautions::started();
+    yew::Renderer::<App>::with_root_and_props(root, AppProps { bench }).render();
+    worker::register();
+}

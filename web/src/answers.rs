@@ -1,0 +1,67 @@
+//! What core says to the last valid set-up: one prospect for each condition of the equipment, computed once.
+
+use lampladder_core::error::InputError;
+use lampladder_core::expect::{LampShown, Prospect, Shown, prospect};
+use lampladder_core::plate::Condition;
+use lampladder_core::setup::Setup;
+use lampladder_core::steady::SteadyError;
+
+use crate::draft::Place;
+
+/// One condition and what comes of it.
+pub type Answer = (Condition, Result<Prospect, SteadyError>);
+
+/// The answers to one set-up.
+#[derive(Debug, Clone, PartialEq)]
+pub struct Answers {
+    all: Vec<Answer>,
+}
+
+impl Answers {
+    /// Asks core about every condition of the equipment.
+    ///
+    /// # Errors
+    /// A set-up whose parts do not go together, such as a transformer on direct current.
+    pub fn of(setup: &Setup) -> Result<Self, InputError> {
+        let ask = |&condition: &Condition| (condition, prospect(setup, condition));
+        let all: Vec<Answer> = setup.plate.family().conditions().iter().map(ask).collect();
+        let refused = all.iter().find_map(|(_, answer)| match answer {
+            Err(SteadyError::Input(error)) => Some(*error),
+            _ => None,
+        });
+        refused.map_or(Ok(Self { all }), Err)
+    }
+
+    /// Every condition, likeliest first.
+    pub fn all(&self) -> &[Answer] {
+        &self.all
+    }
+
+    /// The answer for one condition.
+    pub fn get(&self, condition: Condition) -> Option<&Result<Prospect, SteadyError>> {
+        self.all.iter().find(|(which, _)| *which == condition).map(|(_, answer)| answer)
+    }
+
+    /// What lamp and meter show in a condition, if the circuit settles.
+    pub fn shown(&self, condition: Condition) -> Option<&Shown> {
+        self.get(condition)?.as_ref().ok()?.shown.as_ref()
+    }
+
+    /// The lamp that would burn out in a condition.
+    pub fn melting(&self, condition: Condition) -> Option<Place> {
+        match self.get(condition)? {
+            Err(SteadyError::FilamentMelts { group, lamp }) => Some(Place { group: *group, lamp: *lamp }),
+            _ => None,
+        }
+    }
+}
+
+/// The lamp whose filament is brightest against its own rating: the one to look at.
+pub fn brightest(shown: &Shown) -> Option<(Place, &LampShown)> {
+    let lamps = shown.lamps.iter().enumerate().flat_map(|(group, lamps)| {
+        lamps.iter().enumerate().map(move |(lamp, shown)| (Place { group, lamp }, shown))
+    });
+    lamps.reduce(|best, other| {
+        if other.1.glow.relative_luminance > best.1.glow.relative_luminance { other } else { best }
+    })
+}

@@ -1,0 +1,42 @@
+//! The cautions of static/index.html: they stand in front until accepted, and come back on request.
+//!
+//! The document's `data-stage` says which of the two is shown; the style sheets hide the other.
+
+use web_sys::{Document, Element};
+
+/// The element that the program is drawn in.
+pub const APP: &str = "app";
+/// The element for the button under the cautions.
+pub const FOOT: &str = "cautions-foot";
+/// The heading of the cautions.
+pub const TITLE: &str = "cautions-title";
+/// The line that says that the program is starting.
+const STARTING: &str = "starting";
+
+fn document() -> Option<Document> {
+    web_sys::window()?.document()
+}
+
+/// An element of static/index.html.
+pub fn element(id: &str) -> Option<Element> {
+    document()?.get_element_by_id(id)
+}
+
+/// Takes away the line that says that the program is starting.
+pub fn started() {
+    if let Some(line) = element(STARTING) {
+        line.remove();
+    }
+}
+
+/// Shows the cautions, or the bench.
+pub fn show(cautions: bool) {
+    let Some(root) = document().and_then(|document| document.document_element()) else { return };
+    let stage = if cautions { "cautions" } else { "bench" };
+    if root.get_attribute("data-stage").as_deref() != Some(stage) {
+        let _ = root.set_attribute("data-stage", stage);
+        if let Some(window) = web_sys::window() {
+            window.scroll_to_with_x_and_y(0.0, 0.0);
+        }
+    }
+}

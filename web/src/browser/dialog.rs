@@ -1,0 +1,39 @@
+//! Editors as dialogs: over the page on a phone, beside it on a wide screen.
+
+use web_sys::wasm_bindgen::JsCast;
+use web_sys::{Element, HtmlDialogElement};
+
+use super::window::Listener;
+
+/// Width from which an editor stands beside the loop, as in static/frame.css.
+const WIDE: f64 = 860.0;
+
+/// Opens a dialog; calls `closed` when the person closes it by a key or a gesture. Closes when dropped.
+#[derive(Debug)]
+pub struct Opened {
+    dialog: HtmlDialogElement,
+    _listener: Option<Listener>,
+}
+
+impl Opened {
+    /// Opens it.
+    pub fn new(element: &Element, closed: impl Fn() + 'static) -> Option<Self> {
+        let dialog: HtmlDialogElement = element.clone().dyn_into().ok()?;
+        if super::window::width() < WIDE {
+            dialog.show_modal().ok()?;
+        } else {
+            dialog.show();
+        }
+        let listener = Listener::new(dialog.clone().into(), "close", move |_| closed());
+        Some(Self { dialog, _listener: listener })
+    }
+}
+
+impl Drop for Opened {
+    fn drop(&mut self) {
+        self._listener = None;
+        if self.dialog.open() {
+            self.dialog.close();
+        }
+    }
+}

@@ -1,0 +1,13 @@
+//! Everything that touches the browser. Nothing else in this crate uses `web-sys`, but for drawing charts.
+//!
+//! A browser may refuse any of this (storage in private windows, workers on plain HTTP); each function then says so
+//! in its result or does nothing, and the page goes on.
+
+pub mod cautions;
+pub mod dialog;
+pub mod fragment;
+pub mod input;
+pub mod storage;
+pub mod theme;
+pub mod window;
+pub mod worker;

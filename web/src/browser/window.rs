@@ -1,0 +1,75 @@
+//! Events of the window and the next frame, as values that undo themselves when dropped.
+
+use wasm_bindgen::JsCast;
+use wasm_bindgen::closure::Closure;
+use web_sys::{Event, EventTarget};
+
+/// A listener that is removed when dropped.
+#[derive(Debug)]
+pub struct Listener {
+    target: EventTarget,
+    name: &'static str,
+    closure: Closure<dyn FnMut(Event)>,
+}
+
+impl Listener {
+    /// Calls `f` at every event `name` of `target`.
+    pub fn new(target: EventTarget, name: &'static str, f: impl FnMut(Event) + 'static) -> Option<Self> {
+        let closure = Closure::<dyn FnMut(Event)>::new(f);
+        target.add_event_listener_with_callback(name, closure.as_ref().unchecked_ref()).ok()?;
+        Some(Self { target, name, closure })
+    }
+
+    /// Calls `f` at every event `name` of the window.
+    pub fn on_window(name: &'static str, f: impl FnMut(Event) + 'static) -> Option<Self> {
+        Self::new(web_sys::window()?.into(), name, f)
+    }
+}
+
+impl Drop for Listener {
+    fn drop(&mut self) {
+        let callback = self.closure.as_ref().unchecked_ref();
+        // Nothing can be done, and nothing is lost, when a listener is already gone.
+        let _ = self.target.remove_event_listener_with_callback(self.name, callback);
+    }
+}
+
+/// Something to do before the next frame is drawn; undone when dropped before that.
+#[derive(Debug)]
+pub struct NextFrame {
+    number: i32,
+    _closure: Closure<dyn FnMut()>,
+}
+
+impl NextFrame {
+    /// Asks for it.
+    pub fn new(f: impl FnOnce() + 'static) -> Option<Self> {
+        let mut once = Some(f);
+        let closure = Closure::<dyn FnMut()>::new(move || {
+            if let Some(f) = once.take() {
+                f();
+            }
+        });
+        let number = web_sys::window()?.request_animation_frame(closure.as_ref().unchecked_ref()).ok()?;
+        Some(Self { number, _closure: closure })
+    }
+}
+
+impl Drop for NextFrame {
+    fn drop(&mut self) {
+        if let Some(window) = web_sys::window() {
+            let _ = window.cancel_animation_frame(self.number);
+        }
+    }
+}
+
+/// Width of the window, CSS pixels; 360 where it cannot be had.
+pub fn width() -> f64 {
+    let width = web_sys::window().and_then(|window| window.inner_width().ok()?.as_f64());
+    width.unwrap_or(360.0)
+}
+
+/// Device pixels in a CSS pixel.
+pub fn pixel_ratio() -> f64 {
+    web_sys::window().map_or(1.0, |window| window.device_pixel_ratio())
+}

@@ -1,0 +1,84 @@
+//! A set-up and its results as text in the words of a language, for several panels.
+
+use lampladder_core::expect::LampShown;
+use lampladder_core::lamp::Lamp;
+use lampladder_core::plate::{Family, OVERLOAD};
+use lampladder_core::setup::Setup;
+
+use crate::draft::Place;
+use crate::format::Numerals;
+use crate::words::{Alike, Assumed, Words};
+
+/// Volts and frequency of the supply.
+pub fn supply(setup: &Setup, words: &Words) -> String {
+    let volts = words.numerals.quantity(setup.supply.volts(), "V");
+    if setup.supply.is_direct() {
+        format!("{volts} {}", words.direct)
+    } else {
+        format!("{volts} {}", words.numerals.quantity(setup.supply.hertz(), "Hz"))
+    }
+}
+
+/// The bank as wired.
+pub fn bank(setup: &Setup, words: &Words) -> String {
+    let alike = |group: &Vec<Lamp>| {
+        let mut all: Vec<Alike> = Vec::new();
+        for lamp in group {
+            let watts = words.numerals.plain(lamp.rated_watts());
+            match all.iter_mut().find(|alike| alike.watts == watts) {
+                Some(alike) => alike.count += 1,
+                None => all.push(Alike { count: 1, watts }),
+            }
+        }
+        all
+    };
+    let groups: Vec<_> = setup.bank.groups().iter().map(alike).collect();
+    (words.bank)(&groups)
+}
+
+/// One lamp by its place and rating.
+pub fn lamp(setup: &Setup, place: Place, words: &Words) -> String {
+    let lamp = setup.bank.groups().get(place.group).and_then(|group| group.get(place.lamp));
+    let rating = lamp.map_or_else(String::new, |lamp| {
+        let volts = words.numerals.quantity(lamp.rated_volts(), "V");
+        format!("{volts} {}", words.numerals.quantity(lamp.rated_watts(), "W"))
+    });
+    (words.lamp)(place, setup.bank.lamp_count() == 1, &rating)
+}
+
+/// What the results take for granted.
+pub fn assumed(setup: &Setup, words: &Words) -> Assumed {
+    let Setup { plate, .. } = setup;
+    let family = plate.family();
+    let (least, most) = family.healthy_shares();
+    let numerals = words.numerals;
+    // A transformer's is what comes of its magnetising current, not an input.
+    let power_factor = (family == Family::Plain)
+        .then(|| plate.power_factor().map_or((family.usual_power_factor(), false), |value| (value, true)));
+    Assumed {
+        supply: supply(setup, words),
+        bank: bank(setup, words),
+        family: (words.family)(family).name,
+        plate_volts: numerals.quantity(plate.volts(), "V"),
+        plate_watts: numerals.quantity(plate.watts(), "W"),
+        shares: format!("{}\u{2013}{}", numerals.fixed(least * 100.0, 0), numerals.percent(most)),
+        power_factor: power_factor.map(|(value, printed)| (numerals.plain(value), printed)),
+        overload: numerals.plain(OVERLOAD),
+    }
+}
+
+/// A lamp's life as a range of ratios.
+pub fn life(lamp: &LampShown, words: &Words) -> String {
+    let (least, most) = lamp.life;
+    // Core cuts the ratio at a thousand.
+    if most >= 1000.0 {
+        (words.life_over)(&words.numerals.ratio(least))
+    } else {
+        (words.life)(&words.numerals.ratio(least), &words.numerals.ratio(most))
+    }
+}
+
+/// A number in full, for whoever reads the page by program.
+pub fn full(value: f64) -> String {
+    Numerals { decimal: '.' }.fixed(value, 9).replace('\u{2212}', "-")
+}

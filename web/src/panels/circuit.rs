@@ -1,0 +1,202 @@
+//! The circuit as what it is: one closed loop of supply, lamps and equipment. Every part of it is a button.
+
+use lampladder_core::plate::Condition;
+use yew::{Html, function_component, html};
+
+use super::{PanelProps, send};
+use crate::bench::{Bench, Msg, Part};
+use crate::describe;
+use crate::parts::svg::n;
+use crate::parts::well::{Filament, Well, well};
+use crate::parts::picture;
+
+/// Heights of the drawing, user units; static/circuit.css has the same figures for the buttons on it.
+struct Plan {
+    class: &'static str,
+    bank_height: f64,
+    height: f64,
+    /// Of supply and equipment.
+    centre: f64,
+}
+
+/// Top edge of the bank.
+const TOP: f64 = 3.0;
+/// The drawing's width, and the bank's middle.
+const WIDTH: f64 = 360.0;
+const MIDDLE: f64 = 180.0;
+/// Where the bank's room begins and ends.
+const BANK_WIDTH: f64 = 184.0;
+/// Where supply and equipment stand.
+const SUPPLY_X: f64 = 54.0;
+const LOAD_X: f64 = 306.0;
+
+fn plan(rows: usize) -> Plan {
+    match rows {
+        0 | 1 => Plan { class: "loop loop-1", bank_height: 72.0, height: 190.0, centre: 106.0 },
+        2 => Plan { class: "loop loop-2", bank_height: 92.0, height: 212.0, centre: 122.0 },
+        _ => Plan { class: "loop loop-3", bank_height: 116.0, height: 236.0, centre: 138.0 },
+    }
+}
+
+/// The loop.
+#[function_component]
+pub fn Circuit(props: &PanelProps) -> Html {
+    let bench = &*props.bench;
+    let words = bench.words();
+    let rows = bench.setup.bank.groups().iter().map(Vec::len).max().unwrap_or(1);
+    let plan = plan(rows);
+    let supply = describe::supply(&bench.setup, words);
+    let bank = describe::bank(&bench.setup, words);
+    let watts = words.numerals.quantity(bench.setup.plate.watts(), "W");
+    let part = |part: Part, class: &'static str, testid: &'static str, shown: &str, heard: &str| {
+        html! {
+            <button type="button" {class} data-testid={testid} aria-label={(words.change)(part, heard)}
+                aria-expanded={if bench.open == Some(part) { "true" } else { "false" }}
+                onclick={send(&props.bench, Msg::Open(part))}>
+                <span class="tag">{ shown }</span>
+            </button>
+        }
+    };
+    let volts = words.numerals.quantity(bench.setup.supply.volts(), "V");
+    let family = (words.family)(bench.setup.plate.family()).name;
+    html! {
+        <section class={plan.class} aria-label={(words.circuit)(&supply, &bank, &watts)}>
+            <svg viewBox={format!("0 0 {} {}", n(WIDTH), n(plan.height))} aria-hidden="true" focusable="false">
+                { wires(&plan) }
+                { supply_sign(&plan, bench.setup.supply.is_direct()) }
+                { equipment(&plan, bench) }
+                { bank_drawing(&plan, bench) }
+            </svg>
+            { part(Part::Supply, "part part-supply", "edit-supply", &volts, &supply) }
+            { part(Part::Bank, "part part-bank", "edit-bank", &bank, &bank) }
+            { part(Part::Equipment, "part part-load", "edit-equipment", &watts, &format!("{family}, {watts}")) }
+            { reading(bench) }
+        </section>
+    }
+}
+
+/// The answer, in the middle of the loop.
+fn reading(bench: &Bench) -> Html {
+    let words = bench.words();
+    let shown = bench.answers.shown(bench.condition);
+    let condition = (words.if_condition)(bench.condition);
+    let testid = "result-amps";
+    html! {
+        <p class="reading">
+            if let Some(shown) = shown {
+                <b data-testid={testid} data-value={describe::full(shown.amps.value)}
+                    data-low={describe::full(shown.amps.low)} data-high={describe::full(shown.amps.high)}>
+                    { words.numerals.value(&shown.amps, "A") }
+                </b>
+                <span>{ words.numerals.range(&shown.amps, "A") }</span>
+            } else {
+                <b data-testid={testid}>{ words.none }</b>
+            }
+            <span class={if bench.condition == Condition::Healthy { "" } else { "alarm" }}>{ condition }</span>
+            if bench.is_stale() { <span class="stale-mark" data-testid="stale">{ words.stale_mark }</span> }
+        </p>
+    }
+}
+
+fn wires(plan: &Plan) -> Html {
+    let top = TOP + plan.bank_height / 2.0;
+    let bottom = plan.height - 12.0;
+    let path = format!(
+        "M {sx} {centre} V {t14} a 14 14 0 0 1 14 -14 H {lx14} a 14 14 0 0 1 14 14 V {b14} a 14 14 0 0 1 -14 14 H {sx14} \
+         a 14 14 0 0 1 -14 -14 Z",
+        sx = n(SUPPLY_X),
+        centre = n(plan.centre),
+        t14 = n(top + 14.0),
+        lx14 = n(LOAD_X - 14.0),
+        b14 = n(bottom - 14.0),
+        sx14 = n(SUPPLY_X + 14.0),
+    );
+    let arrow = format!("M {} {} l 11 -5.5 v 11 z", n(MIDDLE - 5.0), n(bottom));
+    html! {
+        <>
+            <path class="wire" d={path} />
+            <path class="arrow" d={arrow} />
+        </>
+    }
+}
+
+fn supply_sign(plan: &Plan, direct: bool) -> Html {
+    let (x, y) = (SUPPLY_X, plan.centre);
+    let sign = if direct {
+        format!("M {a} {y1} h 30 M {a} {y2} h 7 m 4.5 0 h 7 m 4.5 0 h 7", a = n(x - 15.0), y1 = n(y - 9.0), y2 = n(y - 1.0))
+    } else {
+        format!("M {} {} q 8 -17 16 0 t 16 0", n(x - 16.0), n(y - 4.0))
+    };
+    let top = TOP + plan.bank_height / 2.0;
+    html! {
+        <>
+            <circle class="body" cx={n(x)} cy={n(y)} r="31" />
+            <path class="wire" d={sign} />
+            // The lamps belong in the line conductor; a direct source has a plus there.
+            <text class="terminal" x={n(x - 12.0)} y={n(top + 15.0)}>{ if direct { "+" } else { "L" } }</text>
+            <text class="terminal" x={n(x - 12.0)} y={n(plan.height - 14.0)}>{ if direct { "−" } else { "N" } }</text>
+        </>
+    }
+}
+
+fn equipment(plan: &Plan, bench: &Bench) -> Html {
+    let (x, y) = (LOAD_X, plan.centre);
+    html! {
+        <>
+            <rect class="body" x={n(x - 39.0)} y={n(y - 33.0)} width="78" height="66" rx="12" />
+            <g transform={format!("translate({} {})", n(x - 27.0), n(y - 27.0))}>
+                <g transform="scale(1.12)">{ picture::family(bench.setup.plate.family()) }</g>
+            </g>
+        </>
+    }
+}
+
+fn bank_drawing(plan: &Plan, bench: &Bench) -> Html {
+    let groups = bench.setup.bank.groups();
+    let states = bench.answers.shown(bench.condition).map(|shown| &shown.lamps);
+    let melting = bench.answers.melting(bench.condition);
+    #[expect(clippy::cast_precision_loss, reason = "at most eight groups of eight lamps")]
+    let count = |number: usize| number as f64;
+    let columns = count(groups.len());
+    let gap = if columns > 3.0 { 5.0 } else { 12.0 };
+    let width = ((BANK_WIDTH - gap * (columns - 1.0)) / columns).min(100.0);
+    let left = MIDDLE - (width * columns + gap * (columns - 1.0)) / 2.0;
+    let draw_group = |(column, group): (usize, &Vec<lampladder_core::lamp::Lamp>)| {
+        let rows = count(group.len());
+        let x = left + count(column) * (width + gap);
+        let inset = if group.len() > 1 { (width * 0.08).min(8.0) } else { 0.0 };
+        let between = if rows > 4.0 { 3.0 } else { 5.0 };
+        let height = ((plan.bank_height - between * (rows - 1.0)) / rows).min(72.0);
+        let top = TOP + (plan.bank_height - height * rows - between * (rows - 1.0)) / 2.0;
+        let middle = |row: f64| top + row * (height + between) + height / 2.0;
+        let (first, last) = (middle(0.0), middle(rows - 1.0));
+        let rails = format!("M {a} {first} V {last} M {b} {first} V {last}", a = n(x), b = n(x + width), first = n(first), last = n(last));
+        // The loop's own wire must not shine through between the lamps.
+        html! {
+            <g>
+                if group.len() > 1 {
+                    <rect class="blank" x={n(x)} y={n(first)} width={n(width)} height={n(last - first)} />
+                    <path class="wire" d={rails} />
+                }
+                { for (0..group.len()).map(|row| {
+                    let y = top + count(row) * (height + between);
+                    let filament = match states.and_then(|states| states.get(column)?.get(row)) {
+                        Some(lamp) => Filament::Glowing(lamp.glow),
+                        None if melting.is_some_and(|at| at.group == column && at.lamp == row) => Filament::Broken,
+                        None => Filament::Unknown,
+                    };
+                    let at = Well { x: x + inset, y, width: width - 2.0 * inset, height };
+                    html! {
+                        <>
+                            if group.len() > 1 {
+                                <path class="wire" d={format!("M {} {} H {}", n(x), n(y + height / 2.0), n(x + width))} />
+                            }
+                            { well(&format!("loop-{column}-{row}"), at, filament) }
+                        </>
+                    }
+                }) }
+            </g>
+        }
+    };
+    html! { { for groups.iter().enumerate().map(draw_group) } }
+}

@@ -1,0 +1,134 @@
+//! A lamp in its dark well, glowing as core says it would: the one saturated thing on the screen.
+
+use lampladder_core::glow::{Glow, GlowWord};
+use yew::{Html, html};
+
+use super::svg::{mix, n, rgb};
+
+/// Where a well lies, user units.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub struct Well {
+    /// Left edge.
+    pub x: f64,
+    /// Top edge.
+    pub y: f64,
+    /// Width.
+    pub width: f64,
+    /// Height.
+    pub height: f64,
+}
+
+/// What the filament does.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub enum Filament {
+    /// It glows (or not) like this.
+    Glowing(Glow),
+    /// It has melted.
+    Broken,
+    /// Nothing is known.
+    Unknown,
+}
+
+const WHITE: [u8; 3] = [255, 250, 240];
+/// A cold wire in the dark, still to be seen.
+const COLD: [u8; 3] = [118, 108, 96];
+const DARK: [u8; 3] = [12, 10, 8];
+
+/// A well with a lamp in it; `id` must be unique on the page.
+pub fn well(id: &str, at: Well, filament: Filament) -> Html {
+    let Well { x, y, width, height } = at;
+    let corner = (height * 0.2).min(width * 0.2).min(14.0);
+    html! {
+        <g>
+            <rect class="well" x={n(x)} y={n(y)} width={n(width)} height={n(height)} rx={n(corner)} />
+            { halo(id, at, corner, filament) }
+            { coil(at, filament) }
+        </g>
+    }
+}
+
+/// Brightness for the eye, 0 to 1: core's tone curve, the fourth root of luminance.
+fn brightness(glow: &Glow) -> f64 {
+    if glow.word == GlowWord::Dark { 0.0 } else { glow.relative_luminance.max(0.0).sqrt().sqrt().min(1.0) }
+}
+
+fn halo(id: &str, at: Well, corner: f64, filament: Filament) -> Html {
+    let Filament::Glowing(glow) = filament else { return Html::default() };
+    let bright = brightness(&glow);
+    if bright <= 0.0 {
+        return Html::default();
+    }
+    let Well { x, y, width, height } = at;
+    let narrow = width.min(height);
+    let reach = (narrow * (0.32 + 0.5 * bright)).max(width.max(height) * 0.62 * bright * bright);
+    let hot = mix(glow.srgb, WHITE, 0.15 + 0.8 * bright * bright);
+    let deep = mix(glow.srgb, DARK, 0.35 * (1.0 - bright));
+    let core = (0.05 + 0.3 * bright * bright).min(0.4);
+    let name = format!("glow-{id}");
+    let fill = format!("url(#{name})");
+    // From 0 to 1 as a whole number of per cent.
+    let percent = |share: f64| n(share * 100.0) + "%";
+    html! {
+        <>
+            <defs>
+                <radialGradient id={name} gradientUnits="userSpaceOnUse"
+                    cx={n(x + width / 2.0)} cy={n(y + height / 2.0)} r={n(reach)}>
+                    <stop offset="0%" stop-color={rgb(hot)} />
+                    <stop offset={percent(core)} stop-color={rgb(mix(glow.srgb, hot, 0.35))} stop-opacity="0.96" />
+                    <stop offset={percent(core + 0.18)} stop-color={rgb(glow.srgb)}
+                        stop-opacity={percent(0.5 + 0.3 * bright)} />
+                    <stop offset={percent(core + 0.42)} stop-color={rgb(deep)} stop-opacity={percent(0.16 + 0.22 * bright)} />
+                    <stop offset="100%" stop-color={rgb(deep)} stop-opacity="0" />
+                </radialGradient>
+            </defs>
+            <rect x={n(x + 1.0)} y={n(y + 1.0)} width={n(width - 2.0)} height={n(height - 2.0)} rx={n(corner)} {fill} />
+        </>
+    }
+}
+
+/// The filament between its supports.
+fn coil(at: Well, filament: Filament) -> Html {
+    let Well { x, y, width, height } = at;
+    let (cx, cy) = (x + width / 2.0, y + height / 2.0);
+    let size = width.min(height * 1.35);
+    let half = size * 0.2;
+    let turn = half / 3.0;
+    let rise = turn * 2.2;
+    let colour = match filament {
+        Filament::Glowing(glow) => {
+            let bright = brightness(&glow);
+            if bright > 0.0 { mix(glow.srgb, WHITE, 0.35 + 0.65 * bright) } else { COLD }
+        }
+        Filament::Broken | Filament::Unknown => COLD,
+    };
+    let loops = |count: u8| {
+        let arc = format!(" q {} {} {} 0 t {} 0", n(turn * 0.5), n(-rise), n(turn), n(turn));
+        arc.repeat(usize::from(count))
+    };
+    let broken = filament == Filament::Broken;
+    let first = format!("M {} {}{}", n(cx - half), n(cy + turn * 0.4), loops(if broken { 1 } else { 3 }));
+    let second = format!("M {} {}{}", n(cx + half - 2.0 * turn), n(cy + turn * 1.4), loops(1));
+    let foot = y + height - (height * 0.06).max(1.0);
+    let supports = format!(
+        "M {a} {top} C {a} {mid}, {b} {mid}, {b} {foot} M {c} {top} C {c} {mid}, {d} {mid}, {d} {foot}",
+        a = n(cx - half),
+        b = n(cx - half * 0.35),
+        c = n(cx + half),
+        d = n(cx + half * 0.35),
+        top = n(cy + turn * 0.4),
+        mid = n(cy + height * 0.22),
+        foot = n(foot),
+    );
+    let stroke = n((size * 0.03).clamp(1.2, 3.2));
+    html! {
+        <g fill="none" stroke-linecap="round">
+            if height >= 40.0 {
+                <path class="support" d={supports} stroke-width="1.2" />
+            }
+            <path d={first} stroke={rgb(colour)} stroke-width={stroke.clone()} />
+            if broken {
+                <path d={second} stroke={rgb(colour)} stroke-width={stroke} />
+            }
+        </g>
+    }
+}

@@ -1,0 +1,153 @@
+//! The reading of what was typed: a set-up, or what is wrong beside which field.
+
+use lampladder_core::bank::Bank;
+use lampladder_core::error::{Field, InputError};
+use lampladder_core::lamp::{Lamp, LampSpec, Point};
+use lampladder_core::plate::Plate;
+use lampladder_core::quantity;
+use lampladder_core::setup::Setup;
+use lampladder_core::supply::Supply;
+
+use crate::draft::{Draft, Fault, LampPart, Place, Slot};
+
+impl Draft {
+    /// The set-up that was typed.
+    ///
+    /// # Errors
+    /// Every field that cannot be read, with the reason.
+    pub fn read(&self) -> Result<Setup, Vec<(Slot, Fault)>> {
+        let mut reading = Reading { draft: self, faults: Vec::new() };
+        let supply = reading.supply();
+        let bank = reading.bank();
+        let plate = reading.plate();
+        match (supply, bank, plate) {
+            (Some(supply), Some(bank), Some(plate)) if reading.faults.is_empty() => {
+                Ok(Setup { supply, bank, plate })
+            }
+            _ => Err(reading.faults),
+        }
+    }
+}
+
+/// Gathers all faults, so that each shows beside its field at once.
+struct Reading<'a> {
+    draft: &'a Draft,
+    faults: Vec<(Slot, Fault)>,
+}
+
+impl Reading<'_> {
+    fn number(&mut self, slot: Slot) -> Option<f64> {
+        let read = quantity::parse(self.draft.text(slot), slot.field());
+        read.map_err(|error| self.faults.push((slot, Fault::Text(error)))).ok()
+    }
+
+    /// An empty field is an answer, too.
+    fn optional(&mut self, slot: Slot) -> Option<Option<f64>> {
+        if self.draft.text(slot).trim().is_empty() { Some(None) } else { self.number(slot).map(Some) }
+    }
+
+    fn refused(&mut self, slot: Slot, error: InputError) {
+        self.faults.push((slot, Fault::Number(error)));
+    }
+
+    fn supply(&mut self) -> Option<Supply> {
+        let volts = self.number(Slot::SupplyVolts);
+        let hertz = self.number(Slot::SupplyHertz);
+        let ohms = self.optional(Slot::SupplyOhms);
+        let slot = |error: &InputError| match error.field() {
+            Field::Hertz => Slot::SupplyHertz,
+            Field::Ohms => Slot::SupplyOhms,
+            _ => Slot::SupplyVolts,
+        };
+        Supply::new(volts?, hertz?, ohms?.unwrap_or(0.0))
+            .map_err(|error| self.refused(slot(&error), error))
+            .ok()
+    }
+
+    fn plate(&mut self) -> Option<Plate> {
+        let volts = self.number(Slot::PlateVolts);
+        let watts = self.number(Slot::PlateWatts);
+        let power_factor = self.optional(Slot::PlatePowerFactor);
+        let slot = |error: &InputError| match error.field() {
+            Field::Watts => Slot::PlateWatts,
+            Field::PowerFactor => Slot::PlatePowerFactor,
+            _ => Slot::PlateVolts,
+        };
+        Plate::new(self.draft.family, volts?, watts?, power_factor?)
+            .map_err(|error| self.refused(slot(&error), error))
+            .ok()
+    }
+
+    fn bank(&mut self) -> Option<Bank> {
+        let mut groups = Vec::new();
+        for (group, lamps) in self.draft.groups.iter().enumerate() {
+            let mut read = Vec::new();
+            for lamp in 0..lamps.len() {
+                read.extend(self.lamp(Place { group, lamp }));
+            }
+            groups.push(read);
+        }
+        Bank::new(groups).ok()
+    }
+
+    fn lamp(&mut self, place: Place) -> Option<Lamp> {
+        let draft = self.draft.lamp(place)?;
+        let slot = |part| Slot::Lamp(place, part);
+        let volts = self.number(slot(LampPart::Volts));
+        let watts = self.number(slot(LampPart::Watts));
+        let lumens = self.optional(slot(LampPart::Lumens));
+        let cold_ohms = self.optional(slot(LampPart::ColdOhms));
+        let points: Vec<_> = (0..draft.points.len())
+            .map(|index| {
+                let volts = self.number(slot(LampPart::PointVolts(index)));
+                let amps = self.number(slot(LampPart::PointAmps(index)));
+                Some(Point { volts: volts?, amps: amps? })
+            })
+            .collect();
+        let spec = LampSpec {
+            volts: volts?,
+            watts: watts?,
+            fill: draft.fill,
+            lumens: lumens?,
+            cold_ohms: cold_ohms?,
+            points: Vec::new(),
+            rated_kelvin: draft.rated_kelvin,
+            gas_share: draft.gas_share,
+        };
+        // The points one by one: core names volts or amperes, and we have to know of which point.
+        let faults = self.faults.len();
+        for (index, point) in points.iter().enumerate() {
+            let Some(point) = point else { continue };
+            if let Err(error) = Lamp::from_spec(LampSpec { points: vec![*point], ..spec.clone() })
+                && let Some(part) = part_of_point(index, &error)
+                && Lamp::from_spec(spec.clone()).is_ok()
+            {
+                self.refused(slot(part), error);
+            }
+        }
+        if self.faults.len() > faults {
+            return None;
+        }
+        let points = points.into_iter().collect::<Option<Vec<_>>>()?;
+        Lamp::from_spec(LampSpec { points, ..spec })
+            .map_err(|error| self.refused(slot(part_of(&error)), error))
+            .ok()
+    }
+}
+
+const fn part_of_point(index: usize, error: &InputError) -> Option<LampPart> {
+    match error.field() {
+        Field::Volts => Some(LampPart::PointVolts(index)),
+        Field::Amps => Some(LampPart::PointAmps(index)),
+        _ => None,
+    }
+}
+
+const fn part_of(error: &InputError) -> LampPart {
+    match error.field() {
+        Field::Watts => LampPart::Watts,
+        Field::Lumens => LampPart::Lumens,
+        Field::ColdOhms => LampPart::ColdOhms,
+        _ => LampPart::Volts,
+    }
+}

@@ -1,0 +1,94 @@
+//! What the page opens with: the address first, then what was kept on this phone, then an example.
+
+use lampladder_core::link::{self, LinkError};
+use lampladder_core::setup::Setup;
+
+use crate::bench::{Bench, Note};
+use crate::browser::{fragment, storage, theme};
+
+/// The set-up that was kept on this phone, if there is one that can be read.
+pub fn kept() -> Option<Setup> {
+    link::decode(&storage::read(storage::SETUP)?).ok()
+}
+
+/// The first state.
+pub fn bench() -> Option<Bench> {
+    let mut bench = opened(fragment::read().as_deref(), storage::read(storage::SETUP).as_deref())?;
+    bench.theme = theme::kept();
+    if storage::has_for_visit(storage::ACCEPTED) {
+        bench.accepted = true;
+        bench.cautions = false;
+    }
+    Some(bench)
+}
+
+/// The state for an address and a kept text; bad ones fall back with a note and stay where they are.
+pub fn opened(address: Option<&str>, kept: Option<&str>) -> Option<Bench> {
+    let open = |text: &str| {
+        let setup = link::decode(text)?;
+        Bench::with(setup).map_err(LinkError::Refused)
+    };
+    let mut notes = Vec::new();
+    let from_link = address.and_then(|text| open(text).map_err(|error| notes.push(Note::BadLink(error))).ok());
+    let from_kept = kept.and_then(|text| {
+        // What is kept and bad is no news while a good link is open; it stays as it is all the same.
+        open(text).map_err(|error| if from_link.is_none() { notes.push(Note::BadKept(error)) }).ok()
+    });
+    if let (Some(link), Some(kept)) = (&from_link, &from_kept)
+        && link.setup != kept.setup
+    {
+        notes.push(Note::FromLink);
+    }
+    let mut bench = match from_link.or(from_kept) {
+        Some(bench) => bench,
+        None => Bench::with(Setup::example().ok()?).ok()?,
+    };
+    bench.notes = notes;
+    Some(bench)
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    fn link_of(volts: f64) -> String {
+        let mut setup = Setup::example().expect("in range");
+        setup.supply = lampladder_core::supply::Supply::new(volts, 50.0, 0.0).expect("in range");
+        link::encode(&setup)
+    }
+
+    fn volts(bench: &Bench) -> f64 {
+        bench.setup.supply.volts()
+    }
+
+    #[test]
+    fn the_address_comes_before_what_was_kept_and_that_before_the_example() {
+        let (first, second) = (link_of(120.0), link_of(110.0));
+        let opened = |address, kept| super::opened(address, kept).expect("opens");
+        let both = opened(Some(&first), Some(&second));
+        assert_eq!((volts(&both), both.notes.as_slice()), (120.0, [Note::FromLink].as_slice()));
+        assert!(opened(Some(&first), Some(&first)).notes.is_empty());
+        assert_eq!(volts(&opened(None, Some(&second))), 110.0);
+        let none = opened(None, None);
+        assert_eq!((volts(&none), none.notes.len()), (230.0, 0));
+    }
+
+    #[test]
+    fn bad_links_fall_back_and_say_so() {
+        let good = link_of(110.0);
+        for (bad, error) in [("9zzz", LinkError::Newer), ("junk", LinkError::Damaged), ("1", LinkError::Damaged)] {
+            let bench = opened(Some(bad), Some(&good)).expect("opens");
+            assert_eq!((volts(&bench), bench.notes.as_slice()), (110.0, [Note::BadLink(error)].as_slice()));
+            let bench = opened(None, Some(bad)).expect("opens");
+            assert_eq!((volts(&bench), bench.notes.as_slice()), (230.0, [Note::BadKept(error)].as_slice()));
+        }
+    }
+
+    #[test]
+    fn a_link_whose_parts_do_not_go_together_is_refused() {
+        let mut setup = Setup::example().expect("in range");
+        setup.supply = lampladder_core::supply::Supply::new(110.0, 0.0, 0.0).expect("in range");
+        let bench = opened(Some(&link::encode(&setup)), None).expect("opens");
+        assert!(matches!(bench.notes[..], [Note::BadLink(LinkError::Refused(_))]));
+    }
+}

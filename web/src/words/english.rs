@@ -1,0 +1,409 @@
+//! English.
+
+use lampladder_core::error::{Field, InputError};
+use lampladder_core::glow::GlowWord;
+use lampladder_core::lamp::Fill;
+use lampladder_core::link::LinkError;
+use lampladder_core::plate::{Condition, Family};
+use lampladder_core::quantity::QuantityError;
+
+use super::{Alike, Assumed, EditWords, FamilyWords, TableWords, Words};
+use crate::bench::{Note, Part, Tab, Theme, Unsuitable};
+use crate::draft::{Fault, LampPart, Slot};
+use crate::format::Numerals;
+
+const NUMERALS: Numerals = Numerals { decimal: '.' };
+
+pub(super) static WORDS: Words = Words {
+    tag: "en",
+    numerals: NUMERALS,
+    reminder: "Every part can be live. The lamp does not isolate.",
+    cautions: "Cautions",
+    accept: "I am competent to work on mains: go on",
+    back: "Back to the bench",
+    done: "Done",
+    dismiss: "Close this note",
+    theme: |theme| match theme {
+        Theme::Auto => "Light: as the phone has it",
+        Theme::Paper => "Light: for sunlight",
+        Theme::Dusk => "Light: for the dark",
+    },
+    tab: |tab| match tab {
+        Tab::Expect => "Expect",
+        Tab::Curve => "Curve",
+    },
+    panels: "Panels",
+    part: |part| match part {
+        Part::Supply => "Supply",
+        Part::Bank => "Lamps",
+        Part::Equipment => "Equipment",
+    },
+    change: |part, now| match part {
+        Part::Supply => format!("Supply, {now}: change"),
+        Part::Bank => format!("Lamps, {now}: change"),
+        Part::Equipment => format!("Equipment, {now}: change"),
+    },
+    circuit: |supply, bank, equipment| {
+        format!("Closed loop: supply {supply}, then {bank} in the line, then equipment of {equipment}.")
+    },
+    condition: |condition| match condition {
+        Condition::Healthy => "Healthy",
+        Condition::Overloaded => "Overloaded",
+        Condition::Shorted => "Shorted",
+        other => other.name(),
+    },
+    if_condition: |condition| match condition {
+        Condition::Healthy => "if healthy",
+        Condition::Overloaded => "if overloaded",
+        Condition::Shorted => "if shorted",
+        other => other.name(),
+    },
+    with_condition: |condition| match condition {
+        Condition::Healthy => "with healthy equipment",
+        Condition::Overloaded => "with overloaded equipment",
+        Condition::Shorted => "with the equipment shorted",
+        other => other.name(),
+    },
+    conditions: "Condition of the equipment",
+    condition_means: |condition, overload| match condition {
+        Condition::Healthy => String::from("takes what its plate says"),
+        Condition::Overloaded => format!("takes {overload} times what its plate says"),
+        Condition::Shorted => String::from("its two input wires joined"),
+        other => String::from(other.name()),
+    },
+    glow,
+    glow_range: |from, to| {
+        if from == to { String::from(glow(from)) } else { format!("{} to {}", glow(from), glow(to)) }
+    },
+    none: "–",
+    bank,
+    direct: "DC",
+    across_bank: |several| if several { "lamps" } else { "lamp" },
+    across_load: "equipment",
+    overlap: |bank, load, supply| {
+        format!(
+            "{bank} and {load} add to more than {supply}, and that is right: the equipment takes its current out of \
+             step with the voltage, so the two do not peak together. Each is what a meter across it reads."
+        )
+    },
+    adds_up: |bank, load, supply| {
+        format!("{bank} across the lamps and {load} across the equipment make the supply's {supply}.")
+    },
+    why: "Why?",
+    stale: |names| format!("Not what is typed: {names}. The last valid result is shown."),
+    stale_mark: "last valid result",
+    burns_out: |lamp| {
+        format!("Do not switch on: {lamp} would burn out. Use lamps for the supply's voltage, or more in series.")
+    },
+    pulses: |seconds| {
+        format!("Expect pulsing, about every {seconds}: healthy equipment starts, starves and starts again.")
+    },
+    does_not_start: "Healthy equipment does not start behind these lamps. Use larger ones.",
+    hard_to_tell: "Healthy and faulty look alike behind these lamps. Use larger ones, or more in parallel.",
+    expect: |glow, amps| format!("Expect {glow}, about {amps}."),
+    off_if_brighter: |word| {
+        if word >= GlowWord::Full {
+            String::from("If it stays full, switch off.")
+        } else {
+            format!("If it stays {} or brighter, switch off.", glow(word))
+        }
+    },
+    off_if_more: |amps| format!("If the meter stays above {amps}, switch off."),
+    assumes: |assumed| {
+        format!(
+            "Assumes {}; {}, {} plate, taking {} of it; lamps as printed.",
+            assumed.supply, assumed.family, assumed.plate_watts, assumed.shares
+        )
+    },
+    assumptions,
+    lamp: |place, alone, rating| {
+        if alone {
+            format!("the {rating} lamp")
+        } else {
+            format!("lamp {}.{} ({rating})", place.group + 1, place.lamp + 1)
+        }
+    },
+    over_rated: |lamp, condition, percent| {
+        let when = with(condition);
+        format!("Caution: {lamp} runs at {percent} of its rated voltage {when}. It may fail at once.")
+    },
+    melts: |lamp, condition| {
+        let when = with(condition);
+        format!("Caution: the filament of {lamp} melts {when}.")
+    },
+    burnt: "burns out",
+    life: |least, most| format!("{least} to {most} times the rated"),
+    life_over: |least| format!("over {least} times the rated"),
+    life_source: "Lamp life from the published range of exponents, voltage to the power −12 to −16 (Fink and Beaty, \
+                  Standard Handbook for Electrical Engineers); it holds near the rating and is cut at 1000 times.",
+    band_note: "Ranges hold 95 of 100 cases: lamps differ within the limits of their standard, published tables of \
+                tungsten differ, and healthy equipment takes less or more than its plate.",
+    table: &TABLE,
+    slot,
+    fault,
+    step: |which, up| format!("{}: {}", slot(which), if up { "more" } else { "less" }),
+    family: |family| match family {
+        Family::TransformerSupply => FamilyWords {
+            name: "Transformer set",
+            examples: "radio, amplifier, bench supply",
+        },
+        Family::Heater => FamilyWords { name: "Heater", examples: "iron, kettle, hotplate" },
+        Family::Plain => FamilyWords { name: "Anything else", examples: "volts, watts, power factor" },
+        other => FamilyWords { name: other.name(), examples: "" },
+    },
+    edit: &EDIT,
+    fill: |fill| match fill {
+        None => "by its size",
+        Some(Fill::Vacuum) => "vacuum",
+        Some(Fill::Gas) => "gas",
+        Some(Fill::Halogen) => "Halogen",
+        Some(other) => other.name(),
+    },
+    unsuitable: |kind| match kind {
+        Unsuitable::Led => "LED",
+        Unsuitable::CompactFluorescent => "Compact fluorescent",
+        Unsuitable::CarbonFilament => "Carbon filament",
+    },
+    refusal: |kind| match kind {
+        Unsuitable::Led => {
+            "An LED lamp is no use here: a converter inside feeds it, so it does not limit the current of a fault, \
+             and its light tells nothing. It has not been put into the loop."
+        }
+        Unsuitable::CompactFluorescent => {
+            "A compact fluorescent lamp is no use here: the electronics inside do not limit the current of a fault, \
+             and it flickers or fails in series. It has not been put into the loop."
+        }
+        Unsuitable::CarbonFilament => {
+            "A carbon filament is no use here: its resistance falls as it heats, so it lets through more just when \
+             it should hold back. It has not been put into the loop."
+        }
+    },
+    note: |note| match note {
+        Note::BadLink(error) => link(&error),
+        Note::BadKept(_) => {
+            "What was kept on this phone cannot be read. It stays as it is until you change something here."
+        }
+        Note::NothingKept => {
+            "This browser keeps nothing for the page. Your set-up lives in the address: save that."
+        }
+        Note::FromLink => "From a link. Your own set-up stays on this phone until you change something here.",
+    },
+    link,
+    use_kept: "Use mine",
+    more: "More",
+};
+
+const fn glow(word: GlowWord) -> &'static str {
+    match word {
+        GlowWord::Dark => "dark",
+        GlowWord::Faint => "faint red",
+        GlowWord::DullRed => "dull red",
+        GlowWord::Orange => "orange",
+        GlowWord::Amber => "amber",
+        GlowWord::Yellow => "yellow",
+        GlowWord::Full => "full",
+        GlowWord::OverFull => "over full",
+        other => other.name(),
+    }
+}
+
+const fn with(condition: Condition) -> &'static str {
+    match condition {
+        Condition::Healthy => "even with healthy equipment",
+        Condition::Overloaded => "with overloaded equipment",
+        Condition::Shorted => "with the equipment shorted",
+        other => other.name(),
+    }
+}
+
+const fn link(error: &LinkError) -> &'static str {
+    match error {
+        LinkError::Empty => "The link holds no set-up.",
+        LinkError::TooLong => "The link is too long to be one of ours. It was not opened.",
+        LinkError::Newer => {
+            "The link was made by a newer version of this page. It was not opened; reload to get that version."
+        }
+        LinkError::Damaged => "The link is cut short or damaged. It was not opened; ask for it again.",
+        LinkError::Refused(_) => "The link holds a number that is out of range. It was not opened.",
+        _ => "The link cannot be read. It was not opened.",
+    }
+}
+
+fn bank(groups: &[Vec<Alike>]) -> String {
+    let parts = |group: &Vec<Alike>| {
+        let count: usize = group.iter().map(|alike| alike.count).sum();
+        let texts: Vec<String> = group
+            .iter()
+            .map(|alike| match alike.count {
+                1 => alike.watts.clone(),
+                count => format!("{count} × {}", alike.watts),
+            })
+            .collect();
+        let text = texts.join(" + ") + "\u{a0}W";
+        if count > 1 { text + " parallel" } else { text }
+    };
+    match groups {
+        [one] if one.iter().map(|alike| alike.count).sum::<usize>() == 1 => parts(one) + " lamp",
+        [one] => parts(one),
+        [first, rest @ ..] if rest.iter().all(|group| group == first) => {
+            let count = groups.len();
+            match first.as_slice() {
+                [Alike { count: 1, watts }] => format!("{count} × {watts}\u{a0}W series"),
+                _ => format!("{count} × ({}) series", parts(first)),
+            }
+        }
+        _ => groups.iter().map(parts).collect::<Vec<_>>().join(", then "),
+    }
+}
+
+fn assumptions(assumed: &Assumed) -> Vec<String> {
+    let mut all = vec![
+        format!("Supply: {}, as entered and steady.", assumed.supply),
+        format!("Lamps: {}, hot, as printed unless measured values are given.", assumed.bank),
+        format!(
+            "Equipment: {}, plate {} at {}; healthy takes {} of that, overloaded {} times.",
+            assumed.family, assumed.plate_watts, assumed.plate_volts, assumed.shares, assumed.overload
+        ),
+    ];
+    if let Some((power_factor, printed)) = &assumed.power_factor {
+        all.push(if *printed {
+            format!("Power factor: {power_factor}, from the plate.")
+        } else {
+            format!("Power factor: {power_factor}, usual for its kind.")
+        });
+    }
+    all.push(String::from("Settled, after the first seconds: switch-on itself is brighter for a moment."));
+    all
+}
+
+const fn slot(slot: Slot) -> &'static str {
+    match slot {
+        Slot::SupplyVolts => "Supply volts",
+        Slot::SupplyHertz => "Frequency",
+        Slot::SupplyOhms => "Source resistance",
+        Slot::PlateVolts => "Plate volts",
+        Slot::PlateWatts => "Plate watts",
+        Slot::PlatePowerFactor => "Power factor",
+        Slot::Lamp(_, part) => match part {
+            LampPart::Volts => "Lamp volts",
+            LampPart::Watts => "Lamp watts",
+            LampPart::Lumens => "Printed lumens",
+            LampPart::ColdOhms => "Cold resistance",
+            LampPart::PointVolts(_) => "Measured volts",
+            LampPart::PointAmps(_) => "Measured amps",
+        },
+    }
+}
+
+fn fault(which: Slot, fault: &Fault) -> String {
+    let name = slot(which);
+    match fault {
+        Fault::Text(QuantityError::Empty { .. }) => format!("{name} is empty."),
+        Fault::Text(QuantityError::WrongUnit { field }) if field.unit().is_empty() => {
+            format!("{name} has no unit.")
+        }
+        Fault::Text(QuantityError::WrongUnit { field }) => {
+            format!("{name} is measured in {}.", field.unit())
+        }
+        Fault::Number(InputError::OutOfRange { field, low, high, .. }) => range(name, *field, *low, *high),
+        Fault::Number(InputError::Conflict { field, limit, .. }) => {
+            format!("{name} can be at most {} here.", NUMERALS.quantity(*limit, field.unit()))
+        }
+        Fault::Number(InputError::NeedsAlternating { .. }) => {
+            String::from("This equipment needs alternating current; on DC use a heater, or plain with power factor 1.")
+        }
+        _ => format!("{name} is not a number. Type it like 60, 0.5 or 1k2."),
+    }
+}
+
+fn range(name: &str, field: Field, low: f64, high: f64) -> String {
+    #[expect(clippy::float_cmp, reason = "the two ends are the same constant where only one value is allowed")]
+    if low == high {
+        return format!("{name} must be {} here.", NUMERALS.quantity(low, field.unit()));
+    }
+    format!("{name} must be from {} to {}.", NUMERALS.short(low), NUMERALS.short_quantity(high, field.unit()))
+}
+
+static EDIT: EditWords = EditWords {
+    usual_volts: "Usual voltages",
+    usual_hertz: "Usual frequencies",
+    follow: |volts| format!("Set lamps and plate to {volts} too"),
+    as_wired: "Lamps as wired",
+    kind: "Kind of lamp",
+    ordinary: "Ordinary",
+    sizes: "Usual sizes",
+    add_parallel: "Add in parallel",
+    add_series: "Add in series",
+    remove: "Remove",
+    full: "Eight lamps are the most.",
+    lamp_more: "Known more of it?",
+    filling: "Filling",
+    points: "Measured on this lamp",
+    add_point: "Add a measured point",
+    remove_point: |number| format!("Remove point {number}"),
+    what: "What is it?",
+    plate: "From its rating plate",
+    power_factor_hint: |usual| format!("if printed; else {usual} is used"),
+    ohms_hint: "of the wiring or the source; 0 for ordinary mains",
+    optional: "if known",
+};
+
+static TABLE: TableWords = TableWords {
+    details: "In figures",
+    condition: "Equipment",
+    lamp: "Lamp",
+    bank_volts: "Across lamps",
+    volts: "Volts",
+    amps: "Current",
+    band: "95 % range",
+    load_volts: "Across equipment",
+    load_watts: "Into equipment",
+    glow: "Glow",
+    kelvin: "Filament",
+    life: "Lamp life at this point",
+    assumed: "What this assumes",
+    curve: "Where the curves meet",
+    curve_means: "The thick line is what the lamps pass at each voltage across them, with its 95 % range. The others \
+                  are what the equipment takes from what is left. The circuit settles where they cross.",
+    meet: "Crossings",
+    bank_curve: "The lamps alone",
+    every_lamp: "Each lamp",
+    chart: "Chart of current against volts across the lamps. The same numbers stand in the tables below.",
+};
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    fn alike(count: usize, watts: &str) -> Alike {
+        Alike { count, watts: watts.to_owned() }
+    }
+
+    #[test]
+    fn banks_are_told_as_wired() {
+        let cases = [
+            (vec![vec![alike(1, "60")]], "60\u{a0}W lamp"),
+            (vec![vec![alike(2, "60")]], "2 × 60\u{a0}W parallel"),
+            (vec![vec![alike(1, "60"), alike(1, "25")]], "60 + 25\u{a0}W parallel"),
+            (vec![vec![alike(1, "60")], vec![alike(1, "60")]], "2 × 60\u{a0}W series"),
+            (vec![vec![alike(2, "60")], vec![alike(1, "100")]], "2 × 60\u{a0}W parallel, then 100\u{a0}W"),
+        ];
+        for (groups, text) in cases {
+            assert_eq!(bank(&groups), text);
+        }
+    }
+
+    #[test]
+    fn nothing_says_safe() {
+        let fault = Fault::Number(InputError::OutOfRange {
+            field: Field::Watts,
+            value: 0.0,
+            low: 0.05,
+            high: 5000.0,
+        });
+        assert_eq!(super::fault(Slot::PlateWatts, &fault), "Plate watts must be from 0.05 to 5000\u{a0}W.");
+        for word in GlowWord::ALL {
+            assert!(!glow(word).contains("safe"));
+        }
+    }
+}
