@@ -12,8 +12,8 @@ use crate::draft::Place;
 /// The one thing to know before the switch goes on.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub enum Advice {
-    /// A lamp would burn out even with healthy equipment.
-    BurnsOut(Place),
+    /// A lamp would burn out in this condition, and then limit nothing, or the wrong thing.
+    BurnsOut(Place, Condition),
     /// Healthy equipment would start and stop, over and over.
     Pulses {
         /// Time from one start to the next, seconds.
@@ -45,13 +45,8 @@ pub enum Caution {
         condition: Condition,
         /// Volts over rated volts.
         share: f64,
-    },
-    /// The filament would melt in this condition.
-    Melts {
-        /// Which lamp.
-        place: Place,
-        /// In which condition of the equipment.
-        condition: Condition,
+        /// Life over rated life, least and greatest.
+        life: (f64, f64),
     },
 }
 
@@ -60,8 +55,9 @@ const OVER_RATED: f64 = 1.02;
 
 /// The sentence for these answers.
 pub fn advice(answers: &Answers) -> Advice {
-    if let Some(place) = answers.melting(Condition::Healthy) {
-        return Advice::BurnsOut(place);
+    let melting = |condition| Some(Advice::BurnsOut(answers.melting(condition)?, condition));
+    if let Some(advice) = answers.all().iter().find_map(|(condition, _)| melting(*condition)) {
+        return advice;
     }
     let Some(healthy) = answers.shown(Condition::Healthy) else {
         return match answers.get(Condition::Healthy) {
@@ -88,24 +84,19 @@ pub fn advice(answers: &Answers) -> Advice {
     }
 }
 
-/// Every caution about the lamps: for each lamp, the first condition in which it is overdriven, and every melting.
+/// Every caution about the lamps: for each lamp, the first condition in which it is overdriven.
 pub fn cautions(setup: &Setup, answers: &Answers) -> Vec<Caution> {
     let mut found = Vec::new();
     for (condition, _) in answers.all() {
         let condition = *condition;
-        if let Some(place) = answers.melting(condition) {
-            found.push(Caution::Melts { place, condition });
-        }
         let Some(shown) = answers.shown(condition) else { continue };
         for (group, (lamps, states)) in setup.bank.groups().iter().zip(&shown.lamps).enumerate() {
             for (lamp, (rated, state)) in lamps.iter().zip(states).enumerate() {
                 let place = Place { group, lamp };
                 let share = state.state.volts / rated.rated_volts();
-                let known = found.iter().any(
-                    |caution| matches!(caution, Caution::OverRated { place: other, .. } if *other == place),
-                );
+                let known = found.iter().any(|Caution::OverRated { place: other, .. }| *other == place);
                 if share > OVER_RATED && !known {
-                    found.push(Caution::OverRated { place, condition, share });
+                    found.push(Caution::OverRated { place, condition, share, life: state.life });
                 }
             }
         }

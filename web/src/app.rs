@@ -88,7 +88,7 @@ fn accept(bench: &BenchHandle) -> Html {
     let Some(foot) = cautions::element(cautions::FOOT) else { return Html::default() };
     create_portal(
         html! {
-            <button type="button" class="accept" data-testid="accept" onclick={send(bench, Msg::Accept)}>
+            <button type="button" class={if bench.accepted { "accept is-back" } else { "accept" }} data-testid="accept" onclick={send(bench, Msg::Accept)}>
                 { if bench.accepted { words.back } else { words.accept } }
             </button>
         },

@@ -1,6 +1,5 @@
 //! A set-up and its results as text in the words of a language, for several panels.
 
-use lampladder_core::expect::LampShown;
 use lampladder_core::lamp::Lamp;
 use lampladder_core::plate::{Family, OVERLOAD};
 use lampladder_core::setup::Setup;
@@ -36,6 +35,15 @@ pub fn bank(setup: &Setup, words: &Words) -> String {
     (words.bank)(&groups)
 }
 
+/// The bank on a small label.
+pub fn short_bank(setup: &Setup, words: &Words) -> String {
+    let text = bank(setup, words);
+    if text.chars().count() > LABEL { (words.lamps)(setup.bank.lamp_count()) } else { text }
+}
+
+/// Most characters that a label on the loop holds in one line.
+const LABEL: usize = 18;
+
 /// One lamp by its place and rating.
 pub fn lamp(setup: &Setup, place: Place, words: &Words) -> String {
     let lamp = setup.bank.groups().get(place.group).and_then(|group| group.get(place.lamp));
@@ -58,7 +66,7 @@ pub fn assumed(setup: &Setup, words: &Words) -> Assumed {
     Assumed {
         supply: supply(setup, words),
         bank: bank(setup, words),
-        family: (words.family)(family).name,
+        family: (words.family)(family).noun,
         plate_volts: numerals.quantity(plate.volts(), "V"),
         plate_watts: numerals.quantity(plate.watts(), "W"),
         shares: format!("{}\u{2013}{}", numerals.fixed(least * 100.0, 0), numerals.percent(most)),
@@ -67,15 +75,13 @@ pub fn assumed(setup: &Setup, words: &Words) -> Assumed {
     }
 }
 
-/// A lamp's life as a range of ratios.
-pub fn life(lamp: &LampShown, words: &Words) -> String {
-    let (least, most) = lamp.life;
+/// A lamp's life as a range of ratios, in a sentence or in a table.
+pub fn life((least, most): (f64, f64), words: &Words, short: bool) -> String {
+    let (between, over) =
+        if short { (words.short_life, words.short_life_over) } else { (words.life, words.life_over) };
+    let least = words.numerals.ratio(least);
     // Core cuts the ratio at a thousand.
-    if most >= 1000.0 {
-        (words.life_over)(&words.numerals.ratio(least))
-    } else {
-        (words.life)(&words.numerals.ratio(least), &words.numerals.ratio(most))
-    }
+    if most >= 1000.0 { over(&least) } else { between(&least, &words.numerals.ratio(most)) }
 }
 
 /// A number in full, for whoever reads the page by program.

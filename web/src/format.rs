@@ -65,12 +65,17 @@ impl Numerals {
 
     /// The ends of the band, rounded alike; the value alone where it has no band.
     pub fn range(self, band: &Band, unit: &str) -> String {
-        let (scale, prefix) = prefix(band.value, unit);
+        let (_, prefix) = prefix(band.value, unit);
+        with_unit(self.bare_range(band, unit), prefix, unit)
+    }
+
+    /// The same without its unit, for tables that have the unit elsewhere.
+    pub fn bare_range(self, band: &Band, unit: &str) -> String {
+        let (scale, _) = prefix(band.value, unit);
         let places = places(band, scale);
         let low = self.fixed(band.low * scale, places);
         let high = self.fixed(band.high * scale, places);
-        let text = if low == high { low } else { low + "\u{2013}" + &high };
-        with_unit(text, prefix, unit)
+        if low == high { low } else { low + "\u{2013}" + &high }
     }
 
     /// A share as a whole number of per cent.
@@ -114,17 +119,16 @@ fn with_unit(mut text: String, prefix: &str, unit: &str) -> String {
     text
 }
 
-/// Decimals that a band supports: its half-width to one significant digit, or two where that digit is a one
-/// (JCGM 100:2008, 7.2.6 allows at most two). A value without a band has three significant digits.
+/// Decimals that a band supports: the last digit is worth no more than the way to the nearer end of the band, and
+/// there are three significant digits at most, as no bench meter has more to say.
 fn places(band: &Band, scale: f64) -> i32 {
-    let half = (band.high - band.value).max(band.value - band.low) * scale;
     let value = band.value * scale;
-    if half.is_nan() || half <= value.abs() * 1e-6 {
-        return (2 - exponent(value)).clamp(0, 3);
-    }
-    let exponent = exponent(half);
-    let leading = half / 10f64.powi(exponent);
-    if leading < 1.95 { 1 - exponent } else { -exponent }
+    let three = if value == 0.0 { 0 } else { 2 - exponent(value) };
+    let (up, down) = ((band.high - band.value) * scale, (band.value - band.low) * scale);
+    // An end that coincides with the value is a limit (nothing below zero), not knowledge.
+    let tiny = value.abs() * 1e-6;
+    let half = if up.min(down) > tiny { up.min(down) } else { up.max(down) };
+    if half.is_nan() || half <= tiny { three } else { three.min(-exponent(half)) }
 }
 
 /// The power of ten of the first significant digit; 0 for zero.
@@ -146,15 +150,17 @@ mod tests {
 
     #[test]
     fn digits_follow_the_band() {
+        let uneven = Band { value: 67.2, low: 47.0, high: 74.4 };
         let cases = [
             (band(0.1523, 0.032), "A", "0.15\u{a0}A", "0.12\u{2013}0.18\u{a0}A"),
-            (band(0.1523, 0.012), "A", "0.152\u{a0}A", "0.140\u{2013}0.164\u{a0}A"),
+            (band(0.1523, 0.012), "A", "0.15\u{a0}A", "0.14\u{2013}0.16\u{a0}A"),
             (band(82.3, 4.2), "V", "82\u{a0}V", "78\u{2013}87\u{a0}V"),
-            (band(82.3, 12.0), "V", "82\u{a0}V", "70\u{2013}94\u{a0}V"),
             (band(82.3, 41.0), "V", "80\u{a0}V", "40\u{2013}120\u{a0}V"),
+            (uneven, "V", "67\u{a0}V", "47\u{2013}74\u{a0}V"),
             (band(0.0123, 0.002), "A", "12\u{a0}mA", "10\u{2013}14\u{a0}mA"),
+            (band(229.96, 0.01), "V", "230\u{a0}V", "230\u{a0}V"),
             (Band::exact(230.0), "V", "230\u{a0}V", "230\u{a0}V"),
-            (Band::exact(0.0), "V", "0.00\u{a0}V", "0.00\u{a0}V"),
+            (Band { value: 0.0, low: 0.0, high: 0.0 }, "V", "0\u{a0}V", "0\u{a0}V"),
         ];
         for (band, unit, value, range) in cases {
             assert_eq!(ENGLISH.value(&band, unit), value);

@@ -151,10 +151,11 @@ pub fn draw(canvas: &HtmlCanvasElement, curves: &Curves, ink: &Ink, words: &Word
     for (condition, at) in &curves.marks {
         let size = scaled(5.5);
         let left = at.0 > curves.volts * 0.6;
-        let anchor = Pos::new(if left { HPos::Right } else { HPos::Left }, VPos::Top);
+        // Right of a mark lies the open wedge between the two curves; at the edge, the one above the bank's.
+        let anchor = if left { Pos::new(HPos::Right, VPos::Bottom) } else { Pos::new(HPos::Left, VPos::Center) };
         let style = font(13.0).into_font().color(&ink.ink).pos(anchor);
         #[expect(clippy::cast_possible_wrap, reason = "a few pixels")]
-        let (dx, dy) = ((scaled(9.0) as i32) * if left { -1 } else { 1 }, scaled(7.0) as i32);
+        let (dx, dy) = if left { (-(scaled(8.0) as i32), -(scaled(8.0) as i32)) } else { (scaled(12.0) as i32, 0) };
         chart.draw_series([
             EmptyElement::at(*at)
                 + Circle::new((0, 0), size, ink.ground.filled())

@@ -44,8 +44,8 @@ pub fn wrong_fields(bench: &Bench) -> String {
 fn sentence(bench: &Bench) -> (String, String) {
     let words = bench.words();
     match advice(&bench.answers) {
-        Advice::BurnsOut(place) => {
-            ((words.burns_out)(&describe::lamp(&bench.setup, place, words)), String::new())
+        Advice::BurnsOut(place, condition) => {
+            ((words.burns_out)(&describe::lamp(&bench.setup, place, words), condition), String::new())
         }
         Advice::Pulses { seconds } => {
             let band = Band { value: seconds, low: seconds * 0.7, high: seconds * 1.3 };
@@ -72,13 +72,8 @@ fn sentence(bench: &Bench) -> (String, String) {
 
 fn caution_text(bench: &Bench, caution: Caution) -> String {
     let words = bench.words();
-    match caution {
-        Caution::OverRated { place, condition, share } => {
-            let lamp = describe::lamp(&bench.setup, place, words);
-            (words.over_rated)(&lamp, condition, &words.numerals.percent(share))
-        }
-        Caution::Melts { place, condition } => {
-            (words.melts)(&describe::lamp(&bench.setup, place, words), condition)
-        }
-    }
+    let Caution::OverRated { place, condition, share, life } = caution;
+    let lamp = describe::lamp(&bench.setup, place, words);
+    let life = describe::life(life, words, false);
+    (words.over_rated)(&lamp, condition, &words.numerals.percent(share), &life)
 }

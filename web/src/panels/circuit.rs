@@ -1,13 +1,14 @@
 //! The circuit as what it is: one closed loop of supply, lamps and equipment. Every part of it is a button.
 
+use lampladder_core::bank::Bank;
 use lampladder_core::plate::Condition;
 use yew::{Html, function_component, html};
 
+use super::bank_drawing::{TOP, bank_drawing};
 use super::{PanelProps, send};
 use crate::bench::{Bench, Msg, Part};
 use crate::describe;
 use crate::parts::svg::n;
-use crate::parts::well::{Filament, Well, well};
 use crate::parts::picture;
 
 /// Heights of the drawing, user units; static/circuit.css has the same figures for the buttons on it.
@@ -19,22 +20,21 @@ struct Plan {
     centre: f64,
 }
 
-/// Top edge of the bank.
-const TOP: f64 = 3.0;
-/// The drawing's width, and the bank's middle.
+/// The drawing's width.
 const WIDTH: f64 = 360.0;
-const MIDDLE: f64 = 180.0;
-/// Where the bank's room begins and ends.
-const BANK_WIDTH: f64 = 184.0;
 /// Where supply and equipment stand.
 const SUPPLY_X: f64 = 54.0;
 const LOAD_X: f64 = 306.0;
 
-fn plan(rows: usize) -> Plan {
+fn plan(bank: &Bank) -> Plan {
+    let rows = bank.groups().iter().map(Vec::len).max().unwrap_or(1);
     match rows {
-        0 | 1 => Plan { class: "loop loop-1", bank_height: 72.0, height: 190.0, centre: 106.0 },
-        2 => Plan { class: "loop loop-2", bank_height: 92.0, height: 212.0, centre: 122.0 },
-        _ => Plan { class: "loop loop-3", bank_height: 116.0, height: 236.0, centre: 138.0 },
+        _ if bank.lamp_count() == 1 => {
+            Plan { class: "loop loop-single", bank_height: 72.0, height: 190.0, centre: 106.0 }
+        }
+        0 | 1 => Plan { class: "loop loop-row", bank_height: 58.0, height: 190.0, centre: 106.0 },
+        2 => Plan { class: "loop loop-two", bank_height: 74.0, height: 206.0, centre: 118.0 },
+        _ => Plan { class: "loop loop-many", bank_height: 100.0, height: 232.0, centre: 138.0 },
     }
 }
 
@@ -43,10 +43,10 @@ fn plan(rows: usize) -> Plan {
 pub fn Circuit(props: &PanelProps) -> Html {
     let bench = &*props.bench;
     let words = bench.words();
-    let rows = bench.setup.bank.groups().iter().map(Vec::len).max().unwrap_or(1);
-    let plan = plan(rows);
+    let plan = plan(&bench.setup.bank);
     let supply = describe::supply(&bench.setup, words);
     let bank = describe::bank(&bench.setup, words);
+    let short_bank = describe::short_bank(&bench.setup, words);
     let watts = words.numerals.quantity(bench.setup.plate.watts(), "W");
     let part = |part: Part, class: &'static str, testid: &'static str, shown: &str, heard: &str| {
         html! {
@@ -65,10 +65,10 @@ pub fn Circuit(props: &PanelProps) -> Html {
                 { wires(&plan) }
                 { supply_sign(&plan, bench.setup.supply.is_direct()) }
                 { equipment(&plan, bench) }
-                { bank_drawing(&plan, bench) }
+                { bank_drawing(bench, plan.bank_height) }
             </svg>
             { part(Part::Supply, "part part-supply", "edit-supply", &volts, &supply) }
-            { part(Part::Bank, "part part-bank", "edit-bank", &bank, &bank) }
+            { part(Part::Bank, "part part-bank", "edit-bank", &short_bank, &bank) }
             { part(Part::Equipment, "part part-load", "edit-equipment", &watts, &format!("{family}, {watts}")) }
             { reading(bench) }
         </section>
@@ -111,7 +111,7 @@ fn wires(plan: &Plan) -> Html {
         b14 = n(bottom - 14.0),
         sx14 = n(SUPPLY_X + 14.0),
     );
-    let arrow = format!("M {} {} l 11 -5.5 v 11 z", n(MIDDLE - 5.0), n(bottom));
+    let arrow = format!("M {} {} l 11 -5.5 v 11 z", n(WIDTH / 2.0 - 5.0), n(bottom));
     html! {
         <>
             <path class="wire" d={path} />
@@ -149,54 +149,4 @@ fn equipment(plan: &Plan, bench: &Bench) -> Html {
             </g>
         </>
     }
-}
-
-fn bank_drawing(plan: &Plan, bench: &Bench) -> Html {
-    let groups = bench.setup.bank.groups();
-    let states = bench.answers.shown(bench.condition).map(|shown| &shown.lamps);
-    let melting = bench.answers.melting(bench.condition);
-    #[expect(clippy::cast_precision_loss, reason = "at most eight groups of eight lamps")]
-    let count = |number: usize| number as f64;
-    let columns = count(groups.len());
-    let gap = if columns > 3.0 { 5.0 } else { 12.0 };
-    let width = ((BANK_WIDTH - gap * (columns - 1.0)) / columns).min(100.0);
-    let left = MIDDLE - (width * columns + gap * (columns - 1.0)) / 2.0;
-    let draw_group = |(column, group): (usize, &Vec<lampladder_core::lamp::Lamp>)| {
-        let rows = count(group.len());
-        let x = left + count(column) * (width + gap);
-        let inset = if group.len() > 1 { (width * 0.08).min(8.0) } else { 0.0 };
-        let between = if rows > 4.0 { 3.0 } else { 5.0 };
-        let height = ((plan.bank_height - between * (rows - 1.0)) / rows).min(72.0);
-        let top = TOP + (plan.bank_height - height * rows - between * (rows - 1.0)) / 2.0;
-        let middle = |row: f64| top + row * (height + between) + height / 2.0;
-        let (first, last) = (middle(0.0), middle(rows - 1.0));
-        let rails = format!("M {a} {first} V {last} M {b} {first} V {last}", a = n(x), b = n(x + width), first = n(first), last = n(last));
-        // The loop's own wire must not shine through between the lamps.
-        html! {
-            <g>
-                if group.len() > 1 {
-                    <rect class="blank" x={n(x)} y={n(first)} width={n(width)} height={n(last - first)} />
-                    <path class="wire" d={rails} />
-                }
-                { for (0..group.len()).map(|row| {
-                    let y = top + count(row) * (height + between);
-                    let filament = match states.and_then(|states| states.get(column)?.get(row)) {
-                        Some(lamp) => Filament::Glowing(lamp.glow),
-                        None if melting.is_some_and(|at| at.group == column && at.lamp == row) => Filament::Broken,
-                        None => Filament::Unknown,
-                    };
-                    let at = Well { x: x + inset, y, width: width - 2.0 * inset, height };
-                    html! {
-                        <>
-                            if group.len() > 1 {
-                                <path class="wire" d={format!("M {} {} H {}", n(x), n(y + height / 2.0), n(x + width))} />
-                            }
-                            { well(&format!("loop-{column}-{row}"), at, filament) }
-                        </>
-                    }
-                }) }
-            </g>
-        }
-    };
-    html! { { for groups.iter().enumerate().map(draw_group) } }
 }

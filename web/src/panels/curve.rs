@@ -64,7 +64,7 @@ fn crossings(bench: &Bench) -> Html {
         };
         let cell = |band: &Band, unit: &str| {
             html! {
-                <td><b>{ words.numerals.value(band, unit) }</b><small>{ words.numerals.range(band, unit) }</small></td>
+                <td><b>{ words.numerals.value(band, unit) }</b><small>{ words.numerals.bare_range(band, unit) }</small></td>
             }
         };
         html! { <>{ cell(&shown.bank_volts, "V") }{ cell(&shown.amps, "A") }{ cell(&shown.load_volts, "V") }</> }

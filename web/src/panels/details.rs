@@ -15,6 +15,7 @@ pub fn Details(props: &PanelProps) -> Html {
     let bench = &*props.bench;
     let words = bench.words();
     let table = words.table;
+    let several = bench.setup.bank.lamp_count() > 1;
     html! {
         <section class="details" aria-labelledby="details-title">
             <h2 id="details-title">{ table.details }</h2>
@@ -34,12 +35,12 @@ pub fn Details(props: &PanelProps) -> Html {
             <div class="scroll">
                 <table>
                     <thead><tr>
-                        <th scope="col">{ table.lamp }</th>
                         <th scope="col">{ table.condition }</th>
+                        if several { <th scope="col">{ table.lamp }</th> }
                         <th scope="col">{ table.volts }</th>
                         <th scope="col">{ table.glow }</th>
                         <th scope="col">{ table.kelvin }</th>
-                        <th scope="col">{ table.life }</th>
+                        <th scope="col">{ table.short_life }</th>
                     </tr></thead>
                     <tbody>{ for bench.answers.all().iter().map(|(condition, _)| lamp_rows(bench, *condition)) }</tbody>
                 </table>
@@ -63,7 +64,7 @@ fn row(bench: &Bench, condition: Condition) -> Html {
         let Some(shown) = bench.answers.shown(condition) else { return html! { <td>{ words.none }</td> } };
         let band = pick(shown);
         html! {
-            <td><b>{ words.numerals.value(band, unit) }</b><small>{ words.numerals.range(band, unit) }</small></td>
+            <td><b>{ words.numerals.value(band, unit) }</b><small>{ words.numerals.bare_range(band, unit) }</small></td>
         }
     };
     html! {
@@ -89,12 +90,12 @@ fn lamp_rows(bench: &Bench, condition: Condition) -> Html {
     html! {
         { for lamps.map(|(place, lamp)| html! {
             <tr>
-                <th scope="row">{ describe::lamp(&bench.setup, place, words) }</th>
-                <td>{ (words.condition)(condition) }</td>
+                <th scope="row">{ (words.condition)(condition) }</th>
+                if bench.setup.bank.lamp_count() > 1 { <td>{ describe::lamp(&bench.setup, place, words) }</td> }
                 <td>{ words.numerals.fixed(lamp.state.volts, 0) }{ "\u{a0}V" }</td>
                 <td>{ (words.glow_range)(lamp.dimmest.word, lamp.brightest.word) }</td>
-                <td>{ words.numerals.range(&lamp.kelvin, "K") }</td>
-                <td data-testid="life">{ describe::life(lamp, words) }</td>
+                <td class="whole">{ words.numerals.range(&lamp.kelvin, "K") }</td>
+                <td class="whole" data-testid="life">{ describe::life(lamp.life, words, true) }</td>
             </tr>
         }) }
     }

@@ -110,7 +110,7 @@ fn life(bench: &BenchHandle) -> Html {
     html! {
         <p class="hint" data-testid="lamp-life">
             { words.table.life }{ " " }{ (words.if_condition)(bench.condition) }{ ": " }
-            <b>{ describe::life(lamp, words) }</b>
+            <b>{ describe::life(lamp.life, words, false) }</b>
         </p>
     }
 }

@@ -2,6 +2,7 @@
 
 pub mod advice;
 pub mod bank;
+mod bank_drawing;
 pub mod circuit;
 pub mod comparison;
 pub mod curve;

@@ -59,8 +59,10 @@ pub fn quick(bench: &BenchHandle, slot: Slot, all: &[f64], name: &str) -> Vec<Ch
 /// Offers to take the supply's voltage for lamps and plate, where they are for another.
 fn follow(bench: &BenchHandle) -> Html {
     let words = bench.words();
-    let text = bench.draft.text(Slot::SupplyVolts);
-    let Ok(volts) = quantity::parse(text, Slot::SupplyVolts.field()) else { return Html::default() };
+    let volts = bench.setup.supply.volts();
+    if bench.fault(Slot::SupplyVolts).is_some() {
+        return Html::default();
+    }
     let differs = |text: &str| quantity::parse(text, Slot::SupplyVolts.field()).ok() != Some(volts);
     let lamps_differ = bench.draft.groups.iter().flatten().any(|lamp| differs(&lamp.volts));
     if !lamps_differ && !differs(bench.draft.text(Slot::PlateVolts)) {

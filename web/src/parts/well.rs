@@ -32,7 +32,6 @@ pub enum Filament {
 const WHITE: [u8; 3] = [255, 250, 240];
 /// A cold wire in the dark, still to be seen.
 const COLD: [u8; 3] = [118, 108, 96];
-const DARK: [u8; 3] = [12, 10, 8];
 
 /// A well with a lamp in it; `id` must be unique on the page.
 pub fn well(id: &str, at: Well, filament: Filament) -> Html {
@@ -47,38 +46,44 @@ pub fn well(id: &str, at: Well, filament: Filament) -> Html {
     }
 }
 
-/// Brightness for the eye, 0 to 1: core's tone curve, the fourth root of luminance.
+/// Luminance for the eye, 0 to 1: its fourth root, as in core's tone curve.
 fn brightness(glow: &Glow) -> f64 {
     if glow.word == GlowWord::Dark { 0.0 } else { glow.relative_luminance.max(0.0).sqrt().sqrt().min(1.0) }
 }
 
+/// How light the glow's colour is on the screen, 0 to 1.
+fn tone(glow: &Glow) -> f64 {
+    f64::from(glow.srgb.into_iter().max().unwrap_or(0)) / 255.0
+}
+
+/// Light around the filament: core's colour, whitening only where the eye would be dazzled, and reaching the
+/// further the brighter it is.
 fn halo(id: &str, at: Well, corner: f64, filament: Filament) -> Html {
     let Filament::Glowing(glow) = filament else { return Html::default() };
-    let bright = brightness(&glow);
-    if bright <= 0.0 {
+    let (bright, tone) = (brightness(&glow), tone(&glow));
+    if tone <= 0.0 {
         return Html::default();
     }
     let Well { x, y, width, height } = at;
-    let narrow = width.min(height);
-    let reach = (narrow * (0.32 + 0.5 * bright)).max(width.max(height) * 0.62 * bright * bright);
-    let hot = mix(glow.srgb, WHITE, 0.15 + 0.8 * bright * bright);
-    let deep = mix(glow.srgb, DARK, 0.35 * (1.0 - bright));
-    let core = (0.05 + 0.3 * bright * bright).min(0.4);
+    let reach = width.min(height) * (0.36 + 0.26 * tone + 0.5 * bright);
+    let hot = mix(glow.srgb, WHITE, bright * bright);
+    let core = 0.06 + 0.2 * bright;
     let name = format!("glow-{id}");
     let fill = format!("url(#{name})");
-    // From 0 to 1 as a whole number of per cent.
-    let percent = |share: f64| n(share * 100.0) + "%";
+    let colour = rgb(glow.srgb);
+    let stop = |offset: f64, opacity: f64| {
+        html! { <stop offset={percent(offset)} stop-color={colour.clone()} stop-opacity={percent(opacity)} /> }
+    };
     html! {
         <>
             <defs>
                 <radialGradient id={name} gradientUnits="userSpaceOnUse"
                     cx={n(x + width / 2.0)} cy={n(y + height / 2.0)} r={n(reach)}>
                     <stop offset="0%" stop-color={rgb(hot)} />
-                    <stop offset={percent(core)} stop-color={rgb(mix(glow.srgb, hot, 0.35))} stop-opacity="0.96" />
-                    <stop offset={percent(core + 0.18)} stop-color={rgb(glow.srgb)}
-                        stop-opacity={percent(0.5 + 0.3 * bright)} />
-                    <stop offset={percent(core + 0.42)} stop-color={rgb(deep)} stop-opacity={percent(0.16 + 0.22 * bright)} />
-                    <stop offset="100%" stop-color={rgb(deep)} stop-opacity="0" />
+                    { stop(core, 0.98) }
+                    { stop(core + 0.2, 0.6 + 0.15 * bright) }
+                    { stop(core + 0.42, 0.2 + 0.14 * bright) }
+                    { stop(1.0, 0.0) }
                 </radialGradient>
             </defs>
             <rect x={n(x + 1.0)} y={n(y + 1.0)} width={n(width - 2.0)} height={n(height - 2.0)} rx={n(corner)} {fill} />
@@ -86,21 +91,33 @@ fn halo(id: &str, at: Well, corner: f64, filament: Filament) -> Html {
     }
 }
 
+fn percent(share: f64) -> String {
+    n(share * 100.0) + "%"
+}
+
+/// The wire itself, lighter than the light around it, but no lighter than its tone allows.
+fn wire_colour(filament: Filament) -> [u8; 3] {
+    let Filament::Glowing(glow) = filament else { return COLD };
+    let tone = tone(&glow);
+    if tone <= 0.0 {
+        return COLD;
+    }
+    let gain = tone.sqrt() / tone;
+    #[expect(clippy::cast_possible_truncation, clippy::cast_sign_loss, reason = "cut to a byte")]
+    let lighter = glow.srgb.map(|channel| (f64::from(channel) * gain).min(255.0) as u8);
+    mix(lighter, WHITE, 0.12 + 0.8 * brightness(&glow))
+}
+
 /// The filament between its supports.
 fn coil(at: Well, filament: Filament) -> Html {
     let Well { x, y, width, height } = at;
     let (cx, cy) = (x + width / 2.0, y + height / 2.0);
-    let size = width.min(height * 1.35);
+    // A flat well is filled by its wire; a high one is not.
+    let size = width.min(height * if height < 30.0 { 2.2 } else { 1.35 });
     let half = size * 0.2;
     let turn = half / 3.0;
     let rise = turn * 2.2;
-    let colour = match filament {
-        Filament::Glowing(glow) => {
-            let bright = brightness(&glow);
-            if bright > 0.0 { mix(glow.srgb, WHITE, 0.35 + 0.65 * bright) } else { COLD }
-        }
-        Filament::Broken | Filament::Unknown => COLD,
-    };
+    let colour = wire_colour(filament);
     let loops = |count: u8| {
         let arc = format!(" q {} {} {} 0 t {} 0", n(turn * 0.5), n(-rise), n(turn), n(turn));
         arc.repeat(usize::from(count))

@@ -92,8 +92,9 @@ pub(super) static WORDS: Words = Words {
     why: "Why?",
     stale: |names| format!("Not what is typed: {names}. The last valid result is shown."),
     stale_mark: "last valid result",
-    burns_out: |lamp| {
-        format!("Do not switch on: {lamp} would burn out. Use lamps for the supply's voltage, or more in series.")
+    burns_out: |lamp, condition| {
+        let when = with(condition);
+        format!("Do not switch on: {lamp} burns out {when}. Use lamps for the supply's voltage, or more in series.")
     },
     pulses: |seconds| {
         format!("Expect pulsing, about every {seconds}: healthy equipment starts, starves and starts again.")
@@ -111,7 +112,7 @@ pub(super) static WORDS: Words = Words {
     off_if_more: |amps| format!("If the meter stays above {amps}, switch off."),
     assumes: |assumed| {
         format!(
-            "Assumes {}; {}, {} plate, taking {} of it; lamps as printed.",
+            "Assumes {}, {} with a {} plate taking {} of it, lamps as printed.",
             assumed.supply, assumed.family, assumed.plate_watts, assumed.shares
         )
     },
@@ -123,17 +124,18 @@ pub(super) static WORDS: Words = Words {
             format!("lamp {}.{} ({rating})", place.group + 1, place.lamp + 1)
         }
     },
-    over_rated: |lamp, condition, percent| {
+    over_rated: |lamp, condition, percent, life| {
         let when = with(condition);
-        format!("Caution: {lamp} runs at {percent} of its rated voltage {when}. It may fail at once.")
-    },
-    melts: |lamp, condition| {
-        let when = with(condition);
-        format!("Caution: the filament of {lamp} melts {when}.")
+        format!("Caution: {lamp} runs at {percent} of its rated voltage {when}; life there {life}.")
     },
     burnt: "burns out",
-    life: |least, most| format!("{least} to {most} times the rated"),
+    life: |least, most| {
+        if least == most { String::from("as rated") } else { format!("{least} to {most} times the rated") }
+    },
+    short_life: |least, most| if least == most { format!("{least} ×") } else { format!("{least}–{most} ×") },
     life_over: |least| format!("over {least} times the rated"),
+    short_life_over: |least| format!("> {least} ×"),
+    lamps: |count| format!("{count} lamps"),
     life_source: "Lamp life from the published range of exponents, voltage to the power −12 to −16 (Fink and Beaty, \
                   Standard Handbook for Electrical Engineers); it holds near the rating and is cut at 1000 times.",
     band_note: "Ranges hold 95 of 100 cases: lamps differ within the limits of their standard, published tables of \
@@ -145,11 +147,12 @@ pub(super) static WORDS: Words = Words {
     family: |family| match family {
         Family::TransformerSupply => FamilyWords {
             name: "Transformer set",
+            noun: "a transformer set",
             examples: "radio, amplifier, bench supply",
         },
-        Family::Heater => FamilyWords { name: "Heater", examples: "iron, kettle, hotplate" },
-        Family::Plain => FamilyWords { name: "Anything else", examples: "volts, watts, power factor" },
-        other => FamilyWords { name: other.name(), examples: "" },
+        Family::Heater => FamilyWords { name: "Heater", noun: "a heater", examples: "iron, kettle, hotplate" },
+        Family::Plain => FamilyWords { name: "Anything else", noun: "equipment of unknown kind", examples: "volts, watts, power factor" },
+        other => FamilyWords { name: other.name(), noun: other.name(), examples: "" },
     },
     edit: &EDIT,
     fill: |fill| match fill {
@@ -361,6 +364,7 @@ static TABLE: TableWords = TableWords {
     glow: "Glow",
     kelvin: "Filament",
     life: "Lamp life at this point",
+    short_life: "Life, × rated",
     assumed: "What this assumes",
     curve: "Where the curves meet",
     curve_means: "The thick line is what the lamps pass at each voltage across them, with its 95 % range. The others \

@@ -39,6 +39,8 @@ impl Language {
 pub struct FamilyWords {
     /// Its name.
     pub name: &'static str,
+    /// It in a sentence.
+    pub noun: &'static str,
     /// Things of that kind.
     pub examples: &'static str,
 }
@@ -138,8 +140,8 @@ pub struct Words {
     pub stale: fn(&str) -> String,
     /// Short mark of the same.
     pub stale_mark: &'static str,
-    /// A lamp burns out in healthy use.
-    pub burns_out: fn(&str) -> String,
+    /// A lamp burns out: its name, condition.
+    pub burns_out: fn(&str, Condition) -> String,
     /// The equipment starts and stops.
     pub pulses: fn(&str) -> String,
     /// The equipment does not start.
@@ -158,16 +160,20 @@ pub struct Words {
     pub assumptions: fn(&Assumed) -> Vec<String>,
     /// A lamp's name: which one, what is printed on it.
     pub lamp: fn(Place, bool, &str) -> String,
-    /// A lamp runs over its rated volts: its name, condition, per cent of the rating.
-    pub over_rated: fn(&str, Condition, &str) -> String,
-    /// A filament melts: its name, condition.
-    pub melts: fn(&str, Condition) -> String,
+    /// A lamp runs over its rated volts: its name, condition, per cent of the rating, life there.
+    pub over_rated: fn(&str, Condition, &str, &str) -> String,
     /// Burnt out, in a cell.
     pub burnt: &'static str,
     /// Life between two ratios to the rated.
     pub life: fn(&str, &str) -> String,
+    /// The same for a table.
+    pub short_life: fn(&str, &str) -> String,
     /// Life longer than a ratio.
     pub life_over: fn(&str) -> String,
+    /// The same for a table.
+    pub short_life_over: fn(&str) -> String,
+    /// Many lamps, shorter than by their sizes.
+    pub lamps: fn(usize) -> String,
     /// Where the life figures come from.
     pub life_source: &'static str,
     /// What a band is.
@@ -274,6 +280,8 @@ pub struct TableWords {
     pub kelvin: &'static str,
     /// Lamp life.
     pub life: &'static str,
+    /// The same for a column.
+    pub short_life: &'static str,
     /// Heading of the assumptions.
     pub assumed: &'static str,
     /// Heading of the curve.
