@@ -5,7 +5,8 @@ use alloc::vec::Vec;
 use crate::band::{Band, COVERAGE, Spread};
 use crate::bank::Bank;
 use crate::lamp::Lamp;
-use crate::load::{Feed, Load};
+use crate::load::{Load, Mode};
+use crate::steady::{self, SteadyError};
 use crate::supply::Supply;
 
 /// A bank's 95 % band of current at a voltage across the whole chain, amperes.
@@ -14,8 +15,7 @@ use crate::supply::Supply;
 pub fn bank_amps(bank: &Bank, volts: f64) -> Band {
     let value = bank.at_volts(volts).amps;
     let mut spread = Spread::around(value);
-    let ends: [f64; Lamp::VARIANTS] =
-        core::array::from_fn(|index| bank.variant(index).at_volts(volts).amps);
+    let ends: [f64; Lamp::VARIANTS] = core::array::from_fn(|index| bank.variant(index).at_volts(volts).amps);
     for pair in ends[..6].chunks(2) {
         spread.cause(COVERAGE, [pair[0], pair[1]]);
     }
@@ -26,43 +26,72 @@ pub fn bank_amps(bank: &Bank, volts: f64) -> Band {
     Band { low: band.low.max(0.0), ..band }
 }
 
-/// What a load leaves to the bank, as (bank volts, amperes), in order of rising bank volts.
+/// One branch of what a load leaves to the bank.
+#[derive(Debug, Clone, PartialEq)]
+pub struct LoadLine {
+    /// In which of its ways the load works along it.
+    pub mode: Mode,
+    /// Bank volts and amperes, in order of rising bank volts.
+    pub points: Vec<(f64, f64)>,
+}
+
+/// What a load leaves to the bank: where it would stand with other lamps.
 ///
-/// A plain resistance stands in for the bank and is swept over six decades around the bank's own; since a hot
-/// filament is a resistor within the cycle, this curve meets the bank's own curve exactly at the equilibria. It
-/// holds for loads whose current depends on the feeding voltage and resistance alone, which is all but a rectifier
-/// with a constant-power draw.
-pub fn load_line(supply: &Supply, bank: &Bank, load: &Load, points: u16) -> Vec<(f64, f64)> {
+/// `points` lamps of the supply's voltage stand in for the bank in turn, in even ratios from a thousandth of its size
+/// to a thousand times it. Since a hot filament is a resistor within the cycle, all equilibria lie on the same lines
+/// whatever the lamp, so these lines meet the bank's own curve exactly at its equilibria.
+///
+/// # Errors
+/// A load that has no meaning on this supply.
+pub fn load_lines(
+    supply: &Supply,
+    bank: &Bank,
+    load: &Load,
+    points: u16,
+) -> Result<Vec<LoadLine>, SteadyError> {
     /// Half the width of the sweep: the logarithm of a thousand.
     const SPAN: f64 = 6.907_755_278_982_137;
-    let middle = bank.at_volts(supply.volts()).ohms();
+    load.check(supply)?;
+    let middle = supply.volts() * bank.at_volts(supply.volts()).amps;
     let last = f64::from(points.max(2) - 1);
-    let along = (0..points).map(|step| {
-        let ohms = middle * libm::exp(SPAN * (2.0 * f64::from(step) / last - 1.0));
-        let total = ohms + supply.ohms();
-        let amps = supply.volts() / total;
-        let feed = Feed { volts: supply.volts(), hertz: supply.hertz(), ohms: total, amps };
-        let amps = amps * libm::exp(load.excess(&feed));
-        (ohms * amps, amps)
-    });
-    along.collect()
+    let mut lines: Vec<LoadLine> = Vec::new();
+    for step in 0..points {
+        let watts = middle * libm::exp(SPAN * (2.0 * f64::from(step) / last - 1.0));
+        let Ok(lamp) = Lamp::new(supply.volts(), watts) else { continue };
+        // A stand-in that finds no steady point adds nothing to the line.
+        let Ok(solved) = steady::solve(supply, &Bank::single(lamp), load) else { continue };
+        for point in solved.equilibria {
+            let at = (point.bank_volts, point.amps);
+            match lines.iter_mut().find(|line| line.mode == point.mode) {
+                Some(line) => line.points.push(at),
+                None => lines.push(LoadLine { mode: point.mode, points: alloc::vec![at] }),
+            }
+        }
+    }
+    for line in &mut lines {
+        line.points.sort_by(|a, b| a.0.total_cmp(&b.0));
+    }
+    Ok(lines)
 }
 
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::plate::Condition;
+    use crate::condition::Condition;
     use crate::setup::Setup;
-    use crate::steady;
 
     #[test]
     fn the_two_curves_cross_at_the_equilibrium() {
         let Setup { supply, bank, plate } = Setup::example().expect("in range");
         let load = plate.load(Condition::Healthy, 1.0).expect("a radio");
-        let line = load_line(&supply, &bank, &load, 400);
+        let lines = load_lines(&supply, &bank, &load, 100).expect("alternating current");
+        assert_eq!(lines.len(), 1);
         let excess = |&(volts, amps): &(f64, f64)| amps - bank.at_volts(volts).amps;
-        let crossing: Vec<_> =
-            line.windows(2).filter(|pair| excess(&pair[0]) > 0.0 && excess(&pair[1]) <= 0.0).collect();
+        let crossing: Vec<_> = lines[0]
+            .points
+            .windows(2)
+            .filter(|pair| excess(&pair[0]) > 0.0 && excess(&pair[1]) <= 0.0)
+            .collect();
         let solved = steady::solve(&supply, &bank, &load).expect("solvable");
         let point = solved.settled().expect("settles");
         assert_eq!(crossing.len(), 1);

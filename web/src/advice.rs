@@ -1,8 +1,9 @@
 //! Which sentence to act on, and which cautions, follow from the answers. The words are elsewhere.
 
+use lampladder_core::condition::Condition;
 use lampladder_core::expect::Shown;
 use lampladder_core::glow::GlowWord;
-use lampladder_core::plate::Condition;
+use lampladder_core::load::Mode;
 use lampladder_core::setup::Setup;
 use lampladder_core::steady::Outcome;
 
@@ -21,7 +22,14 @@ pub enum Advice {
     },
     /// Healthy equipment would not start behind these lamps.
     DoesNotStart,
-    /// Healthy and overloaded look alike behind these lamps.
+    /// A healthy motor stands still behind these lamps, and heats.
+    Stands {
+        /// Dimmest and brightest that it may leave the lamp.
+        glow: (GlowWord, GlowWord),
+    },
+    /// A healthy picture-tube set looks shorted: these lamps cannot warm its thermistor.
+    LooksShorted,
+    /// Healthy and faulty look alike behind these lamps.
     HardToTell,
     /// Watch for this; brighter means off.
     Watch {
@@ -59,18 +67,23 @@ pub fn advice(answers: &Answers) -> Advice {
     if let Some(advice) = answers.all().iter().find_map(|(condition, _)| melting(*condition)) {
         return advice;
     }
-    let Some(healthy) = answers.shown(Condition::Healthy) else {
-        return match answers.get(Condition::Healthy) {
-            Some(Ok(prospect)) => match prospect.outcome {
-                Outcome::Hunts { period_seconds } => Advice::Pulses { seconds: period_seconds },
-                _ => Advice::DoesNotStart,
-            },
-            _ => Advice::DoesNotStart,
-        };
-    };
+    match answers.outcome(Condition::Healthy) {
+        Some(Outcome::Hunts { period_seconds }) => return Advice::Pulses { seconds: period_seconds },
+        Some(Outcome::Settles) => {}
+        _ => return Advice::DoesNotStart,
+    }
+    let Some(healthy) = answers.shown(Condition::Healthy) else { return Advice::DoesNotStart };
     let Some((_, lamp)) = brightest(healthy) else { return Advice::DoesNotStart };
-    let overloaded = answers.shown(Condition::Overloaded);
+    match answers.mode(Condition::Healthy) {
+        Some(Mode::Standing) => return Advice::Stands { glow: (lamp.dimmest.word, lamp.brightest.word) },
+        Some(Mode::DegaussCold) => return Advice::LooksShorted,
+        _ => {}
+    }
     let shorted = answers.shown(Condition::Shorted);
+    let between = answers.all().iter().map(|(condition, _)| *condition);
+    let mut faulty =
+        between.filter(|condition| !matches!(condition, Condition::Healthy | Condition::Shorted));
+    let overloaded = faulty.find_map(|condition| answers.shown(condition));
     let alike = |other: &Shown| other.amps.value < healthy.amps.high;
     if shorted.is_some_and(alike) || (overloaded.is_some_and(alike) && lamp.glow.word >= GlowWord::Yellow) {
         return Advice::HardToTell;

@@ -1,15 +1,25 @@
 //! What core says to the last valid set-up: one prospect for each condition of the equipment, computed once.
 
+use lampladder_core::condition::Condition;
 use lampladder_core::error::InputError;
 use lampladder_core::expect::{LampShown, Prospect, Shown, prospect};
-use lampladder_core::plate::Condition;
+use lampladder_core::family::Family;
+use lampladder_core::load::Mode;
 use lampladder_core::setup::Setup;
-use lampladder_core::steady::SteadyError;
+use lampladder_core::steady::{Outcome, SteadyError};
 
 use crate::draft::Place;
 
 /// One condition and what comes of it.
 pub type Answer = (Condition, Result<Prospect, SteadyError>);
+
+/// The conditions that are told apart at a glance: healthy, the family's likeliest fault that is no short, shorted.
+fn compared(family: Family) -> impl Iterator<Item = Condition> {
+    const BETWEEN: [Condition; 2] = [Condition::Stalled, Condition::Overloaded];
+    let has = move |condition: &Condition| family.conditions().contains(condition);
+    let between = BETWEEN.into_iter().find(has);
+    [Some(Condition::Healthy), between, Some(Condition::Shorted)].into_iter().flatten()
+}
 
 /// The answers to one set-up.
 #[derive(Debug, Clone, PartialEq)]
@@ -18,13 +28,13 @@ pub struct Answers {
 }
 
 impl Answers {
-    /// Asks core about every condition of the equipment.
+    /// Asks core about the conditions that are compared.
     ///
     /// # Errors
     /// A set-up whose parts do not go together, such as a transformer on direct current.
     pub fn of(setup: &Setup) -> Result<Self, InputError> {
-        let ask = |&condition: &Condition| (condition, prospect(setup, condition));
-        let all: Vec<Answer> = setup.plate.family().conditions().iter().map(ask).collect();
+        let ask = |condition: Condition| (condition, prospect(setup, condition));
+        let all: Vec<Answer> = compared(setup.plate.family()).map(ask).collect();
         let refused = all.iter().find_map(|(_, answer)| match answer {
             Err(SteadyError::Input(error)) => Some(*error),
             _ => None,
@@ -47,6 +57,20 @@ impl Answers {
         self.get(condition)?.as_ref().ok()?.shown.as_ref()
     }
 
+    /// What becomes of the circuit in a condition.
+    pub fn outcome(&self, condition: Condition) -> Option<Outcome> {
+        Some(self.get(condition)?.as_ref().ok()?.outcome)
+    }
+
+    /// In which of its ways the equipment works where it settles.
+    pub fn mode(&self, condition: Condition) -> Option<Mode> {
+        let prospect = self.get(condition)?.as_ref().ok()?;
+        let amps = prospect.shown.as_ref()?.amps.value;
+        let nearest = |a: &f64, b: &f64| (a - amps).abs().total_cmp(&(b - amps).abs());
+        let settled = prospect.equilibria.iter().min_by(|a, b| nearest(&a.amps, &b.amps))?;
+        Some(settled.mode)
+    }
+
     /// The lamp that would burn out in a condition.
     pub fn melting(&self, condition: Condition) -> Option<Place> {
         match self.get(condition)? {
@@ -61,7 +85,9 @@ pub fn brightest(shown: &Shown) -> Option<(Place, &LampShown)> {
     let lamps = shown.lamps.iter().enumerate().flat_map(|(group, lamps)| {
         lamps.iter().enumerate().map(move |(lamp, shown)| (Place { group, lamp }, shown))
     });
-    lamps.reduce(|best, other| {
-        if other.1.glow.relative_luminance > best.1.glow.relative_luminance { other } else { best }
-    })
+    lamps.reduce(
+        |best, other| {
+            if other.1.glow.relative_luminance > best.1.glow.relative_luminance { other } else { best }
+        },
+    )
 }

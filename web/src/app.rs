@@ -1,6 +1,8 @@
 //! The page: its state, what is kept of it, and its frame.
 
-use yew::{Html, Properties, create_portal, function_component, html, use_effect_with, use_mut_ref, use_reducer};
+use yew::{
+    Html, Properties, create_portal, function_component, html, use_effect_with, use_mut_ref, use_reducer,
+};
 
 use crate::bench::{Bench, BenchHandle, Msg, Note, Tab};
 use crate::browser::window::{Listener, NextFrame};
@@ -34,20 +36,23 @@ pub fn App(props: &AppProps) -> Html {
     {
         let dispatcher = bench.dispatcher();
         // Typing changes the set-up many times a second: the address follows once a frame.
-        use_effect_with((bench.setup.clone(), bench.edited, bench.notes.clone()), move |(setup, edited, notes)| {
-            let (setup, edited) = (setup.clone(), *edited);
-            // A bad link stays in the address until something is changed.
-            let held = !edited && notes.iter().any(|note| matches!(note, Note::BadLink(_)));
-            *kept_frame.borrow_mut() = NextFrame::new(move || {
-                let text = link::encode(&setup);
-                if !held && fragment::read().as_deref() != Some(text.as_str()) {
-                    fragment::write(&text);
-                }
-                if edited && storage::write(storage::SETUP, &text).is_err() {
-                    dispatcher.dispatch(Msg::Tell(Note::NothingKept));
-                }
-            });
-        });
+        use_effect_with(
+            (bench.setup.clone(), bench.edited, bench.notes.clone()),
+            move |(setup, edited, notes)| {
+                let (setup, edited) = (setup.clone(), *edited);
+                // A bad link stays in the address until something is changed.
+                let held = !edited && notes.iter().any(|note| matches!(note, Note::BadLink(_)));
+                *kept_frame.borrow_mut() = NextFrame::new(move || {
+                    let text = link::encode(&setup);
+                    if !held && fragment::read().as_deref() != Some(text.as_str()) {
+                        fragment::write(&text);
+                    }
+                    if edited && storage::write(storage::SETUP, &text).is_err() {
+                        dispatcher.dispatch(Msg::Tell(Note::NothingKept));
+                    }
+                });
+            },
+        );
     }
     {
         let dispatcher = bench.dispatcher();

@@ -2,10 +2,11 @@
 
 use std::rc::Rc;
 
+use lampladder_core::condition::Condition;
 use lampladder_core::error::InputError;
+use lampladder_core::family::{self, Family};
 use lampladder_core::lamp::Fill;
 use lampladder_core::link::LinkError;
-use lampladder_core::plate::{Condition, Family};
 use lampladder_core::setup::Setup;
 use yew::{Reducible, UseReducerHandle};
 
@@ -60,6 +61,15 @@ pub enum Unsuitable {
     CarbonFilament,
 }
 
+/// What a person chose and must not use.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Refused {
+    /// A lamp.
+    Lamp(Unsuitable),
+    /// A kind of equipment.
+    Equipment(family::Unsuitable),
+}
+
 /// Something to tell the person once.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub enum Note {
@@ -93,7 +103,7 @@ pub struct Bench {
     /// The lamp under edit.
     pub lamp: Place,
     /// The unsuitable kind that was just refused.
-    pub refused: Option<Unsuitable>,
+    pub refused: Option<Refused>,
     /// The panel.
     pub tab: Tab,
     /// The light.
@@ -121,8 +131,8 @@ pub enum Msg {
     Family(Family),
     /// The fill of the lamp under edit.
     Fill(Option<Fill>),
-    /// A kind of lamp that is of no use here.
-    Refuse(Unsuitable),
+    /// A kind of lamp that is of no use here, or of equipment that this must not be used for.
+    Refuse(Refused),
     /// Edit this lamp.
     Choose(Place),
     /// Another like the lamp under edit, beside it.
@@ -204,7 +214,10 @@ impl Bench {
     pub fn after(mut self, msg: Msg) -> Self {
         match msg {
             Msg::Show(condition) => self.condition = condition,
-            Msg::Open(part) => self.open = Some(part),
+            Msg::Open(part) => {
+                self.open = Some(part);
+                self.refused = None;
+            }
             Msg::Close => {
                 self.open = None;
                 self.refused = None;
@@ -245,6 +258,7 @@ impl Bench {
         self.setup = Rc::new(setup);
         self.answers = Rc::new(answers);
         self.faults.clear();
+        self.keep_condition();
         self.edited = false;
         self.lamp = Place::default();
         self.refused = None;
@@ -267,7 +281,10 @@ impl Bench {
                 }
                 self.draft.set(Slot::PlateVolts, volts);
             }
-            Msg::Family(family) => self.draft.family = family,
+            Msg::Family(family) => {
+                self.refused = None;
+                self.draft.family = family;
+            }
             Msg::Fill(fill) => {
                 self.refused = None;
                 if let Some(lamp) = self.draft.lamp_mut(place) {
@@ -330,6 +347,13 @@ impl Bench {
         self.lamp = Place { group, lamp: lamp.min(self.draft.groups[group].len() - 1) };
     }
 
+    /// A family that cannot be in the condition on the loop shows the healthy one.
+    fn keep_condition(&mut self) {
+        if self.answers.get(self.condition).is_none() {
+            self.condition = Condition::Healthy;
+        }
+    }
+
     /// Takes what is typed as the set-up if it is one; else keeps the last valid one and says what is wrong.
     fn reread(&mut self) {
         self.edited = true;
@@ -340,6 +364,7 @@ impl Bench {
                     self.faults.clear();
                     self.setup = Rc::new(setup);
                     self.answers = Rc::new(answers);
+                    self.keep_condition();
                 }
                 Err(error) => self.faults = vec![(Slot::SupplyHertz, Fault::Number(error))],
             },

@@ -1,7 +1,9 @@
 //! A set-up and its results as text in the words of a language, for several panels.
 
+use lampladder_core::condition::OVERLOAD;
+use lampladder_core::detail::Detail;
+use lampladder_core::family::Family;
 use lampladder_core::lamp::Lamp;
-use lampladder_core::plate::{Family, OVERLOAD};
 use lampladder_core::setup::Setup;
 
 use crate::draft::Place;
@@ -33,6 +35,17 @@ pub fn bank(setup: &Setup, words: &Words) -> String {
     };
     let groups: Vec<_> = setup.bank.groups().iter().map(alike).collect();
     (words.bank)(&groups)
+}
+
+/// How large the equipment is, in the one number that it goes by.
+pub fn size(setup: &Setup, words: &Words) -> String {
+    let plate = &setup.plate;
+    if plate.family() == Family::Measured {
+        words.numerals.quantity(plate.detail(Detail::MeasuredOhms), "Ω")
+    } else {
+        // Watts that follow from printed amperes have a tail of digits that nobody printed.
+        words.numerals.short_quantity(plate.watts(), "W")
+    }
 }
 
 /// The bank on a small label.
@@ -68,7 +81,7 @@ pub fn assumed(setup: &Setup, words: &Words) -> Assumed {
         bank: bank(setup, words),
         family: (words.family)(family).noun,
         plate_volts: numerals.quantity(plate.volts(), "V"),
-        plate_watts: numerals.quantity(plate.watts(), "W"),
+        size: size(setup, words),
         shares: format!("{}\u{2013}{}", numerals.fixed(least * 100.0, 0), numerals.percent(most)),
         power_factor: power_factor.map(|(value, printed)| (numerals.plain(value), printed)),
         overload: numerals.plain(OVERLOAD),

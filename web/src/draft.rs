@@ -1,8 +1,9 @@
 //! What a person has typed, letter for letter.
 
+use lampladder_core::detail::Detail;
 use lampladder_core::error::{Field, InputError};
+use lampladder_core::family::Family;
 use lampladder_core::lamp::{Fill, Lamp};
-use lampladder_core::plate::Family;
 use lampladder_core::quantity::QuantityError;
 use lampladder_core::setup::Setup;
 
@@ -47,8 +48,14 @@ pub enum Slot {
     PlateVolts,
     /// Plate watts.
     PlateWatts,
+    /// Plate amperes.
+    PlateAmps,
+    /// Plate volt-amperes.
+    PlateVoltAmps,
     /// Plate power factor.
     PlatePowerFactor,
+    /// A class default of the equipment.
+    Detail(Detail),
     /// A property of one lamp.
     Lamp(Place, LampPart),
 }
@@ -61,7 +68,17 @@ impl Slot {
             Self::SupplyHertz => Field::Hertz,
             Self::SupplyOhms => Field::Ohms,
             Self::PlateWatts => Field::Watts,
+            Self::PlateAmps => Field::Amps,
+            Self::PlateVoltAmps => Field::VoltAmps,
             Self::PlatePowerFactor => Field::PowerFactor,
+            Self::Detail(detail) => match detail {
+                Detail::StartVolts | Detail::StopVolts => Field::StartVolts,
+                Detail::SeriesOhms | Detail::DegaussColdOhms | Detail::MeasuredOhms => Field::SeriesOhms,
+                Detail::DegaussWarmAmps => Field::Amps,
+                Detail::DegaussTripWatts => Field::Watts,
+                Detail::ReservoirSeconds | Detail::RestartSeconds => Field::RestartSeconds,
+                _ => Field::Details,
+            },
             Self::Lamp(_, part) => match part {
                 LampPart::Volts | LampPart::PointVolts(_) => Field::Volts,
                 LampPart::Watts => Field::Watts,
@@ -69,6 +86,14 @@ impl Slot {
                 LampPart::ColdOhms => Field::ColdOhms,
                 LampPart::PointAmps(_) => Field::Amps,
             },
+        }
+    }
+
+    /// The symbol of its unit.
+    pub const fn unit(self) -> &'static str {
+        match self {
+            Self::Detail(detail) => detail.unit(),
+            _ => self.field().unit(),
         }
     }
 }
@@ -111,8 +136,10 @@ pub struct Draft {
     pub groups: Vec<Vec<LampDraft>>,
     /// The kind of equipment.
     pub family: Family,
-    /// Plate volts, watts and power factor.
-    pub plate: [String; 3],
+    /// Plate volts, watts, amperes, volt-amperes and power factor.
+    pub plate: [String; 5],
+    /// Class defaults that were changed, for whatever family.
+    pub details: Vec<(Detail, String)>,
 }
 
 impl LampDraft {
@@ -160,16 +187,25 @@ impl Draft {
     /// A set-up, written out.
     pub fn of(setup: &Setup, numerals: Numerals) -> Self {
         let Setup { supply, bank, plate } = setup;
+        let optional = |value: Option<f64>| value.map_or_else(String::new, |value| numerals.plain(value));
+        let printed = plate.spec();
         let lamps = |group: &Vec<Lamp>| group.iter().map(|lamp| LampDraft::of(lamp, numerals)).collect();
         Self {
             supply: [supply.volts(), supply.hertz(), supply.ohms()].map(|value| numerals.plain(value)),
             groups: bank.groups().iter().map(lamps).collect(),
             family: plate.family(),
             plate: [
-                numerals.plain(plate.volts()),
-                numerals.plain(plate.watts()),
-                plate.power_factor().map_or_else(String::new, |value| numerals.plain(value)),
+                numerals.plain(printed.volts),
+                optional(printed.watts),
+                optional(printed.amps),
+                optional(printed.volt_amps),
+                optional(printed.power_factor),
             ],
+            details: printed
+                .details
+                .iter()
+                .map(|(detail, value)| (*detail, numerals.plain(*value)))
+                .collect(),
         }
     }
 
@@ -195,9 +231,22 @@ impl Draft {
             Slot::SupplyOhms => &self.supply[2],
             Slot::PlateVolts => &self.plate[0],
             Slot::PlateWatts => &self.plate[1],
-            Slot::PlatePowerFactor => &self.plate[2],
+            Slot::PlateAmps => &self.plate[2],
+            Slot::PlateVoltAmps => &self.plate[3],
+            Slot::PlatePowerFactor => &self.plate[4],
+            Slot::Detail(detail) => {
+                self.details.iter().find(|(known, _)| *known == detail).map_or("", |(_, text)| text)
+            }
             Slot::Lamp(place, part) => self.lamp(place).map_or("", |lamp| lamp.text(part)),
         }
+    }
+
+    fn detail_mut(&mut self, detail: Detail) -> &mut String {
+        let at = self.details.iter().position(|(known, _)| *known == detail).unwrap_or_else(|| {
+            self.details.push((detail, String::new()));
+            self.details.len() - 1
+        });
+        &mut self.details[at].1
     }
 
     /// Puts a text into a field; a field that is not there is left alone.
@@ -208,7 +257,10 @@ impl Draft {
             Slot::SupplyOhms => Some(&mut self.supply[2]),
             Slot::PlateVolts => Some(&mut self.plate[0]),
             Slot::PlateWatts => Some(&mut self.plate[1]),
-            Slot::PlatePowerFactor => Some(&mut self.plate[2]),
+            Slot::PlateAmps => Some(&mut self.plate[2]),
+            Slot::PlateVoltAmps => Some(&mut self.plate[3]),
+            Slot::PlatePowerFactor => Some(&mut self.plate[4]),
+            Slot::Detail(detail) => Some(self.detail_mut(detail)),
             Slot::Lamp(place, part) => self.lamp_mut(place).and_then(|lamp| lamp.text_mut(part)),
         };
         if let Some(target) = target {

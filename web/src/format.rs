@@ -170,9 +170,14 @@ mod tests {
 
     #[test]
     fn plain_numbers_come_back() {
-        for (value, text) in
-            [(230.0, "230"), (0.05, "0.05"), (1.5, "1.5"), (0.0, "0"), (20_000.0, "20000"), (-3.25, "\u{2212}3.25")]
-        {
+        for (value, text) in [
+            (230.0, "230"),
+            (0.05, "0.05"),
+            (1.5, "1.5"),
+            (0.0, "0"),
+            (20_000.0, "20000"),
+            (-3.25, "\u{2212}3.25"),
+        ] {
             assert_eq!(ENGLISH.plain(value), text);
         }
         assert_eq!(Numerals { decimal: ',' }.plain(0.16), "0,16");

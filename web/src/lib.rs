@@ -15,18 +15,19 @@
 //! | `stale` | there while the result is not that of what is typed |
 //! | `voltage-bar`, `voltage-why` | the bar and its explanation |
 //! | `cell-healthy`, `cell-overloaded`, `cell-shorted` | with `data-amps`, `data-bank-volts`, `data-load-volts`, `data-glow` |
-//! | `advice`, `assumes`, `stale-note`, `lamp-caution` | the sentence to act on and what stands around it |
+//! | `advice`, `assumes`, `stale-note`, `lamp-caution`, `warning`, `too-powerful` | the sentence to act on and what stands around it |
 //! | `life` | cells of lamp life in the details |
 //! | `note`, `dismiss`, `use-kept` | notes |
 //! | `sheet`, `done` | the editor |
-//! | `field-*`, `error-*`, `step-*-more`, `step-*-less` | `supply-volts`, `supply-hertz`, `supply-ohms`, `plate-volts`, `plate-watts`, `plate-power-factor`, `lamp-volts`, `lamp-watts`, `lamp-lumens`, `lamp-cold-ohms`, `point-0-volts`, `point-0-amps` |
+//! | `field-*`, `error-*`, `step-*-more`, `step-*-less` | `supply-volts`, `supply-hertz`, `supply-ohms`, `plate-volts`, `plate-watts`, `plate-amps`, `plate-volt-amps`, `plate-power-factor`, `detail-start-volts` and so on, `lamp-volts`, `lamp-watts`, `lamp-lumens`, `lamp-cold-ohms`, `point-0-volts`, `point-0-amps` |
 //! | `quick-volts-230`, `quick-hertz-50`, `quick-hertz-0`, `follow-supply` | one tap in the supply's editor |
 //! | `lamp-0-0` | the lamp of a group, in the bank's editor |
 //! | `add-parallel`, `add-series`, `remove-lamp` | |
 //! | `quick-watts-60`, `quick-lamp-volts-230` | one tap for a lamp |
 //! | `kind-ordinary`, `kind-halogen`, `kind-led`, `kind-compact-fluorescent`, `kind-carbon-filament`, `refusal` | kinds of lamp |
 //! | `fill-auto`, `fill-vacuum`, `fill-gas`, `add-point`, `remove-point-0`, `lamp-life` | more of a lamp |
-//! | `family-transformer-supply`, `family-heater`, `family-plain` | kinds of equipment |
+//! | `choose-family`, then `family-transformer-supply`, `family-heater`, `family-plain` and so on | kinds of equipment |
+//! | `refused-microwave`, `refused-medical`, `refused-three-phase` | what the page is not for; the reason is `refusal` |
 //! | `tab-expect`, `tab-curve`, `chart`, `crossings`, `bank-curve` | panels |
 
 pub mod advice;

@@ -3,7 +3,7 @@
 use lampladder_core::bank::Bank;
 use lampladder_core::error::{Field, InputError};
 use lampladder_core::lamp::{Lamp, LampSpec, Point};
-use lampladder_core::plate::Plate;
+use lampladder_core::plate::{Plate, PlateSpec};
 use lampladder_core::quantity;
 use lampladder_core::setup::Setup;
 use lampladder_core::supply::Supply;
@@ -41,9 +41,9 @@ impl Reading<'_> {
         read.map_err(|error| self.faults.push((slot, Fault::Text(error)))).ok()
     }
 
-    /// An empty field is an answer, too.
-    fn optional(&mut self, slot: Slot) -> Option<Option<f64>> {
-        if self.draft.text(slot).trim().is_empty() { Some(None) } else { self.number(slot).map(Some) }
+    /// `None` for an empty field, which is an answer too, and for one that cannot be read, which is a fault.
+    fn optional(&mut self, slot: Slot) -> Option<f64> {
+        if self.draft.text(slot).trim().is_empty() { None } else { self.number(slot) }
     }
 
     fn refused(&mut self, slot: Slot, error: InputError) {
@@ -59,21 +59,39 @@ impl Reading<'_> {
             Field::Ohms => Slot::SupplyOhms,
             _ => Slot::SupplyVolts,
         };
-        Supply::new(volts?, hertz?, ohms?.unwrap_or(0.0))
+        Supply::new(volts?, hertz?, ohms.unwrap_or(0.0))
             .map_err(|error| self.refused(slot(&error), error))
             .ok()
     }
 
     fn plate(&mut self) -> Option<Plate> {
+        let family = self.draft.family;
+        let faults = self.faults.len();
         let volts = self.number(Slot::PlateVolts);
-        let watts = self.number(Slot::PlateWatts);
+        let watts = self.optional(Slot::PlateWatts);
+        let amps = self.optional(Slot::PlateAmps);
+        let volt_amps = self.optional(Slot::PlateVoltAmps);
         let power_factor = self.optional(Slot::PlatePowerFactor);
-        let slot = |error: &InputError| match error.field() {
-            Field::Watts => Slot::PlateWatts,
-            Field::PowerFactor => Slot::PlatePowerFactor,
+        // What was typed for another family stays in its field, and is of no account here.
+        let details = family.details().iter().filter_map(|default| {
+            let value = self.optional(Slot::Detail(default.detail))?;
+            Some((default.detail, value))
+        });
+        let details: Vec<_> = details.collect();
+        if self.faults.len() > faults {
+            return None;
+        }
+        let slot = |error: &InputError| match (error, error.field()) {
+            (InputError::DetailOutOfRange { detail, .. } | InputError::Unknown { detail }, _) => {
+                Slot::Detail(*detail)
+            }
+            (_, Field::Watts) => Slot::PlateWatts,
+            (_, Field::Amps) => Slot::PlateAmps,
+            (_, Field::VoltAmps) => Slot::PlateVoltAmps,
+            (_, Field::PowerFactor) => Slot::PlatePowerFactor,
             _ => Slot::PlateVolts,
         };
-        Plate::new(self.draft.family, volts?, watts?, power_factor?)
+        Plate::from_spec(PlateSpec { family, volts: volts?, watts, amps, volt_amps, power_factor, details })
             .map_err(|error| self.refused(slot(&error), error))
             .ok()
     }
@@ -93,6 +111,7 @@ impl Reading<'_> {
     fn lamp(&mut self, place: Place) -> Option<Lamp> {
         let draft = self.draft.lamp(place)?;
         let slot = |part| Slot::Lamp(place, part);
+        let faults = self.faults.len();
         let volts = self.number(slot(LampPart::Volts));
         let watts = self.number(slot(LampPart::Watts));
         let lumens = self.optional(slot(LampPart::Lumens));
@@ -108,14 +127,13 @@ impl Reading<'_> {
             volts: volts?,
             watts: watts?,
             fill: draft.fill,
-            lumens: lumens?,
-            cold_ohms: cold_ohms?,
+            lumens,
+            cold_ohms,
             points: Vec::new(),
             rated_kelvin: draft.rated_kelvin,
             gas_share: draft.gas_share,
         };
         // The points one by one: core names volts or amperes, and we have to know of which point.
-        let faults = self.faults.len();
         for (index, point) in points.iter().enumerate() {
             let Some(point) = point else { continue };
             if let Err(error) = Lamp::from_spec(LampSpec { points: vec![*point], ..spec.clone() })

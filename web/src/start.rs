@@ -29,10 +29,17 @@ pub fn opened(address: Option<&str>, kept: Option<&str>) -> Option<Bench> {
         Bench::with(setup).map_err(LinkError::Refused)
     };
     let mut notes = Vec::new();
-    let from_link = address.and_then(|text| open(text).map_err(|error| notes.push(Note::BadLink(error))).ok());
+    let from_link =
+        address.and_then(|text| open(text).map_err(|error| notes.push(Note::BadLink(error))).ok());
     let from_kept = kept.and_then(|text| {
         // What is kept and bad is no news while a good link is open; it stays as it is all the same.
-        open(text).map_err(|error| if from_link.is_none() { notes.push(Note::BadKept(error)) }).ok()
+        open(text)
+            .map_err(|error| {
+                if from_link.is_none() {
+                    notes.push(Note::BadKept(error));
+                }
+            })
+            .ok()
     });
     if let (Some(link), Some(kept)) = (&from_link, &from_kept)
         && link.setup != kept.setup
@@ -64,7 +71,7 @@ mod tests {
     #[test]
     fn the_address_comes_before_what_was_kept_and_that_before_the_example() {
         let (first, second) = (link_of(120.0), link_of(110.0));
-        let opened = |address, kept| super::opened(address, kept).expect("opens");
+        let opened = |address, kept| opened(address, kept).expect("opens");
         let both = opened(Some(&first), Some(&second));
         assert_eq!((volts(&both), both.notes.as_slice()), (120.0, [Note::FromLink].as_slice()));
         assert!(opened(Some(&first), Some(&first)).notes.is_empty());
@@ -76,7 +83,9 @@ mod tests {
     #[test]
     fn bad_links_fall_back_and_say_so() {
         let good = link_of(110.0);
-        for (bad, error) in [("9zzz", LinkError::Newer), ("junk", LinkError::Damaged), ("1", LinkError::Damaged)] {
+        for (bad, error) in
+            [("9zzz", LinkError::Newer), ("junk", LinkError::Damaged), ("1", LinkError::Damaged)]
+        {
             let bench = opened(Some(bad), Some(&good)).expect("opens");
             assert_eq!((volts(&bench), bench.notes.as_slice()), (110.0, [Note::BadLink(error)].as_slice()));
             let bench = opened(None, Some(bad)).expect("opens");

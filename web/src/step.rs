@@ -1,5 +1,6 @@
 //! What a stepper beside a field does: sizes that are sold for lamps, small even steps for the rest.
 
+use lampladder_core::detail::Detail;
 use lampladder_core::quantity;
 
 use crate::draft::{Draft, LampPart, Slot};
@@ -20,7 +21,14 @@ pub fn stepped(draft: &Draft, slot: Slot, up: bool, numerals: Numerals) -> Strin
     }
     let next = match slot {
         Slot::Lamp(_, LampPart::Watts) => stock(value, up),
-        Slot::SupplyHertz => if up { 60.0 } else { 50.0 },
+        Slot::SupplyHertz => {
+            if up {
+                60.0
+            } else {
+                50.0
+            }
+        }
+        Slot::Detail(Detail::MeasuredOhms) => even(value, usual_step(value, up) * 2.0, up),
         Slot::PlatePowerFactor => even(value, 0.05, up).clamp(0.05, 1.0),
         Slot::SupplyVolts | Slot::PlateVolts | Slot::Lamp(_, LampPart::Volts) => even(value, 1.0, up),
         _ => even(value, usual_step(value, up), up),

@@ -12,7 +12,7 @@ const WIDE: f64 = 860.0;
 #[derive(Debug)]
 pub struct Opened {
     dialog: HtmlDialogElement,
-    _listener: Option<Listener>,
+    listener: Option<Listener>,
 }
 
 impl Opened {
@@ -25,13 +25,14 @@ impl Opened {
             dialog.show();
         }
         let listener = Listener::new(dialog.clone().into(), "close", move |_| closed());
-        Some(Self { dialog, _listener: listener })
+        Some(Self { dialog, listener })
     }
 }
 
 impl Drop for Opened {
     fn drop(&mut self) {
-        self._listener = None;
+        // Closing by program is no news to the program.
+        drop(self.listener.take());
         if self.dialog.open() {
             self.dialog.close();
         }

@@ -39,7 +39,8 @@ pub fn colour(token: &str) -> Option<String> {
 
 /// Whether the phone asks for dark.
 pub fn phone_is_dark() -> bool {
-    let query = web_sys::window().and_then(|window| window.match_media("(prefers-color-scheme: dark)").ok()?);
+    let query =
+        web_sys::window().and_then(|window| window.match_media("(prefers-color-scheme: dark)").ok()?);
     query.is_some_and(|query| query.matches())
 }
 

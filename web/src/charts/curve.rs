@@ -1,7 +1,7 @@
 //! The chart of the bank's curve with its band, the equipment's curves, and where they meet.
 
-use lampladder_core::curve::{bank_amps, load_line};
-use lampladder_core::plate::Condition;
+use lampladder_core::condition::Condition;
+use lampladder_core::curve::{bank_amps, load_lines};
 use lampladder_core::setup::Setup;
 use plotters::prelude::*;
 use plotters::style::text_anchor::{HPos, Pos, VPos};
@@ -16,7 +16,7 @@ use crate::words::Words;
 /// Points along the bank's curve.
 const STEPS: u16 = 48;
 /// Points along the equipment's.
-const LOAD_POINTS: u16 = 160;
+const LOAD_POINTS: u16 = 56;
 /// Height of the chart, CSS pixels.
 const HEIGHT: u32 = 280;
 
@@ -48,11 +48,12 @@ impl Curves {
             .collect();
         let most = bands.iter().map(|(_, band)| band.high).fold(0.0, f64::max);
         let amps = if most > 0.0 { most * 1.12 } else { 1.0 };
-        let loads = answers.all().iter().filter_map(|(condition, _)| {
-            let load = setup.plate.load(*condition, 1.0).ok()?;
-            let line = load_line(&setup.supply, &setup.bank, &load, LOAD_POINTS);
-            Some((*condition, clipped(&line, (volts, amps))))
-        });
+        let mut loads = Vec::new();
+        for (condition, _) in answers.all() {
+            let Ok(load) = setup.plate.load(*condition, 1.0) else { continue };
+            let Ok(lines) = load_lines(&setup.supply, &setup.bank, &load, LOAD_POINTS) else { continue };
+            loads.extend(lines.iter().map(|line| (*condition, clipped(&line.points, (volts, amps)))));
+        }
         let marks = answers.all().iter().filter_map(|(condition, _)| {
             let shown = answers.shown(*condition)?;
             Some((*condition, (shown.bank_volts.value, shown.amps.value)))
@@ -61,7 +62,7 @@ impl Curves {
             bank: bands.iter().map(|(at, band)| (*at, band.value)).collect(),
             low: bands.iter().map(|(at, band)| (*at, band.low)).collect(),
             high: bands.iter().map(|(at, band)| (*at, band.high)).collect(),
-            loads: loads.collect(),
+            loads,
             marks: marks.collect(),
             volts,
             amps,
@@ -98,7 +99,8 @@ fn edge(from: (f64, f64), to: (f64, f64), most: (f64, f64)) -> (f64, f64) {
         }
     };
     let share = share(from.0, to.0, most.0).min(share(from.1, to.1, most.1));
-    (from.0 + share * (to.0 - from.0), from.1 + share * (to.1 - from.1))
+    let at = |from: f64, to: f64, most: f64| (from + share * (to - from)).clamp(0.0, most);
+    (at(from.0, to.0, most.0), at(from.1, to.1, most.1))
 }
 
 type Failure = DrawingAreaErrorKind<<CanvasBackend as DrawingBackend>::ErrorType>;
@@ -111,7 +113,11 @@ pub fn draw(canvas: &HtmlCanvasElement, curves: &Curves, ink: &Ink, words: &Word
     // The backend knows nothing of fine screens: make the canvas that much larger and everything on it too.
     let ratio = pixel_ratio().max(2.0);
     let width = u32::try_from(canvas.client_width()).unwrap_or(0).max(200);
-    #[expect(clippy::cast_possible_truncation, clippy::cast_sign_loss, reason = "a few thousand pixels at most")]
+    #[expect(
+        clippy::cast_possible_truncation,
+        clippy::cast_sign_loss,
+        reason = "a few thousand pixels at most"
+    )]
     let scaled = |pixels: f64| (pixels * ratio).round() as u32;
     canvas.set_width(scaled(f64::from(width)));
     canvas.set_height(scaled(f64::from(HEIGHT)));
@@ -152,16 +158,16 @@ pub fn draw(canvas: &HtmlCanvasElement, curves: &Curves, ink: &Ink, words: &Word
         let size = scaled(5.5);
         let left = at.0 > curves.volts * 0.6;
         // Right of a mark lies the open wedge between the two curves; at the edge, the one above the bank's.
-        let anchor = if left { Pos::new(HPos::Right, VPos::Bottom) } else { Pos::new(HPos::Left, VPos::Center) };
+        let anchor =
+            if left { Pos::new(HPos::Right, VPos::Bottom) } else { Pos::new(HPos::Left, VPos::Center) };
         let style = font(13.0).into_font().color(&ink.ink).pos(anchor);
         #[expect(clippy::cast_possible_wrap, reason = "a few pixels")]
-        let (dx, dy) = if left { (-(scaled(8.0) as i32), -(scaled(8.0) as i32)) } else { (scaled(12.0) as i32, 0) };
-        chart.draw_series([
-            EmptyElement::at(*at)
-                + Circle::new((0, 0), size, ink.ground.filled())
-                + Circle::new((0, 0), size, ink.ink.stroke_width(scaled(2.2)))
-                + Text::new((words.condition)(*condition).to_owned(), (dx, dy), style),
-        ])?;
+        let (dx, dy) =
+            if left { (-(scaled(8.0) as i32), -(scaled(8.0) as i32)) } else { (scaled(12.0) as i32, 0) };
+        chart.draw_series([EmptyElement::at(*at)
+            + Circle::new((0, 0), size, ink.ground.filled())
+            + Circle::new((0, 0), size, ink.ink.stroke_width(scaled(2.2)))
+            + Text::new((words.condition)(*condition).to_owned(), (dx, dy), style)])?;
     }
     root.present()
 }

@@ -1,7 +1,8 @@
 //! The one sentence to act on, what it assumes, and the cautions about the lamps themselves.
 
 use lampladder_core::band::Band;
-use lampladder_core::plate::Condition;
+use lampladder_core::condition::Condition;
+use lampladder_core::family::{Unsuitable, Warning};
 use yew::{Html, function_component, html};
 
 use super::PanelProps;
@@ -20,12 +21,31 @@ pub fn AdvicePanel(props: &PanelProps) -> Html {
             if bench.is_stale() {
                 <p class="stale" data-testid="stale-note">{ (words.stale)(&wrong_fields(bench)) }</p>
             }
+            { warnings(bench) }
             { for cautions(&bench.setup, &bench.answers).into_iter().map(|caution| html! {
                 <p class="caution" data-testid="lamp-caution">{ caution_text(bench, caution) }</p>
             }) }
             <p><b>{ main }</b>{ " " }{ rest }</p>
             <p class="assumes" data-testid="assumes">{ (words.assumes)(&describe::assumed(&bench.setup, words)) }</p>
         </section>
+    }
+}
+
+/// What must be said first about this kind of equipment.
+fn warnings(bench: &Bench) -> Html {
+    let words = bench.words();
+    let family = bench.setup.plate.family();
+    // The others are in the equipment's editor, or are the sentence itself when they come true.
+    let urgent = |warning: &&Warning| matches!(warning, Warning::LiveChassis | Warning::TubeVoltage);
+    html! {
+        <>
+            if bench.setup.plate.is_too_powerful() {
+                <p class="caution" data-testid="too-powerful">{ (words.refuse_equipment)(Unsuitable::TooPowerful) }</p>
+            }
+            { for family.warnings().iter().filter(urgent).map(|warning| html! {
+                <p class="first" data-testid="warning">{ (words.warning)(*warning) }</p>
+            }) }
+        </>
     }
 }
 
@@ -51,19 +71,23 @@ fn sentence(bench: &Bench) -> (String, String) {
             let band = Band { value: seconds, low: seconds * 0.7, high: seconds * 1.3 };
             ((words.pulses)(&words.numerals.value(&band, "s")), String::new())
         }
+        Advice::Stands { glow } => {
+            let glow = (words.glow_range)(glow.0, glow.1);
+            ((words.stands)(&glow), words.larger.to_owned())
+        }
+        Advice::LooksShorted => (words.looks_shorted.to_owned(), words.larger.to_owned()),
         Advice::DoesNotStart => (words.does_not_start.to_owned(), String::new()),
         Advice::HardToTell => (words.hard_to_tell.to_owned(), String::new()),
         Advice::Watch { glow, limit_amps, brighter } => {
             let amps = bench.answers.shown(Condition::Healthy).map(|shown| shown.amps);
             let amps_text = amps.map_or_else(String::new, |band| words.numerals.value(&band, "A"));
             let glow = (words.glow_range)(glow.0, glow.1);
-            let off = match brighter {
-                Some(word) => (words.off_if_brighter)(word),
-                None => {
-                    let half = amps.map_or(0.0, |band| band.high - band.value);
-                    let limit = Band { value: limit_amps, low: limit_amps - half, high: limit_amps + half };
-                    (words.off_if_more)(&words.numerals.value(&limit, "A"))
-                }
+            let off = if let Some(word) = brighter {
+                (words.off_if_brighter)(word)
+            } else {
+                let half = amps.map_or(0.0, |band| band.high - band.value);
+                let limit = Band { value: limit_amps, low: limit_amps - half, high: limit_amps + half };
+                (words.off_if_more)(&words.numerals.value(&limit, "A"))
             };
             ((words.expect)(&glow, &amps_text), off)
         }

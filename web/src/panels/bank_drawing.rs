@@ -16,7 +16,7 @@ const WIDTH: f64 = 186.0;
 /// A well's greatest width.
 const WIDEST: f64 = 100.0;
 /// From this size on there is room for a lamp's watts in its well.
-const ROOM: (f64, f64) = (48.0, 20.0);
+const ROOM: (f64, f64) = (36.0, 18.0);
 
 /// The bank, `height` high.
 pub(super) fn bank_drawing(bench: &Bench, height: f64) -> Html {
@@ -24,7 +24,7 @@ pub(super) fn bank_drawing(bench: &Bench, height: f64) -> Html {
     let columns = count(groups.len());
     let gap = if columns > 3.0 { 6.0 } else { 12.0 };
     let width = ((WIDTH - gap * (columns - 1.0)) / columns).min(WIDEST);
-    let left = MIDDLE - (width * columns + gap * (columns - 1.0)) / 2.0;
+    let left = MIDDLE - 0.5 * (width * columns + gap * (columns - 1.0));
     html! {
         { for groups.iter().enumerate().map(|(column, group)| {
             let x = left + count(column) * (width + gap);
@@ -86,7 +86,7 @@ fn one(bench: &Bench, place: Place, lamp: &Lamp, at: Well) -> Html {
         <>
             { well(&format!("loop-{}-{}", place.group, place.lamp), at, filament) }
             if mixed && room {
-                <text class="rating" x={n(at.x + at.width - 5.0)} y={n(at.y + at.height - 5.0)}>
+                <text class="rating" x={n(at.x + at.width - 4.0)} y={n(at.y + at.height - 4.0)}>
                     { bench.words().numerals.plain(lamp.rated_watts()) }
                 </text>
             }

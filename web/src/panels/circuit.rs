@@ -1,15 +1,15 @@
 //! The circuit as what it is: one closed loop of supply, lamps and equipment. Every part of it is a button.
 
 use lampladder_core::bank::Bank;
-use lampladder_core::plate::Condition;
+use lampladder_core::condition::Condition;
 use yew::{Html, function_component, html};
 
 use super::bank_drawing::{TOP, bank_drawing};
 use super::{PanelProps, send};
 use crate::bench::{Bench, Msg, Part};
 use crate::describe;
-use crate::parts::svg::n;
 use crate::parts::picture;
+use crate::parts::svg::n;
 
 /// Heights of the drawing, user units; static/circuit.css has the same figures for the buttons on it.
 struct Plan {
@@ -47,7 +47,7 @@ pub fn Circuit(props: &PanelProps) -> Html {
     let supply = describe::supply(&bench.setup, words);
     let bank = describe::bank(&bench.setup, words);
     let short_bank = describe::short_bank(&bench.setup, words);
-    let watts = words.numerals.quantity(bench.setup.plate.watts(), "W");
+    let size = describe::size(&bench.setup, words);
     let part = |part: Part, class: &'static str, testid: &'static str, shown: &str, heard: &str| {
         html! {
             <button type="button" {class} data-testid={testid} aria-label={(words.change)(part, heard)}
@@ -60,7 +60,7 @@ pub fn Circuit(props: &PanelProps) -> Html {
     let volts = words.numerals.quantity(bench.setup.supply.volts(), "V");
     let family = (words.family)(bench.setup.plate.family()).name;
     html! {
-        <section class={plan.class} aria-label={(words.circuit)(&supply, &bank, &watts)}>
+        <section class={plan.class} aria-label={(words.circuit)(&supply, &bank, &size)}>
             <svg viewBox={format!("0 0 {} {}", n(WIDTH), n(plan.height))} aria-hidden="true" focusable="false">
                 { wires(&plan) }
                 { supply_sign(&plan, bench.setup.supply.is_direct()) }
@@ -69,7 +69,7 @@ pub fn Circuit(props: &PanelProps) -> Html {
             </svg>
             { part(Part::Supply, "part part-supply", "edit-supply", &volts, &supply) }
             { part(Part::Bank, "part part-bank", "edit-bank", &short_bank, &bank) }
-            { part(Part::Equipment, "part part-load", "edit-equipment", &watts, &format!("{family}, {watts}")) }
+            { part(Part::Equipment, "part part-load", "edit-equipment", &size, &format!("{family}, {size}")) }
             { reading(bench) }
         </section>
     }
@@ -123,7 +123,12 @@ fn wires(plan: &Plan) -> Html {
 fn supply_sign(plan: &Plan, direct: bool) -> Html {
     let (x, y) = (SUPPLY_X, plan.centre);
     let sign = if direct {
-        format!("M {a} {y1} h 30 M {a} {y2} h 7 m 4.5 0 h 7 m 4.5 0 h 7", a = n(x - 15.0), y1 = n(y - 9.0), y2 = n(y - 1.0))
+        format!(
+            "M {a} {y1} h 30 M {a} {y2} h 7 m 4.5 0 h 7 m 4.5 0 h 7",
+            a = n(x - 15.0),
+            y1 = n(y - 9.0),
+            y2 = n(y - 1.0)
+        )
     } else {
         format!("M {} {} q 8 -17 16 0 t 16 0", n(x - 16.0), n(y - 4.0))
     };

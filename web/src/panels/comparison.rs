@@ -1,6 +1,7 @@
 //! Healthy, overloaded and shorted side by side, as they would look; a tap shows one on the loop.
 
-use lampladder_core::plate::Condition;
+use lampladder_core::condition::Condition;
+use lampladder_core::steady::Outcome;
 use yew::{Html, function_component, html};
 
 use super::{PanelProps, send};
@@ -52,6 +53,8 @@ fn cell(handle: &BenchHandle, condition: Condition) -> Html {
                 </span>
             } else if filament == Filament::Broken {
                 <span class="word">{ words.burnt }</span>
+            } else if matches!(bench.answers.outcome(condition), Some(Outcome::Hunts { .. })) {
+                <span class="word">{ words.pulsing }</span>
             } else {
                 <span class="word">{ words.none }</span>
             }

@@ -1,8 +1,8 @@
 //! The bank's curve and the equipment's, meeting where the circuit settles; a chart, and the same in tables.
 
 use lampladder_core::band::Band;
+use lampladder_core::condition::Condition;
 use lampladder_core::curve::bank_amps;
-use lampladder_core::plate::Condition;
 use yew::{Html, function_component, html, use_effect_with, use_memo, use_node_ref, use_state_eq};
 
 use super::PanelProps;
@@ -21,9 +21,8 @@ pub fn CurvePanel(props: &PanelProps) -> Html {
     let words = bench.words();
     let table = words.table;
     let canvas = use_node_ref();
-    let curves = use_memo((bench.setup.clone(), bench.answers.clone()), |(setup, answers)| {
-        Curves::of(setup, answers)
-    });
+    let curves =
+        use_memo((bench.setup.clone(), bench.answers.clone()), |(setup, answers)| Curves::of(setup, answers));
     let size = use_state_eq(width);
     {
         let size = size.clone();

@@ -1,7 +1,7 @@
 //! Everything that the comparison knows, in figures: bands, power, each lamp's filament and life, assumptions.
 
+use lampladder_core::condition::Condition;
 use lampladder_core::expect::Shown;
-use lampladder_core::plate::Condition;
 use yew::{Html, function_component, html};
 
 use super::PanelProps;
@@ -24,8 +24,8 @@ pub fn Details(props: &PanelProps) -> Html {
                     <thead><tr>
                         <th scope="col">{ table.condition }</th>
                         <th scope="col">{ table.amps }</th>
-                        <th scope="col">{ table.bank_volts }</th>
-                        <th scope="col">{ table.load_volts }</th>
+                        <th scope="col">{ table.short_bank_volts }</th>
+                        <th scope="col">{ table.short_load_volts }</th>
                         <th scope="col">{ table.load_watts }</th>
                     </tr></thead>
                     <tbody>{ for bench.answers.all().iter().map(|(condition, _)| row(bench, *condition)) }</tbody>
@@ -71,7 +71,7 @@ fn row(bench: &Bench, condition: Condition) -> Html {
         <tr>
             <th scope="row">
                 { name }
-                <small>{ (words.condition_means)(condition, &words.numerals.plain(lampladder_core::plate::OVERLOAD)) }</small>
+                <small>{ (words.condition_means)(condition, &words.numerals.plain(lampladder_core::condition::OVERLOAD)) }</small>
             </th>
             { range(|shown| &shown.amps, "A") }
             { range(|shown| &shown.bank_volts, "V") }

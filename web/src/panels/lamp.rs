@@ -6,7 +6,7 @@ use yew::{Html, function_component, html};
 
 use super::supply::quick;
 use super::{PanelProps, send};
-use crate::bench::{BenchHandle, MOST_POINTS, Msg, Unsuitable};
+use crate::bench::{BenchHandle, MOST_POINTS, Msg, Refused, Unsuitable};
 use crate::describe;
 use crate::draft::{LampPart, Slot};
 use crate::parts::choice::{Choice, choices};
@@ -38,7 +38,7 @@ pub fn LampEditor(props: &PanelProps) -> Html {
             { lamp_volts(bench) }
             <h3>{ words.edit.kind }</h3>
             { kinds(bench) }
-            if let Some(kind) = bench.refused {
+            if let Some(Refused::Lamp(kind)) = bench.refused {
                 <p class="error" role="alert" data-testid="refusal">{ (words.refusal)(kind) }</p>
             }
             { life(bench) }
@@ -92,7 +92,7 @@ fn kinds(bench: &BenchHandle) -> Html {
         text: (words.unsuitable)(kind).to_owned(),
         chosen: false,
         testid: testid.to_owned(),
-        onclick: send(bench, Msg::Refuse(kind)),
+        onclick: send(bench, Msg::Refuse(Refused::Lamp(kind))),
     }));
     choices(words.edit.kind, all)
 }
@@ -140,7 +140,8 @@ fn points(bench: &BenchHandle) -> Html {
     let words = bench.words();
     let edit = words.edit;
     let count = bench.draft.lamp(bench.lamp).map_or(0, |lamp| lamp.points.len());
-    let field = |part| html! { <Field bench={bench.clone()} slot={Slot::Lamp(bench.lamp, part)} steps={false} /> };
+    let field =
+        |part| html! { <Field bench={bench.clone()} slot={Slot::Lamp(bench.lamp, part)} steps={false} /> };
     html! {
         <>
             <h3>{ edit.points }</h3>

@@ -26,9 +26,8 @@ pub fn Sheet(props: &PanelProps) -> Html {
         let node = node.clone();
         let dispatcher = bench.dispatcher();
         use_effect_with(part, move |part| {
-            let opened = part.and_then(|_| {
-                Opened::new(&node.cast::<Element>()?, move || dispatcher.dispatch(Msg::Close))
-            });
+            let opened = part
+                .and_then(|_| Opened::new(&node.cast::<Element>()?, move || dispatcher.dispatch(Msg::Close)));
             let opened = Rc::new(RefCell::new(opened));
             move || drop(opened.take())
         });

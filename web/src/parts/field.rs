@@ -29,7 +29,10 @@ pub fn slug(slot: Slot) -> String {
         Slot::SupplyOhms => "supply-ohms",
         Slot::PlateVolts => "plate-volts",
         Slot::PlateWatts => "plate-watts",
+        Slot::PlateAmps => "plate-amps",
+        Slot::PlateVoltAmps => "plate-volt-amps",
         Slot::PlatePowerFactor => "plate-power-factor",
+        Slot::Detail(detail) => return format!("detail-{}", detail.name().replace('_', "-")),
         Slot::Lamp(_, LampPart::Volts) => "lamp-volts",
         Slot::Lamp(_, LampPart::Watts) => "lamp-watts",
         Slot::Lamp(_, LampPart::Lumens) => "lamp-lumens",
@@ -79,7 +82,7 @@ pub fn Field(props: &FieldProps) -> Html {
                         maxlength="40" data-testid={format!("field-{slug}")} value={bench.draft.text(slot).to_owned()}
                         aria-invalid={if fault.is_some() { "true" } else { "false" }}
                         aria-describedby={fault.map(|_| error_id.clone())} {oninput} />
-                    <span class="unit" aria-hidden="true">{ slot.field().unit() }</span>
+                    <span class="unit" aria-hidden="true">{ slot.unit() }</span>
                 </span>
                 if *steps { { stepper(true) } }
             </div>

@@ -1,10 +1,12 @@
 //! English.
 
-use lampladder_core::error::{Field, InputError};
+use lampladder_core::condition::Condition;
+use lampladder_core::detail::Detail;
+use lampladder_core::error::InputError;
+use lampladder_core::family::{self, Family, Warning};
 use lampladder_core::glow::GlowWord;
 use lampladder_core::lamp::Fill;
 use lampladder_core::link::LinkError;
-use lampladder_core::plate::{Condition, Family};
 use lampladder_core::quantity::QuantityError;
 
 use super::{Alike, Assumed, EditWords, FamilyWords, TableWords, Words};
@@ -48,27 +50,40 @@ pub(super) static WORDS: Words = Words {
     },
     condition: |condition| match condition {
         Condition::Healthy => "Healthy",
+        Condition::Idle => "Idle",
+        Condition::Working => "Working",
         Condition::Overloaded => "Overloaded",
         Condition::Shorted => "Shorted",
+        Condition::OpenCircuit => "Open",
+        Condition::LeakyReservoir => "Leaky reservoir",
+        Condition::ShortedReservoir => "Shorted reservoir",
+        Condition::ShortedDiode => "Shorted diode",
+        Condition::ShortedWinding => "Shorted winding",
+        Condition::OutputConducting => "Output conducting",
+        Condition::Stalled => "Stalled",
         other => other.name(),
     },
     if_condition: |condition| match condition {
         Condition::Healthy => "if healthy",
+        Condition::Idle => "if idle",
+        Condition::Working => "if working",
         Condition::Overloaded => "if overloaded",
         Condition::Shorted => "if shorted",
-        other => other.name(),
-    },
-    with_condition: |condition| match condition {
-        Condition::Healthy => "with healthy equipment",
-        Condition::Overloaded => "with overloaded equipment",
-        Condition::Shorted => "with the equipment shorted",
+        Condition::OpenCircuit => "if open",
+        Condition::LeakyReservoir => "if the reservoir leaks",
+        Condition::ShortedReservoir => "if the reservoir is shorted",
+        Condition::ShortedDiode => "if a diode is shorted",
+        Condition::ShortedWinding => "if a winding is shorted",
+        Condition::OutputConducting => "if the output conducts",
+        Condition::Stalled => "if stalled",
         other => other.name(),
     },
     conditions: "Condition of the equipment",
     condition_means: |condition, overload| match condition {
-        Condition::Healthy => String::from("takes what its plate says"),
+        Condition::Healthy => String::from("as its plate says; a motor running free"),
         Condition::Overloaded => format!("takes {overload} times what its plate says"),
         Condition::Shorted => String::from("its two input wires joined"),
+        Condition::Stalled => String::from("the shaft does not turn"),
         other => String::from(other.name()),
     },
     glow,
@@ -94,11 +109,16 @@ pub(super) static WORDS: Words = Words {
     stale_mark: "last valid result",
     burns_out: |lamp, condition| {
         let when = with(condition);
-        format!("Do not switch on: {lamp} burns out {when}. Use lamps for the supply's voltage, or more in series.")
+        format!(
+            "Do not switch on: {lamp} burns out {when}. Use lamps for the supply's voltage, or more in series."
+        )
     },
     pulses: |seconds| {
         format!("Expect pulsing, about every {seconds}: healthy equipment starts, starves and starts again.")
     },
+    stands: |glow| format!("Expect {glow}: a healthy motor stands still on this voltage, hums and heats."),
+    looks_shorted: "A healthy set looks shorted behind these lamps: they cannot warm its degauss thermistor.",
+    larger: "Use larger lamps.",
     does_not_start: "Healthy equipment does not start behind these lamps. Use larger ones.",
     hard_to_tell: "Healthy and faulty look alike behind these lamps. Use larger ones, or more in parallel.",
     expect: |glow, amps| format!("Expect {glow}, about {amps}."),
@@ -112,8 +132,8 @@ pub(super) static WORDS: Words = Words {
     off_if_more: |amps| format!("If the meter stays above {amps}, switch off."),
     assumes: |assumed| {
         format!(
-            "Assumes {}, {} with a {} plate taking {} of it, lamps as printed.",
-            assumed.supply, assumed.family, assumed.plate_watts, assumed.shares
+            "Assumes {}, {} {} ({}), lamps as printed.",
+            assumed.supply, assumed.size, assumed.family, assumed.shares
         )
     },
     assumptions,
@@ -129,10 +149,13 @@ pub(super) static WORDS: Words = Words {
         format!("Caution: {lamp} runs at {percent} of its rated voltage {when}; life there {life}.")
     },
     burnt: "burns out",
+    pulsing: "pulses",
     life: |least, most| {
         if least == most { String::from("as rated") } else { format!("{least} to {most} times the rated") }
     },
-    short_life: |least, most| if least == most { format!("{least} ×") } else { format!("{least}–{most} ×") },
+    short_life: |least, most| {
+        if least == most { format!("{least} ×") } else { format!("{least}–{most} ×") }
+    },
     life_over: |least| format!("over {least} times the rated"),
     short_life_over: |least| format!("> {least} ×"),
     lamps: |count| format!("{count} lamps"),
@@ -144,15 +167,32 @@ pub(super) static WORDS: Words = Words {
     slot,
     fault,
     step: |which, up| format!("{}: {}", slot(which), if up { "more" } else { "less" }),
-    family: |family| match family {
-        Family::TransformerSupply => FamilyWords {
-            name: "Transformer set",
-            noun: "a transformer set",
-            examples: "radio, amplifier, bench supply",
-        },
-        Family::Heater => FamilyWords { name: "Heater", noun: "a heater", examples: "iron, kettle, hotplate" },
-        Family::Plain => FamilyWords { name: "Anything else", noun: "equipment of unknown kind", examples: "volts, watts, power factor" },
-        other => FamilyWords { name: other.name(), noun: other.name(), examples: "" },
+    family: |kind| {
+        let (name, noun, examples) = match kind {
+            Family::TransformerSupply => {
+                ("Transformer set", "transformer set", "radio, amplifier, bench supply")
+            }
+            Family::ValveTransformer => {
+                ("Valve set", "valve set with a transformer", "with a mains transformer")
+            }
+            Family::ValveSeries => {
+                ("Valves in a string", "set with its heaters in a string", "heaters across the mains")
+            }
+            Family::SwitchMode => ("Small switcher", "switch-mode supply", "charger, adapter, LED driver"),
+            Family::SwitchModeCorrected => {
+                ("Large switcher", "corrected switch-mode supply", "computer, large set, over 75 W")
+            }
+            Family::CrtSet => ("Picture tube", "picture-tube set", "television, monitor, arcade"),
+            Family::UniversalMotor => ("Brush motor", "brush motor", "drill, mixer, vacuum cleaner"),
+            Family::InductionMotor => ("Brushless motor", "induction motor", "fan, pump, record player"),
+            Family::Heater => ("Heater", "heater", "iron, kettle, hotplate"),
+            Family::Lamp => ("Filament lamp", "filament lamp", "projector, work light"),
+            Family::Measured => {
+                ("Ohms at the plug", "resistance measured at the plug", "by ohmmeter, unplugged")
+            }
+            _ => ("Anything else", "equipment of unknown kind", "volts, watts, power factor"),
+        };
+        FamilyWords { name, noun, examples }
     },
     edit: &EDIT,
     fill: |fill| match fill {
@@ -180,6 +220,36 @@ pub(super) static WORDS: Words = Words {
             "A carbon filament is no use here: its resistance falls as it heats, so it lets through more just when \
              it should hold back. It has not been put into the loop."
         }
+    },
+    warning: |warning| match warning {
+        Warning::Hunts => "A healthy one may pulse: it starts, starves and starts again.",
+        Warning::StandsAndHeats => "It may stand and hum on reduced voltage, and heats while it stands.",
+        Warning::LiveChassis => "Its chassis is live: isolating transformer first.",
+        Warning::TubeVoltage => "The picture tube holds tens of kilovolts after the plug is out.",
+        Warning::LooksShorted => {
+            "Behind a small lamp a healthy one can look shorted: its degauss stays cold."
+        }
+        Warning::ChargedReservoir => "Its reservoir stays charged after the plug is out.",
+        Warning::MovingParts => "It may start without warning.",
+        _ => "Take special care with this kind.",
+    },
+    unsuitable_equipment: |kind| match kind {
+        family::Unsuitable::MicrowaveOven => "Microwave oven",
+        family::Unsuitable::Medical => "Medical",
+        family::Unsuitable::ThreePhase => "Three-phase",
+        _ => "Too powerful",
+    },
+    refuse_equipment: |kind| match kind {
+        family::Unsuitable::MicrowaveOven => {
+            "Not a microwave oven: its capacitor holds a lethal charge at kilovolts, whatever limits its input."
+        }
+        family::Unsuitable::Medical => {
+            "Not medical equipment: its users' lives hang on tests that a lamp does not make."
+        }
+        family::Unsuitable::ThreePhase => {
+            "Not three-phase equipment: a lamp in one conductor says nothing about the other two."
+        }
+        _ => "Too powerful for a series lamp: a bank that passes enough for it is no limit any more.",
     },
     note: |note| match note {
         Note::BadLink(error) => link(&error),
@@ -215,7 +285,8 @@ const fn with(condition: Condition) -> &'static str {
         Condition::Healthy => "even with healthy equipment",
         Condition::Overloaded => "with overloaded equipment",
         Condition::Shorted => "with the equipment shorted",
-        other => other.name(),
+        Condition::Stalled => "with the motor stalled",
+        _ => "with faulty equipment",
     }
 }
 
@@ -264,8 +335,8 @@ fn assumptions(assumed: &Assumed) -> Vec<String> {
         format!("Supply: {}, as entered and steady.", assumed.supply),
         format!("Lamps: {}, hot, as printed unless measured values are given.", assumed.bank),
         format!(
-            "Equipment: {}, plate {} at {}; healthy takes {} of that, overloaded {} times.",
-            assumed.family, assumed.plate_watts, assumed.plate_volts, assumed.shares, assumed.overload
+            "Equipment: {}, {} at {}; healthy takes {} of what is usual for that, overloaded {} times.",
+            assumed.family, assumed.size, assumed.plate_volts, assumed.shares, assumed.overload
         ),
     ];
     if let Some((power_factor, printed)) = &assumed.power_factor {
@@ -286,7 +357,10 @@ const fn slot(slot: Slot) -> &'static str {
         Slot::SupplyOhms => "Source resistance",
         Slot::PlateVolts => "Plate volts",
         Slot::PlateWatts => "Plate watts",
+        Slot::PlateAmps => "Plate amps",
+        Slot::PlateVoltAmps => "Plate volt-amps",
         Slot::PlatePowerFactor => "Power factor",
+        Slot::Detail(which) => detail(which),
         Slot::Lamp(_, part) => match part {
             LampPart::Volts => "Lamp volts",
             LampPart::Watts => "Lamp watts",
@@ -295,6 +369,30 @@ const fn slot(slot: Slot) -> &'static str {
             LampPart::PointVolts(_) => "Measured volts",
             LampPart::PointAmps(_) => "Measured amps",
         },
+    }
+}
+
+const fn detail(which: Detail) -> &'static str {
+    match which {
+        Detail::MagnetisingShare => "Magnetising current, share of rated",
+        Detail::CoreShare => "Core loss, share of plate watts",
+        Detail::WindingShare => "Winding drop, share of rated",
+        Detail::ReservoirSeconds => "Reservoir discharges in",
+        Detail::HeaterShare => "Heaters, share of plate watts",
+        Detail::NoLoadShare => "Running free, share of plate watts",
+        Detail::StallMultiple => "Stalled current, times rated",
+        Detail::IdleShare => "Idle, share of plate watts",
+        Detail::StartVolts => "Starts at DC volts",
+        Detail::StopVolts => "Stops at DC volts",
+        Detail::MicrofaradsPerWatt => "Reservoir for each watt",
+        Detail::SeriesOhms => "Resistance before the rectifier",
+        Detail::DegaussColdOhms => "Degauss coil, cold",
+        Detail::DegaussWarmAmps => "Degauss coil, warm",
+        Detail::DegaussTripWatts => "Heat that trips the degauss",
+        Detail::BreakawayShare => "Torque to break away, share of rated",
+        Detail::MeasuredOhms => "Ohms at the plug",
+        Detail::RestartSeconds => "Waits before a restart",
+        other => other.name(),
     }
 }
 
@@ -308,23 +406,31 @@ fn fault(which: Slot, fault: &Fault) -> String {
         Fault::Text(QuantityError::WrongUnit { field }) => {
             format!("{name} is measured in {}.", field.unit())
         }
-        Fault::Number(InputError::OutOfRange { field, low, high, .. }) => range(name, *field, *low, *high),
+        Fault::Number(
+            InputError::OutOfRange { low, high, .. } | InputError::DetailOutOfRange { low, high, .. },
+        ) => range(name, which.unit(), *low, *high),
+        Fault::Number(InputError::Missing { .. }) => {
+            format!("{name} is empty. Watts, amps or volt-amps: one of them is needed.")
+        }
         Fault::Number(InputError::Conflict { field, limit, .. }) => {
             format!("{name} can be at most {} here.", NUMERALS.quantity(*limit, field.unit()))
         }
-        Fault::Number(InputError::NeedsAlternating { .. }) => {
-            String::from("This equipment needs alternating current; on DC use a heater, or plain with power factor 1.")
-        }
+        Fault::Number(InputError::NeedsAlternating { .. }) => String::from(
+            "This equipment needs alternating current; on DC use a heater, or plain with power factor 1.",
+        ),
         _ => format!("{name} is not a number. Type it like 60, 0.5 or 1k2."),
     }
 }
 
-fn range(name: &str, field: Field, low: f64, high: f64) -> String {
-    #[expect(clippy::float_cmp, reason = "the two ends are the same constant where only one value is allowed")]
+fn range(name: &str, unit: &str, low: f64, high: f64) -> String {
+    #[expect(
+        clippy::float_cmp,
+        reason = "the two ends are the same constant where only one value is allowed"
+    )]
     if low == high {
-        return format!("{name} must be {} here.", NUMERALS.quantity(low, field.unit()));
+        return format!("{name} must be {} here.", NUMERALS.quantity(low, unit));
     }
-    format!("{name} must be from {} to {}.", NUMERALS.short(low), NUMERALS.short_quantity(high, field.unit()))
+    format!("{name} must be from {} to {}.", NUMERALS.short(low), NUMERALS.short_quantity(high, unit))
 }
 
 static EDIT: EditWords = EditWords {
@@ -345,7 +451,10 @@ static EDIT: EditWords = EditWords {
     add_point: "Add a measured point",
     remove_point: |number| format!("Remove point {number}"),
     what: "What is it?",
-    plate: "From its rating plate",
+    change: "Change",
+    not_for: "Never for",
+    plate_more: "More on the plate?",
+    default_hint: |usual| format!("else {usual}"),
     power_factor_hint: |usual| format!("if printed; else {usual} is used"),
     ohms_hint: "of the wiring or the source; 0 for ordinary mains",
     optional: "if known",
@@ -353,14 +462,16 @@ static EDIT: EditWords = EditWords {
 
 static TABLE: TableWords = TableWords {
     details: "In figures",
-    condition: "Equipment",
+    condition: "If it is",
     lamp: "Lamp",
     bank_volts: "Across lamps",
+    short_bank_volts: "Lamps",
     volts: "Volts",
     amps: "Current",
     band: "95 % range",
     load_volts: "Across equipment",
-    load_watts: "Into equipment",
+    short_load_volts: "Equipm.",
+    load_watts: "Power",
     glow: "Glow",
     kelvin: "Filament",
     life: "Lamp life at this point",
@@ -399,6 +510,7 @@ mod tests {
 
     #[test]
     fn nothing_says_safe() {
+        use lampladder_core::error::Field;
         let fault = Fault::Number(InputError::OutOfRange {
             field: Field::Watts,
             value: 0.0,

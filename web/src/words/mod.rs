@@ -5,10 +5,11 @@
 
 mod english;
 
+use lampladder_core::condition::Condition;
+use lampladder_core::family::{self, Family, Warning};
 use lampladder_core::glow::GlowWord;
 use lampladder_core::lamp::Fill;
 use lampladder_core::link::LinkError;
-use lampladder_core::plate::{Condition, Family};
 
 use crate::bench::{Note, Part, Tab, Theme, Unsuitable};
 use crate::draft::{Fault, Place, Slot};
@@ -56,8 +57,8 @@ pub struct Assumed {
     pub family: &'static str,
     /// Plate volts.
     pub plate_volts: String,
-    /// Plate watts.
-    pub plate_watts: String,
+    /// Plate watts, or the ohms measured.
+    pub size: String,
     /// Least and most of the plate's watts that healthy equipment takes.
     pub shares: String,
     /// The power factor used, and whether it was printed on the plate.
@@ -110,8 +111,6 @@ pub struct Words {
     pub condition: fn(Condition) -> &'static str,
     /// "if healthy".
     pub if_condition: fn(Condition) -> &'static str,
-    /// "healthy equipment".
-    pub with_condition: fn(Condition) -> &'static str,
     /// Asks for one of the conditions.
     pub conditions: &'static str,
     /// What a condition means.
@@ -144,6 +143,12 @@ pub struct Words {
     pub burns_out: fn(&str, Condition) -> String,
     /// The equipment starts and stops.
     pub pulses: fn(&str) -> String,
+    /// A motor stands: the glow.
+    pub stands: fn(&str) -> String,
+    /// A picture-tube set looks shorted.
+    pub looks_shorted: &'static str,
+    /// Larger lamps help.
+    pub larger: &'static str,
     /// The equipment does not start.
     pub does_not_start: &'static str,
     /// Healthy and faulty look alike.
@@ -162,6 +167,8 @@ pub struct Words {
     pub lamp: fn(Place, bool, &str) -> String,
     /// A lamp runs over its rated volts: its name, condition, per cent of the rating, life there.
     pub over_rated: fn(&str, Condition, &str, &str) -> String,
+    /// It pulses, in a cell.
+    pub pulsing: &'static str,
     /// Burnt out, in a cell.
     pub burnt: &'static str,
     /// Life between two ratios to the rated.
@@ -196,6 +203,12 @@ pub struct Words {
     pub unsuitable: fn(Unsuitable) -> &'static str,
     /// Why it is of no use.
     pub refusal: fn(Unsuitable) -> &'static str,
+    /// What must be said first about a family.
+    pub warning: fn(Warning) -> &'static str,
+    /// Equipment that this must not be used for.
+    pub unsuitable_equipment: fn(family::Unsuitable) -> &'static str,
+    /// Why.
+    pub refuse_equipment: fn(family::Unsuitable) -> &'static str,
     /// A note.
     pub note: fn(Note) -> &'static str,
     /// What is wrong with a link.
@@ -243,8 +256,14 @@ pub struct EditWords {
     pub remove_point: fn(usize) -> String,
     /// What the equipment is.
     pub what: &'static str,
-    /// From its rating plate.
-    pub plate: &'static str,
+    /// Another kind.
+    pub change: &'static str,
+    /// What this must not be used for.
+    pub not_for: &'static str,
+    /// The rest of the plate.
+    pub plate_more: &'static str,
+    /// What stands where nothing is typed.
+    pub default_hint: fn(&str) -> String,
     /// Where no power factor is printed.
     pub power_factor_hint: fn(&str) -> String,
     /// Why the source resistance matters.
@@ -264,6 +283,8 @@ pub struct TableWords {
     pub lamp: &'static str,
     /// Across the lamps.
     pub bank_volts: &'static str,
+    /// The same for a narrow column.
+    pub short_bank_volts: &'static str,
     /// Volts.
     pub volts: &'static str,
     /// Current.
@@ -272,6 +293,8 @@ pub struct TableWords {
     pub band: &'static str,
     /// Across the equipment.
     pub load_volts: &'static str,
+    /// The same for a narrow column.
+    pub short_load_volts: &'static str,
     /// Power into the equipment.
     pub load_watts: &'static str,
     /// Glow.
