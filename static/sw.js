@@ -45,7 +45,7 @@ async function keepAll() {
   await Promise.all([...ADDRESSES].map(async (address) => {
     // A name with a hash in it never changes its contents, so the browser's own copy will do: the page has just
     // loaded it. All else is asked for afresh, or an old page could be kept under a new version.
-    const hashed = /-[0-9a-f]{16}[._]/.test(address);
+    const hashed = /-[0-9a-f]{12,16}[._]/.test(address);
     const response = await fetch(address, { cache: hashed ? "default" : "reload", credentials: "same-origin" });
     if (!response.ok) throw new Error(`${address} answered ${response.status}`);
     await cache.put(address, await plain(response));

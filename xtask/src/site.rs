@@ -193,10 +193,11 @@ pub fn compress(bytes: &[u8]) -> io::Result<Vec<u8>> {
     encoder.finish()
 }
 
-/// Whether Trunk has put a hash of the contents into the name (`name-0123456789abcdef.css`).
+/// Whether Trunk has put a hash of the contents into the name (`name-0123456789abcdef.css`); it leaves out leading
+/// zeros.
 fn has_hash(name: &str) -> bool {
     name.split(['-', '.', '_'])
-        .any(|part| part.len() == 16 && part.bytes().all(|byte| byte.is_ascii_hexdigit()))
+        .any(|part| (12..=16).contains(&part.len()) && part.bytes().all(|byte| byte.is_ascii_hexdigit()))
 }
 
 fn content_type(name: &str) -> &'static str {
