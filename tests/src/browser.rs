@@ -327,14 +327,17 @@ impl Browser {
         Ok(entries.as_array().into_iter().flatten().filter(|entry| serious(entry)).map(said).collect())
     }
 
-    /// Light or dark, as the phone would say.
+    /// Light or dark, as the phone would say; waits until whatever fades has faded.
     ///
     /// # Errors
     /// When the browser is gone.
     pub fn prefer(&self, scheme: &str) -> Result<()> {
         let feature = json!({"features": [{"name": "prefers-color-scheme", "value": scheme}]});
         self.devtools("Emulation.setEmulatedMedia", feature)?;
-        Ok(())
+        self.until(
+            "return document.getAnimations().every((a) => a.playState !== 'running' \
+                || a.effect.getComputedTiming().endTime === Infinity)",
+        )
     }
 
     /// Takes a picture, when `LAMPLADDER_SHOTS` names a folder for them.

@@ -22,6 +22,8 @@ pub const DONE: &str = "[data-testid=done]";
 pub const NOTE: &str = "[data-testid=note]";
 /// The caution that a lamp is over its rated voltage.
 pub const LAMP_CAUTION: &str = "[data-testid=lamp-caution]";
+/// The one sentence to act on, and what it assumes.
+pub const ADVICE: &str = "[data-testid=advice]";
 /// The current, in the middle of the loop.
 pub const AMPS: &str = "[data-testid=result-amps]";
 /// The bar with the voltages across lamps and equipment, in this order.

@@ -35,7 +35,7 @@ fn ensure_answers(browser: &Browser, setup: &Setup) -> Result<()> {
     let voltages = browser.text(VOLTAGES)?;
     ensure_nth_shown(&voltages, 0, shown.bank_volts.value, "V")?;
     ensure_nth_shown(&voltages, 1, shown.load_volts.value, "V")?;
-    for condition in Condition::ALL {
+    for condition in [Condition::Healthy, Condition::Overloaded, Condition::Shorted] {
         let shown = prospect(setup, condition)?.shown.context("the core finds a steady state")?;
         let cell = cell(condition.name());
         let text = browser.text(&cell)?;
@@ -47,11 +47,8 @@ fn ensure_answers(browser: &Browser, setup: &Setup) -> Result<()> {
             ("data-load-volts", shown.load_volts.value),
         ] {
             let held: f64 = browser.attribute(&cell, name)?.parse()?;
-            // The same core in WebAssembly gives the same bits; the attribute has at least nine digits of them.
-            ensure!(
-                (held - value).abs() <= 1e-9 * value.abs(),
-                "{condition:?} {name}: {held}, the core says {value}"
-            );
+            // The same core in WebAssembly gives the same bits; the attribute has nine decimals of them.
+            ensure!((held - value).abs() <= 0.501e-9, "{condition:?} {name}: {held}, the core says {value}");
         }
     }
     Ok(())
@@ -182,7 +179,8 @@ fn nothing_is_asked_of_any_other_host() -> Result<()> {
     let own = site.url();
     let foreign: Vec<_> = requests
         .iter()
-        .filter(|url| !url.starts_with(&own) && !url.starts_with("data:") && !url.starts_with("blob:"))
+        // Chromium's own first tab (chrome:) and data: addresses leave no machine.
+        .filter(|url| (url.starts_with("http") || url.starts_with("ws")) && !url.starts_with(&own))
         .collect();
     ensure!(foreign.is_empty(), "asked elsewhere: {foreign:?}");
     let outside: Vec<_> =
