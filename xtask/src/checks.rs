@@ -115,7 +115,7 @@ fn format(_: &mut Run) -> Result<()> {
 }
 
 fn house(run: &mut Run) -> Result<()> {
-    run.tests(&mut cargo(&["test", "--quiet", "-p", "xtask"]))
+    run.tests(&mut cargo(&["test", "--quiet", "--no-fail-fast", "-p", "xtask"]))
 }
 
 fn clippy(_: &mut Run) -> Result<()> {
@@ -146,11 +146,11 @@ fn component(name: &str, subcommand: &str) -> Result<()> {
 }
 
 fn core(run: &mut Run) -> Result<()> {
-    run.tests(&mut cargo(&["test", "--quiet", "-p", "lampladder-core"]))
+    run.tests(&mut cargo(&["test", "--quiet", "--no-fail-fast", "-p", "lampladder-core"]))
 }
 
 fn reference(run: &mut Run) -> Result<()> {
-    let mut command = cargo(&["test", "--quiet", "-p", "lampladder-tests", "--lib"]);
+    let mut command = cargo(&["test", "--quiet", "--no-fail-fast", "-p", "lampladder-tests", "--lib"]);
     for name in test_files()?.iter().filter(|name| !name.starts_with("e2e")) {
         command.args(["--test", name]);
     }
@@ -212,7 +212,7 @@ pub(crate) fn browser_tests(command: &mut Command, page: &Path) -> Result<()> {
 }
 
 fn e2e(run: &mut Run) -> Result<()> {
-    let mut command = cargo(&["test", "--quiet", "-p", "lampladder-tests"]);
+    let mut command = cargo(&["test", "--quiet", "--no-fail-fast", "-p", "lampladder-tests"]);
     browser_tests(&mut command, &run.page()?)?;
     for name in test_files()?.iter().filter(|name| name.starts_with("e2e")) {
         command.args(["--test", name]);
