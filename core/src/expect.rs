@@ -89,9 +89,10 @@ pub fn prospect(setup: &Setup, condition: Condition) -> Result<Prospect, SteadyE
             shown: None,
         });
     };
+    let settled = |points: &[Equilibrium]| steady::settled(points).cloned();
     let mut spreads = Spreads::around(&best);
     let lamp_ends: Vec<Option<Equilibrium>> = (0..Lamp::VARIANTS)
-        .map(|index| steady::solve(supply, &bank.variant(index), &load).ok()?.settled().cloned())
+        .map(|index| settled(&steady::equilibria(supply, &bank.variant(index), &load).ok()?))
         .collect();
     for pair in lamp_ends[..6].chunks(2) {
         spreads.cause(COVERAGE, [pair[0].as_ref(), pair[1].as_ref()]);
@@ -102,7 +103,7 @@ pub fn prospect(setup: &Setup, condition: Condition) -> Result<Prospect, SteadyE
     }
     let (least, most) = plate.family().healthy_shares();
     let drawing = |share| -> Option<Equilibrium> {
-        steady::solve(supply, bank, &plate.load(condition, share).ok()?).ok()?.settled().cloned()
+        settled(&steady::equilibria(supply, bank, &plate.load(condition, share).ok()?).ok()?)
     };
     let load_ends = [drawing(least), drawing(most)];
     spreads.cause(1.0, [load_ends[0].as_ref(), load_ends[1].as_ref()]);

@@ -75,9 +75,14 @@ impl Steady {
     /// The stable point that equipment which was off comes to, if it settles: the mode in which it begins where that
     /// lasts, else the lowest current.
     pub fn settled(&self) -> Option<&Equilibrium> {
-        let mut stable = self.equilibria.iter().filter(|point| point.stable);
-        stable.clone().find(|point| point.mode.is_first()).or_else(|| stable.next())
+        settled(&self.equilibria)
     }
+}
+
+/// [`Steady::settled`] of points in order of rising current.
+pub(crate) fn settled(equilibria: &[Equilibrium]) -> Option<&Equilibrium> {
+    let mut stable = equilibria.iter().filter(|point| point.stable);
+    stable.clone().find(|point| point.mode.is_first()).or_else(|| stable.next())
 }
 
 /// Why there is no answer.
@@ -140,14 +145,7 @@ const LEAST_SLIP: f64 = 1e-6;
 /// # Errors
 /// A load that has no meaning on this supply; a lamp that would burn out.
 pub fn solve(supply: &Supply, bank: &Bank, load: &Load) -> Result<Steady, SteadyError> {
-    load.check(supply)?;
-    let mut equilibria = Vec::new();
-    for (mode, load) in load.modes() {
-        let circuit = Circuit { supply, bank, load: &load, mode };
-        equilibria.extend(circuit.points()?);
-    }
-    equilibria.retain(|point| load.lasts(point.mode, point.amps));
-    equilibria.sort_by(|a, b| a.amps.total_cmp(&b.amps));
+    let equilibria = equilibria(supply, bank, load)?;
     let outcome = if equilibria.iter().any(|point| point.stable && point.mode != Mode::Off) {
         Outcome::Settles
     } else if equilibria.iter().any(|point| point.mode == Mode::Off) {
@@ -158,6 +156,24 @@ pub fn solve(supply: &Supply, bank: &Bank, load: &Load) -> Result<Steady, Steady
         }
     };
     Ok(Steady { outcome, equilibria })
+}
+
+/// The points of [`solve`] without the outcome: where there is none, the period of the hunting costs thousands of
+/// times as much as the points, and a search over banks has no use for it.
+pub(crate) fn equilibria(
+    supply: &Supply,
+    bank: &Bank,
+    load: &Load,
+) -> Result<Vec<Equilibrium>, SteadyError> {
+    load.check(supply)?;
+    let mut equilibria = Vec::new();
+    for (mode, load) in load.modes() {
+        let circuit = Circuit { supply, bank, load: &load, mode };
+        equilibria.extend(circuit.points()?);
+    }
+    equilibria.retain(|point| load.lasts(point.mode, point.amps));
+    equilibria.sort_by(|a, b| a.amps.total_cmp(&b.amps));
+    Ok(equilibria)
 }
 
 struct Circuit<'a> {
