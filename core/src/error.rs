@@ -71,6 +71,28 @@ pub enum Field {
     RatedAmps,
     /// Sheet of a fuse standard.
     Sheet,
+    /// The lamps that a person owns.
+    Stock,
+    /// Watts that a lamp holder stands.
+    HolderWatts,
+    /// Short-circuit current of the first rung over the plate's current.
+    FirstShare,
+    /// Supply volts times short-circuit current that any equipment stands.
+    FirstLeastWatts,
+    /// Supply volts times short-circuit current that no first rung exceeds.
+    FirstMostWatts,
+    /// Short-circuit current of a rung over that of the one before.
+    Growth,
+    /// How far the supply may rise above its volts, over these.
+    SupplyRise,
+    /// How far a lamp may be driven above its rated volts, over these.
+    LampOvervoltage,
+    /// Differences of voltage that nobody can tell, over the supply's.
+    CloseShare,
+    /// Least voltage worth having at the equipment, over the supply's.
+    LeastShare,
+    /// Length of the lead, metres.
+    Metres,
 }
 
 impl Field {
@@ -108,6 +130,17 @@ impl Field {
             Self::Tolerance => "tolerance",
             Self::RatedAmps => "rated_amps",
             Self::Sheet => "sheet",
+            Self::Stock => "stock",
+            Self::HolderWatts => "holder_watts",
+            Self::FirstShare => "first_share",
+            Self::FirstLeastWatts => "first_least_watts",
+            Self::FirstMostWatts => "first_most_watts",
+            Self::Growth => "growth",
+            Self::SupplyRise => "supply_rise",
+            Self::LampOvervoltage => "lamp_overvoltage",
+            Self::CloseShare => "close_share",
+            Self::LeastShare => "least_share",
+            Self::Metres => "metres",
         }
     }
 
@@ -115,7 +148,8 @@ impl Field {
     pub const fn unit(self) -> &'static str {
         match self {
             Self::Volts | Self::DiodeVolts | Self::StartVolts | Self::StopVolts => "V",
-            Self::Watts => "W",
+            Self::Watts | Self::HolderWatts | Self::FirstLeastWatts | Self::FirstMostWatts => "W",
+            Self::Metres => "m",
             Self::Amps | Self::RatedAmps => "A",
             Self::Hertz => "Hz",
             Self::Ohms | Self::ReactanceOhms | Self::ColdOhms | Self::SeriesOhms => "Ω",
@@ -187,6 +221,13 @@ pub enum InputError {
         /// The refused condition.
         condition: Condition,
     },
+    /// A number of things that is no whole number.
+    NotWhole {
+        /// The refused property.
+        field: Field,
+        /// What was given.
+        value: f64,
+    },
     /// A reactance or a transformer on direct current.
     NeedsAlternating {
         /// The refused property.
@@ -202,6 +243,7 @@ impl InputError {
             | Self::OutOfRange { field, .. }
             | Self::Conflict { field, .. }
             | Self::Missing { field }
+            | Self::NotWhole { field, .. }
             | Self::NeedsAlternating { field } => field,
             Self::Unknown { .. } | Self::DetailOutOfRange { .. } => Field::Details,
             Self::Unlikely { .. } => Field::Condition,
@@ -228,6 +270,7 @@ impl fmt::Display for InputError {
                 )
             }
             Self::Missing { .. } => write!(f, "{name} is missing"),
+            Self::NotWhole { value, .. } => write!(f, "{name} must be a whole number, not {value:?}"),
             Self::Unknown { detail } => write!(f, "this family has no {}", detail.name()),
             Self::Unlikely { condition } => write!(f, "this family is never {}", condition.name()),
             Self::Conflict { field, value, with, limit } => write!(

@@ -160,11 +160,7 @@ pub fn solve(supply: &Supply, bank: &Bank, load: &Load) -> Result<Steady, Steady
 
 /// The points of [`solve`] without the outcome: where there is none, the period of the hunting costs thousands of
 /// times as much as the points, and a search over banks has no use for it.
-pub(crate) fn equilibria(
-    supply: &Supply,
-    bank: &Bank,
-    load: &Load,
-) -> Result<Vec<Equilibrium>, SteadyError> {
+pub(crate) fn equilibria(supply: &Supply, bank: &Bank, load: &Load) -> Result<Vec<Equilibrium>, SteadyError> {
     load.check(supply)?;
     let mut equilibria = Vec::new();
     for (mode, load) in load.modes() {

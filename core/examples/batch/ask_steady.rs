@@ -1,7 +1,7 @@
 //! `steady`: every steady point of supply, bank and load, and the outcome.
 
 use lampladder_core::lamp::LampState;
-use lampladder_core::steady::{self, Equilibrium, Outcome, SteadyError};
+use lampladder_core::steady::{self, Equilibrium, SteadyError};
 use serde::Serialize;
 
 use crate::fields::{Fields, Refusal};
@@ -41,12 +41,7 @@ pub(crate) fn answer(mut fields: Fields<'_>) -> Result<SteadyAnswer, Refusal> {
     fields.done()?;
     let solved = steady::solve(&parts::supply(&supply)?, &parts::bank(&bank)?, &parts::load(&load)?);
     let solved = solved.map_err(|error| refusal(&error))?;
-    let (outcome, period_seconds) = match solved.outcome {
-        Outcome::Settles => ("settles", None),
-        Outcome::Hunts { period_seconds } => ("hunts", Some(period_seconds)),
-        Outcome::DoesNotStart => ("does-not-start", None),
-        other => return Err(Refusal::whole_line(format!("the outcome {other:?} has no name here yet"))),
-    };
+    let (outcome, period_seconds) = parts::outcome(&solved.outcome)?;
     Ok(SteadyAnswer { outcome, period_seconds, equilibria: solved.equilibria.iter().map(point).collect() })
 }
 

@@ -7,6 +7,7 @@
 //! SI; volts and amperes RMS, or DC.
 
 mod ask_glow;
+mod ask_ladder;
 mod ask_lamp;
 mod ask_steady;
 mod fields;
@@ -64,9 +65,10 @@ fn served(id: &Value, request: &Value) -> Result<String, Refusal> {
     let ask = fields.need("ask")?;
     match ask.text()? {
         "lamp" => Ok(written(id, &ask_lamp::answer(fields)?)),
+        "ladder" => Ok(written(id, &ask_ladder::answer(fields)?)),
         "steady" => Ok(written(id, &ask_steady::answer(fields)?)),
         "glow" => Ok(written(id, &ask_glow::answer(fields)?)),
-        _ => Err(ask.refuse("ask must be one of lamp, steady, glow")),
+        _ => Err(ask.refuse("ask must be one of lamp, steady, ladder, glow")),
     }
 }
 

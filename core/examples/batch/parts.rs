@@ -7,6 +7,7 @@ use lampladder_core::family::Family;
 use lampladder_core::lamp::{Fill, Lamp, LampSpec, Point};
 use lampladder_core::load::{Draw, Impedance, Load, Rectifier, RectifierSpec};
 use lampladder_core::plate::{Plate, PlateSpec};
+use lampladder_core::steady::Outcome;
 use lampladder_core::supply::Supply;
 
 use crate::fields::{Fields, Node, Refusal};
@@ -121,7 +122,7 @@ pub(crate) fn load(node: &Node<'_>) -> Result<Load, Refusal> {
         }
         "rectifier" => Load::Rectifier(rectifier(&mut fields)?),
         "lamp" => Load::Lamp(Box::new(lamp(&fields.need("lamp")?)?)),
-        "plate" => plate(&mut fields)?,
+        "plate" => plate_load(&mut fields)?,
         _ => {
             let known = "short, open, resistor, impedance, rectifier, lamp, plate";
             return Err(kind.refuse(format!("kind must be one of {known}")));
@@ -164,12 +165,19 @@ fn read_draw(node: &Node<'_>) -> Result<Draw, Refusal> {
     Ok(draw)
 }
 
-fn plate(fields: &mut Fields<'_>) -> Result<Load, Refusal> {
-    let family = fields.need("family")?;
+/// The load of a plate in a condition.
+fn plate_load(fields: &mut Fields<'_>) -> Result<Load, Refusal> {
     let condition = match fields.maybe("condition") {
         Some(node) => one_of(&node, &Condition::ALL, Condition::name)?,
         None => Condition::Healthy,
     };
+    let path = fields.path().to_owned();
+    plate(fields)?.load(condition, 1.0).map_err(|error| Refusal::inside(&path, &error))
+}
+
+/// What is printed on the plate, from the fields of the object that holds it.
+pub(crate) fn plate(fields: &mut Fields<'_>) -> Result<Plate, Refusal> {
+    let family = fields.need("family")?;
     let family = one_of(&family, &Family::ALL, Family::name)?;
     let mut spec = PlateSpec::new(family, fields.number("volts")?);
     spec.watts = fields.maybe_number("watts")?;
@@ -181,9 +189,17 @@ fn plate(fields: &mut Fields<'_>) -> Result<Load, Refusal> {
             spec.details.push((default.detail, value));
         }
     }
-    Plate::from_spec(spec)
-        .and_then(|plate| plate.load(condition, 1.0))
-        .map_err(|error| Refusal::inside(fields.path(), &error))
+    Plate::from_spec(spec).map_err(|error| Refusal::inside(fields.path(), &error))
+}
+
+/// The name of an outcome, and its period where it has one.
+pub(crate) fn outcome(outcome: &Outcome) -> Result<(&'static str, Option<f64>), Refusal> {
+    match *outcome {
+        Outcome::Settles => Ok(("settles", None)),
+        Outcome::Hunts { period_seconds } => Ok(("hunts", Some(period_seconds))),
+        Outcome::DoesNotStart => Ok(("does-not-start", None)),
+        other => Err(Refusal::whole_line(format!("the outcome {other:?} has no name here yet"))),
+    }
 }
 
 /// The item of `all` that has the name at `node`.
