@@ -53,12 +53,12 @@ fn main() {
             let watts = if family == Family::UniversalMotor { 300.0 } else { 60.0 };
             let plate = Plate::new(family, 230.0, watts, None).expect("a plate");
             let planned = || ladder::plan(&supply, stock, &plate, &Limits::default());
-            let rungs = planned().map(|ladder| ladder.rungs.len()).unwrap_or(0);
+            let rungs = planned().map_or(0, |ladder| ladder.rungs.len());
             let start = spent();
             for _ in 0..RUNS {
                 let _ = black_box(planned());
             }
-            let each = (spent() - start) / RUNS;
+            let each = spent().saturating_sub(start) / RUNS;
             println!("  {:<22} {:>8.2} ms, {rungs} rungs", family.name(), 1e3 * each.as_secs_f64());
             if index == 0 {
                 slowest = slowest.max(each);
