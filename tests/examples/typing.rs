@@ -15,19 +15,22 @@ const KEYS: usize = 40;
 const BUDGET: f64 = 50.0;
 
 const RECORDER: &str = "
-    const answer = document.querySelector(arguments[0]);
+    const css = arguments[0];
+    const answer = () => { const e = document.querySelector(css); return e.dataset.value + e.textContent; };
     const input = document.querySelector(arguments[1]);
     window.recorded = [];
-    let start = null;
-    input.addEventListener('input', (event) => { start = event.timeStamp; }, true);
+    let [start, shown] = [null, answer()];
+    // On the window and in the first phase, or the page would have answered before this hears of the key.
+    window.addEventListener('input', (event) => { start = event.timeStamp; }, true);
+    // The whole page is watched, for the element of the answer may be another one afterwards.
     new MutationObserver(() => {
-        if (start === null) return;
+        if (start === null || answer() === shown) return;
         const [from, changed] = [start, performance.now()];
-        start = null;
+        [start, shown] = [null, answer()];
         requestAnimationFrame(() => setTimeout(() => {
             window.recorded.push([changed - from, performance.now() - from]);
         }));
-    }).observe(answer, {subtree: true, childList: true, characterData: true, attributes: true});
+    }).observe(document.body, {subtree: true, childList: true, characterData: true, attributes: true});
     input.focus(); input.select(); arguments[2](null);";
 
 fn main() -> Result<()> {
@@ -40,11 +43,15 @@ fn main() -> Result<()> {
     browser.devtools("Emulation.setCPUThrottlingRate", json!({"rate": THROTTLE}))?;
     // The first key replaces the selected text; then the second digit comes and goes: 45, 4, 45, 4 … watts.
     for count in 0..KEYS {
-        let key = match count {
-            0 => json!({"type": "char", "text": "4"}),
-            odd if odd % 2 == 1 => json!({"type": "char", "text": "5"}),
+        let mut key = match count {
+            0 => json!({"type": "keyDown", "key": "4", "text": "4", "windowsVirtualKeyCode": 52}),
+            odd if odd % 2 == 1 => {
+                json!({"type": "keyDown", "key": "5", "text": "5", "windowsVirtualKeyCode": 53})
+            }
             _ => json!({"type": "rawKeyDown", "key": "Backspace", "windowsVirtualKeyCode": 8}),
         };
+        browser.devtools("Input.dispatchKeyEvent", key.clone())?;
+        key["type"] = json!("keyUp");
         browser.devtools("Input.dispatchKeyEvent", key)?;
         browser
             .until(&format!("return window.recorded.length > {count}"))

@@ -6,9 +6,6 @@ use anyhow::{Context, Result, bail};
 
 use crate::{place, run};
 
-/// Pinned, so that a golden file changes only when somebody wants it to.
-const PACKAGES: [&str; 3] = ["numpy==2.4.6", "scipy==1.17.1", "uncertainties==3.2.3"];
-
 pub(crate) fn regenerate(arguments: &[String]) -> Result<()> {
     let python = python()?;
     let folder = place::root().join("tests/oracle");
@@ -32,20 +29,26 @@ pub(crate) fn regenerate(arguments: &[String]) -> Result<()> {
     Ok(())
 }
 
-/// Python with its packages, in a folder of the cache named by their versions.
+/// Python with the packages of tests/oracle/requirements.txt, in a folder of the cache named by their versions.
 pub(crate) fn python() -> Result<PathBuf> {
-    let name = format!("python-{}", PACKAGES.join("-").replace("==", "-"));
-    let folder = place::cache()?.join(name);
+    let list = place::root().join("tests/oracle/requirements.txt");
+    let wanted =
+        std::fs::read_to_string(&list).with_context(|| format!("{} cannot be read", list.display()))?;
+    let packages: Vec<&str> = wanted.lines().map(str::trim).filter(|line| line.contains("==")).collect();
+    if packages.is_empty() {
+        bail!("{} pins no package", list.display());
+    }
+    let folder = place::cache()?.join(format!("python-{}", packages.join("-").replace("==", "-")));
     let python = folder.join("bin").join("python");
     let ready = folder.join("ready");
     if ready.is_file() && python.exists() {
         return Ok(python);
     }
-    println!("set-up: Python with {} by pip", PACKAGES.join(", "));
+    println!("set-up: Python with {} by pip", packages.join(", "));
     let system = place::on_path("python3").context("missing: python3. Install Python 3.11 or newer")?;
     run::run(run::command(system).args(["-m", "venv", "--clear"]).arg(&folder))
         .context("missing: Python's venv module (Debian's python3-venv)")?;
-    run::run(run::command(&python).args(["-m", "pip", "install", "--quiet"]).args(PACKAGES))?;
-    std::fs::write(ready, PACKAGES.join("\n"))?;
+    run::run(run::command(&python).args(["-m", "pip", "install", "--quiet", "--requirement"]).arg(&list))?;
+    std::fs::write(ready, wanted)?;
     Ok(python)
 }
