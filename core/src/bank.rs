@@ -1,15 +1,21 @@
 //! The lamps in use: a series chain of parallel groups.
 
+mod walk;
+
 use alloc::vec::Vec;
+
+pub(crate) use walk::Walk;
 
 use crate::error::{Field, InputError, within};
 use crate::filament::Filament;
 use crate::lamp::{Lamp, LampState};
+use crate::tungsten::AMBIENT_KELVIN;
 
 /// A series chain of parallel groups of lamps, one to eight lamps in all.
 #[derive(Debug, Clone, PartialEq)]
 pub struct Bank {
     groups: Vec<Vec<Lamp>>,
+    chain: walk::Chain,
 }
 
 /// Where a bank stands. Volts and amperes are RMS, or DC.
@@ -45,12 +51,18 @@ impl Bank {
         #[expect(clippy::cast_precision_loss, reason = "a count of lamps for a message")]
         let (value, high) = (count as f64, Self::MOST_LAMPS as f64);
         within(Field::Bank, value, 1.0, high)?;
-        Ok(Self { groups })
+        Ok(Self::of(groups))
+    }
+
+    /// One to eight lamps, no group empty.
+    fn of(groups: Vec<Vec<Lamp>>) -> Self {
+        let chain = walk::Chain::of(&groups);
+        Self { groups, chain }
     }
 
     /// A bank of one lamp.
     pub fn single(lamp: Lamp) -> Self {
-        Self { groups: alloc::vec![alloc::vec![lamp]] }
+        Self::of(alloc::vec![alloc::vec![lamp]])
     }
 
     /// The chain of groups.
@@ -75,7 +87,7 @@ impl Bank {
     #[must_use]
     pub fn variant(&self, index: usize) -> Self {
         let groups = self.groups.iter().map(|group| group.iter().map(|lamp| lamp.variant(index)).collect());
-        Self { groups: groups.collect() }
+        Self::of(groups.collect())
     }
 
     /// Volts at which the first group to reach its rating does so, when the bank stands alone: the highest
@@ -86,7 +98,10 @@ impl Bank {
         let least_amps = self
             .groups
             .iter()
-            .map(|group| group_amps(group, group_rating(group)))
+            .map(|group| {
+                let volts = group_rating(group);
+                group.iter().map(|lamp| lamp.at_volts(volts).amps).sum()
+            })
             .fold(f64::INFINITY, f64::min);
         self.at_amps(least_amps).volts
     }
@@ -96,36 +111,16 @@ impl Bank {
         self.groups[0][0].filament()
     }
 
-    /// The bank with its first filament at a logarithm of the rise above ambient. Volts and amperes both grow
-    /// with it, so it is the one variable in which to search. A bank of one lamp costs one evaluation.
+    /// The bank with its first filament at a logarithm of the rise above ambient.
     pub fn at_ln_rise(&self, ln_rise: f64) -> BankPoint {
-        let lead = self.lead().at_ln_rise(ln_rise);
-        let group_volts = lead.volts();
-        let mut hottest = lead.rise;
-        let mut amps = lead.amps();
-        let first = &self.groups[0];
-        for_each_kind(&first[1..], first[0].filament(), |filament, known, count| {
-            let point = known.map_or_else(|| filament.at_volts(group_volts), |()| lead);
-            hottest = hottest.max(point.rise);
-            amps += count * point.amps();
-        });
-        let mut volts = group_volts;
-        for group in &self.groups[1..] {
-            if group == first {
-                volts += group_volts;
-                continue;
-            }
-            let (more_volts, rise) = group_at_amps(group, amps);
-            volts += more_volts;
-            hottest = hottest.max(rise);
-        }
-        BankPoint { volts, amps, hottest_kelvin: crate::tungsten::AMBIENT_KELVIN + hottest }
+        Walk::new(self).to(ln_rise)
     }
 
-    /// The logarithm of the lead's rise at a current, amperes.
+    /// The logarithm of the lead's rise at a current, amperes above 0.
     pub(crate) fn ln_rise_at_amps(&self, amps: f64) -> f64 {
-        let (volts, _) = group_at_amps(&self.groups[0], amps);
-        libm::log(self.lead().at_volts(volts).rise).max(Filament::ln_rise_span().0)
+        let walk = Walk::new(self);
+        walk.to_amps(amps);
+        walk.ln_rise()
     }
 
     /// A first guess of the logarithm of the lead's rise when the bank takes about `volts`.
@@ -135,122 +130,42 @@ impl Bank {
         self.lead().guess_ln_rise(share / self.groups[0][0].rated_volts())
     }
 
-    /// The bank at a current, amperes.
+    /// The bank at a current, amperes; cold for anything that is not above 0.
     pub fn at_amps(&self, amps: f64) -> BankPoint {
-        let mut volts = 0.0;
-        let mut hottest: f64 = 0.0;
-        for group in &self.groups {
-            let (more_volts, rise) = group_at_amps(group, amps);
-            volts += more_volts;
-            hottest = hottest.max(rise);
-        }
-        BankPoint { volts, amps, hottest_kelvin: crate::tungsten::AMBIENT_KELVIN + hottest }
+        if amps > 0.0 { Walk::new(self).to_amps(amps) } else { COLD }
     }
 
-    /// The bank at a voltage across the whole chain; beyond what melts a filament, the hottest point.
+    /// The bank at a voltage across the whole chain; beyond what melts a filament, the hottest point; cold for anything
+    /// that is not above 0.
     pub fn at_volts(&self, volts: f64) -> BankPoint {
         if volts.is_nan() || volts <= 0.0 {
-            return BankPoint { volts: 0.0, amps: 0.0, hottest_kelvin: crate::tungsten::AMBIENT_KELVIN };
+            return COLD;
         }
+        let walk = Walk::new(self);
         let span = Filament::ln_rise_span();
         let found = crate::roots::decreasing_from(
-            |x| libm::log(volts / self.at_ln_rise(x).volts),
+            |x| libm::log(volts / walk.to(x).volts),
             span,
             self.guess_ln_rise(volts),
             crate::roots::Tolerance::FINE,
         );
-        self.at_ln_rise(found.map_or(span.1, |root| root.x))
+        walk.to(found.map_or(span.1, |root| root.x))
     }
 
     /// Every lamp's state at a current through the chain, in the order of [`Self::groups`].
     pub fn lamps_at_amps(&self, amps: f64) -> Vec<Vec<LampState>> {
-        self.groups
-            .iter()
-            .map(|group| {
-                if let [lamp] = group.as_slice() {
-                    return alloc::vec![lamp.at_amps(amps)];
-                }
-                let (volts, _) = group_at_amps(group, amps);
-                group.iter().map(|lamp| lamp.at_volts(volts)).collect()
-            })
-            .collect()
-    }
-}
-
-/// Calls `f` once for each run of equal filaments with how many there are; `known` where they equal `first`.
-fn for_each_kind(lamps: &[Lamp], first: &Filament, mut f: impl FnMut(&Filament, Option<()>, f64)) {
-    let mut rest = lamps;
-    while let Some(lamp) = rest.first() {
-        let run = rest.iter().take_while(|other| other.filament() == lamp.filament()).count();
-        #[expect(clippy::cast_precision_loss, reason = "at most eight lamps")]
-        f(lamp.filament(), (lamp.filament() == first).then_some(()), run as f64);
-        rest = &rest[run..];
-    }
-}
-
-/// Amperes that a parallel group passes at a voltage.
-fn group_amps(group: &[Lamp], volts: f64) -> f64 {
-    let mut amps = 0.0;
-    for_each_kind(group, group[0].filament(), |filament, _, count| {
-        amps += count * filament.at_volts(volts).amps();
-    });
-    amps
-}
-
-/// Volts across a parallel group at a current, and the hottest rise in it.
-fn group_at_amps(group: &[Lamp], amps: f64) -> (f64, f64) {
-    let first = group[0].filament();
-    if group.iter().all(|lamp| lamp.filament() == first) {
-        #[expect(clippy::cast_precision_loss, reason = "at most eight lamps")]
-        let point = first.at_amps(amps / group.len() as f64);
-        return (point.volts(), point.rise);
-    }
-    if amps.is_nan() || amps <= 0.0 {
-        return (0.0, 0.0);
-    }
-    // Newton for all filaments at once: along their slopes, one common voltage brings the wanted current.
-    let rated_amps: f64 = group.iter().map(|lamp| lamp.rated_watts() / lamp.rated_volts()).sum();
-    let share = libm::pow(amps / rated_amps, 1.85);
-    let (low, high) = Filament::ln_rise_span();
-    let mut rises = [0.0; Bank::MOST_LAMPS];
-    for (rise, lamp) in rises.iter_mut().zip(group) {
-        *rise = lamp.filament().guess_ln_rise(share * group[0].rated_volts() / lamp.rated_volts());
-    }
-    let mut ln_volts = 0.0;
-    let mut hottest: f64 = 0.0;
-    for _ in 0..MOST_STEPS {
-        let mut points = [first.at_rise(0.0); Bank::MOST_LAMPS];
-        // sum of I (1 + g (v - v_k)) = amps, with v_k = ln volts of filament k and g = d ln I / d ln V.
-        let (mut total, mut slope, mut weighted) = (0.0, 0.0, 0.0);
-        for ((point, lamp), &rise) in points.iter_mut().zip(group).zip(&rises) {
-            *point = lamp.filament().at_ln_rise(rise);
-            let gain = point.amps() * point.amps_slope() / point.volts_slope();
-            total += point.amps();
-            slope += gain;
-            weighted += gain * libm::log(point.volts());
+        if amps > 0.0 {
+            let walk = Walk::new(self);
+            walk.to_amps(amps);
+            return walk.lamps();
         }
-        ln_volts = (amps - total + weighted) / slope;
-        let mut largest: f64 = 0.0;
-        for (rise, point) in rises.iter_mut().zip(&points).take(group.len()) {
-            let step = ((ln_volts - libm::log(point.volts())) / point.volts_slope()).clamp(-3.0, 3.0);
-            let moved = (*rise + step).clamp(low, high);
-            largest = largest.max((moved - *rise).abs());
-            *rise = moved;
-            hottest = hottest.max(libm::exp(moved));
-        }
-        if largest < CONVERGED {
-            break;
-        }
-        hottest = 0.0;
+        let cold = LampState { volts: 0.0, amps: 0.0, watts: 0.0, kelvin: AMBIENT_KELVIN };
+        self.groups.iter().map(|group| alloc::vec![cold; group.len()]).collect()
     }
-    (libm::exp(ln_volts), hottest)
 }
 
-/// More steps than crossing the whole span of temperature by clamped ones takes.
-const MOST_STEPS: usize = 60;
-
-/// A Newton step this small leaves an error of its square, below the last bits.
-const CONVERGED: f64 = 1e-7;
+/// A bank without current.
+const COLD: BankPoint = BankPoint { volts: 0.0, amps: 0.0, hottest_kelvin: AMBIENT_KELVIN };
 
 #[cfg(test)]
 mod tests {

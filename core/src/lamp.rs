@@ -5,7 +5,7 @@ use alloc::vec::Vec;
 use crate::calibrate::{self, Evidence};
 use crate::defaults;
 use crate::error::{Field, InputError, within};
-use crate::filament::{Filament, Shape};
+use crate::filament::{Filament, FilamentPoint, Shape};
 use crate::glow::{Glow, luminous_exitance};
 use crate::tungsten::{AMBIENT_KELVIN, OTHER_EMISSIVITY, OTHER_RESISTIVITY, STANDARD, STEFAN_BOLTZMANN};
 
@@ -230,12 +230,12 @@ impl Lamp {
 
     /// The state with `volts` across the lamp. From 0 V to where the filament reaches 3600 K; above, that end.
     pub fn at_volts(&self, volts: f64) -> LampState {
-        state(&self.filament.at_volts(volts))
+        LampState::from(&self.filament.at_volts(volts))
     }
 
     /// The state with `amps` through the lamp; above the current of 3600 K, that end.
     pub fn at_amps(&self, amps: f64) -> LampState {
-        state(&self.filament.at_amps(amps))
+        LampState::from(&self.filament.at_amps(amps))
     }
 
     /// The state at a filament temperature, 300 to 3600 K.
@@ -244,7 +244,7 @@ impl Lamp {
     /// [`Field::Kelvin`] out of range or not finite.
     pub fn at_kelvin(&self, kelvin: f64) -> Result<LampState, InputError> {
         let kelvin = within(Field::Kelvin, kelvin, AMBIENT_KELVIN, crate::tungsten::HIGHEST_KELVIN)?;
-        Ok(state(&self.filament.at_rise(kelvin - AMBIENT_KELVIN)))
+        Ok(LampState::from(&self.filament.at_rise(kelvin - AMBIENT_KELVIN)))
     }
 
     /// One of [`Self::VARIANTS`] equally serious ways in which this lamp may differ from the model, for bands.
@@ -266,8 +266,10 @@ impl Lamp {
     }
 }
 
-fn state(point: &crate::filament::FilamentPoint) -> LampState {
-    LampState { volts: point.volts(), amps: point.amps(), watts: point.watts, kelvin: point.kelvin() }
+impl From<&FilamentPoint> for LampState {
+    fn from(point: &FilamentPoint) -> Self {
+        Self { volts: point.volts(), amps: point.amps(), watts: point.watts, kelvin: point.kelvin() }
+    }
 }
 
 /// The filament temperature at which the rating gives `lumens`.

@@ -8,7 +8,7 @@
 use alloc::vec::Vec;
 use core::fmt;
 
-use crate::bank::{Bank, BankPoint};
+use crate::bank::{Bank, BankPoint, Walk};
 use crate::complex::Complex;
 use crate::error::{Field, InputError};
 use crate::filament::Filament;
@@ -163,8 +163,9 @@ pub fn solve(supply: &Supply, bank: &Bank, load: &Load) -> Result<Steady, Steady
 pub(crate) fn equilibria(supply: &Supply, bank: &Bank, load: &Load) -> Result<Vec<Equilibrium>, SteadyError> {
     load.check(supply)?;
     let mut equilibria = Vec::new();
+    let walk = Walk::new(bank);
     for (mode, load) in load.modes() {
-        let circuit = Circuit { supply, bank, load: &load, mode };
+        let circuit = Circuit { supply, bank, walk: &walk, load: &load, mode };
         equilibria.extend(circuit.points()?);
     }
     equilibria.retain(|point| load.lasts(point.mode, point.amps));
@@ -175,6 +176,7 @@ pub(crate) fn equilibria(supply: &Supply, bank: &Bank, load: &Load) -> Result<Ve
 struct Circuit<'a> {
     supply: &'a Supply,
     bank: &'a Bank,
+    walk: &'a Walk<'a>,
     load: &'a Load,
     mode: Mode,
 }
@@ -229,7 +231,7 @@ impl Circuit<'_> {
     }
 
     fn excess(&self, ln_rise: f64) -> f64 {
-        self.load.excess(&self.feed(&self.bank.at_ln_rise(ln_rise)))
+        self.load.excess(&self.feed(&self.walk.to(ln_rise)))
     }
 
     fn one_root(&self) -> Result<Root, SteadyError> {
@@ -264,7 +266,7 @@ impl Circuit<'_> {
         };
         let slowing = |ln_slip: f64| {
             let slip = libm::exp(ln_slip);
-            settle(slip).map_or(f64::NAN, |root| motor.slowing(slip, self.bank.at_ln_rise(root.x).amps))
+            settle(slip).map_or(f64::NAN, |root| motor.slowing(slip, self.walk.to(root.x).amps))
         };
         let roots = scan::all(slowing, (libm::log(LEAST_SLIP), 0.0), SAMPLES);
         let mut points = Vec::new();
@@ -288,13 +290,13 @@ impl Circuit<'_> {
 
     /// Which lamp ends the search at the top of the span.
     fn melts(&self, ln_rise: f64) -> SteadyError {
-        let states = self.bank.lamps_at_amps(self.bank.at_ln_rise(ln_rise).amps);
-        melting(&states).unwrap_or(SteadyError::FilamentMelts { group: 0, lamp: 0 })
+        self.walk.to(ln_rise);
+        melting(&self.walk.lamps()).unwrap_or(SteadyError::FilamentMelts { group: 0, lamp: 0 })
     }
 
     fn point_at(&self, root: Root) -> Result<Equilibrium, SteadyError> {
-        let bank = self.bank.at_ln_rise(root.x);
-        let lamps = self.bank.lamps_at_amps(bank.amps);
+        let bank = self.walk.to(root.x);
+        let lamps = self.walk.lamps();
         if let Some(error) = melting(&lamps) {
             return Err(error);
         }

@@ -1,0 +1,220 @@
+//! A bank being searched: every filament starts from where it stood at the step before.
+//!
+//! At a point of the chain each parallel group either has the voltage of the leading filament, or the current of the
+//! first group. Newton's method on all filaments of a group at once, in the logarithm of their rise, where curves are
+//! nearly straight: two or three evaluations of each along a search, since neighbouring points move all rises alike.
+
+use alloc::vec::Vec;
+use core::cell::Cell;
+
+use super::{Bank, BankPoint};
+use crate::filament::{Filament, FilamentPoint};
+use crate::lamp::{Lamp, LampState};
+use crate::tungsten::AMBIENT_KELVIN;
+
+/// Equal filaments side by side.
+#[derive(Debug, Clone, PartialEq)]
+struct Kind {
+    filament: Filament,
+    count: f64,
+}
+
+/// What all search of a bank needs of it: each distinct parallel group once.
+#[derive(Debug, Clone, PartialEq)]
+pub(super) struct Chain {
+    groups: Vec<Group>,
+    /// For every lamp, group by group, which kind it is, all kinds being numbered in order.
+    places: Vec<Vec<usize>>,
+}
+
+/// A parallel group, as often as it occurs in the chain.
+#[derive(Debug, Clone, PartialEq)]
+struct Group {
+    kinds: Vec<Kind>,
+    times: f64,
+}
+
+impl Chain {
+    pub(super) fn of(lamps: &[Vec<Lamp>]) -> Self {
+        let mut groups: Vec<Group> = Vec::new();
+        let mut firsts: Vec<usize> = Vec::new();
+        let mut places = Vec::new();
+        for lamps in lamps {
+            let mut kinds: Vec<Kind> = Vec::new();
+            let mut inside = Vec::new();
+            for lamp in lamps {
+                let known = kinds.iter().position(|kind| kind.filament == *lamp.filament());
+                if let Some(known) = known {
+                    kinds[known].count += 1.0;
+                } else {
+                    kinds.push(Kind { filament: lamp.filament().clone(), count: 1.0 });
+                }
+                inside.push(known.unwrap_or(kinds.len() - 1));
+            }
+            let known = groups.iter().position(|group| group.kinds == kinds);
+            if let Some(known) = known {
+                groups[known].times += 1.0;
+            } else {
+                firsts.push(groups.iter().map(|group| group.kinds.len()).sum());
+                groups.push(Group { kinds, times: 1.0 });
+            }
+            let first = firsts[known.unwrap_or(groups.len() - 1)];
+            places.push(inside.iter().map(|index| first + index).collect());
+        }
+        Self { groups, places }
+    }
+
+    fn kinds(&self) -> impl Iterator<Item = &Kind> {
+        self.groups.iter().flat_map(|group| &group.kinds)
+    }
+}
+
+/// What a group is brought to.
+#[derive(Clone, Copy)]
+enum Goal {
+    LnVolts(f64),
+    Amps(f64),
+}
+
+/// Where a group stands.
+#[derive(Clone, Copy)]
+struct Stand {
+    volts: f64,
+    amps: f64,
+}
+
+impl Group {
+    /// Brings the filaments from `rises` (logarithms) to the goal, and leaves them there.
+    fn settle(kinds: &[Kind], goal: Goal, rises: &mut [f64]) -> Stand {
+        let (low, high) = Filament::ln_rise_span();
+        let mut steps = 0;
+        loop {
+            // sum of I (1 + g (v - v_k)) = amps, with v_k = ln volts of filament k and g = d ln I / d ln V.
+            let mut slopes = [(0.0, 0.0); Bank::MOST_LAMPS];
+            let (mut total, mut gain, mut weighted) = (0.0, 0.0, 0.0);
+            // No further than filaments can step, so that an absurd goal stays a number.
+            let mut reach = f64::NEG_INFINITY;
+            for ((kind, rise), slope) in kinds.iter().zip(rises.iter()).zip(&mut slopes) {
+                let point = kind.filament.at_ln_rise(*rise);
+                let ln_volts = 0.5 * libm::log(point.watts * point.ohms);
+                let amps = kind.count * point.amps();
+                let share = amps * point.amps_slope() / point.volts_slope();
+                total += amps;
+                gain += share;
+                weighted += share * ln_volts;
+                reach = f64::max(reach, ln_volts + LONGEST_STEP * point.volts_slope());
+                *slope = (ln_volts, point.volts_slope());
+            }
+            let ln_volts = match goal {
+                Goal::LnVolts(ln_volts) => ln_volts,
+                Goal::Amps(amps) => ((amps - total + weighted) / gain).min(reach),
+            };
+            let mut largest: f64 = 0.0;
+            for (rise, (here, slope)) in rises.iter_mut().zip(slopes) {
+                let moved =
+                    (*rise + ((ln_volts - here) / slope).clamp(-LONGEST_STEP, LONGEST_STEP)).clamp(low, high);
+                largest = largest.max((moved - *rise).abs());
+                *rise = moved;
+            }
+            steps += 1;
+            if largest < CONVERGED || steps == MOST_STEPS {
+                // What the last step changed, to first order: its square is below the last digits.
+                return Stand { volts: libm::exp(ln_volts), amps: total + gain * ln_volts - weighted };
+            }
+        }
+    }
+}
+
+/// More steps than crossing the whole span of temperature by clamped ones takes.
+const MOST_STEPS: usize = 60;
+
+/// Longest Newton step in the logarithm of the rise.
+const LONGEST_STEP: f64 = 3.0;
+
+/// A Newton step this small leaves an error of about its square.
+const CONVERGED: f64 = 3e-7;
+
+/// A bank on the way through its curve.
+#[derive(Debug, Clone)]
+pub(crate) struct Walk<'a> {
+    bank: &'a Bank,
+    /// Logarithm of the rise of every kind, the leading filament first.
+    rises: Cell<[f64; Bank::MOST_LAMPS]>,
+}
+
+impl<'a> Walk<'a> {
+    /// Sets out with every filament at its rating.
+    pub(crate) fn new(bank: &'a Bank) -> Self {
+        let mut rises = [0.0; Bank::MOST_LAMPS];
+        for (rise, kind) in rises.iter_mut().zip(bank.chain.kinds()) {
+            *rise = libm::log(kind.filament.shape().kelvin - AMBIENT_KELVIN);
+        }
+        Self { bank, rises: Cell::new(rises) }
+    }
+
+    /// To where the leading filament is at a logarithm of the rise above ambient. Volts and amperes both grow with it,
+    /// so it is the one variable in which to search. A bank of equal lamps costs one evaluation.
+    pub(crate) fn to(&self, ln_rise: f64) -> BankPoint {
+        let (low, high) = Filament::ln_rise_span();
+        let mut rises = self.rises.get();
+        let moved = ln_rise - rises[0];
+        for rise in &mut rises {
+            *rise = (*rise + moved).clamp(low, high);
+        }
+        rises[0] = ln_rise;
+        let groups = &self.bank.chain.groups;
+        let first = &groups[0];
+        let lead: FilamentPoint = first.kinds[0].filament.at_ln_rise(ln_rise);
+        let mut amps = first.kinds[0].count * lead.amps();
+        let (own, others) = rises.split_at_mut(first.kinds.len());
+        if first.kinds.len() > 1 {
+            let ln_volts = 0.5 * libm::log(lead.watts * lead.ohms);
+            amps += Group::settle(&first.kinds[1..], Goal::LnVolts(ln_volts), &mut own[1..]).amps;
+        }
+        let volts = first.times * lead.volts() + settle_chain(&groups[1..], amps, others);
+        self.arrive(volts, amps, rises)
+    }
+
+    /// To a current through the chain, amperes, above 0.
+    pub(crate) fn to_amps(&self, amps: f64) -> BankPoint {
+        let mut rises = self.rises.get();
+        let volts = settle_chain(&self.bank.chain.groups, amps, &mut rises);
+        self.arrive(volts, amps, rises)
+    }
+
+    fn arrive(&self, volts: f64, amps: f64, rises: [f64; Bank::MOST_LAMPS]) -> BankPoint {
+        self.rises.set(rises);
+        let kinds = self.bank.chain.kinds().count();
+        let hottest = rises[..kinds].iter().copied().fold(f64::NEG_INFINITY, f64::max);
+        let hottest = libm::exp(hottest.min(Filament::ln_rise_span().1));
+        BankPoint { volts, amps, hottest_kelvin: AMBIENT_KELVIN + hottest }
+    }
+
+    /// The logarithm of the leading filament's rise here.
+    pub(crate) fn ln_rise(&self) -> f64 {
+        self.rises.get()[0]
+    }
+
+    /// Every lamp's state here, in the order of the bank.
+    pub(crate) fn lamps(&self) -> Vec<Vec<LampState>> {
+        let rises = self.rises.get();
+        let mut states = [None; Bank::MOST_LAMPS];
+        for ((state, kind), rise) in states.iter_mut().zip(self.bank.chain.kinds()).zip(rises) {
+            *state = Some(LampState::from(&kind.filament.at_ln_rise(rise)));
+        }
+        let places = self.bank.chain.places.iter();
+        places.map(|group| group.iter().filter_map(|&kind| states[kind]).collect()).collect()
+    }
+}
+
+/// Brings groups in series to a current; their volts together.
+fn settle_chain(groups: &[Group], amps: f64, rises: &mut [f64]) -> f64 {
+    let mut rest = rises;
+    let mut volts = 0.0;
+    for group in groups {
+        let (own, others) = rest.split_at_mut(group.kinds.len());
+        volts += group.times * Group::settle(&group.kinds, Goal::Amps(amps), own).volts;
+        rest = others;
+    }
+    volts
+}
