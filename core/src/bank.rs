@@ -8,7 +8,7 @@ pub(crate) use walk::Walk;
 
 use crate::error::{Field, InputError, within};
 use crate::filament::Filament;
-use crate::lamp::{Lamp, LampState};
+use crate::lamp::{Lamp, LampState, Tables};
 use crate::tungsten::AMBIENT_KELVIN;
 
 /// A series chain of parallel groups of lamps, one to eight lamps in all.
@@ -88,6 +88,29 @@ impl Bank {
     pub fn variant(&self, index: usize) -> Self {
         let groups = self.groups.iter().map(|group| group.iter().map(|lamp| lamp.variant(index)).collect());
         Self::of(groups.collect())
+    }
+
+    /// The same bank with every lamp replaced by its [`Lamp::moved`], all the same way: lamps of one bank tend to come
+    /// out of one box.
+    pub(crate) fn moved(&self, deviations: [f64; 3], tables: Tables) -> Self {
+        let moved = |group: &Vec<Lamp>| group.iter().map(|lamp| lamp.moved(deviations, tables)).collect();
+        Self::of(self.groups.iter().map(moved).collect())
+    }
+
+    /// The bank where its hottest filament is at `kelvin`.
+    pub fn at_hottest_kelvin(&self, kelvin: f64) -> BankPoint {
+        let rise = kelvin - AMBIENT_KELVIN;
+        if rise <= 0.0 {
+            return self.at_volts(0.0);
+        }
+        let span = Filament::ln_rise_span();
+        let found = crate::roots::decreasing_from(
+            |x| libm::log(rise / (self.at_ln_rise(x).hottest_kelvin - AMBIENT_KELVIN)),
+            span,
+            libm::log(rise).min(span.1),
+            crate::roots::Tolerance { x: 1e-10, residual: 1e-10 },
+        );
+        self.at_ln_rise(found.map_or(span.1, |root| root.x))
     }
 
     /// Volts at which the first group to reach its rating does so, when the bank stands alone: the highest

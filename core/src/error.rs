@@ -93,6 +93,26 @@ pub enum Field {
     LeastShare,
     /// Length of the lead, metres.
     Metres,
+    /// A reading of the supply's volts.
+    SupplyVolts,
+    /// A reading of the volts across the bank.
+    BankVolts,
+    /// A reading of the volts across the equipment.
+    LoadVolts,
+    /// A reading of the equipment's real power, watts.
+    LoadWatts,
+    /// A reading of the resistance across the unplugged equipment's plug, ohms.
+    PlugOhms,
+    /// Part of a meter's accuracy, per cent of what it shows.
+    Percent,
+    /// Part of a meter's accuracy, counts of its last digit.
+    Digits,
+    /// The most that a meter counts to.
+    Counts,
+    /// What the supply does between readings, per cent.
+    DriftPercent,
+    /// All readings together.
+    Readings,
 }
 
 impl Field {
@@ -141,24 +161,45 @@ impl Field {
             Self::CloseShare => "close_share",
             Self::LeastShare => "least_share",
             Self::Metres => "metres",
+            Self::SupplyVolts => "supply_volts",
+            Self::BankVolts => "bank_volts",
+            Self::LoadVolts => "load_volts",
+            Self::LoadWatts => "load_watts",
+            Self::PlugOhms => "plug_ohms",
+            Self::Percent => "percent",
+            Self::Digits => "digits",
+            Self::Counts => "counts",
+            Self::DriftPercent => "drift_percent",
+            Self::Readings => "readings",
         }
     }
 
     /// The SI unit symbol; empty for a ratio or a count.
     pub const fn unit(self) -> &'static str {
         match self {
-            Self::Volts | Self::DiodeVolts | Self::StartVolts | Self::StopVolts => "V",
-            Self::Watts | Self::HolderWatts | Self::FirstLeastWatts | Self::FirstMostWatts => "W",
             Self::Metres => "m",
+            Self::Volts
+            | Self::DiodeVolts
+            | Self::StartVolts
+            | Self::StopVolts
+            | Self::SupplyVolts
+            | Self::BankVolts
+            | Self::LoadVolts => "V",
+            Self::Watts
+            | Self::HolderWatts
+            | Self::FirstLeastWatts
+            | Self::FirstMostWatts
+            | Self::LoadWatts => "W",
             Self::Amps | Self::RatedAmps => "A",
             Self::Hertz => "Hz",
-            Self::Ohms | Self::ReactanceOhms | Self::ColdOhms | Self::SeriesOhms => "Ω",
+            Self::Ohms | Self::ReactanceOhms | Self::ColdOhms | Self::SeriesOhms | Self::PlugOhms => "Ω",
             Self::Lumens => "lm",
             Self::RatedKelvin | Self::Kelvin => "K",
             Self::Farads => "F",
             Self::VoltAmps => "VA",
             Self::RestartSeconds | Self::Seconds | Self::SampleSeconds => "s",
             Self::SwitchDegrees => "°",
+            Self::Percent | Self::DriftPercent => "%",
             _ => "",
         }
     }

@@ -66,6 +66,24 @@ impl GlowWord {
             Self::OverFull => "over full",
         }
     }
+
+    /// The filament temperatures, kelvin, to which this word belongs on a lamp rated for `rated_kelvin`: the
+    /// inverse of [`Glow::word`]. Below the Draper point it starts at 300 K; above the rating it ends at 1.15 times
+    /// that, where a lamp lasts minutes. Empty (the ends equal) for a word that a cool-running lamp never reaches.
+    pub fn kelvins(self, rated_kelvin: f64) -> (f64, f64) {
+        let (full, over) = (FULL_SHARE * rated_kelvin, OVER_SHARE * rated_kelvin);
+        let between = |low: f64, high: f64| (low.min(full), high.min(full));
+        match self {
+            Self::Dark => (crate::tungsten::AMBIENT_KELVIN, DRAPER_KELVIN),
+            Self::Faint => between(DRAPER_KELVIN, DULL_RED_KELVIN),
+            Self::DullRed => between(DULL_RED_KELVIN, ORANGE_KELVIN),
+            Self::Orange => between(ORANGE_KELVIN, AMBER_KELVIN),
+            Self::Amber => between(AMBER_KELVIN, YELLOW_KELVIN),
+            Self::Yellow => between(YELLOW_KELVIN, full),
+            Self::Full => (full, over),
+            Self::OverFull => (over, 1.15 * rated_kelvin),
+        }
+    }
 }
 
 /// What a filament looks like.
@@ -211,18 +229,26 @@ fn encode(linear: f64) -> u8 {
     byte
 }
 
+/// Where the words change, kelvin; and, from yellow on, over the rated temperature.
+const DULL_RED_KELVIN: f64 = 1000.0;
+const ORANGE_KELVIN: f64 = 1300.0;
+const AMBER_KELVIN: f64 = 1700.0;
+const YELLOW_KELVIN: f64 = 2150.0;
+const FULL_SHARE: f64 = 0.94;
+const OVER_SHARE: f64 = 1.02;
+
 /// The word for a temperature: absolute up to orange, since the eye names a dim filament by its hue; against the
 /// rating above, since a bright one is named by how far from full it is.
 fn word(kelvin: f64, rated_kelvin: f64) -> GlowWord {
     let share = kelvin / rated_kelvin;
     match kelvin {
-        _ if share > 1.02 => GlowWord::OverFull,
-        _ if share > 0.94 => GlowWord::Full,
+        _ if share > OVER_SHARE => GlowWord::OverFull,
+        _ if share > FULL_SHARE => GlowWord::Full,
         k if k < DRAPER_KELVIN => GlowWord::Dark,
-        k if k < 1000.0 => GlowWord::Faint,
-        k if k < 1300.0 => GlowWord::DullRed,
-        k if k < 1700.0 => GlowWord::Orange,
-        k if k < 2150.0 => GlowWord::Amber,
+        k if k < DULL_RED_KELVIN => GlowWord::Faint,
+        k if k < ORANGE_KELVIN => GlowWord::DullRed,
+        k if k < AMBER_KELVIN => GlowWord::Orange,
+        k if k < YELLOW_KELVIN => GlowWord::Amber,
         _ => GlowWord::Yellow,
     }
 }
@@ -241,6 +267,14 @@ mod tests {
         }
         assert_eq!(last, GlowWord::OverFull);
         assert_eq!(Glow::at(790.0, 2800.0).word, GlowWord::Dark);
+    }
+
+    #[test]
+    fn a_word_belongs_to_its_temperatures() {
+        for word in GlowWord::ALL {
+            let (low, high) = word.kelvins(2700.0);
+            assert_eq!(Glow::at(f64::midpoint(low, high), 2700.0).word, word);
+        }
     }
 
     #[test]

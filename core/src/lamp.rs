@@ -247,6 +247,21 @@ impl Lamp {
         Ok(LampState::from(&self.filament.at_rise(kelvin - AMBIENT_KELVIN)))
     }
 
+    /// The lamp moved by `deviations` along the independent directions of its spread, by the tables named: one of the
+    /// real lamps that this one may be.
+    pub(crate) fn moved(&self, deviations: [f64; 3], tables: Tables) -> Self {
+        let step = core::array::from_fn(|row| {
+            self.spread[row].iter().zip(deviations).map(|(spread, deviation)| spread * deviation).sum()
+        });
+        let tungsten = match tables {
+            Tables::Standard => &STANDARD,
+            Tables::OtherResistivity => &OTHER_RESISTIVITY,
+            Tables::OtherEmissivity => &OTHER_EMISSIVITY,
+        };
+        let shape = calibrate::shifted(self.filament.shape(), step);
+        Self { filament: Filament::new(shape, tungsten), ..self.clone() }
+    }
+
     /// One of [`Self::VARIANTS`] equally serious ways in which this lamp may differ from the model, for bands.
     ///
     /// 0 to 5 are one standard deviation up and down along each independent direction of (watts, temperature,
@@ -270,6 +285,14 @@ impl From<&FilamentPoint> for LampState {
     fn from(point: &FilamentPoint) -> Self {
         Self { volts: point.volts(), amps: point.amps(), watts: point.watts, kelvin: point.kelvin() }
     }
+}
+
+/// Which published tables of tungsten a lamp is computed from.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub(crate) enum Tables {
+    Standard,
+    OtherResistivity,
+    OtherEmissivity,
 }
 
 /// The filament temperature at which the rating gives `lumens`.

@@ -5,8 +5,12 @@
 //! wanted current falls as the bank heats cross once; a constant power can cross twice or never, so its whole
 //! range is sampled and every dip that comes close to zero is followed down.
 
+mod sketch;
+
 use alloc::vec::Vec;
 use core::fmt;
+
+pub(crate) use sketch::{Sketch, Sketched, Warm, sketch};
 
 use crate::bank::{Bank, BankPoint, Walk};
 use crate::complex::Complex;

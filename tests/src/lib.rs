@@ -16,4 +16,6 @@ pub mod numbers;
 pub mod page;
 pub mod random;
 pub mod reference;
+pub mod reliability;
+pub mod simulated;
 pub mod surroundings;

@@ -50,6 +50,10 @@ impl<'a> Node<'a> {
         self.value.as_str().ok_or_else(|| self.expected("a text"))
     }
 
+    pub(crate) fn truth(&self) -> Result<bool, Refusal> {
+        self.value.as_bool().ok_or_else(|| self.expected("true or false"))
+    }
+
     pub(crate) fn list(&self) -> Result<Vec<Self>, Refusal> {
         let values = self.value.as_array().ok_or_else(|| self.expected("a list"))?;
         let node = |(index, value)| Node { value, path: format!("{}[{index}]", self.path) };

@@ -6,9 +6,11 @@
 //! with `error`, the path of the field that is wrong and why; the next line is served all the same. Quantities are
 //! SI; volts and amperes RMS, or DC.
 
+mod ask_diagnose;
 mod ask_glow;
 mod ask_ladder;
 mod ask_lamp;
+mod ask_readings;
 mod ask_steady;
 mod fields;
 mod parts;
@@ -68,7 +70,9 @@ fn served(id: &Value, request: &Value) -> Result<String, Refusal> {
         "ladder" => Ok(written(id, &ask_ladder::answer(fields)?)),
         "steady" => Ok(written(id, &ask_steady::answer(fields)?)),
         "glow" => Ok(written(id, &ask_glow::answer(fields)?)),
-        _ => Err(ask.refuse("ask must be one of lamp, steady, ladder, glow")),
+        "readings" => Ok(written(id, &ask_readings::answer(fields)?)),
+        "diagnose" => Ok(written(id, &ask_diagnose::answer(fields)?)),
+        _ => Err(ask.refuse("ask must be one of lamp, steady, readings, diagnose, ladder, glow")),
     }
 }
 

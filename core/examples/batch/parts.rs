@@ -203,7 +203,11 @@ pub(crate) fn outcome(outcome: &Outcome) -> Result<(&'static str, Option<f64>), 
 }
 
 /// The item of `all` that has the name at `node`.
-fn one_of<T: Copy>(node: &Node<'_>, all: &[T], name: impl Fn(T) -> &'static str) -> Result<T, Refusal> {
+pub(crate) fn one_of<T: Copy>(
+    node: &Node<'_>,
+    all: &[T],
+    name: impl Fn(T) -> &'static str,
+) -> Result<T, Refusal> {
     let wanted = node.text()?;
     all.iter().copied().find(|&item| name(item) == wanted).ok_or_else(|| {
         let known: Vec<&str> = all.iter().map(|&item| name(item)).collect();

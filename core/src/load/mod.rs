@@ -166,6 +166,14 @@ impl Load {
         }
     }
 
+    /// The same to one part in a hundred thousand, which is cheaper where it takes searches of its own.
+    pub(crate) fn coarse_excess(&self, feed: &Feed) -> f64 {
+        match self {
+            Self::PowerSupply(supply) => supply.coarse_excess(feed),
+            _ => self.excess(feed),
+        }
+    }
+
     /// What the terminals show where [`Self::excess`] vanishes.
     pub(crate) fn terminal(&self, feed: &Feed) -> Terminal {
         match self {

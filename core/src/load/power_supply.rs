@@ -134,41 +134,45 @@ impl PowerSupply {
         self.spec.magnetising_amps * share * (LINEAR_SHARE + (1.0 - LINEAR_SHARE) * eighth)
     }
 
-    /// Real power straight on a supply of `volts`, watts.
+    /// Real power straight on a supply of `volts`, watts. Such a supply gives way to nothing, so nothing is searched.
     pub(crate) fn watts_at(&self, volts: f64) -> f64 {
-        self.respond(&Feed { volts, hertz: 50.0, ohms: STIFF_OHMS, amps: 0.0 }).watts
+        let feed = Feed { volts, hertz: 50.0, ohms: STIFF_OHMS, amps: 0.0 };
+        self.behind(&feed, self.magnetising_amps(volts), self.beside(volts)).watts
     }
 
-    fn respond(&self, feed: &Feed) -> Response {
+    /// What stands beside the rectifier with `volts` on the mains side for long.
+    fn beside(&self, volts: f64) -> Beside {
+        let core = 1.0 / self.spec.core_ohms;
+        self.heater.as_ref().map_or(Beside { siemens: core, emission: 1.0 }, |heater| {
+            let point = heater.at_volts(volts);
+            Beside { siemens: core + 1.0 / point.ohms, emission: self.emission(point.kelvin()) }
+        })
+    }
+
+    /// What it takes, its inner searches ended at `inner`.
+    fn respond(&self, feed: &Feed, inner: f64) -> Response {
         let Some(heater) = &self.heater else {
-            return self.with(feed, Beside { siemens: 1.0 / self.spec.core_ohms, emission: 1.0 }).0;
+            return self.with(feed, self.beside(feed.volts), inner).0;
         };
         // Find the heater voltage that the heaters themselves leave.
-        let beside = |volts: f64| {
-            let point = heater.at_volts(volts);
-            Beside {
-                siemens: 1.0 / self.spec.core_ohms + 1.0 / point.ohms,
-                emission: self.emission(point.kelvin()),
-            }
-        };
-        let left = |ln_volts: f64| libm::log(self.with(feed, beside(libm::exp(ln_volts))).1);
+        let left = |ln_volts: f64| libm::log(self.with(feed, self.beside(libm::exp(ln_volts)), inner).1);
         let most = libm::log(feed.volts);
         let span = (most - 20.0, most);
         let guess = most - libm::log1p(0.7 * feed.ohms / heater.at_volts(0.6 * feed.volts).ohms);
-        let tolerance = Tolerance { x: 1e-12, residual: INNER };
+        let tolerance = Tolerance { x: inner, residual: inner };
         let found = roots::fixed_point(left, span, guess, tolerance)
             .or_else(|| roots::decreasing_from(|x| left(x) - x, span, guess, tolerance));
-        self.with(feed, beside(libm::exp(found.map_or(most, |root| root.x)))).0
+        self.with(feed, self.beside(libm::exp(found.map_or(most, |root| root.x))), inner).0
     }
 
     /// The response with what stands beside frozen, and the volts on the mains side.
-    fn with(&self, feed: &Feed, beside: Beside) -> (Response, f64) {
+    fn with(&self, feed: &Feed, beside: Beside, inner: f64) -> (Response, f64) {
         // Find the magnetising current that belongs to the voltage it leaves.
         let direct = feed.hertz == 0.0;
         let most = if direct { 0.0 } else { self.magnetising_amps(feed.volts).min(feed.volts / feed.ohms) };
         let wanted = |amps: f64| self.magnetising_amps(self.behind(feed, amps, beside).fundamental_volts);
         let magnetising = if most > 0.0 {
-            let tolerance = Tolerance { x: 1e-13 * most, residual: INNER * most };
+            let tolerance = Tolerance { x: inner * most, residual: inner * most };
             let gap = |amps: f64| wanted(amps) - amps;
             roots::fixed_point(wanted, (0.0, most), wanted(0.0).min(most), tolerance)
                 .or_else(|| roots::between(gap, (0.0, gap(0.0)), (most, gap(most)), tolerance))
@@ -240,11 +244,16 @@ impl PowerSupply {
     }
 
     pub(super) fn excess(&self, feed: &Feed) -> f64 {
-        libm::log(self.respond(feed).amps / feed.amps).clamp(-FAR, FAR)
+        libm::log(self.respond(feed, INNER).amps / feed.amps).clamp(-FAR, FAR)
+    }
+
+    /// The same to one part in a hundred thousand.
+    pub(super) fn coarse_excess(&self, feed: &Feed) -> f64 {
+        libm::log(self.respond(feed, 1e-5).amps / feed.amps).clamp(-FAR, FAR)
     }
 
     pub(super) fn terminal(&self, feed: &Feed) -> Terminal {
-        let response = self.respond(feed);
+        let response = self.respond(feed, INNER);
         Terminal::from_power(feed, response.watts, Some(response.dc_volts))
     }
 }
@@ -297,7 +306,7 @@ mod tests {
             let set = PowerSupply::new(spec).expect("in range");
             for ohms in [1.0, 50.0, 300.0, 800.0] {
                 let mut feed = Feed { volts: 230.0, hertz: 50.0, ohms, amps: 0.1 };
-                feed.amps = set.respond(&feed).amps;
+                feed.amps = set.respond(&feed, INNER).amps;
                 let terminal = set.terminal(&feed);
                 assert!(terminal.watts <= terminal.volts * feed.amps, "power factor above one at {ohms}");
                 assert!(terminal.volts > 0.0 && terminal.volts <= 230.0);
