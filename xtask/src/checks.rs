@@ -159,16 +159,7 @@ fn reference(run: &mut Run) -> Result<()> {
 
 /// The names of the files in tests/tests.
 fn test_files() -> Result<Vec<String>> {
-    let folder = place::root().join("tests/tests");
-    let mut names = Vec::new();
-    for entry in std::fs::read_dir(&folder).with_context(|| format!("{} cannot be read", folder.display()))? {
-        let path = entry?.path();
-        if path.extension().is_some_and(|suffix| suffix == "rs") {
-            names.extend(path.file_stem().map(|stem| stem.to_string_lossy().into_owned()));
-        }
-    }
-    names.sort();
-    Ok(names)
+    place::rust_files("tests/tests")
 }
 
 fn bare(_: &mut Run) -> Result<()> {
@@ -192,15 +183,14 @@ fn browser(run: &mut Run) -> Result<()> {
     let browser = tools::Browser::ensure()?;
     let mut command = target::ensure(target::WASM)?.cargo(target::WASM);
     browser.apply(&mut command);
-    command.env("CARGO_TARGET_WASM32_UNKNOWN_UNKNOWN_RUNNER", runner).args([
-        "test",
-        "--quiet",
-        "-p",
-        "lampladder-web",
-        "--target",
-        target::WASM,
-        "--tests",
-    ]);
+    command
+        .env("CARGO_TARGET_WASM32_UNKNOWN_UNKNOWN_RUNNER", runner)
+        // Names and lines of source make these files ten times as large, and wasm-bindgen that much slower.
+        .env("CARGO_PROFILE_TEST_DEBUG", "0")
+        .env("CARGO_PROFILE_DEV_DEBUG", "0")
+        // Not --quiet: cargo hands it on to the runner, which does not know it. The unit tests of the page have run
+        // natively in the stage before; here are the files of web/tests.
+        .args(["test", "--no-fail-fast", "-p", "lampladder-web", "--target", target::WASM, "--test", "*"]);
     run.tests(&mut command)
 }
 

@@ -23,7 +23,7 @@ cargo xtask COMMAND
 
   serve [--open] [--port N]   build the release page and serve it on this machine
   test [STAGE…] [--list]      run every check, or only the named stages
-  bench [solver|typing]       time the solver (native) and the page (Chromium, CPU throttled 6 times)
+  bench [NAME…]               time the solvers (native) and the page (Chromium, CPU throttled 6 times)
   size                        what a first load weighs, against its budget
   dist [DIR]                  the page as one folder for any static host, under any path
   oracle                      regenerate the golden answers of tests/oracle with Python

@@ -1,6 +1,7 @@
 //! Where things are: the checkout, and the cache of tools outside it.
 
 use std::env;
+use std::fs;
 use std::path::{Path, PathBuf};
 
 use anyhow::{Context, Result};
@@ -35,6 +36,20 @@ pub(crate) fn cache() -> Result<PathBuf> {
     let home =
         set("HOME").or_else(|| set("USERPROFILE")).context("neither LAMPLADDER_CACHE nor HOME is set")?;
     Ok(Path::new(&home).join(".cache").join("lampladder"))
+}
+
+/// The names, without their suffix, of the Rust files in a folder of the checkout.
+pub(crate) fn rust_files(folder: &str) -> Result<Vec<String>> {
+    let folder = root().join(folder);
+    let mut names = Vec::new();
+    for entry in fs::read_dir(&folder).with_context(|| format!("{} cannot be read", folder.display()))? {
+        let path = entry?.path();
+        if path.extension().is_some_and(|suffix| suffix == "rs") {
+            names.extend(path.file_stem().map(|stem| stem.to_string_lossy().into_owned()));
+        }
+    }
+    names.sort();
+    Ok(names)
 }
 
 /// The first program of this name on PATH.
