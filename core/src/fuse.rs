@@ -7,8 +7,8 @@
 //!
 //! # Method
 //! The squared current over every stretch of the first seconds is compared with a constant current that heats a fuse as
-//! much in that time. Between gates nothing is interpolated: what holds at a multiple holds below it, what opens at a
-//! multiple opens above it. Beyond the highest multiple that a standard gates, the melting heat is taken as constant
+//! much in that time. Between gates nothing is interpolated: what holds at a multiple holds below it, and what heat it bears
+//! in a time it bears in a longer one; what opens at a multiple opens above it. Beyond the highest multiple that a standard gates, the melting heat is taken as constant
 //! (`I^2 t`), as it is when there is no time to lose heat. The last current is taken to last for half an hour.
 //!
 //! # Simplifications
@@ -242,22 +242,20 @@ impl Fuse {
     }
 
     /// Largest multiple of the rated current that no fuse opens at within `seconds`; 1 where no gate says more.
+    ///
+    /// A gate promises its current for its time, and for longer as much heat: time only helps a fuse to cool.
     pub fn held_multiple(&self, seconds: f64) -> f64 {
-        let lasting = |gate: &Gate| gate.least_seconds.filter(|&least| least > 0.0);
-        let gated = self.gates.iter().filter_map(|gate| Some((gate.multiple, lasting(gate)?)));
         let mut held: f64 = 1.0;
         let mut top = (0.0, 0.0);
-        for (multiple, least) in gated {
+        for gate in &self.gates {
             // Two data sheets that disagree: the shorter time is what is sure.
-            let least = self.least_at(multiple).map_or(least, |shortest| shortest.min(least));
-            if least >= seconds {
-                held = held.max(multiple);
-            }
-            if multiple > top.0 {
-                top = (multiple, least);
+            let Some(least) = self.least_at(gate.multiple) else { continue };
+            held = held.max(gate.multiple * libm::sqrt(least / seconds).min(1.0));
+            if gate.multiple > top.0 {
+                top = (gate.multiple, least);
             }
         }
-        if self.standard.is_gated_for_surges() && top.0 > HIGH_MULTIPLE && seconds < top.1 {
+        if self.standard.is_gated_for_surges() && top.0 > HIGH_MULTIPLE {
             held = held.max(top.0 * libm::sqrt(top.1 / seconds));
         }
         held
@@ -372,6 +370,8 @@ mod tests {
         assert_eq!(verdict(2.1, 3.0, 2.1), Verdict::Opens);
         // A time-lag fuse carries ten times its rating for 20 ms, and has opened after 300.
         assert_eq!(verdict(10.0, 0.02, 0.5), Verdict::Holds);
+        // The same heat, at any pace, does no more harm.
+        assert_eq!(verdict(5.0, 0.08, 0.5), Verdict::Holds);
         assert_eq!(verdict(10.0, 0.1, 0.5), Verdict::MayOpen);
         assert_eq!(verdict(10.0, 0.3, 0.5), Verdict::Opens);
         // Beyond ten times, the same heat: 40 times for a sixteenth of the time.

@@ -7,11 +7,13 @@
 //! SI; volts and amperes RMS, or DC.
 
 mod ask_diagnose;
+mod ask_fuse;
 mod ask_glow;
 mod ask_ladder;
 mod ask_lamp;
 mod ask_readings;
 mod ask_steady;
+mod ask_switch_on;
 mod fields;
 mod parts;
 
@@ -72,7 +74,12 @@ fn served(id: &Value, request: &Value) -> Result<String, Refusal> {
         "glow" => Ok(written(id, &ask_glow::answer(fields)?)),
         "readings" => Ok(written(id, &ask_readings::answer(fields)?)),
         "diagnose" => Ok(written(id, &ask_diagnose::answer(fields)?)),
-        _ => Err(ask.refuse("ask must be one of lamp, steady, readings, diagnose, ladder, glow")),
+        "switch-on" => Ok(written(id, &ask_switch_on::answer(fields)?)),
+        "fuse" => Ok(written(id, &ask_fuse::answer(fields)?)),
+        _ => {
+            Err(ask
+                .refuse("ask must be one of lamp, steady, switch-on, readings, diagnose, ladder, glow, fuse"))
+        }
     }
 }
 

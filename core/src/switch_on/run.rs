@@ -179,7 +179,11 @@ impl Run {
         Ok(Progress::Done)
     }
 
-    pub(super) fn complete(mut self) -> Result<SwitchOn, SwitchOnError> {
+    /// Runs to the end in one go.
+    ///
+    /// # Errors
+    /// As [`Self::advance`].
+    pub fn complete(mut self) -> Result<SwitchOn, SwitchOnError> {
         while self.advance(u32::MAX)? != Progress::Done {}
         Ok(self.finish())
     }
