@@ -4,6 +4,9 @@ The same equations as the core's, put together another way: one function for Kir
 maxima for the diodes instead of edges, and a new start of the integration where a converter starts or stops.
 """
 
+import sys
+import time
+
 import numpy as np
 from scipy.integrate import solve_ivp
 
@@ -327,9 +330,9 @@ def simulate(supply, bank, load, seconds, degrees):
     # A converter: integrate up to each change of its state.
     draw = getattr(load, "draw", {})
     state = np.array([AMBIENT] * count + list(load.start) + [0.0, 0.0])
-    pieces, time, due = [], 0.0, None
+    pieces, now, due = [], 0.0, None
     starts = []
-    while time < seconds:
+    while now < seconds:
         events = []
         if "watts" in draw:
             level = draw["stop_volts"] if load.runs else draw["start_volts"]
@@ -340,23 +343,23 @@ def simulate(supply, bank, load, seconds, degrees):
         end = seconds if due is None else min(due, seconds)
         longest = 0.025 / hertz if hertz else seconds / 200
         found = solve_ivp(
-            slopes, (time, end), state, "LSODA", rtol=RTOL, atol=1e-7, max_step=longest, events=events, dense_output=True
+            slopes, (now, end), state, "LSODA", rtol=RTOL, atol=1e-7, max_step=longest, events=events, dense_output=True
         )
         if not found.success:
             raise ArithmeticError(found.message)
         pieces.append(found.sol)
-        time, state = found.t[-1], found.y[:, -1]
-        if due is not None and time >= due:
+        now, state = found.t[-1], found.y[:, -1]
+        if due is not None and now >= due:
             load.runs, due = True, None
-            starts.append(time)
+            starts.append(now)
         elif found.status == 1:
             if load.runs:
                 load.runs = False
             elif draw["restart_seconds"] > 0.0:
-                due = time + draw["restart_seconds"]
+                due = now + draw["restart_seconds"]
             else:
                 load.runs = True
-                starts.append(time)
+                starts.append(now)
 
     def at(time):
         piece = next((piece for piece in pieces if time <= piece.t_max), pieces[-1])
@@ -435,6 +438,13 @@ CASES = [
 
 
 if __name__ == "__main__":
+    if sys.argv[1:2] == ["--time"]:
+        # For the bench: how long one case takes here, seconds.
+        chosen = next(case for case in CASES if case[0] == sys.argv[2])
+        began = time.perf_counter()
+        simulate(*chosen[1:])
+        print(time.perf_counter() - began)
+        sys.exit()
     cases = []
     for note, supply, bank, load, seconds, degrees in CASES:
         found = simulate(supply, bank, load, seconds, degrees)

@@ -1,4 +1,4 @@
-//! The first seconds against scipy's LSODA on the same equations (tests/oracle/switch_on.py).
+//! The first seconds against scipy's LSODA on the same equations (`tests/oracle/switch_on.py`).
 
 use lampladder_core::bank::Bank;
 use lampladder_core::load::{

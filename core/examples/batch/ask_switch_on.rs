@@ -114,7 +114,6 @@ fn one_sample(sample: &Sample, bank: Option<&Bank>) -> OneSample {
 fn refusal(error: &SwitchOnError, asked: &[(Node<'_>, f64)]) -> Refusal {
     let path = match error {
         SwitchOnError::FilamentMelts { group, lamp, .. } => format!("bank[{group}][{lamp}].volts"),
-        SwitchOnError::TooManySteps { .. } => String::from("load"),
         SwitchOnError::Input(input) => match input.field() {
             Field::Hertz => String::from("supply.hertz"),
             Field::SampleSeconds => asked

@@ -93,7 +93,8 @@ impl Body {
 
     fn row(&self, kelvin: f64) -> (&Row, f64) {
         // Far outside, a solver's trial must still see a positive resistance.
-        let place = ((kelvin - AMBIENT_KELVIN) / STEP_KELVIN).clamp(LEAST_PLACE, f64::from(ROWS) + 1.0);
+        let place =
+            ((kelvin - AMBIENT_KELVIN) * (1.0 / STEP_KELVIN)).clamp(LEAST_PLACE, f64::from(ROWS) + 1.0);
         #[expect(
             clippy::cast_possible_truncation,
             clippy::cast_sign_loss,

@@ -2,13 +2,14 @@
 
 use alloc::boxed::Box;
 
-use super::branch::{At, Half, Line, Mode, Offer, siemens};
+use super::branch::{At, Half, Line, Mode, Offer};
 use crate::load::{Draw, PowerSupply};
 
 /// A rectifier with its reservoir; its variable is the reservoir's voltage.
 #[derive(Debug, Clone)]
 pub(super) struct Bridge {
-    pub(super) series_ohms: f64,
+    /// Conductance in series.
+    pub(super) siemens: f64,
     pub(super) diode_volts: f64,
     pub(super) farads: f64,
     pub(super) draw: Draw,
@@ -41,7 +42,7 @@ impl Bridge {
         if sign == 0.0 {
             return Line::default();
         }
-        let siemens = siemens(self.series_ohms);
+        let siemens = self.siemens;
         Line { siemens, source_amps: -siemens * sign * (here.state[self.at] + self.diode_volts) }
     }
 

@@ -156,7 +156,7 @@ impl Builder {
         let omega = self.omega();
         let least_farads = if omega > 0.0 { LEAST_RADIANS / (omega * edge_ohms) } else { 0.0 };
         Bridge {
-            series_ohms,
+            siemens: siemens(series_ohms),
             diode_volts,
             farads: farads.max(least_farads),
             draw,

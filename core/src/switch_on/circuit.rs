@@ -1,6 +1,7 @@
 //! Supply, bank and load as one system of differential equations.
 
 use alloc::vec::Vec;
+use core::cell::Cell;
 use core::f64::consts::{PI, SQRT_2};
 
 use super::body::{Body, Heat, MELTS_KELVIN};
@@ -14,6 +15,7 @@ use crate::supply::Supply;
 #[derive(Debug, Clone)]
 pub(super) struct Circuit {
     source: Source,
+    remembered: Remembered,
     /// Filaments of the bank that differ; their temperatures come first in the state.
     bodies: Vec<Body>,
     groups: Vec<Group>,
@@ -54,11 +56,29 @@ impl Source {
     }
 }
 
+/// The source's last value: within one step it is asked for several times over at the same instants.
+#[derive(Debug, Clone)]
+struct Remembered(Cell<(f64, f64)>);
+
+impl Remembered {
+    fn volts(&self, source: &Source, seconds: f64) -> f64 {
+        let (at, known) = self.0.get();
+        if at == seconds {
+            return known;
+        }
+        let volts = source.volts(seconds);
+        self.0.set((seconds, volts));
+        volts
+    }
+}
+
 /// Equal parallel groups of the bank.
 #[derive(Debug, Clone)]
 struct Group {
     /// How many such groups are in series.
     in_series: f64,
+    /// One over the number of lamps in the first of [`Self::members`].
+    per_count: f64,
     /// Places in [`Circuit::bodies`], and how many such lamps are in parallel.
     members: Vec<(usize, f64)>,
 }
@@ -87,10 +107,10 @@ pub(super) const KELVIN_SIZE: f64 = 100.0;
 
 const MOST_BODIES: usize = Bank::MOST_LAMPS;
 
-/// Ohms of each group and heat of each body.
-struct Hot {
-    heats: [Heat; MOST_BODIES],
-    group_ohms: [f64; MOST_BODIES],
+/// Ohms of each group and heat of each body, with room for `N` of them.
+struct Hot<const N: usize> {
+    heats: [Heat; N],
+    group_ohms: [f64; N],
     ohms: f64,
 }
 
@@ -125,34 +145,57 @@ impl Circuit {
             places.extend_from_slice(&here);
             seen.push(group);
             placed.push(here);
-            groups.push(Group { in_series: 1.0, members });
+            groups.push(Group { in_series: 1.0, per_count: 1.0 / members[0].1, members });
         }
         let scale = alloc::vec![KELVIN_SIZE; bodies.len()];
         let edge_volts = (EDGE * tolerance).max(LEAST_EDGE) * source.crest;
-        (Self { source, bodies, groups, branches: Vec::new(), modes: Vec::new(), scale, edge_volts }, places)
+        let remembered = Remembered(Cell::new((f64::NAN, 0.0)));
+        (
+            Self {
+                source,
+                remembered,
+                bodies,
+                groups,
+                branches: Vec::new(),
+                modes: Vec::new(),
+                scale,
+                edge_volts,
+            },
+            places,
+        )
     }
 
     /// Resistance of source and bank at a state, ohms.
     pub(super) fn loop_ohms(&self, state: &[f64]) -> f64 {
-        self.hot(state).ohms + self.source.ohms
+        let ohms =
+            if self.is_plain() { self.hot::<1>(state).ohms } else { self.hot::<MOST_BODIES>(state).ohms };
+        ohms + self.source.ohms
     }
 
     pub(super) const fn source(&self) -> &Source {
         &self.source
     }
 
-    fn hot(&self, state: &[f64]) -> Hot {
-        let mut hot =
-            Hot { heats: [Heat::default(); MOST_BODIES], group_ohms: [0.0; MOST_BODIES], ohms: 0.0 };
+    #[inline]
+    fn hot<const N: usize>(&self, state: &[f64]) -> Hot<N> {
+        let mut hot = Hot { heats: [Heat::default(); N], group_ohms: [0.0; N], ohms: 0.0 };
         for ((heat, body), kelvin) in hot.heats.iter_mut().zip(&self.bodies).zip(state) {
             *heat = body.at(*kelvin);
         }
         for (ohms, group) in hot.group_ohms.iter_mut().zip(&self.groups) {
-            let siemens: f64 = group.members.iter().map(|&(at, count)| count / hot.heats[at].ohms).sum();
-            *ohms = 1.0 / siemens;
+            *ohms = match group.members.as_slice() {
+                // Without the two divisions that parallel lamps of several kinds need: they are half of the cost.
+                [(at, _)] => hot.heats[*at].ohms * group.per_count,
+                members => 1.0 / members.iter().map(|&(at, count)| count / hot.heats[at].ohms).sum::<f64>(),
+            };
             hot.ohms += group.in_series * *ohms;
         }
         hot
+    }
+
+    /// One lamp, or several alike in groups alike: the usual bank, and worth its own copy of the code.
+    fn is_plain(&self) -> bool {
+        self.bodies.len() <= 1
     }
 
     fn terminals(&self, seconds: f64, state: &[f64], ohms: f64) -> (f64, f64) {
@@ -161,14 +204,21 @@ impl Circuit {
         for branch in &self.branches {
             line += branch.line(here);
         }
-        let volts = self.source.volts(seconds);
+        let volts = self.remembered.volts(&self.source, seconds);
         let share = 1.0 / (1.0 + ohms * line.siemens);
         ((line.siemens * volts + line.source_amps) * share, (volts - ohms * line.source_amps) * share)
     }
 
     /// The loop at one instant.
     pub(super) fn instant(&self, seconds: f64, state: &[f64]) -> Instant {
-        let hot = self.hot(state);
+        if self.is_plain() {
+            self.instant_with(seconds, state, &self.hot::<1>(state))
+        } else {
+            self.instant_with(seconds, state, &self.hot::<MOST_BODIES>(state))
+        }
+    }
+
+    fn instant_with<const N: usize>(&self, seconds: f64, state: &[f64], hot: &Hot<N>) -> Instant {
         let (amps, volts) = self.terminals(seconds, state, hot.ohms + self.source.ohms);
         let mut lost_watts = 0.0;
         for group in &self.groups {
@@ -261,7 +311,20 @@ impl System for Circuit {
     }
 
     fn slope(&self, seconds: f64, state: &[f64], slope: &mut [f64]) {
-        let hot = self.hot(state);
+        if self.is_plain() {
+            self.slope_with(seconds, state, &self.hot::<1>(state), slope);
+        } else {
+            self.slope_with(seconds, state, &self.hot::<MOST_BODIES>(state), slope);
+        }
+    }
+
+    fn scale(&self) -> &[f64] {
+        &self.scale
+    }
+}
+
+impl Circuit {
+    fn slope_with<const N: usize>(&self, seconds: f64, state: &[f64], hot: &Hot<N>, slope: &mut [f64]) {
         let (amps, volts) = self.terminals(seconds, state, hot.ohms + self.source.ohms);
         for (group, ohms) in self.groups.iter().zip(&hot.group_ohms) {
             let square = amps * amps * ohms * ohms;
@@ -274,9 +337,5 @@ impl System for Circuit {
         for branch in &self.branches {
             branch.slopes(volts, here, slope);
         }
-    }
-
-    fn scale(&self) -> &[f64] {
-        &self.scale
     }
 }

@@ -87,7 +87,10 @@ pub(super) struct Stepper {
     jacobian: Vec<f64>,
     matrix: Vec<f64>,
     pivots: Vec<usize>,
-    stages: Vec<f64>,
+    /// The stages of each variable.
+    stages: Vec<[f64; 6]>,
+    now: Vec<f64>,
+    carried: Vec<f64>,
     point: Vec<f64>,
     from: Vec<f64>,
     /// Where the last attempt ended.
@@ -107,7 +110,9 @@ impl Stepper {
             jacobian: zeros(n * n),
             matrix: zeros(n * n),
             pivots: alloc::vec![0; n],
-            stages: zeros(6 * n),
+            stages: alloc::vec![[0.0; 6]; n],
+            now: zeros(n),
+            carried: zeros(n),
             point: zeros(n),
             from: zeros(n),
             to: zeros(n),
@@ -139,7 +144,8 @@ impl Stepper {
     /// is not finite where the step led out of the numbers.
     pub(super) fn attempt(&mut self, system: &impl System, seconds: f64, h: f64, tolerance: f64) -> f64 {
         let n = self.n;
-        let diagonal = 1.0 / (h * GAMMA);
+        let per_step = 1.0 / h;
+        let diagonal = per_step / GAMMA;
         for row in 0..n {
             for column in 0..n {
                 let entry = -self.jacobian[column * n + row];
@@ -149,33 +155,40 @@ impl Stepper {
         if !factorise(&mut self.matrix, &mut self.pivots, n) {
             return f64::NAN;
         }
-        self.to.copy_from_slice(&self.from);
         for stage in 0..6 {
-            let (before, rest) = self.stages.split_at_mut(stage * n);
-            let now = &mut rest[..n];
             if stage == 0 {
-                now.copy_from_slice(&self.base);
+                self.now.copy_from_slice(&self.base);
+                self.carried.fill(0.0);
             } else {
-                self.point.copy_from_slice(&self.from);
-                for (factor, known) in A[stage - 1].iter().zip(before.chunks_exact(n.max(1))) {
-                    add(&mut self.point, *factor, known);
+                let (a, c) = (A[stage - 1], C[stage - 1]);
+                for index in 0..n {
+                    let known = &self.stages[index][..stage];
+                    let (mut moved, mut carried) = (0.0, 0.0);
+                    for ((a, c), known) in a.iter().zip(c).zip(known) {
+                        moved += a * known;
+                        carried += c * known;
+                    }
+                    self.point[index] = self.from[index] + moved;
+                    self.carried[index] = carried * per_step;
                 }
-                system.slope(seconds + WHEN[stage] * h, &self.point, now);
-                for (factor, known) in C[stage - 1].iter().zip(before.chunks_exact(n.max(1))) {
-                    add(now, factor / h, known);
-                }
+                system.slope(seconds + WHEN[stage] * h, &self.point, &mut self.now);
             }
-            add(now, h * DRIFT[stage], &self.drift);
-            solve(&self.matrix, &self.pivots, now);
+            let drift = h * DRIFT[stage];
+            for index in 0..n {
+                self.now[index] += self.carried[index] + drift * self.drift[index];
+            }
+            solve(&self.matrix, &self.pivots, &mut self.now);
+            for (known, now) in self.stages.iter_mut().zip(&self.now) {
+                known[stage] = *now;
+            }
         }
         self.evaluations += 5;
         // Stiffly accurate: the last stage starts from the embedded answer, and its increment is the error.
-        self.to.copy_from_slice(&self.point);
-        let last = &self.stages[5 * n..];
-        add(&mut self.to, 1.0, last);
         let mut worst: f64 = 0.0;
         for index in 0..n {
-            let error = last[index].abs() / (tolerance * system.scale()[index]);
+            let last = self.now[index];
+            self.to[index] = self.point[index] + last;
+            let error = last.abs() / (tolerance * system.scale()[index]);
             // A maximum that keeps NaN.
             worst = if error <= worst { worst } else { error };
         }
@@ -184,11 +197,9 @@ impl Stepper {
 
     /// Makes [`Self::inside`] ready for the last attempt.
     pub(super) fn keep(&mut self) {
-        let n = self.n;
-        for (dense, weights) in self.dense.iter_mut().zip(&DENSE) {
-            dense.fill(0.0);
-            for (weight, stage) in weights.iter().zip(self.stages.chunks_exact(n.max(1))) {
-                add(dense, *weight, stage);
+        for (index, known) in self.stages.iter().enumerate() {
+            for (dense, weights) in self.dense.iter_mut().zip(&DENSE) {
+                dense[index] = weights.iter().zip(known).map(|(weight, stage)| weight * stage).sum();
             }
         }
     }
@@ -203,13 +214,8 @@ impl Stepper {
     }
 }
 
-fn add(to: &mut [f64], factor: f64, what: &[f64]) {
-    for (to, what) in to.iter_mut().zip(what) {
-        *to += factor * what;
-    }
-}
-
-/// Gaussian elimination with row pivots, in place; false where the matrix is singular or not finite.
+/// Gaussian elimination with row pivots, in place, the pivots stored as their reciprocals; false where the matrix is
+/// singular or not finite.
 fn factorise(matrix: &mut [f64], pivots: &mut [usize], n: usize) -> bool {
     for column in 0..n {
         let mut best = column;
@@ -228,8 +234,10 @@ fn factorise(matrix: &mut [f64], pivots: &mut [usize], n: usize) -> bool {
                 matrix.swap(best * n + entry, column * n + entry);
             }
         }
+        let reciprocal = 1.0 / pivot;
+        matrix[column * n + column] = reciprocal;
         for row in column + 1..n {
-            let factor = matrix[row * n + column] / pivot;
+            let factor = matrix[row * n + column] * reciprocal;
             matrix[row * n + column] = factor;
             if factor != 0.0 {
                 for entry in column + 1..n {
@@ -255,7 +263,7 @@ fn solve(matrix: &[f64], pivots: &[usize], right: &mut [f64]) {
         for column in row + 1..n {
             right[row] -= matrix[row * n + column] * right[column];
         }
-        right[row] /= matrix[row * n + row];
+        right[row] *= matrix[row * n + row];
     }
 }
 
