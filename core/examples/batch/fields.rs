@@ -46,10 +46,6 @@ impl<'a> Node<'a> {
         self.value.as_f64().ok_or_else(|| self.expected("a number"))
     }
 
-    pub(crate) fn truth(&self) -> Result<bool, Refusal> {
-        self.value.as_bool().ok_or_else(|| self.expected("true or false"))
-    }
-
     pub(crate) fn text(&self) -> Result<&'a str, Refusal> {
         self.value.as_str().ok_or_else(|| self.expected("a text"))
     }
