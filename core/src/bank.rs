@@ -136,7 +136,7 @@ impl Bank {
 
     /// The bank with its first filament at a logarithm of the rise above ambient.
     pub fn at_ln_rise(&self, ln_rise: f64) -> BankPoint {
-        Walk::new(self).to(ln_rise)
+        Walk::new(self).to(ln_rise).point
     }
 
     /// The logarithm of the lead's rise at a current, amperes above 0.
@@ -167,12 +167,12 @@ impl Bank {
         let walk = Walk::new(self);
         let span = Filament::ln_rise_span();
         let found = crate::roots::decreasing_from(
-            |x| libm::log(volts / walk.to(x).volts),
+            |x| libm::log(volts / walk.to(x).point.volts),
             span,
             self.guess_ln_rise(volts),
             crate::roots::Tolerance::FINE,
         );
-        walk.to(found.map_or(span.1, |root| root.x))
+        walk.to(found.map_or(span.1, |root| root.x)).point
     }
 
     /// Every lamp's state at a current through the chain, in the order of [`Self::groups`].

@@ -47,7 +47,7 @@ pub struct Equilibrium {
     pub lamps: Vec<Vec<LampState>>,
     /// Logarithm of wanted over actual current: what the search left over.
     pub residual: f64,
-    /// Evaluations of the bank's curve that it took.
+    /// Evaluations of the bank's curve that the search took; the states of the lamps are one more.
     pub evaluations: u32,
 }
 
@@ -137,6 +137,9 @@ const NUDGE: f64 = 1e-6;
 /// How closely the bank is settled for each slip that a motor is tried at: the slip found is as good, and at it the
 /// bank is settled again, finely.
 const SETTLED: Tolerance = Tolerance { x: 1e-10, residual: 1e-8 };
+
+/// More Newton steps than crossing the whole span of temperature by clamped ones takes.
+const MOST_STEPS: u32 = 60;
 
 /// Least slip of a motor that is looked at.
 const LEAST_SLIP: f64 = 1e-6;
@@ -235,7 +238,7 @@ impl Circuit<'_> {
     }
 
     fn excess(&self, ln_rise: f64) -> f64 {
-        self.load.excess(&self.feed(&self.walk.to(ln_rise)))
+        self.load.excess(&self.feed(&self.walk.to(ln_rise).point))
     }
 
     fn one_root(&self) -> Result<Root, SteadyError> {
@@ -243,8 +246,41 @@ impl Circuit<'_> {
     }
 
     fn one_root_from(&self, guess: f64, tolerance: Tolerance) -> Result<Root, SteadyError> {
+        if let Some(impedance) = self.load.linear() {
+            return self.linear_root(impedance, guess, tolerance);
+        }
         roots::decreasing_from(|x| self.excess(x), Filament::ln_rise_span(), guess, tolerance)
             .ok_or_else(|| self.melts(Filament::ln_rise_span().1))
+    }
+
+    /// Newton's method before a linear load: with the bank's own slopes at hand, three or four evaluations. In these
+    /// logarithms the curve is nearly straight, so that a clamped step cannot run away.
+    fn linear_root(
+        &self,
+        (ohms, reactance): (f64, f64),
+        guess: f64,
+        tolerance: Tolerance,
+    ) -> Result<Root, SteadyError> {
+        let (low, high) = Filament::ln_rise_span();
+        let mut x = guess.clamp(low, high);
+        for evaluations in 1..=MOST_STEPS {
+            let step = self.walk.to(x);
+            let bank_ohms = step.point.ohms();
+            let in_phase = bank_ohms + self.supply.ohms() + ohms;
+            let square = in_phase * in_phase + reactance * reactance;
+            let residual = libm::log(self.supply.volts() / (step.point.amps * libm::sqrt(square)));
+            let slope =
+                step.amps_slope + in_phase * bank_ohms * (step.volts_slope - step.amps_slope) / square;
+            let next = (x + (residual / slope).clamp(-3.0, 3.0)).clamp(low, high);
+            if residual.abs() <= tolerance.residual || (next - x).abs() <= tolerance.x && next < high {
+                return Ok(Root { x, residual, evaluations });
+            }
+            if next == x {
+                break;
+            }
+            x = next;
+        }
+        Err(self.melts(high))
     }
 
     /// Every root from the least possible current up to what a dead short would take.
@@ -270,7 +306,7 @@ impl Circuit<'_> {
         };
         let slowing = |ln_slip: f64| {
             let slip = libm::exp(ln_slip);
-            settle(slip).map_or(f64::NAN, |root| motor.slowing(slip, self.walk.to(root.x).amps))
+            settle(slip).map_or(f64::NAN, |root| motor.slowing(slip, self.walk.to(root.x).point.amps))
         };
         let roots = scan::all(slowing, (libm::log(LEAST_SLIP), 0.0), SAMPLES);
         let mut points = Vec::new();
@@ -299,7 +335,7 @@ impl Circuit<'_> {
     }
 
     fn point_at(&self, root: Root) -> Result<Equilibrium, SteadyError> {
-        let bank = self.walk.to(root.x);
+        let bank = self.walk.to(root.x).point;
         let lamps = self.walk.lamps();
         if let Some(error) = melting(&lamps) {
             return Err(error);

@@ -81,6 +81,18 @@ enum Goal {
 struct Stand {
     volts: f64,
     amps: f64,
+    /// Amperes that one more in ln volts brings.
+    gain: f64,
+}
+
+/// A point of the walk, and how steep the curve is there.
+#[derive(Debug, Clone, Copy)]
+pub(crate) struct Step {
+    pub(crate) point: BankPoint,
+    /// Slope of ln volts against the logarithm of the leading filament's rise.
+    pub(crate) volts_slope: f64,
+    /// Slope of ln amperes against it.
+    pub(crate) amps_slope: f64,
 }
 
 impl Group {
@@ -119,7 +131,8 @@ impl Group {
             steps += 1;
             if largest < CONVERGED || steps == MOST_STEPS {
                 // What the last step changed, to first order: its square is below the last digits.
-                return Stand { volts: libm::exp(ln_volts), amps: total + gain * ln_volts - weighted };
+                let amps = total + gain * ln_volts - weighted;
+                return Stand { volts: libm::exp(ln_volts), amps, gain };
             }
         }
     }
@@ -154,7 +167,7 @@ impl<'a> Walk<'a> {
 
     /// To where the leading filament is at a logarithm of the rise above ambient. Volts and amperes both grow with it,
     /// so it is the one variable in which to search. A bank of equal lamps costs one evaluation.
-    pub(crate) fn to(&self, ln_rise: f64) -> BankPoint {
+    pub(crate) fn to(&self, ln_rise: f64) -> Step {
         let (low, high) = Filament::ln_rise_span();
         let mut rises = self.rises.get();
         let moved = ln_rise - rises[0];
@@ -166,19 +179,27 @@ impl<'a> Walk<'a> {
         let first = &groups[0];
         let lead: FilamentPoint = first.kinds[0].filament.at_ln_rise(ln_rise);
         let mut amps = first.kinds[0].count * lead.amps();
+        // d I / d ln rise of the first group, all of whose filaments have the lead's volts.
+        let mut growth = amps * lead.amps_slope();
         let (own, others) = rises.split_at_mut(first.kinds.len());
         if first.kinds.len() > 1 {
             let ln_volts = 0.5 * libm::log(lead.watts * lead.ohms);
-            amps += Group::settle(&first.kinds[1..], Goal::LnVolts(ln_volts), &mut own[1..]).amps;
+            let beside = Group::settle(&first.kinds[1..], Goal::LnVolts(ln_volts), &mut own[1..]);
+            amps += beside.amps;
+            growth += beside.gain * lead.volts_slope();
         }
-        let volts = first.times * lead.volts() + settle_chain(&groups[1..], amps, others);
-        self.arrive(volts, amps, rises)
+        let amps_slope = growth / amps;
+        let first_volts = first.times * lead.volts();
+        let (other_volts, other_growth) = settle_chain(&groups[1..], amps, others);
+        let volts = first_volts + other_volts;
+        let volts_slope = (first_volts * lead.volts_slope() + other_growth * amps_slope) / volts;
+        Step { point: self.arrive(volts, amps, rises), volts_slope, amps_slope }
     }
 
     /// To a current through the chain, amperes, above 0.
     pub(crate) fn to_amps(&self, amps: f64) -> BankPoint {
         let mut rises = self.rises.get();
-        let volts = settle_chain(&self.bank.chain.groups, amps, &mut rises);
+        let (volts, _) = settle_chain(&self.bank.chain.groups, amps, &mut rises);
         self.arrive(volts, amps, rises)
     }
 
@@ -207,14 +228,16 @@ impl<'a> Walk<'a> {
     }
 }
 
-/// Brings groups in series to a current; their volts together.
-fn settle_chain(groups: &[Group], amps: f64, rises: &mut [f64]) -> f64 {
+/// Brings groups in series to a current; their volts together, and how many more volts one more in ln amperes takes.
+fn settle_chain(groups: &[Group], amps: f64, rises: &mut [f64]) -> (f64, f64) {
     let mut rest = rises;
-    let mut volts = 0.0;
+    let (mut volts, mut growth) = (0.0, 0.0);
     for group in groups {
         let (own, others) = rest.split_at_mut(group.kinds.len());
-        volts += group.times * Group::settle(&group.kinds, Goal::Amps(amps), own).volts;
+        let stand = Group::settle(&group.kinds, Goal::Amps(amps), own);
+        volts += group.times * stand.volts;
+        growth += group.times * stand.volts * amps / stand.gain;
         rest = others;
     }
-    volts
+    (volts, growth)
 }

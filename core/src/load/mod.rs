@@ -174,6 +174,15 @@ impl Load {
         }
     }
 
+    /// Resistance and reactance of a load whose current is in proportion to its voltage.
+    pub(crate) const fn linear(&self) -> Option<(f64, f64)> {
+        match self {
+            Self::Short => Some((0.0, 0.0)),
+            Self::Impedance(impedance) => Some((impedance.ohms(), impedance.reactance_ohms())),
+            _ => None,
+        }
+    }
+
     /// What the terminals show where [`Self::excess`] vanishes.
     pub(crate) fn terminal(&self, feed: &Feed) -> Terminal {
         match self {
