@@ -104,13 +104,14 @@ impl Bank {
             return self.at_volts(0.0);
         }
         let span = Filament::ln_rise_span();
+        let walk = Walk::new(self);
         let found = crate::roots::decreasing_from(
-            |x| libm::log(rise / (self.at_ln_rise(x).hottest_kelvin - AMBIENT_KELVIN)),
+            |x| libm::log(rise / (walk.to(x).hottest_kelvin - AMBIENT_KELVIN)),
             span,
             libm::log(rise).min(span.1),
             crate::roots::Tolerance { x: 1e-10, residual: 1e-10 },
         );
-        self.at_ln_rise(found.map_or(span.1, |root| root.x))
+        walk.to(found.map_or(span.1, |root| root.x))
     }
 
     /// Volts at which the first group to reach its rating does so, when the bank stands alone: the highest
@@ -136,7 +137,7 @@ impl Bank {
 
     /// The bank with its first filament at a logarithm of the rise above ambient.
     pub fn at_ln_rise(&self, ln_rise: f64) -> BankPoint {
-        Walk::new(self).to(ln_rise).point
+        Walk::new(self).to(ln_rise)
     }
 
     /// The logarithm of the lead's rise at a current, amperes above 0.
@@ -167,12 +168,12 @@ impl Bank {
         let walk = Walk::new(self);
         let span = Filament::ln_rise_span();
         let found = crate::roots::decreasing_from(
-            |x| libm::log(volts / walk.to(x).point.volts),
+            |x| libm::log(volts / walk.to(x).volts),
             span,
             self.guess_ln_rise(volts),
             crate::roots::Tolerance::FINE,
         );
-        walk.to(found.map_or(span.1, |root| root.x)).point
+        walk.to(found.map_or(span.1, |root| root.x))
     }
 
     /// Every lamp's state at a current through the chain, in the order of [`Self::groups`].

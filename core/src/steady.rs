@@ -238,7 +238,7 @@ impl Circuit<'_> {
     }
 
     fn excess(&self, ln_rise: f64) -> f64 {
-        self.load.excess(&self.feed(&self.walk.to(ln_rise).point))
+        self.load.excess(&self.feed(&self.walk.to(ln_rise)))
     }
 
     fn one_root(&self) -> Result<Root, SteadyError> {
@@ -264,7 +264,7 @@ impl Circuit<'_> {
         let (low, high) = Filament::ln_rise_span();
         let mut x = guess.clamp(low, high);
         for evaluations in 1..=MOST_STEPS {
-            let step = self.walk.to(x);
+            let step = self.walk.step_to(x);
             let bank_ohms = step.point.ohms();
             let in_phase = bank_ohms + self.supply.ohms() + ohms;
             let square = in_phase * in_phase + reactance * reactance;
@@ -306,7 +306,7 @@ impl Circuit<'_> {
         };
         let slowing = |ln_slip: f64| {
             let slip = libm::exp(ln_slip);
-            settle(slip).map_or(f64::NAN, |root| motor.slowing(slip, self.walk.to(root.x).point.amps))
+            settle(slip).map_or(f64::NAN, |root| motor.slowing(slip, self.walk.to(root.x).amps))
         };
         let roots = scan::all(slowing, (libm::log(LEAST_SLIP), 0.0), SAMPLES);
         let mut points = Vec::new();
@@ -335,7 +335,7 @@ impl Circuit<'_> {
     }
 
     fn point_at(&self, root: Root) -> Result<Equilibrium, SteadyError> {
-        let bank = self.walk.to(root.x).point;
+        let bank = self.walk.to(root.x);
         let lamps = self.walk.lamps();
         if let Some(error) = melting(&lamps) {
             return Err(error);

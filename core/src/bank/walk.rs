@@ -167,7 +167,12 @@ impl<'a> Walk<'a> {
 
     /// To where the leading filament is at a logarithm of the rise above ambient. Volts and amperes both grow with it,
     /// so it is the one variable in which to search. A bank of equal lamps costs one evaluation.
-    pub(crate) fn to(&self, ln_rise: f64) -> Step {
+    pub(crate) fn to(&self, ln_rise: f64) -> BankPoint {
+        self.step_to(ln_rise).point
+    }
+
+    /// The same, with the slopes there.
+    pub(crate) fn step_to(&self, ln_rise: f64) -> Step {
         let (low, high) = Filament::ln_rise_span();
         let mut rises = self.rises.get();
         let moved = ln_rise - rises[0];
