@@ -63,13 +63,14 @@ pub fn load_lines(
         for point in solved.equilibria {
             let at = (point.bank_volts, point.amps);
             match lines.iter_mut().find(|line| line.mode == point.mode) {
-                Some(line) => line.points.push(at),
+                Some(line) => {
+                    // In order as they come, which costs the page less than sorting.
+                    let place = line.points.partition_point(|known| known.0 < at.0);
+                    line.points.insert(place, at);
+                }
                 None => lines.push(LoadLine { mode: point.mode, points: alloc::vec![at] }),
             }
         }
-    }
-    for line in &mut lines {
-        line.points.sort_by(|a, b| a.0.total_cmp(&b.0));
     }
     Ok(lines)
 }

@@ -32,6 +32,7 @@ pub mod curve;
 mod defaults;
 pub mod detail;
 pub mod diagnosis;
+mod digits;
 pub mod error;
 pub mod expect;
 pub mod family;

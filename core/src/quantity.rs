@@ -3,6 +3,7 @@
 use alloc::string::String;
 use core::fmt;
 
+use crate::digits;
 use crate::error::Field;
 
 /// Why a typed text is no number of the wanted kind.
@@ -76,29 +77,19 @@ pub fn parse(text: &str, field: Field) -> Result<f64, QuantityError> {
         return Err(not_a_number);
     }
     let (number, tail) = split_number(text);
-    let (mut exponent, rest) = strip_unit(tail, field).ok_or(QuantityError::WrongUnit { field })?;
-    let mut digits = plain_digits(&number).ok_or(not_a_number)?;
+    let (exponent, rest) = strip_unit(tail, field).ok_or(QuantityError::WrongUnit { field })?;
+    let mut number = plain_digits(&number).ok_or(not_a_number)?;
     if !rest.is_empty() {
         // A prefix in place of the decimal point: 1k2, 4R7.
-        let whole = !digits.contains('.') && rest.bytes().all(|byte| byte.is_ascii_digit());
-        if !whole || digits.contains(['e', 'E']) {
-            return Err(if digits.is_empty() { not_a_number } else { QuantityError::WrongUnit { field } });
+        let whole = !number.contains('.') && rest.bytes().all(|byte| byte.is_ascii_digit());
+        if !whole || number.contains(['e', 'E']) {
+            return Err(if number.is_empty() { not_a_number } else { QuantityError::WrongUnit { field } });
         }
-        digits.push('.');
-        digits.push_str(rest);
+        number.push('.');
+        number.push_str(rest);
     }
-    // Let the correctly rounding parser apply the prefix: 160 mA must be the very number 0.16.
-    if exponent != 0 {
-        if let Some(at) = digits.find(['e', 'E']) {
-            exponent += digits[at + 1..].parse::<i32>().map_err(|_| not_a_number)?;
-            digits.truncate(at);
-        }
-        digits = alloc::format!("{digits}e{exponent}");
-    }
-    match digits.parse::<f64>() {
-        Ok(value) if value.is_finite() => Ok(value),
-        _ => Err(not_a_number),
-    }
+    // The prefix goes into the one rounding: 160 mA must be the very number 0.16.
+    digits::read(&number, exponent).ok_or(not_a_number)
 }
 
 /// The leading part that can belong to a number, and what follows it.

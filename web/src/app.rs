@@ -4,20 +4,19 @@ use yew::{
     Html, Properties, create_portal, function_component, html, use_effect_with, use_mut_ref, use_reducer,
 };
 
-use crate::bench::{Bench, BenchHandle, Msg, Note, Tab};
+use crate::bench::{Bench, BenchHandle, Msg, Note, Stage, Tab};
 use crate::browser::window::{Listener, NextFrame};
 use crate::browser::{cautions, fragment, input, storage, theme};
-use crate::panels::advice::AdvicePanel;
-use crate::panels::circuit::Circuit;
-use crate::panels::comparison::Comparison;
-use crate::panels::curve::CurvePanel;
-use crate::panels::details::Details;
-use crate::panels::header::{CAUTIONS_BUTTON, Header};
-use crate::panels::nav::Nav;
-use crate::panels::notes::Notes;
+use crate::panels::advice::advice_panel;
+use crate::panels::circuit::circuit;
+use crate::panels::comparison::comparison;
+use crate::panels::curve::curve;
+use crate::panels::details::details;
+use crate::panels::frame::{CAUTIONS_BUTTON, header, notes, tabs};
 use crate::panels::send;
 use crate::panels::sheet::Sheet;
-use crate::panels::voltage_bar::VoltageBar;
+use crate::panels::voltage_bar::voltage_bar;
+use crate::parts::el::{button, el, several};
 use lampladder_core::link;
 
 /// What the page starts with.
@@ -68,72 +67,58 @@ pub fn App(props: &AppProps) -> Html {
         });
     }
     use_effect_with(bench.theme, |light| theme::apply(*light));
-    use_effect_with((bench.cautions, bench.accepted), |(shown, accepted)| {
-        if *accepted {
-            storage::keep_for_visit(storage::ACCEPTED);
-        }
-        cautions::show(*shown);
-        if *shown && *accepted {
-            input::focus(cautions::TITLE);
-        } else if !*shown {
-            input::focus(CAUTIONS_BUTTON);
+    let before = use_mut_ref(|| None::<Stage>);
+    use_effect_with(bench.stage, move |stage| {
+        cautions::show(*stage != Stage::Bench);
+        match stage {
+            // The page has just been opened: the keyboard is where the browser has put it.
+            _ if before.replace(Some(*stage)).is_none() => {}
+            Stage::Unread => {}
+            Stage::Reread => input::focus(cautions::TITLE),
+            Stage::Bench => {
+                storage::keep_for_visit(storage::ACCEPTED);
+                input::focus(CAUTIONS_BUTTON);
+            }
         }
     });
-    html! {
-        <>
-            { accept(&bench) }
-            { page(&bench) }
-        </>
-    }
+    several([accept(&bench), page(&bench)])
 }
 
 /// The button under the cautions, which stand outside of the program's own element.
 fn accept(bench: &BenchHandle) -> Html {
     let words = bench.words();
     let Some(foot) = cautions::element(cautions::FOOT) else { return Html::default() };
-    create_portal(
-        html! {
-            <button type="button" class={if bench.accepted { "accept is-back" } else { "accept" }} data-testid="accept" onclick={send(bench, Msg::Accept)}>
-                { if bench.accepted { words.back } else { words.accept } }
-            </button>
-        },
-        foot,
-    )
+    let (class, text) = match bench.stage {
+        Stage::Unread => ("accept", words.accept),
+        Stage::Reread | Stage::Bench => ("accept is-back", words.back),
+    };
+    create_portal(button(class, "accept", send(bench, Msg::Accept)).text(text).html(), foot)
 }
 
 fn page(bench: &BenchHandle) -> Html {
     // Nothing but the cautions before they are accepted.
-    if !bench.accepted {
+    if bench.stage == Stage::Unread {
         return Html::default();
     }
-    let class = match bench.tab {
-        Tab::Expect => "page on-expect",
-        Tab::Curve => "page on-curve",
+    let (class, panel) = match bench.tab {
+        Tab::Expect => ("page on-expect", details(bench)),
+        Tab::Curve => ("page on-curve", curve(bench)),
     };
-    html! {
-        <div {class}>
-            <Header bench={bench.clone()} />
-            <main class="bench">
-                <div class="answer-side">
-                    <Notes bench={bench.clone()} />
-                    <div class={if bench.is_stale() { "result is-stale" } else { "result" }}>
-                        <Circuit bench={bench.clone()} />
-                        <VoltageBar bench={bench.clone()} />
-                        <Comparison bench={bench.clone()} />
-                    </div>
-                    <AdvicePanel bench={bench.clone()} />
-                </div>
-                <div class="panel-side">
-                    <Sheet bench={bench.clone()} />
-                    <div class="panel">
-                        { match bench.tab {
-                            Tab::Expect => html! { <Details bench={bench.clone()} /> },
-                            Tab::Curve => html! { <CurvePanel bench={bench.clone()} /> },
-                        } }
-                    </div>
-                </div>
-            </main>
-            <Nav bench={bench.clone()} />
-        </div>
-    }
+    let result = el("div")
+        .class(if bench.is_stale() { "result is-stale" } else { "result" })
+        .with(circuit(bench))
+        .maybe(voltage_bar(bench))
+        .with(comparison(bench));
+    let answer_side =
+        el("div").class("answer-side").with(notes(bench)).with(result).with(advice_panel(bench));
+    let panel_side = el("div")
+        .class("panel-side")
+        .node(html! { <Sheet bench={bench.clone()} /> })
+        .with(el("div").class("panel").with(panel));
+    el("div")
+        .class(class)
+        .with(header(bench))
+        .with(el("main").class("bench").with(answer_side).with(panel_side))
+        .with(tabs(bench))
+        .html()
 }

@@ -42,6 +42,7 @@ pub mod format;
 pub mod panels;
 pub mod parts;
 mod reading;
+mod reduce;
 pub mod start;
 pub mod step;
 pub mod words;

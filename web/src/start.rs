@@ -3,7 +3,7 @@
 use lampladder_core::link::{self, LinkError};
 use lampladder_core::setup::Setup;
 
-use crate::bench::{Bench, Note};
+use crate::bench::{Bench, Note, Stage};
 use crate::browser::{fragment, storage, theme};
 
 /// The set-up that was kept on this phone, if there is one that can be read.
@@ -16,8 +16,7 @@ pub fn bench() -> Option<Bench> {
     let mut bench = opened(fragment::read().as_deref(), storage::read(storage::SETUP).as_deref())?;
     bench.theme = theme::kept();
     if storage::has_for_visit(storage::ACCEPTED) {
-        bench.accepted = true;
-        bench.cautions = false;
+        bench.stage = Stage::Bench;
     }
     Some(bench)
 }

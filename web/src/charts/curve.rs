@@ -3,22 +3,22 @@
 use lampladder_core::condition::Condition;
 use lampladder_core::curve::{bank_amps, load_lines};
 use lampladder_core::setup::Setup;
-use plotters::prelude::*;
-use plotters::style::text_anchor::{HPos, Pos, VPos};
+use plotters::drawing::DrawingAreaErrorKind;
+use plotters::element::{Circle, PathElement, Polygon};
+use plotters::style::{Color, ShapeStyle};
+use plotters_backend::DrawingBackend;
 use plotters_canvas::CanvasBackend;
 use web_sys::HtmlCanvasElement;
 
+use super::frame::{Frame, Label};
 use super::ink::Ink;
 use crate::answers::Answers;
-use crate::browser::window::pixel_ratio;
 use crate::words::Words;
 
 /// Points along the bank's curve.
 const STEPS: u16 = 48;
 /// Points along the equipment's.
 const LOAD_POINTS: u16 = 56;
-/// Height of the chart, CSS pixels.
-const HEIGHT: u32 = 280;
 
 type Line = Vec<(f64, f64)>;
 
@@ -110,71 +110,67 @@ type Failure = DrawingAreaErrorKind<<CanvasBackend as DrawingBackend>::ErrorType
 /// # Errors
 /// A canvas that cannot be drawn on.
 pub fn draw(canvas: &HtmlCanvasElement, curves: &Curves, ink: &Ink, words: &Words) -> Result<(), Failure> {
-    // The backend knows nothing of fine screens: make the canvas that much larger and everything on it too.
-    let ratio = pixel_ratio().max(2.0);
-    let width = u32::try_from(canvas.client_width()).unwrap_or(0).max(200);
-    #[expect(
-        clippy::cast_possible_truncation,
-        clippy::cast_sign_loss,
-        reason = "a few thousand pixels at most"
-    )]
-    let scaled = |pixels: f64| (pixels * ratio).round() as u32;
-    canvas.set_width(scaled(f64::from(width)));
-    canvas.set_height(scaled(f64::from(HEIGHT)));
-    let Some(backend) = CanvasBackend::with_canvas_object(canvas.clone()) else { return Ok(()) };
-    let root = backend.into_drawing_area();
-    root.fill(&ink.ground)?;
-    let font = |pixels: f64| ("system-ui, sans-serif", scaled(pixels));
-    let mut chart = ChartBuilder::on(&root)
-        .margin(scaled(10.0))
-        .margin_right(scaled(14.0))
-        .x_label_area_size(scaled(38.0))
-        .y_label_area_size(scaled(52.0))
-        .build_cartesian_2d(0.0..curves.volts, 0.0..curves.amps)?;
+    let Some((frame, area)) = Frame::on(canvas, (curves.volts, curves.amps)) else { return Ok(()) };
+    area.fill(&ink.ground)?;
+    let path = |line: &Line, style: ShapeStyle| {
+        area.draw(&PathElement::new(line.iter().map(|at| frame.at(*at)).collect::<Vec<_>>(), style))
+    };
     let numerals = words.numerals;
-    chart
-        .configure_mesh()
-        .disable_x_mesh()
-        .x_labels(5)
-        .y_labels(5)
-        .bold_line_style(ink.line.stroke_width(scaled(0.6)))
-        .light_line_style(ink.ground)
-        .axis_style(ink.dim.stroke_width(scaled(1.0)))
-        .label_style(font(12.0).into_font().color(&ink.ink))
-        .axis_desc_style(font(12.0).into_font().color(&ink.dim))
-        .x_desc(format!("{}, V", words.table.bank_volts))
-        .y_desc(format!("{}, A", words.table.amps))
-        .x_label_formatter(&|volts| numerals.plain(*volts))
-        .y_label_formatter(&|amps| numerals.plain(*amps))
-        .draw()?;
-    let band: Line = curves.low.iter().chain(curves.high.iter().rev()).copied().collect();
-    chart.draw_series([Polygon::new(band, ink.brass.mix(0.28))])?;
+    let label = Label { colour: ink.ink, pixels: 12.0, align: "right", baseline: "middle" };
+    for amps in ticks(curves.amps) {
+        path(&vec![(0.0, amps), (curves.volts, amps)], ink.line.stroke_width(frame.pixels(0.8)))?;
+        frame.write(&numerals.plain(amps), (0.0, amps), (-7.0, 0.0), label);
+    }
+    for volts in ticks(curves.volts) {
+        let label = Label { align: "center", baseline: "top", ..label };
+        path(&vec![(volts, 0.0), (volts, curves.amps)], ink.line.stroke_width(frame.pixels(0.8)))?;
+        frame.write(&numerals.plain(volts), (volts, 0.0), (0.0, 7.0), label);
+    }
+    let axes = vec![(0.0, curves.amps), (0.0, 0.0), (curves.volts, 0.0)];
+    path(&axes, ink.dim.stroke_width(frame.pixels(1.2)))?;
+    let named = Label { colour: ink.dim, align: "left", baseline: "top", ..label };
+    frame.write(&format!("{}, A", words.table.amps), (0.0, curves.amps), (8.0, -16.0), named);
+    let under = Label { align: "right", ..named };
+    frame.write(&format!("{}, V", words.table.bank_volts), (curves.volts, 0.0), (0.0, 24.0), under);
+
+    let band = curves.low.iter().chain(curves.high.iter().rev()).map(|at| frame.at(*at));
+    area.draw(&Polygon::new(band.collect::<Vec<_>>(), ink.brass.mix(0.28)))?;
     for (condition, line) in &curves.loads {
         let width = if *condition == Condition::Healthy { 2.0 } else { 1.2 };
-        chart.draw_series(LineSeries::new(line.iter().copied(), ink.ink.stroke_width(scaled(width))))?;
+        path(line, ink.ink.stroke_width(frame.pixels(width)))?;
     }
-    chart.draw_series(LineSeries::new(curves.bank.iter().copied(), ink.brass.stroke_width(scaled(3.0))))?;
+    path(&curves.bank, ink.brass.stroke_width(frame.pixels(3.0)))?;
     for (condition, at) in &curves.marks {
-        let size = scaled(5.5);
-        let left = at.0 > curves.volts * 0.6;
+        let (centre, size) = (frame.at(*at), frame.pixels(5.5));
+        area.draw(&Circle::new(centre, size, ink.ground.filled()))?;
+        area.draw(&Circle::new(centre, size, ink.ink.stroke_width(frame.pixels(2.2))))?;
         // Right of a mark lies the open wedge between the two curves; at the edge, the one above the bank's.
-        let anchor =
-            if left { Pos::new(HPos::Right, VPos::Bottom) } else { Pos::new(HPos::Left, VPos::Center) };
-        let style = font(13.0).into_font().color(&ink.ink).pos(anchor);
-        #[expect(clippy::cast_possible_wrap, reason = "a few pixels")]
-        let (dx, dy) =
-            if left { (-(scaled(8.0) as i32), -(scaled(8.0) as i32)) } else { (scaled(12.0) as i32, 0) };
-        chart.draw_series([EmptyElement::at(*at)
-            + Circle::new((0, 0), size, ink.ground.filled())
-            + Circle::new((0, 0), size, ink.ink.stroke_width(scaled(2.2)))
-            + Text::new((words.condition)(*condition).to_owned(), (dx, dy), style)])?;
+        let (align, beside) =
+            if at.0 > curves.volts * 0.6 { ("right", (-8.0, -14.0)) } else { ("left", (12.0, 0.0)) };
+        frame.write((words.condition)(*condition), *at, beside, Label { align, pixels: 13.0, ..label });
     }
-    root.present()
+    area.present()
+}
+
+/// Round numbers along an axis, about five of them, without zero.
+fn ticks(most: f64) -> Vec<f64> {
+    let rough = most / 5.0;
+    let decade = 10f64.powf(rough.log10().floor());
+    let step = [1.0, 2.0, 5.0, 10.0].map(|times| times * decade).into_iter().find(|step| *step >= rough);
+    let step = step.unwrap_or(most);
+    (1..=9).map(|count| f64::from(count) * step).take_while(|tick| *tick <= most).collect()
 }
 
 #[cfg(test)]
 mod tests {
     use super::*;
+
+    #[test]
+    fn ticks_are_round() {
+        assert_eq!(ticks(239.2), [50.0, 100.0, 150.0, 200.0]);
+        assert_eq!(ticks(0.31).len(), 3);
+        assert!(ticks(f64::NAN).is_empty());
+    }
 
     #[test]
     fn lines_end_at_the_frame() {

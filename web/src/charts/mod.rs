@@ -2,4 +2,5 @@
 //! in a table.
 
 pub mod curve;
+mod frame;
 pub mod ink;

@@ -3,50 +3,42 @@
 use lampladder_core::band::Band;
 use lampladder_core::condition::Condition;
 use lampladder_core::family::{Unsuitable, Warning};
-use yew::{Html, function_component, html};
 
-use super::PanelProps;
 use crate::advice::{Advice, Caution, advice, cautions};
 use crate::bench::Bench;
 use crate::describe;
+use crate::parts::el::{El, el};
 
 /// The sentence.
-#[function_component]
-pub fn AdvicePanel(props: &PanelProps) -> Html {
-    let bench = &*props.bench;
+pub fn advice_panel(bench: &Bench) -> El {
     let words = bench.words();
     let (main, rest) = sentence(bench);
-    html! {
-        <section class="advice" aria-live="polite" data-testid="advice">
-            if bench.is_stale() {
-                <p class="stale" data-testid="stale-note">{ (words.stale)(&wrong_fields(bench)) }</p>
-            }
-            { warnings(bench) }
-            { for cautions(&bench.setup, &bench.answers).into_iter().map(|caution| html! {
-                <p class="caution" data-testid="lamp-caution">{ caution_text(bench, caution) }</p>
-            }) }
-            <p><b>{ main }</b>{ " " }{ rest }</p>
-            <p class="assumes" data-testid="assumes">{ (words.assumes)(&describe::assumed(&bench.setup, words)) }</p>
-        </section>
-    }
-}
-
-/// What must be said first about this kind of equipment.
-fn warnings(bench: &Bench) -> Html {
-    let words = bench.words();
-    let family = bench.setup.plate.family();
+    let line = |class, testid, text: String| el("p").class(class).test(testid).text(text);
+    let stale = bench.is_stale().then(|| line("stale", "stale-note", (words.stale)(&wrong_fields(bench))));
+    let overdriven = cautions(&bench.setup, &bench.answers)
+        .into_iter()
+        .map(|caution| line("caution", "lamp-caution", caution_text(bench, caution)));
+    let plate = &bench.setup.plate;
+    let too_powerful = plate.is_too_powerful().then(|| {
+        line("caution", "too-powerful", (words.refuse_equipment)(Unsuitable::TooPowerful).to_owned())
+    });
     // The others are in the equipment's editor, or are the sentence itself when they come true.
-    let urgent = |warning: &&Warning| matches!(warning, Warning::LiveChassis | Warning::TubeVoltage);
-    html! {
-        <>
-            if bench.setup.plate.is_too_powerful() {
-                <p class="caution" data-testid="too-powerful">{ (words.refuse_equipment)(Unsuitable::TooPowerful) }</p>
-            }
-            { for family.warnings().iter().filter(urgent).map(|warning| html! {
-                <p class="first" data-testid="warning">{ (words.warning)(*warning) }</p>
-            }) }
-        </>
-    }
+    let first = plate
+        .family()
+        .warnings()
+        .iter()
+        .filter(|warning| matches!(warning, Warning::LiveChassis | Warning::TubeVoltage))
+        .map(|warning| line("first", "warning", (words.warning)(*warning).to_owned()));
+    el("section")
+        .class("advice")
+        .set("aria-live", "polite")
+        .test("advice")
+        .maybe(stale)
+        .maybe(too_powerful)
+        .each(overdriven)
+        .with(el("p").with(el("b").text(main)).text(" ").text(rest))
+        .each(first)
+        .with(line("assumes", "assumes", (words.assumes)(&describe::assumed(&bench.setup, words))))
 }
 
 /// Names of the fields that are wrong, each once.

@@ -1,10 +1,10 @@
 //! The bank as it is wired: a row of groups, each a stack of lamps between two rails, every lamp in its own well.
 
 use lampladder_core::lamp::Lamp;
-use yew::{Html, html};
 
 use crate::bench::Bench;
 use crate::draft::Place;
+use crate::parts::el::{El, el};
 use crate::parts::svg::n;
 use crate::parts::well::{Filament, Well, well};
 
@@ -16,21 +16,19 @@ const WIDTH: f64 = 186.0;
 /// A well's greatest width.
 const WIDEST: f64 = 100.0;
 /// From this size on there is room for a lamp's watts in its well.
-const ROOM: (f64, f64) = (36.0, 18.0);
+const ROOM: (f64, f64) = (50.0, 20.0);
 
 /// The bank, `height` high.
-pub(super) fn bank_drawing(bench: &Bench, height: f64) -> Html {
+pub(super) fn bank_drawing(bench: &Bench, height: f64) -> El {
     let groups = bench.setup.bank.groups();
     let columns = count(groups.len());
     let gap = if columns > 3.0 { 6.0 } else { 12.0 };
     let width = ((WIDTH - gap * (columns - 1.0)) / columns).min(WIDEST);
     let left = MIDDLE - 0.5 * (width * columns + gap * (columns - 1.0));
-    html! {
-        { for groups.iter().enumerate().map(|(column, group)| {
-            let x = left + count(column) * (width + gap);
-            stack(bench, column, group, Well { x, y: TOP, width, height })
-        }) }
-    }
+    el("g").each(groups.iter().enumerate().map(|(column, group)| {
+        let x = left + count(column) * (width + gap);
+        stack(bench, column, group, Well { x, y: TOP, width, height })
+    }))
 }
 
 #[expect(clippy::cast_precision_loss, reason = "at most eight lamps")]
@@ -39,7 +37,7 @@ fn count(number: usize) -> f64 {
 }
 
 /// One group in its room.
-fn stack(bench: &Bench, column: usize, group: &[Lamp], room: Well) -> Html {
+fn stack(bench: &Bench, column: usize, group: &[Lamp], room: Well) -> El {
     let rows = count(group.len());
     let parallel = group.len() > 1;
     let between = if rows > 4.0 { 3.0 } else { 5.0 };
@@ -52,28 +50,28 @@ fn stack(bench: &Bench, column: usize, group: &[Lamp], room: Well) -> Html {
     let middle = |row: f64| top + row * (height + between) + height / 2.0;
     let (left, right) = (n(room.x), n(room.x + room.width));
     let (first, last) = (middle(0.0), middle(rows - 1.0));
-    html! {
-        <g>
-            if parallel {
-                // The loop's own wire must not shine through between the lamps.
-                <rect class="blank" x={left.clone()} y={n(first)} width={n(room.width)} height={n(last - first)} />
-                <path class="wire" d={format!("M {left} {0} V {1} M {right} {0} V {1}", n(first), n(last))} />
-            }
-            { for group.iter().enumerate().map(|(row, lamp)| {
-                let y = middle(count(row));
-                let at = Well { x: room.x + inset, y: y - height / 2.0, width, height };
-                html! {
-                    <>
-                        if parallel { <path class="wire" d={format!("M {left} {} H {right}", n(y))} /> }
-                        { one(bench, Place { group: column, lamp: row }, lamp, at) }
-                    </>
-                }
-            }) }
-        </g>
+    let wire = |path: String| el("path").class("wire").put("d", path);
+    let mut stack = el("g");
+    if parallel {
+        let (first, last) = (n(first), n(last));
+        // The loop's own wire must not shine through between the lamps.
+        let blank = format!("M {left} {first} H {right} V {last} H {left} Z");
+        stack = stack
+            .with(el("path").class("blank").put("d", blank))
+            .with(wire(format!("M {left} {first} V {last} M {right} {first} V {last}")));
     }
+    for (row, lamp) in group.iter().enumerate() {
+        let y = middle(count(row));
+        if parallel {
+            stack = stack.with(wire(format!("M {left} {} H {right}", n(y))));
+        }
+        let at = Well { x: room.x + inset, y: y - height / 2.0, width, height };
+        stack = stack.with(one(bench, Place { group: column, lamp: row }, lamp, at));
+    }
+    stack
 }
 
-fn one(bench: &Bench, place: Place, lamp: &Lamp, at: Well) -> Html {
+fn one(bench: &Bench, place: Place, lamp: &Lamp, at: Well) -> El {
     let shown = bench.answers.shown(bench.condition);
     let filament = match shown.and_then(|shown| shown.lamps.get(place.group)?.get(place.lamp)) {
         Some(lamp) => Filament::Glowing(lamp.glow),
@@ -82,14 +80,12 @@ fn one(bench: &Bench, place: Place, lamp: &Lamp, at: Well) -> Html {
     };
     let mixed = bench.setup.bank.groups().iter().flatten().any(|other| other != lamp);
     let room = at.width >= ROOM.0 && at.height >= ROOM.1;
-    html! {
-        <>
-            { well(&format!("loop-{}-{}", place.group, place.lamp), at, filament) }
-            if mixed && room {
-                <text class="rating" x={n(at.x + at.width - 4.0)} y={n(at.y + at.height - 4.0)}>
-                    { bench.words().numerals.plain(lamp.rated_watts()) }
-                </text>
-            }
-        </>
-    }
+    let lamp_well = well(&format!("loop-{}-{}", place.group, place.lamp), at, filament);
+    lamp_well.maybe((mixed && room).then(|| {
+        el("text")
+            .class("rating")
+            .put("x", n(at.x + at.width - 4.0))
+            .put("y", n(at.y + at.height - 4.0))
+            .text(bench.words().numerals.plain(lamp.rated_watts()))
+    }))
 }

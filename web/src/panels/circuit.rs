@@ -2,12 +2,12 @@
 
 use lampladder_core::bank::Bank;
 use lampladder_core::condition::Condition;
-use yew::{Html, function_component, html};
 
 use super::bank_drawing::{TOP, bank_drawing};
-use super::{PanelProps, send};
-use crate::bench::{Bench, Msg, Part};
+use super::send;
+use crate::bench::{Bench, BenchHandle, Msg, Part};
 use crate::describe;
+use crate::parts::el::{El, button, drawing, el, truth};
 use crate::parts::picture;
 use crate::parts::svg::n;
 
@@ -39,69 +39,70 @@ fn plan(bank: &Bank) -> Plan {
 }
 
 /// The loop.
-#[function_component]
-pub fn Circuit(props: &PanelProps) -> Html {
-    let bench = &*props.bench;
+pub fn circuit(bench: &BenchHandle) -> El {
     let words = bench.words();
     let plan = plan(&bench.setup.bank);
     let supply = describe::supply(&bench.setup, words);
     let bank = describe::bank(&bench.setup, words);
-    let short_bank = describe::short_bank(&bench.setup, words);
     let size = describe::size(&bench.setup, words);
-    let part = |part: Part, class: &'static str, testid: &'static str, shown: &str, heard: &str| {
-        html! {
-            <button type="button" {class} data-testid={testid} aria-label={(words.change)(part, heard)}
-                aria-expanded={if bench.open == Some(part) { "true" } else { "false" }}
-                onclick={send(&props.bench, Msg::Open(part))}>
-                <span class="tag">{ shown }</span>
-            </button>
-        }
-    };
     let volts = words.numerals.quantity(bench.setup.supply.volts(), "V");
     let family = (words.family)(bench.setup.plate.family()).name;
-    html! {
-        <section class={plan.class} aria-label={(words.circuit)(&supply, &bank, &size)}>
-            <svg viewBox={format!("0 0 {} {}", n(WIDTH), n(plan.height))} aria-hidden="true" focusable="false">
-                { wires(&plan) }
-                { supply_sign(&plan, bench.setup.supply.is_direct()) }
-                { equipment(&plan, bench) }
-                { bank_drawing(bench, plan.bank_height) }
-            </svg>
-            { part(Part::Supply, "part part-supply", "edit-supply", &volts, &supply) }
-            { part(Part::Bank, "part part-bank", "edit-bank", &short_bank, &bank) }
-            { part(Part::Equipment, "part part-load", "edit-equipment", &size, &format!("{family}, {size}")) }
-            { reading(bench) }
-        </section>
-    }
+    let part = |part: Part, class: &'static str, testid: &'static str, shown: String, heard: &str| {
+        button(class, testid, send(bench, Msg::Open(part)))
+            .put("aria-label", (words.change)(part, heard))
+            .set("aria-expanded", truth(bench.open == Some(part)))
+            .with(el("span").class("tag").text(shown))
+    };
+    let picture = drawing("0 0 360 190")
+        .put("viewBox", format!("0 0 {} {}", n(WIDTH), n(plan.height)))
+        .with(wires(&plan, bench.setup.supply.is_direct()))
+        .with(equipment(&plan, bench))
+        .with(bank_drawing(bench, plan.bank_height));
+    let short_bank = describe::short_bank(&bench.setup, words);
+    el("section")
+        .class(plan.class)
+        .put("aria-label", (words.circuit)(&supply, &bank, &size))
+        .with(picture)
+        .with(part(Part::Supply, "part part-supply", "edit-supply", volts, &supply))
+        .with(part(Part::Bank, "part part-bank", "edit-bank", short_bank, &bank))
+        .with(part(
+            Part::Equipment,
+            "part part-load",
+            "edit-equipment",
+            size.clone(),
+            &format!("{family}, {size}"),
+        ))
+        .with(reading(bench))
 }
 
 /// The answer, in the middle of the loop.
-fn reading(bench: &Bench) -> Html {
+fn reading(bench: &Bench) -> El {
     let words = bench.words();
-    let shown = bench.answers.shown(bench.condition);
-    let condition = (words.if_condition)(bench.condition);
-    let testid = "result-amps";
-    html! {
-        <p class="reading">
-            if let Some(shown) = shown {
-                <b data-testid={testid} data-value={describe::full(shown.amps.value)}
-                    data-low={describe::full(shown.amps.low)} data-high={describe::full(shown.amps.high)}>
-                    { words.numerals.value(&shown.amps, "A") }
-                </b>
-                <span>{ words.numerals.range(&shown.amps, "A") }</span>
-            } else {
-                <b data-testid={testid}>{ words.none }</b>
-            }
-            <span class={if bench.condition == Condition::Healthy { "" } else { "alarm" }}>{ condition }</span>
-            if bench.is_stale() { <span class="stale-mark" data-testid="stale">{ words.stale_mark }</span> }
-        </p>
-    }
+    let amps = bench.answers.shown(bench.condition).map(|shown| &shown.amps);
+    let number = el("b").test("result-amps");
+    let number = match amps {
+        Some(amps) => number
+            .put("data-value", describe::full(amps.value))
+            .put("data-low", describe::full(amps.low))
+            .put("data-high", describe::full(amps.high))
+            .text(words.numerals.value(amps, "A")),
+        None => number.text(words.none),
+    };
+    let range = amps.map(|amps| el("span").text(words.numerals.range(amps, "A")));
+    let class = if bench.condition == Condition::Healthy { "condition" } else { "condition alarm" };
+    el("p")
+        .class("reading")
+        .with(number)
+        .maybe(range)
+        .with(el("span").class(class).text((words.if_condition)(bench.condition)))
+        .maybe(bench.is_stale().then(|| el("span").class("stale-mark").test("stale").text(words.stale_mark)))
 }
 
-fn wires(plan: &Plan) -> Html {
+/// The loop's wire, and the supply on it.
+fn wires(plan: &Plan, direct: bool) -> El {
     let top = TOP + plan.bank_height / 2.0;
     let bottom = plan.height - 12.0;
-    let path = format!(
+    let wire = format!(
         "M {sx} {centre} V {t14} a 14 14 0 0 1 14 -14 H {lx14} a 14 14 0 0 1 14 14 V {b14} a 14 14 0 0 1 -14 14 H {sx14} \
          a 14 14 0 0 1 -14 -14 Z",
         sx = n(SUPPLY_X),
@@ -112,46 +113,43 @@ fn wires(plan: &Plan) -> Html {
         sx14 = n(SUPPLY_X + 14.0),
     );
     let arrow = format!("M {} {} l 11 -5.5 v 11 z", n(WIDTH / 2.0 - 5.0), n(bottom));
-    html! {
-        <>
-            <path class="wire" d={path} />
-            <path class="arrow" d={arrow} />
-        </>
-    }
-}
-
-fn supply_sign(plan: &Plan, direct: bool) -> Html {
-    let (x, y) = (SUPPLY_X, plan.centre);
     let sign = if direct {
-        format!(
-            "M {a} {y1} h 30 M {a} {y2} h 7 m 4.5 0 h 7 m 4.5 0 h 7",
-            a = n(x - 15.0),
-            y1 = n(y - 9.0),
-            y2 = n(y - 1.0)
-        )
+        "M -15 -9 h 30 M -15 -1 h 7 m 4.5 0 h 7 m 4.5 0 h 7"
     } else {
-        format!("M {} {} q 8 -17 16 0 t 16 0", n(x - 16.0), n(y - 4.0))
+        "M -16 -4 q 8 -17 16 0 t 16 0"
     };
-    let top = TOP + plan.bank_height / 2.0;
-    html! {
-        <>
-            <circle class="body" cx={n(x)} cy={n(y)} r="31" />
-            <path class="wire" d={sign} />
-            // The lamps belong in the line conductor; a direct source has a plus there.
-            <text class="terminal" x={n(x - 12.0)} y={n(top + 15.0)}>{ if direct { "+" } else { "L" } }</text>
-            <text class="terminal" x={n(x - 12.0)} y={n(plan.height - 14.0)}>{ if direct { "−" } else { "N" } }</text>
-        </>
-    }
+    let circle = "M -31 0 a 31 31 0 1 0 62 0 a 31 31 0 1 0 -62 0";
+    let source = el("g")
+        .put("transform", format!("translate({} {})", n(SUPPLY_X), n(plan.centre)))
+        .with(path("body", circle))
+        .with(path("wire", sign));
+    // The lamps belong in the line conductor; a direct source has a plus there.
+    let (line, neutral) = if direct { ("+", "−") } else { ("L", "N") };
+    let terminal = |y: f64, text: &'static str| {
+        el("text").class("terminal").put("x", n(SUPPLY_X - 12.0)).put("y", n(y)).text(text)
+    };
+    el("g")
+        .with(el("path").class("wire").put("d", wire))
+        .with(el("path").class("arrow").put("d", arrow))
+        .with(source)
+        .with(terminal(top + 15.0, line))
+        .with(terminal(plan.height - 14.0, neutral))
 }
 
-fn equipment(plan: &Plan, bench: &Bench) -> Html {
-    let (x, y) = (LOAD_X, plan.centre);
-    html! {
-        <>
-            <rect class="body" x={n(x - 39.0)} y={n(y - 33.0)} width="78" height="66" rx="12" />
-            <g transform={format!("translate({} {})", n(x - 27.0), n(y - 27.0))}>
-                <g transform="scale(1.12)">{ picture::family(bench.setup.plate.family()) }</g>
-            </g>
-        </>
-    }
+fn path(class: &'static str, path: &'static str) -> El {
+    el("path").class(class).set("d", path)
+}
+
+fn equipment(plan: &Plan, bench: &Bench) -> El {
+    let symbol = el("g")
+        .set("transform", "translate(-27 -27) scale(1.12)")
+        .with(picture::family(bench.setup.plate.family()));
+    el("g")
+        .put("transform", format!("translate({} {})", n(LOAD_X), n(plan.centre)))
+        .with(path(
+            "body",
+            "M -27 -33 h 54 a 12 12 0 0 1 12 12 v 42 a 12 12 0 0 1 -12 12 h -54 a 12 12 0 0 1 -12 -12 v -42 a 12 12 0 0 1 \
+             12 -12 z",
+        ))
+        .with(symbol)
 }

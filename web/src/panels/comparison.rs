@@ -2,29 +2,26 @@
 
 use lampladder_core::condition::Condition;
 use lampladder_core::steady::Outcome;
-use yew::{Html, function_component, html};
 
-use super::{PanelProps, send};
+use super::send;
 use crate::answers::brightest;
-use crate::bench::{Bench, BenchHandle, Msg};
+use crate::bench::{BenchHandle, Msg};
 use crate::describe::full;
-use crate::parts::well::{Filament, Well, well};
+use crate::parts::el::{El, button, el, truth};
+use crate::parts::well::{Filament, Well, lone};
 
 const CELL: Well = Well { x: 0.0, y: 0.0, width: 96.0, height: 54.0 };
 
-/// The three cells.
-#[function_component]
-pub fn Comparison(props: &PanelProps) -> Html {
-    let words = props.bench.words();
-    html! {
-        <div class="cells" role="group" aria-label={words.conditions}>
-            { for props.bench.answers.all().iter().map(|(condition, _)| cell(&props.bench, *condition)) }
-        </div>
-    }
+/// The cells.
+pub fn comparison(bench: &BenchHandle) -> El {
+    el("div")
+        .class("cells")
+        .set("role", "group")
+        .set("aria-label", bench.words().conditions)
+        .each(bench.answers.all().iter().map(|(condition, _)| cell(bench, *condition)))
 }
 
-fn cell(handle: &BenchHandle, condition: Condition) -> Html {
-    let bench: &Bench = handle;
+fn cell(bench: &BenchHandle, condition: Condition) -> El {
     let words = bench.words();
     let name = condition.name();
     let shown = bench.answers.shown(condition);
@@ -34,30 +31,26 @@ fn cell(handle: &BenchHandle, condition: Condition) -> Html {
         None if bench.answers.melting(condition).is_some() => Filament::Broken,
         None => Filament::Unknown,
     };
-    let value = |pick: fn(&lampladder_core::expect::Shown) -> f64| shown.map(|shown| full(pick(shown)));
-    html! {
-        <button type="button" class="cell" data-testid={format!("cell-{name}")}
-            aria-pressed={if bench.condition == condition { "true" } else { "false" }}
-            data-amps={value(|shown| shown.amps.value)} data-bank-volts={value(|shown| shown.bank_volts.value)}
-            data-load-volts={value(|shown| shown.load_volts.value)} data-glow={lamp.map(|lamp| lamp.glow.word.name())}
-            onclick={send(handle, Msg::Show(condition))}>
-            <strong>{ (words.condition)(condition) }</strong>
-            <svg viewBox="0 0 96 54" aria-hidden="true" focusable="false">
-                { well(&format!("cell-{name}"), CELL, filament) }
-            </svg>
-            if let (Some(shown), Some(lamp)) = (shown, lamp) {
-                <span class="word">{ (words.glow)(lamp.glow.word) }</span>
-                <span class="figures">
-                    <b>{ words.numerals.value(&shown.bank_volts, "V") }</b>{ " " }
-                    <b>{ words.numerals.value(&shown.amps, "A") }</b>
-                </span>
-            } else if filament == Filament::Broken {
-                <span class="word">{ words.burnt }</span>
-            } else if matches!(bench.answers.outcome(condition), Some(Outcome::Hunts { .. })) {
-                <span class="word">{ words.pulsing }</span>
-            } else {
-                <span class="word">{ words.none }</span>
-            }
-        </button>
-    }
+    let word = match (lamp, bench.answers.outcome(condition)) {
+        (Some(lamp), _) => (words.glow)(lamp.glow.word),
+        (None, Some(Outcome::Hunts { .. })) => words.pulsing,
+        (None, _) if filament == Filament::Broken => words.burnt,
+        _ => words.none,
+    };
+    let cell = button("cell", format!("cell-{name}"), send(bench, Msg::Show(condition)))
+        .set("aria-pressed", truth(bench.condition == condition))
+        .with(el("strong").text((words.condition)(condition)))
+        .with(lone(name, "0 0 96 54", CELL, filament))
+        .with(el("span").class("word").text(word));
+    let (Some(shown), Some(lamp)) = (shown, lamp) else { return cell };
+    let figures = el("span")
+        .class("figures")
+        .with(el("b").text(words.numerals.value(&shown.bank_volts, "V")))
+        .text(" ")
+        .with(el("b").text(words.numerals.value(&shown.amps, "A")));
+    cell.put("data-amps", full(shown.amps.value))
+        .put("data-bank-volts", full(shown.bank_volts.value))
+        .put("data-load-volts", full(shown.load_volts.value))
+        .set("data-glow", lamp.glow.word.name())
+        .with(figures)
 }

@@ -2,14 +2,15 @@
 
 use lampladder_core::detail::Detail;
 use lampladder_core::family::{Family, Unsuitable};
-use yew::{Callback, Html, MouseEvent, function_component, html, use_state_eq};
 
-use super::{PanelProps, send};
+use super::lamp::refusal;
+use super::send;
+use super::supply::more;
 use crate::bench::{BenchHandle, Msg, Refused};
 use crate::draft::Slot;
 use crate::parts::choice::{Choice, choices};
-use crate::parts::field::Field;
-use crate::parts::picture;
+use crate::parts::el::{El, button, drawing, el, truth};
+use crate::parts::{field, picture};
 
 const UNSUITABLE: [(Unsuitable, &str); 3] = [
     (Unsuitable::MicrowaveOven, "refused-microwave"),
@@ -18,69 +19,50 @@ const UNSUITABLE: [(Unsuitable, &str); 3] = [
 ];
 
 /// Family and plate.
-#[function_component]
-pub fn EquipmentEditor(props: &PanelProps) -> Html {
-    let bench = &props.bench;
+pub fn equipment_editor(bench: &BenchHandle) -> Vec<El> {
     let words = bench.words();
     let family = bench.draft.family;
-    let choosing = use_state_eq(|| false);
-    let toggle = {
-        let choosing = choosing.clone();
-        move |_: MouseEvent| choosing.set(!*choosing)
-    };
     let names = (words.family)(family);
-    let field = |slot| html! { <Field bench={bench.clone()} {slot} /> };
-    html! {
-        <>
-            <button type="button" class="family-now" data-testid="choose-family" onclick={toggle}
-                aria-expanded={if *choosing { "true" } else { "false" }}>
-                { drawing(family) }
-                <span><b>{ names.name }</b><small>{ names.examples }</small></span>
-                <i>{ words.edit.change }</i>
-            </button>
-            if *choosing {
-                { families(bench, &Callback::from(move |()| choosing.set(false))) }
-                <h3>{ words.edit.not_for }</h3>
-                { choices(words.edit.not_for, refusals(bench)) }
-            }
-            if let Some(Refused::Equipment(kind)) = bench.refused {
-                <p class="error" role="alert" data-testid="refusal">{ (words.refuse_equipment)(kind) }</p>
-            }
-            if family == Family::Measured {
-                { field(Slot::Detail(Detail::MeasuredOhms)) }
-            } else {
-                { field(Slot::PlateWatts) }
-                { field(Slot::PlateVolts) }
-            }
-            { more(bench) }
-            <ul class="warnings">
-                { for family.warnings().iter().map(|warning| html! { <li>{ (words.warning)(*warning) }</li> }) }
-            </ul>
-        </>
+    let now = button("family-now", "choose-family", send(bench, Msg::ChooseFamily))
+        .set("aria-expanded", truth(bench.choosing))
+        .with(family_picture(family))
+        .with(el("span").with(el("b").text(names.name)).with(el("small").text(names.examples)))
+        .with(el("i").text(words.edit.change));
+    let mut all = vec![now];
+    if bench.choosing {
+        all.push(families(bench));
+        all.push(el("h3").text(words.edit.not_for));
+        all.push(choices(words.edit.not_for, refusals(bench)));
     }
+    if let Some(Refused::Equipment(kind)) = bench.refused {
+        all.push(refusal((words.refuse_equipment)(kind)));
+    }
+    if family == Family::Measured {
+        all.push(field::stepped(bench, Slot::Detail(Detail::MeasuredOhms)));
+    } else {
+        all.push(field::stepped(bench, Slot::PlateWatts));
+        all.push(field::stepped(bench, Slot::PlateVolts));
+    }
+    all.push(rest_of_plate(bench));
+    let warning = |warning| el("li").text((words.warning)(warning));
+    all.push(el("ul").class("warnings").each(family.warnings().iter().copied().map(warning)));
+    all
 }
 
-fn drawing(family: Family) -> Html {
-    html! { <svg viewBox="0 0 48 36" aria-hidden="true" focusable="false">{ picture::family(family) }</svg> }
+fn family_picture(family: Family) -> El {
+    drawing("0 0 48 36").with(picture::family(family))
 }
 
-fn families(bench: &BenchHandle, chosen: &Callback<()>) -> Html {
+fn families(bench: &BenchHandle) -> El {
     let words = bench.words();
-    html! {
-        <div class="families" role="group" aria-label={words.edit.what}>
-            { for Family::ALL.into_iter().map(|family| {
-                let (dispatcher, chosen) = (bench.dispatcher(), chosen.clone());
-                html! {
-                    <button type="button" class="family" data-testid={format!("family-{}", family.name())}
-                        aria-pressed={if family == bench.draft.family { "true" } else { "false" }}
-                        onclick={move |_| { dispatcher.dispatch(Msg::Family(family)); chosen.emit(()); }}>
-                        { drawing(family) }
-                        <b>{ (words.family)(family).name }</b>
-                    </button>
-                }
-            }) }
-        </div>
-    }
+    let one = |family: Family| {
+        button("family", format!("family-{}", family.name()), send(bench, Msg::Family(family)))
+            .set("aria-pressed", truth(family == bench.draft.family))
+            .with(family_picture(family))
+            .with(el("b").text((words.family)(family).name))
+    };
+    let all = el("div").class("families").set("role", "group").set("aria-label", words.edit.what);
+    all.each(Family::ALL.map(one))
 }
 
 fn refusals(bench: &BenchHandle) -> Vec<Choice> {
@@ -88,33 +70,27 @@ fn refusals(bench: &BenchHandle) -> Vec<Choice> {
         text: (bench.words().unsuitable_equipment)(kind).to_owned(),
         chosen: false,
         testid: testid.to_owned(),
-        onclick: send(bench, Msg::Refuse(Refused::Equipment(kind))),
+        click: send(bench, Msg::Refuse(Refused::Equipment(kind))),
     };
     UNSUITABLE.map(choice).to_vec()
 }
 
 /// The rest of the plate, and the class defaults that stand where nothing is known.
-fn more(bench: &BenchHandle) -> Html {
+fn rest_of_plate(bench: &BenchHandle) -> El {
     let words = bench.words();
     let family = bench.draft.family;
-    let usual = (words.edit.power_factor_hint)(&words.numerals.plain(family.usual_power_factor()));
-    let field = |slot, hint: String| html! { <Field bench={bench.clone()} {slot} {hint} steps={false} /> };
+    let rest = more(words.edit.plate_more);
+    let rest = if family == Family::Measured {
+        rest.with(field::plain(bench, Slot::PlateVolts, ""))
+    } else {
+        let usual = (words.edit.power_factor_hint)(&words.numerals.plain(family.usual_power_factor()));
+        rest.with(field::plain(bench, Slot::PlateAmps, words.edit.optional))
+            .with(field::plain(bench, Slot::PlateVoltAmps, words.edit.optional))
+            .with(field::plain(bench, Slot::PlatePowerFactor, usual))
+    };
     let details = family.details().iter().filter(|default| default.detail != Detail::MeasuredOhms);
-    let none_printed = family == Family::Measured;
-    html! {
-        <details class="more">
-            <summary>{ words.edit.plate_more }</summary>
-            if none_printed {
-                { field(Slot::PlateVolts, String::new()) }
-            } else {
-                { field(Slot::PlateAmps, words.edit.optional.to_owned()) }
-                { field(Slot::PlateVoltAmps, words.edit.optional.to_owned()) }
-                { field(Slot::PlatePowerFactor, usual) }
-            }
-            { for details.map(|default| {
-                let hint = (words.edit.default_hint)(&words.numerals.quantity(default.value, default.detail.unit()));
-                field(Slot::Detail(default.detail), hint)
-            }) }
-        </details>
-    }
+    rest.each(details.map(|default| {
+        let value = words.numerals.quantity(default.value, default.detail.unit());
+        field::plain(bench, Slot::Detail(default.detail), (words.edit.default_hint)(&value))
+    }))
 }

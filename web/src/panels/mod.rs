@@ -1,4 +1,7 @@
 //! One file for each panel and each part of the frame around them.
+//!
+//! Panels are plain functions of the state: a component of its own costs 4 KB of the first load, so only what has an
+//! effect of its own is one ([`sheet::Sheet`], [`curve::Chart`]).
 
 pub mod advice;
 pub mod bank;
@@ -8,24 +11,15 @@ pub mod comparison;
 pub mod curve;
 pub mod details;
 pub mod equipment;
-pub mod header;
+pub mod frame;
 pub mod lamp;
-pub mod nav;
-pub mod notes;
 pub mod sheet;
 pub mod supply;
 pub mod voltage_bar;
 
-use yew::{Callback, MouseEvent, Properties};
+use yew::{Callback, MouseEvent};
 
 use crate::bench::{BenchHandle, Msg};
-
-/// What every panel gets.
-#[derive(Debug, Clone, PartialEq, Properties)]
-pub struct PanelProps {
-    /// The state.
-    pub bench: BenchHandle,
-}
 
 /// A click that sends a message.
 pub(crate) fn send(bench: &BenchHandle, msg: Msg) -> Callback<MouseEvent> {

@@ -1,38 +1,35 @@
 //! The supply's editor.
 
 use lampladder_core::quantity;
-use yew::{Html, function_component, html};
 
-use super::{PanelProps, send};
+use super::send;
 use crate::bench::{BenchHandle, Msg};
 use crate::draft::Slot;
 use crate::parts::choice::{Choice, choices};
-use crate::parts::field::Field;
+use crate::parts::el::{El, button, el};
+use crate::parts::field;
 use crate::step::USUAL_VOLTS;
 
 /// Usual frequencies; 0 is direct current.
 const USUAL_HERTZ: [f64; 3] = [50.0, 60.0, 0.0];
 
 /// Volts, frequency, and more for those who know more.
-#[function_component]
-pub fn SupplyEditor(props: &PanelProps) -> Html {
-    let bench = &props.bench;
+pub fn supply_editor(bench: &BenchHandle) -> Vec<El> {
     let words = bench.words();
-    let volts = quick(bench, Slot::SupplyVolts, &USUAL_VOLTS, "volts");
-    let hertz = quick(bench, Slot::SupplyHertz, &USUAL_HERTZ, "hertz");
-    html! {
-        <>
-            { choices(words.edit.usual_volts, volts) }
-            <Field bench={bench.clone()} slot={Slot::SupplyVolts} />
-            { follow(bench) }
-            { choices(words.edit.usual_hertz, hertz) }
-            <Field bench={bench.clone()} slot={Slot::SupplyHertz} steps={false} />
-            <details class="more" open={!bench.draft.text(Slot::SupplyOhms).trim_matches('0').is_empty()}>
-                <summary>{ words.more }</summary>
-                <Field bench={bench.clone()} slot={Slot::SupplyOhms} hint={words.edit.ohms_hint} />
-            </details>
-        </>
-    }
+    let mut all = vec![
+        choices(words.edit.usual_volts, quick(bench, Slot::SupplyVolts, &USUAL_VOLTS, "volts")),
+        field::stepped(bench, Slot::SupplyVolts),
+    ];
+    all.extend(follow(bench));
+    all.push(choices(words.edit.usual_hertz, quick(bench, Slot::SupplyHertz, &USUAL_HERTZ, "hertz")));
+    all.push(field::plain(bench, Slot::SupplyHertz, ""));
+    all.push(more(words.more).with(field::plain(bench, Slot::SupplyOhms, words.edit.ohms_hint)));
+    all
+}
+
+/// What only some people know.
+pub fn more(title: &'static str) -> El {
+    el("details").class("more").with(el("summary").text(title))
 }
 
 /// Buttons that put a number into a field.
@@ -43,34 +40,24 @@ pub fn quick(bench: &BenchHandle, slot: Slot, all: &[f64], name: &str) -> Vec<Ch
         let typed = words.numerals.plain(value);
         let direct = slot == Slot::SupplyHertz && value == 0.0;
         Choice {
-            text: if direct {
-                words.direct.to_owned()
-            } else {
-                words.numerals.quantity(value, slot.field().unit())
-            },
+            text: if direct { words.direct.to_owned() } else { words.numerals.quantity(value, slot.unit()) },
             chosen: now == Some(value),
             testid: format!("quick-{name}-{typed}"),
-            onclick: send(bench, Msg::Type(slot, typed)),
+            click: send(bench, Msg::Type(slot, typed)),
         }
     };
     all.iter().map(choice).collect()
 }
 
 /// Offers to take the supply's voltage for lamps and plate, where they are for another.
-fn follow(bench: &BenchHandle) -> Html {
+fn follow(bench: &BenchHandle) -> Option<El> {
     let words = bench.words();
     let volts = bench.setup.supply.volts();
-    if bench.fault(Slot::SupplyVolts).is_some() {
-        return Html::default();
-    }
     let differs = |text: &str| quantity::parse(text, Slot::SupplyVolts.field()).ok() != Some(volts);
     let lamps_differ = bench.draft.groups.iter().flatten().any(|lamp| differs(&lamp.volts));
-    if !lamps_differ && !differs(bench.draft.text(Slot::PlateVolts)) {
-        return Html::default();
-    }
-    html! {
-        <button type="button" class="offer" data-testid="follow-supply" onclick={send(bench, Msg::FollowSupply)}>
-            { (words.edit.follow)(&words.numerals.quantity(volts, "V")) }
-        </button>
-    }
+    let worth_it = lamps_differ || differs(bench.draft.text(Slot::PlateVolts));
+    (worth_it && bench.fault(Slot::SupplyVolts).is_none()).then(|| {
+        button("offer", "follow-supply", send(bench, Msg::FollowSupply))
+            .text((words.edit.follow)(&words.numerals.quantity(volts, "V")))
+    })
 }

@@ -1,6 +1,8 @@
 //! One of a few: a row of big buttons.
 
-use yew::{Callback, Html, MouseEvent, html};
+use yew::{Callback, MouseEvent};
+
+use super::el::{El, button, el, truth};
 
 /// One button of the row.
 #[derive(Debug, Clone, PartialEq)]
@@ -12,17 +14,15 @@ pub struct Choice {
     /// For tests of the whole page.
     pub testid: String,
     /// What happens.
-    pub onclick: Callback<MouseEvent>,
+    pub click: Callback<MouseEvent>,
 }
 
 /// A row of choices with a name.
-pub fn choices(name: &'static str, all: Vec<Choice>) -> Html {
-    html! {
-        <div class="choices" role="group" aria-label={name}>
-            { for all.into_iter().map(|choice| html! {
-                <button type="button" class="choice" aria-pressed={if choice.chosen { "true" } else { "false" }}
-                    data-testid={choice.testid} onclick={choice.onclick}>{ choice.text }</button>
-            }) }
-        </div>
-    }
+pub fn choices(name: &'static str, all: Vec<Choice>) -> El {
+    let row = el("div").class("choices").set("role", "group").set("aria-label", name);
+    row.each(all.into_iter().map(|choice| {
+        button("choice", choice.testid, choice.click)
+            .set("aria-pressed", truth(choice.chosen))
+            .text(choice.text)
+    }))
 }

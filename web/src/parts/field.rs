@@ -1,25 +1,12 @@
 //! A number to type, with its unit, its steppers, and what is wrong with it right under it.
 
-use yew::{AttrValue, Callback, Html, InputEvent, Properties, function_component, html};
+use yew::{Callback, InputEvent};
 
+use super::el::{El, button, el, truth};
 use crate::bench::{BenchHandle, Msg};
 use crate::browser::input;
 use crate::draft::{LampPart, Slot};
-
-/// What a field needs.
-#[derive(Debug, Clone, PartialEq, Properties)]
-pub struct FieldProps {
-    /// The state.
-    pub bench: BenchHandle,
-    /// Which field.
-    pub slot: Slot,
-    /// Whether it has steppers.
-    #[prop_or(true)]
-    pub steps: bool,
-    /// A remark beside its name.
-    #[prop_or_default]
-    pub hint: AttrValue,
-}
+use crate::panels::send;
 
 /// A field's name in addresses of elements; lamp fields exist for the lamp under edit only.
 pub fn slug(slot: Slot) -> String {
@@ -43,54 +30,65 @@ pub fn slug(slot: Slot) -> String {
     plain.to_owned()
 }
 
-/// The field.
-#[function_component]
-pub fn Field(props: &FieldProps) -> Html {
-    let FieldProps { bench, slot, steps, hint } = props;
-    let slot = *slot;
+/// A field with steppers.
+pub fn stepped(bench: &BenchHandle, slot: Slot) -> El {
+    field(bench, slot, true, String::new())
+}
+
+/// A field without, and with a remark beside its name.
+pub fn plain(bench: &BenchHandle, slot: Slot, hint: impl Into<String>) -> El {
+    field(bench, slot, false, hint.into())
+}
+
+fn field(bench: &BenchHandle, slot: Slot, steps: bool, hint: String) -> El {
     let words = bench.words();
     let slug = slug(slot);
-    let id = format!("in-{slug}");
-    let error_id = format!("err-{slug}");
+    let (id, error_id) = (format!("in-{slug}"), format!("err-{slug}"));
     let fault = bench.fault(slot);
+    let label = el("label").put("for", id.clone()).text((words.slot)(slot));
+    let label = if hint.is_empty() { label } else { label.with(el("small").text(hint)) };
+    let stepper = |up: bool, sign: &'static str, name: &'static str| {
+        steps.then(|| {
+            button("stepper", format!("step-{slug}-{name}"), send(bench, Msg::Step(slot, up)))
+                .put("aria-label", (words.step)(slot, up))
+                .text(sign)
+        })
+    };
+    let typed = el("span")
+        .class("typed")
+        .with(entry(bench, slot, &slug, id, &error_id))
+        .with(el("span").class("unit").set("aria-hidden", "true").text(slot.unit()));
+    let error = fault.map(|fault| {
+        el("p")
+            .class("error")
+            .put("id", error_id)
+            .set("role", "alert")
+            .put("data-testid", format!("error-{slug}"))
+            .text((words.fault)(slot, fault))
+    });
+    let entry = el("div").class("entry").maybe(stepper(false, "−", "less")).with(typed);
+    el("div").class("field").with(label).with(entry.maybe(stepper(true, "+", "more"))).maybe(error)
+}
+
+fn entry(bench: &BenchHandle, slot: Slot, slug: &str, id: String, error_id: &str) -> El {
     let dispatcher = bench.dispatcher();
-    let oninput = Callback::from(move |event: InputEvent| {
+    let typed = Callback::from(move |event: InputEvent| {
         if let Some(text) = input::text(&event) {
             dispatcher.dispatch(Msg::Type(slot, text));
         }
     });
-    let stepper = |up: bool| {
-        let dispatcher = bench.dispatcher();
-        html! {
-            <button type="button" class="stepper" aria-label={(words.step)(slot, up)}
-                data-testid={format!("step-{slug}-{}", if up { "more" } else { "less" })}
-                onclick={move |_| dispatcher.dispatch(Msg::Step(slot, up))}>
-                { if up { "+" } else { "−" } }
-            </button>
-        }
-    };
-    html! {
-        <div class="field">
-            <label for={id.clone()}>
-                { (words.slot)(slot) }
-                if !hint.is_empty() { <small>{ hint }</small> }
-            </label>
-            <div class="entry">
-                if *steps { { stepper(false) } }
-                <span class="typed">
-                    <input {id} type="text" inputmode="decimal" autocomplete="off" autocorrect="off" spellcheck="false"
-                        maxlength="40" data-testid={format!("field-{slug}")} value={bench.draft.text(slot).to_owned()}
-                        aria-invalid={if fault.is_some() { "true" } else { "false" }}
-                        aria-describedby={fault.map(|_| error_id.clone())} {oninput} />
-                    <span class="unit" aria-hidden="true">{ slot.unit() }</span>
-                </span>
-                if *steps { { stepper(true) } }
-            </div>
-            if let Some(fault) = fault {
-                <p class="error" id={error_id} role="alert" data-testid={format!("error-{slug}")}>
-                    { (words.fault)(slot, fault) }
-                </p>
-            }
-        </div>
-    }
+    let wrong = bench.fault(slot).is_some();
+    let entry = el("input")
+        .put("id", id)
+        .set("type", "text")
+        .set("inputmode", "decimal")
+        .set("autocomplete", "off")
+        .set("autocorrect", "off")
+        .set("spellcheck", "false")
+        .set("maxlength", "40")
+        .put("data-testid", format!("field-{slug}"))
+        .set("aria-invalid", truth(wrong))
+        .value(bench.draft.text(slot).to_owned())
+        .typed(typed);
+    if wrong { entry.put("aria-describedby", error_id.to_owned()) } else { entry }
 }

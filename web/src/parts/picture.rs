@@ -1,12 +1,12 @@
 //! Line drawings: kinds of equipment, and the signs of the header.
 
 use lampladder_core::family::Family;
-use yew::{Html, html};
 
+use super::el::{El, drawing, el};
 use crate::bench::Theme;
 
 /// A kind of equipment, 48 wide and 36 high.
-pub fn family(family: Family) -> Html {
+pub fn family(family: Family) -> El {
     let path = match family {
         // A table radio: dial, tuning scale, aerial.
         Family::TransformerSupply => {
@@ -67,43 +67,41 @@ pub fn family(family: Family) -> Html {
              M7.5 28.5 h0.1 M40.5 28.5 h0.1 M12 12 l3.5 9 l3.5 -9 M23 12 l2.5 9 l3 -7 l3 7 l2.5 -9 M12 26 H36"
         }
     };
-    html! { <path class="drawing" d={path} /> }
+    el("path").class("drawing").set("d", path)
+}
+
+/// A sign on a button.
+pub fn sign(path: &'static str) -> El {
+    drawing("0 0 24 24").class("sign").with(el("path").class("drawing").set("d", path))
 }
 
 /// The sign for a light: half-filled, sun or moon.
-pub fn light(theme: Theme) -> Html {
-    let path = match theme {
-        Theme::Auto => html! {
-            <><circle cx="12" cy="12" r="8" /><path class="solid" d="M12 4 a8 8 0 0 1 0 16 Z" /></>
-        },
-        Theme::Paper => html! {
-            <>
-                <circle cx="12" cy="12" r="4.4" />
-                <path d="M12 2 V4.6 M12 19.4 V22 M2 12 H4.6 M19.4 12 H22 M4.9 4.9 L6.8 6.8 M17.2 17.2 L19.1 19.1 \
-                         M4.9 19.1 L6.8 17.2 M17.2 6.8 L19.1 4.9" />
-            </>
-        },
-        Theme::Dusk => html! { <path d="M19.5 14.8 A8.2 8.2 0 1 1 9.6 4.4 A6.6 6.6 0 0 0 19.5 14.8 Z" /> },
-    };
-    html! { <svg class="sign" viewBox="0 0 24 24" aria-hidden="true"><g class="drawing">{ path }</g></svg> }
+pub fn light(theme: Theme) -> El {
+    match theme {
+        Theme::Auto => sign("M12 4 a8 8 0 1 0 0.1 0 M12 4 a8 8 0 0 1 0 16 Z")
+            .with(el("path").class("solid").set("d", "M12 4 a8 8 0 0 1 0 16 Z")),
+        Theme::Paper => sign(
+            "M7.6 12 a4.4 4.4 0 1 0 8.8 0 a4.4 4.4 0 1 0 -8.8 0 M12 2 V4.6 M12 19.4 V22 M2 12 H4.6 M19.4 12 H22 M4.9 4.9 \
+             L6.8 6.8 M17.2 17.2 L19.1 19.1 M4.9 19.1 L6.8 17.2 M17.2 6.8 L19.1 4.9",
+        ),
+        Theme::Dusk => sign("M19.5 14.8 A8.2 8.2 0 1 1 9.6 4.4 A6.6 6.6 0 0 0 19.5 14.8 Z"),
+    }
 }
 
 /// The sign of the cautions: a triangle with a flash in it.
-pub fn caution() -> Html {
-    html! {
-        <svg class="sign" viewBox="0 0 24 24" aria-hidden="true">
-            <g class="drawing"><path d="M12 3 L22 20.5 H2 Z M13 9 l-2.4 4.4 h2.8 L11.4 18" /></g>
-        </svg>
-    }
+pub fn caution() -> El {
+    sign("M12 3 L22 20.5 H2 Z M13 9 l-2.4 4.4 h2.8 L11.4 18")
 }
 
-/// A lamp seen end on over the rungs of a ladder: the mark of the page.
-pub fn mark() -> Html {
-    html! {
-        <svg class="mark" viewBox="0 0 28 28" aria-hidden="true">
-            <rect class="well" x="2" y="1.5" width="24" height="15" rx="5" />
-            <path class="mark-coil" d="M8 11 q1 -6 2 -0 t2 0 q1 -6 2 0 t2 0 q1 -6 2 0 t2 0" />
-            <path class="drawing" d="M8 16.5 V27 M20 16.5 V27 M8 20.5 H20 M8 25 H20" />
-        </svg>
-    }
+/// A lamp over the rungs of a ladder: the mark of the page.
+pub fn mark() -> El {
+    let path = |class, path| el("path").class(class).set("d", path);
+    drawing("0 0 28 28")
+        .class("mark")
+        .with(path(
+            "well",
+            "M7 1.5 H21 a5 5 0 0 1 5 5 V11.5 a5 5 0 0 1 -5 5 H7 a5 5 0 0 1 -5 -5 V6.5 a5 5 0 0 1 5 -5 Z",
+        ))
+        .with(path("mark-coil", "M8 11 q1 -6 2 -0 t2 0 q1 -6 2 0 t2 0 q1 -6 2 0 t2 0"))
+        .with(path("drawing", "M8 16.5 V27 M20 16.5 V27 M8 20.5 H20 M8 25 H20"))
 }

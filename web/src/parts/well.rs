@@ -1,9 +1,8 @@
 //! A lamp in its dark well, glowing as core says it would: the one saturated thing on the screen.
 
-use lampladder_core::glow::{Glow, GlowWord};
-use yew::{Html, html};
-
+use super::el::{El, el};
 use super::svg::{mix, n, rgb};
+use lampladder_core::glow::{Glow, GlowWord};
 
 /// Where a well lies, user units.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -34,16 +33,25 @@ const WHITE: [u8; 3] = [255, 250, 240];
 const COLD: [u8; 3] = [118, 108, 96];
 
 /// A well with a lamp in it; `id` must be unique on the page.
-pub fn well(id: &str, at: Well, filament: Filament) -> Html {
-    let Well { x, y, width, height } = at;
-    let corner = (height * 0.2).min(width * 0.2).min(14.0);
-    html! {
-        <g>
-            <rect class="well" x={n(x)} y={n(y)} width={n(width)} height={n(height)} rx={n(corner)} />
-            { halo(id, at, corner, filament) }
-            { coil(at, filament) }
-        </g>
-    }
+pub fn well(id: &str, at: Well, filament: Filament) -> El {
+    let corner = (at.height * 0.2).min(at.width * 0.2).min(14.0);
+    let group = el("g").with(rect(at, corner).class("well"));
+    let group = halo(id, at, filament).into_iter().fold(group, El::with);
+    coil(group, at, filament)
+}
+
+/// A drawing with nothing but a lamp in it.
+pub fn lone(id: &str, view_box: &'static str, at: Well, filament: Filament) -> El {
+    super::el::drawing(view_box).with(well(id, at, filament))
+}
+
+fn rect(at: Well, corner: f64) -> El {
+    el("rect")
+        .put("x", n(at.x))
+        .put("y", n(at.y))
+        .put("width", n(at.width))
+        .put("height", n(at.height))
+        .put("rx", n(corner))
 }
 
 /// Luminance for the eye, 0 to 1: its fourth root, as in core's tone curve.
@@ -58,37 +66,35 @@ fn tone(glow: &Glow) -> f64 {
 
 /// Light around the filament: core's colour, whitening only where the eye would be dazzled, and reaching the
 /// further the brighter it is.
-fn halo(id: &str, at: Well, corner: f64, filament: Filament) -> Html {
-    let Filament::Glowing(glow) = filament else { return Html::default() };
+fn halo(id: &str, at: Well, filament: Filament) -> Option<El> {
+    let Filament::Glowing(glow) = filament else { return None };
     let (bright, tone) = (brightness(&glow), tone(&glow));
     if tone <= 0.0 {
-        return Html::default();
+        return None;
     }
-    let Well { x, y, width, height } = at;
-    let reach = width.min(height) * (0.36 + 0.26 * tone + 0.5 * bright);
-    let hot = mix(glow.srgb, WHITE, bright * bright);
+    let reach = at.width.min(at.height) * (0.36 + 0.26 * tone + 0.5 * bright);
     let core = 0.06 + 0.2 * bright;
     let name = format!("glow-{id}");
-    let fill = format!("url(#{name})");
-    let colour = rgb(glow.srgb);
-    let stop = |offset: f64, opacity: f64| {
-        html! { <stop offset={percent(offset)} stop-color={colour.clone()} stop-opacity={percent(opacity)} /> }
+    let stop = |offset: f64, colour: [u8; 3], opacity: f64| {
+        el("stop")
+            .put("offset", percent(offset))
+            .put("stop-color", rgb(colour))
+            .put("stop-opacity", percent(opacity))
     };
-    html! {
-        <>
-            <defs>
-                <radialGradient id={name} gradientUnits="userSpaceOnUse"
-                    cx={n(x + width / 2.0)} cy={n(y + height / 2.0)} r={n(reach)}>
-                    <stop offset="0%" stop-color={rgb(hot)} />
-                    { stop(core, 0.98) }
-                    { stop(core + 0.2, 0.6 + 0.15 * bright) }
-                    { stop(core + 0.42, 0.2 + 0.14 * bright) }
-                    { stop(1.0, 0.0) }
-                </radialGradient>
-            </defs>
-            <rect x={n(x + 1.0)} y={n(y + 1.0)} width={n(width - 2.0)} height={n(height - 2.0)} rx={n(corner)} {fill} />
-        </>
-    }
+    let gradient = el("radialGradient")
+        .put("id", name.clone())
+        .set("gradientUnits", "userSpaceOnUse")
+        .put("cx", n(at.x + at.width / 2.0))
+        .put("cy", n(at.y + at.height / 2.0))
+        .put("r", n(reach))
+        .with(stop(0.0, mix(glow.srgb, WHITE, bright * bright), 1.0))
+        .with(stop(core, glow.srgb, 0.98))
+        .with(stop(core + 0.2, glow.srgb, 0.6 + 0.15 * bright))
+        .with(stop(core + 0.42, glow.srgb, 0.2 + 0.14 * bright))
+        .with(stop(1.0, glow.srgb, 0.0));
+    let inside = Well { x: at.x + 1.0, y: at.y + 1.0, width: at.width - 2.0, height: at.height - 2.0 };
+    let corner = (at.height * 0.2).min(at.width * 0.2).min(13.0);
+    Some(el("g").with(gradient).with(rect(inside, corner).put("fill", format!("url(#{name})"))))
 }
 
 fn percent(share: f64) -> String {
@@ -109,7 +115,7 @@ fn wire_colour(filament: Filament) -> [u8; 3] {
 }
 
 /// The filament between its supports.
-fn coil(at: Well, filament: Filament) -> Html {
+fn coil(group: El, at: Well, filament: Filament) -> El {
     let Well { x, y, width, height } = at;
     let (cx, cy) = (x + width / 2.0, y + height / 2.0);
     // A flat well is filled by its wire; a high one is not.
@@ -137,15 +143,11 @@ fn coil(at: Well, filament: Filament) -> Html {
         foot = n(foot),
     );
     let stroke = n((size * 0.03).clamp(1.2, 3.2));
-    html! {
-        <g fill="none" stroke-linecap="round">
-            if height >= 40.0 {
-                <path class="support" d={supports} stroke-width="1.2" />
-            }
-            <path d={first} stroke={rgb(colour)} stroke-width={stroke.clone()} />
-            if broken {
-                <path d={second} stroke={rgb(colour)} stroke-width={stroke} />
-            }
-        </g>
-    }
+    let wire = |path: String| {
+        el("path").class("coil").put("d", path).put("stroke", rgb(colour)).put("stroke-width", stroke.clone())
+    };
+    group
+        .maybe((height >= 40.0).then(|| el("path").class("support").put("d", supports)))
+        .with(wire(first))
+        .maybe(broken.then(|| wire(second)))
 }

@@ -473,7 +473,7 @@ static TABLE: TableWords = TableWords {
     short_load_volts: "Equipm.",
     load_watts: "Power",
     glow: "Glow",
-    kelvin: "Filament",
+    kelvin: "Filament, K",
     life: "Lamp life at this point",
     short_life: "Life, × rated",
     assumed: "What this assumes",

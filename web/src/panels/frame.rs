@@ -1,0 +1,70 @@
+//! What stands around the panels: the header with the reminder that never leaves, the notes, the list of panels.
+
+use super::send;
+use crate::bench::{BenchHandle, Msg, Note, Tab, Theme};
+use crate::browser::theme;
+use crate::parts::el::{El, button, el};
+use crate::parts::picture;
+use crate::start;
+
+/// Id of the button that brings the cautions back.
+pub const CAUTIONS_BUTTON: &str = "open-cautions";
+
+/// The header.
+pub fn header(bench: &BenchHandle) -> El {
+    let words = bench.words();
+    let next = match bench.theme {
+        Theme::Auto => Theme::Paper,
+        Theme::Paper => Theme::Dusk,
+        Theme::Dusk => Theme::Auto,
+    };
+    let light = (words.theme)(bench.theme);
+    let wordmark = el("span").text("lamp").with(el("i").text("ladder"));
+    el("header")
+        .class("top")
+        .with(el("h1").class("wordmark").with(picture::mark()).with(wordmark))
+        .with(
+            button("round", "theme", send(bench, Msg::Light(next)))
+                .set("data-value", theme::name(bench.theme))
+                .set("aria-label", light)
+                .set("title", light)
+                .with(picture::light(bench.theme)),
+        )
+        .with(
+            button("warn", "open-cautions", send(bench, Msg::Cautions))
+                .set("id", CAUTIONS_BUTTON)
+                .with(picture::caution())
+                .text(words.cautions),
+        )
+        .with(el("p").class("reminder").test("reminder").text(words.reminder))
+}
+
+/// The list of panels.
+pub fn tabs(bench: &BenchHandle) -> El {
+    const TABS: [(Tab, &str); 2] = [(Tab::Expect, "tab-expect"), (Tab::Curve, "tab-curve")];
+    let words = bench.words();
+    el("nav").class("tabs").set("aria-label", words.panels).each(TABS.map(|(tab, testid)| {
+        let tab_button = button("tab", testid, send(bench, Msg::Go(tab))).text((words.tab)(tab));
+        if tab == bench.tab { tab_button.set("aria-current", "page") } else { tab_button }
+    }))
+}
+
+/// What is to be told once: a bad link, nothing kept.
+pub fn notes(bench: &BenchHandle) -> El {
+    let words = bench.words();
+    let note = |note: &Note| {
+        let kept = if *note == Note::FromLink { start::kept() } else { None };
+        let use_kept =
+            kept.map(|kept| button("use", "use-kept", send(bench, Msg::Arrive(kept))).text(words.use_kept));
+        let close = button("close", "dismiss", send(bench, Msg::Dismiss(*note)))
+            .set("aria-label", words.dismiss)
+            .text("×");
+        el("p")
+            .class("note")
+            .test("note")
+            .with(el("span").text((words.note)(*note)))
+            .maybe(use_kept)
+            .with(close)
+    };
+    el("div").class("notes").set("role", "status").each(bench.notes.iter().map(note))
+}

@@ -1,0 +1,187 @@
+//! What each message makes of the state. Pure: it knows no browser, so it is tested natively.
+
+use std::rc::Rc;
+
+use lampladder_core::bank::Bank;
+use lampladder_core::condition::Condition;
+use lampladder_core::link::LinkError;
+use lampladder_core::setup::Setup;
+use yew::Reducible;
+
+use crate::answers::Answers;
+use crate::bench::{Bench, MOST_POINTS, Msg, Note, Part, Stage};
+use crate::draft::{Draft, Fault, LampDraft, Place, Slot};
+use crate::step;
+
+impl Bench {
+    /// The state after a message.
+    #[must_use]
+    pub fn after(mut self, msg: Msg) -> Self {
+        match msg {
+            Msg::Show(condition) => self.condition = condition,
+            Msg::Open(part) => self.turn_to(Some(part)),
+            Msg::Close => self.turn_to(None),
+            Msg::ChooseFamily => self.choosing = !self.choosing,
+            Msg::Why => self.why = !self.why,
+            Msg::Go(tab) => self.tab = tab,
+            Msg::Light(theme) => self.theme = theme,
+            Msg::Accept => self.stage = Stage::Bench,
+            Msg::Cautions => self.stage = Stage::Reread,
+            Msg::Choose(place) => {
+                self.lamp = place;
+                self.refused = None;
+            }
+            Msg::Refuse(kind) => self.refused = Some(kind),
+            Msg::Arrive(setup) => return self.arrive(setup),
+            Msg::Tell(note) => {
+                if !self.notes.contains(&note) {
+                    self.notes.push(note);
+                }
+            }
+            Msg::Dismiss(note) => self.notes.retain(|other| *other != note),
+            edit => {
+                self.edit(edit);
+                self.reread();
+            }
+        }
+        self
+    }
+
+    fn turn_to(&mut self, part: Option<Part>) {
+        self.open = part;
+        self.refused = None;
+        self.choosing = false;
+    }
+
+    fn arrive(mut self, setup: Setup) -> Self {
+        let answers = match Answers::of(&setup) {
+            Ok(answers) => answers,
+            Err(error) => return self.after(Msg::Tell(Note::BadLink(LinkError::Refused(error)))),
+        };
+        self.draft = Draft::of(&setup, self.words().numerals);
+        self.setup = Rc::new(setup);
+        self.answers = Rc::new(answers);
+        self.faults.clear();
+        self.keep_condition();
+        self.edited = false;
+        self.lamp = Place::default();
+        self.refused = None;
+        self.notes.retain(|note| *note == Note::NothingKept);
+        self
+    }
+
+    fn edit(&mut self, msg: Msg) {
+        let place = self.lamp;
+        match msg {
+            Msg::Type(slot, text) => self.draft.set(slot, text),
+            Msg::Step(slot, up) => {
+                let text = step::stepped(&self.draft, slot, up, self.words().numerals);
+                self.draft.set(slot, text);
+            }
+            Msg::FollowSupply => {
+                let volts = self.draft.text(Slot::SupplyVolts).to_owned();
+                for lamp in self.draft.groups.iter_mut().flatten() {
+                    lamp.volts.clone_from(&volts);
+                }
+                self.draft.set(Slot::PlateVolts, volts);
+            }
+            Msg::Family(family) => {
+                self.refused = None;
+                self.choosing = false;
+                self.draft.family = family;
+            }
+            Msg::Fill(fill) => {
+                self.refused = None;
+                if let Some(lamp) = self.draft.lamp_mut(place) {
+                    lamp.fill = fill;
+                }
+            }
+            Msg::AddParallel | Msg::AddSeries => self.add(&msg),
+            Msg::Remove => self.remove(),
+            Msg::AddPoint => {
+                if let Some(lamp) = self.draft.lamp_mut(place)
+                    && lamp.points.len() < MOST_POINTS
+                {
+                    lamp.points.push((String::new(), String::new()));
+                }
+            }
+            Msg::RemovePoint(index) => {
+                if let Some(lamp) = self.draft.lamp_mut(place)
+                    && index < lamp.points.len()
+                {
+                    lamp.points.remove(index);
+                }
+            }
+            _ => {}
+        }
+    }
+
+    fn add(&mut self, msg: &Msg) {
+        let place = self.lamp;
+        if self.draft.lamp_count() >= Bank::MOST_LAMPS {
+            return;
+        }
+        // What was measured belongs to that one lamp; its printed rating is likely shared by its twin.
+        let Some(like) = self.draft.lamp(place) else { return };
+        let twin = LampDraft {
+            volts: like.volts.clone(),
+            watts: like.watts.clone(),
+            fill: like.fill,
+            lumens: like.lumens.clone(),
+            ..LampDraft::default()
+        };
+        if *msg == Msg::AddParallel {
+            self.draft.groups[place.group].insert(place.lamp + 1, twin);
+            self.lamp.lamp += 1;
+        } else {
+            self.draft.groups.insert(place.group + 1, vec![twin]);
+            self.lamp = Place { group: place.group + 1, lamp: 0 };
+        }
+    }
+
+    fn remove(&mut self) {
+        let Place { group, lamp } = self.lamp;
+        if self.draft.lamp_count() <= 1 || self.draft.lamp(self.lamp).is_none() {
+            return;
+        }
+        self.draft.groups[group].remove(lamp);
+        if self.draft.groups[group].is_empty() {
+            self.draft.groups.remove(group);
+        }
+        let group = group.min(self.draft.groups.len() - 1);
+        self.lamp = Place { group, lamp: lamp.min(self.draft.groups[group].len() - 1) };
+    }
+
+    /// A family that cannot be in the condition on the loop shows the healthy one.
+    fn keep_condition(&mut self) {
+        if self.answers.get(self.condition).is_none() {
+            self.condition = Condition::Healthy;
+        }
+    }
+
+    /// Takes what is typed as the set-up if it is one; else keeps the last valid one and says what is wrong.
+    fn reread(&mut self) {
+        self.edited = true;
+        self.notes.retain(|note| *note == Note::NothingKept);
+        match self.draft.read() {
+            Ok(setup) => match Answers::of(&setup) {
+                Ok(answers) => {
+                    self.faults.clear();
+                    self.setup = Rc::new(setup);
+                    self.answers = Rc::new(answers);
+                    self.keep_condition();
+                }
+                Err(error) => self.faults = vec![(Slot::SupplyHertz, Fault::Number(error))],
+            },
+            Err(faults) => self.faults = faults,
+        }
+    }
+}
+
+impl Reducible for Bench {
+    type Action = Msg;
+
+    fn reduce(self: Rc<Self>, msg: Msg) -> Rc<Self> {
+        Rc::new(Rc::unwrap_or_clone(self).after(msg))
+    }
+}

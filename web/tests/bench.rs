@@ -1,0 +1,199 @@
+//! The reducer, natively: what people type, and what becomes of it.
+#![cfg(not(target_arch = "wasm32"))]
+
+use lampladder_core::condition::Condition;
+use lampladder_core::detail::Detail;
+use lampladder_core::error::{Field, InputError};
+use lampladder_core::family::Family;
+use lampladder_core::lamp::Fill;
+use lampladder_core::quantity::QuantityError;
+use lampladder_core::setup::Setup;
+use lampladder_web::advice::{Advice, Caution, advice, cautions};
+use lampladder_web::bench::{Bench, Msg, Note, Part, Refused, Unsuitable};
+use lampladder_web::draft::{Fault, LampPart, Place, Slot};
+
+fn bench() -> Bench {
+    Bench::with(Setup::example().expect("in range")).expect("goes together")
+}
+
+fn typed(slot: Slot, text: &str) -> Msg {
+    Msg::Type(slot, text.to_owned())
+}
+
+fn lamp(part: LampPart) -> Slot {
+    Slot::Lamp(Place::default(), part)
+}
+
+fn after(messages: impl IntoIterator<Item = Msg>) -> Bench {
+    messages.into_iter().fold(bench(), Bench::after)
+}
+
+#[test]
+fn typing_gives_a_new_answer() {
+    let before = bench();
+    let after = after([typed(lamp(LampPart::Watts), "100 W"), typed(Slot::PlateWatts, "80")]);
+    assert!(!after.is_stale() && after.edited);
+    assert_eq!(after.setup.bank.groups()[0][0].rated_watts(), 100.0);
+    assert_eq!(after.setup.plate.watts(), 80.0);
+    let amps = |bench: &Bench| bench.answers.shown(Condition::Healthy).expect("settles").amps.value;
+    assert!(amps(&after) > amps(&before));
+}
+
+#[test]
+fn a_bad_number_is_kept_and_the_last_answer_stays() {
+    let before = bench();
+    for (text, fault) in [
+        ("", Fault::Text(QuantityError::Empty { field: Field::Volts })),
+        ("abc", Fault::Text(QuantityError::WrongUnit { field: Field::Volts })),
+        ("NaN", Fault::Text(QuantityError::WrongUnit { field: Field::Volts })),
+    ] {
+        let after = bench().after(typed(Slot::SupplyVolts, text));
+        assert_eq!(after.draft.text(Slot::SupplyVolts), text);
+        assert_eq!(after.fault(Slot::SupplyVolts), Some(&fault), "{text}");
+        assert_eq!((&after.setup, &after.answers), (&before.setup, &before.answers));
+    }
+    for text in ["0", "-5", "1e300"] {
+        let after = bench().after(typed(Slot::SupplyVolts, text));
+        let fault = after.fault(Slot::SupplyVolts);
+        assert!(matches!(fault, Some(Fault::Number(InputError::OutOfRange { .. }))), "{text}");
+        let mended = after.after(typed(Slot::SupplyVolts, "120"));
+        assert!(!mended.is_stale());
+        assert_eq!(mended.setup.supply.volts(), 120.0);
+    }
+}
+
+#[test]
+fn every_wrong_field_is_named_at_once() {
+    let after = after([
+        typed(Slot::SupplyVolts, "x"),
+        typed(lamp(LampPart::Watts), ""),
+        typed(Slot::PlateWatts, "-1"),
+        typed(Slot::PlatePowerFactor, "7"),
+    ]);
+    for slot in [Slot::SupplyVolts, lamp(LampPart::Watts), Slot::PlateWatts] {
+        assert!(after.fault(slot).is_some(), "{slot:?}");
+    }
+}
+
+#[test]
+fn lamps_are_added_beside_and_after_and_taken_out() {
+    let after =
+        after([Msg::AddParallel, typed(Slot::Lamp(Place { group: 0, lamp: 1 }, LampPart::Watts), "25")]);
+    let after = after.after(Msg::AddSeries);
+    let shape: Vec<usize> = after.setup.bank.groups().iter().map(Vec::len).collect();
+    assert_eq!((shape, after.lamp), (vec![2, 1], Place { group: 1, lamp: 0 }));
+    // A twin takes over what is printed.
+    assert_eq!(after.setup.bank.groups()[1][0].rated_watts(), 25.0);
+    let full = (0..9).fold(after.clone(), |bench, _| bench.after(Msg::AddSeries));
+    assert_eq!(full.setup.bank.lamp_count(), 8);
+    let one = (0..9).fold(full, |bench, _| bench.after(Msg::Remove));
+    assert_eq!((one.setup.bank.lamp_count(), one.lamp), (1, Place::default()));
+    assert!(!one.is_stale());
+}
+
+#[test]
+fn places_that_are_not_there_are_no_panic() {
+    let nowhere = Place { group: 7, lamp: 7 };
+    let messages = [
+        Msg::Choose(nowhere),
+        Msg::AddParallel,
+        Msg::AddSeries,
+        Msg::Remove,
+        Msg::AddPoint,
+        Msg::RemovePoint(3),
+        Msg::Fill(Some(Fill::Vacuum)),
+        typed(Slot::Lamp(nowhere, LampPart::Watts), "1"),
+        Msg::Step(Slot::Lamp(nowhere, LampPart::PointAmps(9)), true),
+    ];
+    assert_eq!(after(messages).setup, bench().setup);
+}
+
+#[test]
+fn unsuitable_lamps_do_not_enter_the_bank() {
+    let refused = bench().after(Msg::Refuse(Refused::Lamp(Unsuitable::Led)));
+    assert_eq!(refused.refused, Some(Refused::Lamp(Unsuitable::Led)));
+    assert_eq!((&refused.draft, refused.edited), (&bench().draft, false));
+    let halogen = refused.after(Msg::Fill(Some(Fill::Halogen)));
+    assert_eq!((halogen.refused, halogen.setup.bank.groups()[0][0].fill()), (None, Fill::Halogen));
+}
+
+#[test]
+fn measured_points_name_the_one_that_is_wrong() {
+    let point = |index| [LampPart::PointVolts(index), LampPart::PointAmps(index)].map(lamp);
+    let ([v0, a0], [v1, a1]) = (point(0), point(1));
+    let after = after([
+        Msg::AddPoint,
+        Msg::AddPoint,
+        typed(v0, "67"),
+        typed(a0, "0,16 A"),
+        typed(v1, "120"),
+        typed(a1, "19 A"),
+    ]);
+    assert!(after.fault(a1).is_some() && after.fault(a0).is_none() && after.fault(v1).is_none());
+    let mended = after.after(typed(a1, "190 mA"));
+    assert!(!mended.is_stale());
+    assert_eq!(mended.setup.bank.groups()[0][0].spec().points.len(), 2);
+}
+
+#[test]
+fn a_transformer_on_direct_current_is_refused_beside_the_frequency() {
+    let after = bench().after(typed(Slot::SupplyHertz, "0"));
+    let fault = after.fault(Slot::SupplyHertz);
+    assert!(matches!(fault, Some(Fault::Number(InputError::NeedsAlternating { .. }))));
+    let heater = after.after(Msg::Family(Family::Heater));
+    assert!(!heater.is_stale() && heater.setup.supply.is_direct());
+}
+
+#[test]
+fn class_defaults_of_another_family_wait_in_their_fields() {
+    let after = after([typed(Slot::Detail(Detail::CoreShare), "0.1"), Msg::Family(Family::Heater)]);
+    assert!(!after.is_stale());
+    let back = after.after(Msg::Family(Family::TransformerSupply));
+    assert_eq!(back.setup.plate.detail(Detail::CoreShare), 0.1);
+    let wrong = back.after(typed(Slot::Detail(Detail::CoreShare), "7"));
+    assert!(wrong.fault(Slot::Detail(Detail::CoreShare)).is_some());
+}
+
+#[test]
+fn every_family_answers_and_comes_back_from_its_text() {
+    for family in Family::ALL {
+        let after = bench().after(Msg::Family(family));
+        assert!(!after.is_stale(), "{family:?}: {:?}", after.faults);
+        let again = Bench::with((*after.setup).clone()).expect("goes together");
+        assert_eq!(again.draft.read().as_ref(), Ok(&*after.setup), "{family:?}");
+    }
+}
+
+#[test]
+fn lamps_for_another_supply_are_cautioned_about() {
+    let low = bench().after(typed(lamp(LampPart::Volts), "12"));
+    assert!(matches!(advice(&low.answers), Advice::BurnsOut(..)));
+    let over = bench().after(typed(Slot::SupplyVolts, "250"));
+    let found = cautions(&over.setup, &over.answers);
+    assert!(matches!(found[..], [Caution::OverRated { condition: Condition::Shorted, .. }]), "{found:?}");
+    assert!(cautions(&bench().setup, &bench().answers).is_empty());
+    assert!(matches!(advice(&bench().answers), Advice::Watch { .. }));
+}
+
+#[test]
+fn a_family_without_the_condition_on_the_loop_shows_healthy() {
+    let after = after([Msg::Show(Condition::Overloaded), Msg::Family(Family::Lamp)]);
+    assert_eq!(after.condition, Condition::Healthy);
+}
+
+#[test]
+fn what_arrives_replaces_what_was_typed_and_clears_old_notes() {
+    let edited =
+        after([typed(Slot::SupplyVolts, "x"), Msg::Tell(Note::FromLink), Msg::Tell(Note::NothingKept)]);
+    let arrived = edited.after(Msg::Arrive(Setup::example().expect("in range")));
+    assert_eq!((arrived.is_stale(), arrived.edited), (false, false));
+    assert_eq!(arrived.notes, [Note::NothingKept]);
+}
+
+#[test]
+fn editors_open_and_close() {
+    let open = after([Msg::Open(Part::Equipment), Msg::ChooseFamily]);
+    assert!(open.choosing);
+    let closed = open.after(Msg::Close);
+    assert_eq!((closed.open, closed.choosing), (None, false));
+}
