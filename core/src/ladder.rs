@@ -235,8 +235,8 @@ fn sensible_share(question: &Question<'_>) -> Result<f64, LadderError> {
     let points = steady::equilibria(question.supply, &bank, question.healthy)?;
     match steady::settled(&points) {
         Some(point) if point.mode == Mode::Off => Err(LadderError::NeverStarts { supply_volts }),
-        Some(point) => Ok(point.load_volts / supply_volts),
-        None => Ok(0.0),
+        Some(point) if search::runs(point) => Ok(point.load_volts / supply_volts),
+        _ => Ok(0.0),
     }
 }
 
