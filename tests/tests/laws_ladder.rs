@@ -330,15 +330,24 @@ fn an_exhaustive_search_of_small_stocks_finds_the_same_ladders() {
         small(&[(120.0, 60.0, 2.0), (120.0, 40.0, 2.0)]),
         small(&[(240.0, 25.0, 1.0), (220.0, 75.0, 2.0), (130.0, 60.0, 2.0)]),
     ];
+    // Every combination meets every other value somewhere: five stocks, three plates, four sets of limits.
+    let usual = LimitsSpec::default();
+    let limits = [
+        usual,
+        LimitsSpec { close_share: 0.0, ..usual },
+        LimitsSpec { growth: 1.6, close_share: 0.05, ..usual },
+        LimitsSpec { first_share: 0.5, holder_watts: 60.0, least_share: 0.0, ..usual },
+    ];
     let mut compared = 0;
-    for family in Family::ALL {
-        for watts in [12.0, 45.0, 180.0] {
-            for stock in &stocks {
+    for (row, family) in Family::ALL.into_iter().enumerate() {
+        for (column, watts) in [12.0, 45.0, 180.0].into_iter().enumerate() {
+            for (place, stock) in stocks.iter().enumerate() {
+                let spec = limits[(row + column + place) % limits.len()];
                 let case = Case {
                     supply: Supply::new(230.0, 50.0, 0.4).expect("a mains"),
                     stock: stock.clone(),
                     plate: Plate::new(family, 230.0, watts, None).expect("a plate"),
-                    limits: Limits::default(),
+                    limits: Limits::new(spec).expect("in range"),
                 };
                 compared += u32::from(compare(&case));
             }
@@ -352,7 +361,8 @@ fn compare(case: &Case) -> bool {
     let name = || {
         let lamps: Vec<_> =
             case.stock.kinds().iter().map(|kind| (kind.lamp().rated_watts(), kind.count())).collect();
-        format!("{} of {} W from {lamps:?}", case.plate.family().name(), case.plate.watts())
+        let (family, watts) = (case.plate.family().name(), case.plate.watts());
+        format!("{family} of {watts} W from {lamps:?} within {:?}", case.limits.spec())
     };
     let planned = ladder::plan(&case.supply, &case.stock, &case.plate, &case.limits);
     let best = exhaustive(case);
@@ -379,9 +389,9 @@ fn compare(case: &Case) -> bool {
             assert!(equal, "{}: {planned:?}, not {wanted:?}", name());
             true
         }
-        (Err(LadderError::FirstTooStrong { .. } | LadderError::NoLampFits { .. }), None) => false,
-        // Refused for what the equipment is, not for the stock.
-        (Err(LadderError::BeyondAnyBank { .. } | LadderError::Unsuitable { .. }), _) => false,
+        // Refused for the stock, or for what the equipment is.
+        (Err(LadderError::FirstTooStrong { .. } | LadderError::NoLampFits { .. }), None)
+        | (Err(LadderError::BeyondAnyBank { .. } | LadderError::Unsuitable { .. }), _) => false,
         (planned, best) => {
             panic!("{}: {planned:?}, not {:?}", name(), best.map(|best| best.len()))
         }
