@@ -9,11 +9,11 @@ use crate::lamp::{Lamp, Point};
 use crate::tungsten::STANDARD;
 
 /// Relative standard deviation of an ohmmeter reading of a cold lamp: 1 % of meter and 2 K of room.
-const COLD_OHMS_DEVIATION: f64 = 0.012;
+pub(crate) const COLD_OHMS_DEVIATION: f64 = 0.012;
 
 /// Relative standard deviation of a measured current at a measured voltage, both meters together, and what the
 /// model leaves out at low voltage (heat carried off by the leads).
-const POINT_DEVIATION: f64 = 0.02;
+pub(crate) const POINT_DEVIATION: f64 = 0.02;
 
 /// A direction without spread: its parameter was given as exact.
 const EXACT: f64 = 1e-9;

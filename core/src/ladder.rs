@@ -136,7 +136,7 @@ pub struct Ladder {
     /// The step after the last rung.
     pub full_mains: FullMains,
     /// Volts at healthy equipment behind the last rung over the supply's, where that is less than
-    /// [`LimitsSpec::least_share`]: good for finding a short, not for running the equipment.
+    /// [`LimitsSpec::least_share`], or 0 where it does not run: good for finding a short, not for running it.
     pub falls_short: Option<f64>,
     /// The single lamp that would improve the ladder most, if any does.
     pub missing: Option<Missing>,
@@ -220,7 +220,7 @@ pub fn plan(supply: &Supply, stock: &Stock, plate: &Plate, limits: &Limits) -> R
             last_short_amps,
             decision: Decision::Persons,
         },
-        falls_short: (path.share < least).then_some(path.share),
+        falls_short: (path.share < least || path.share == 0.0).then_some(path.share),
         missing,
     })
 }
@@ -235,8 +235,8 @@ fn sensible_share(question: &Question<'_>) -> Result<f64, LadderError> {
     let points = steady::equilibria(question.supply, &bank, question.healthy)?;
     match steady::settled(&points) {
         Some(point) if point.mode == Mode::Off => Err(LadderError::NeverStarts { supply_volts }),
-        Some(point) => Ok(point.load_volts / supply_volts),
-        None => Ok(0.0),
+        Some(point) if search::runs(point) => Ok(point.load_volts / supply_volts),
+        _ => Ok(0.0),
     }
 }
 

@@ -271,3 +271,45 @@ pub struct Behaviour {
 pub fn equipment_behaviour() -> Vec<Behaviour> {
     rows("equipment_behaviour.csv")
 }
+
+/// A row of [`appliance_test`].
+#[derive(Debug, Clone, Deserialize)]
+pub struct ApplianceLimit {
+    /// What is measured.
+    pub quantity: String,
+    /// Of which equipment.
+    pub equipment: String,
+    /// The limit, in `unit`.
+    pub limit: f64,
+    /// Its unit, written out.
+    pub unit: String,
+    /// `min`, `max`, or `add` for what a further length of lead adds.
+    pub sense: String,
+    /// How far the row is to be trusted.
+    pub status: String,
+}
+
+/// Limits of EN 50678 / EN 50699, published second hand: check the standard and your local code.
+pub fn appliance_test() -> Vec<ApplianceLimit> {
+    rows("limits_appliance_test.csv")
+}
+
+/// A row of [`capacitor_discharge`].
+#[derive(Debug, Clone, Deserialize)]
+pub struct DischargeRow {
+    /// The standard that it is quoted from.
+    pub standard: String,
+    /// Where it holds.
+    pub condition: String,
+    /// Volts.
+    pub limit: f64,
+    /// Seconds within which it holds.
+    pub seconds: f64,
+    /// How far the row is to be trusted.
+    pub status: String,
+}
+
+/// Voltages of capacitors after switching off, and when the standards want them; status in each row.
+pub fn capacitor_discharge() -> Vec<DischargeRow> {
+    rows("limits_capacitor_discharge.csv")
+}

@@ -18,7 +18,7 @@ use super::limits::Limits;
 use super::pool::{Candidate, Pool};
 use crate::bank::Bank;
 use crate::lamp::Lamp;
-use crate::load::{Load, Mode};
+use crate::load::Load;
 use crate::plate::Plate;
 use crate::steady::{self, Equilibrium, SteadyError};
 use crate::stock::Stock;
@@ -95,10 +95,15 @@ impl Question<'_> {
         }
     }
 
-    /// Where healthy equipment settles behind a bank, if it runs there.
-    pub(super) fn running(&self, bank: &Bank) -> Result<Option<Equilibrium>, SteadyError> {
+    /// Where healthy equipment settles behind a bank, if it does.
+    fn settled(&self, bank: &Bank) -> Result<Option<Equilibrium>, SteadyError> {
         let points = steady::equilibria(self.supply, bank, self.healthy)?;
-        Ok(steady::settled(&points).filter(|point| point.mode != Mode::Off).cloned())
+        Ok(steady::settled(&points).cloned())
+    }
+
+    /// The same, if it runs there.
+    pub(super) fn running(&self, bank: &Bank) -> Result<Option<Equilibrium>, SteadyError> {
+        Ok(self.settled(bank)?.filter(runs))
     }
 
     /// The least wiring of the rungs up to and with each reachable bank.
@@ -194,16 +199,17 @@ impl Question<'_> {
     /// Amperes and volts of the weakest imagined lamp behind which healthy equipment gets `wanted` volts.
     fn weakest_enough(&self, wanted: f64) -> Result<Option<(f64, f64)>, SteadyError> {
         let (mut low, mut high) = (libm::log(LEAST_WATTS), libm::log(MOST_WATTS));
-        let Some(mut enough) = self.behind(high)?.filter(|point| point.load_volts >= wanted) else {
+        let enough = |point: &Equilibrium| runs(point) && point.load_volts >= wanted;
+        let Some(mut weakest) = self.behind(high)?.filter(enough) else {
             return Ok(None);
         };
         let mut short_of = None;
         for _ in 0..HALVINGS {
             let middle = f64::midpoint(low, high);
             match self.behind(middle)? {
-                Some(point) if point.load_volts >= wanted => {
+                Some(point) if enough(&point) => {
                     high = middle;
-                    enough = point;
+                    weakest = point;
                 }
                 other => {
                     low = middle;
@@ -212,14 +218,14 @@ impl Question<'_> {
             }
         }
         // Where it comes to run in another way at this very lamp, what counts is the point at which it does so.
-        let edge = short_of.filter(|point| point.mode != enough.mode).unwrap_or(enough);
+        let edge = short_of.filter(|point| point.mode != weakest.mode).unwrap_or(weakest);
         Ok(Some((edge.amps, edge.bank_volts)))
     }
 
-    /// Where healthy equipment runs behind an imagined lamp for the supply's volts.
+    /// Where healthy equipment settles behind an imagined lamp for the supply's volts.
     fn behind(&self, ln_watts: f64) -> Result<Option<Equilibrium>, SteadyError> {
         let lamp = Lamp::new(self.supply.volts(), libm::exp(ln_watts))?;
-        self.running(&Bank::single(lamp))
+        self.settled(&Bank::single(lamp))
     }
 
     /// The rungs up to the bank `last`.
@@ -244,6 +250,12 @@ impl Question<'_> {
         rungs.reverse();
         rungs
     }
+}
+
+/// Whether equipment runs at a point: a converter that stays off, a motor that stands and a degauss thermistor that
+/// starves the set beside it do not.
+pub(super) const fn runs(point: &Equilibrium) -> bool {
+    !point.mode.is_first()
 }
 
 /// Whether the current of one bank is no more than `growth` times that of the one below.
