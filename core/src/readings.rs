@@ -25,11 +25,11 @@ mod meter;
 mod waveform;
 
 pub use contradiction::{Contradiction, MOST_DEVIATIONS, Refused, Rule};
-pub use coverage::{Estimate, factor as coverage_factor};
+pub use coverage::{Estimate, combined, factor as coverage_factor};
 pub use found::{Found, interpret};
 pub use growth::growth;
 pub use meter::{Kind, Meter, MeterSpec, Reading, Response};
-pub use waveform::{HALF_WAVE_FACTOR, Waveform, current_factor, load_volts_factor};
+pub use waveform::{HALF_WAVE_FACTOR, Waveform, current_factor, half_wave_load_factor, load_volts_factor};
 
 use crate::error::{Field, InputError, within};
 use crate::glow::GlowWord;
@@ -62,6 +62,16 @@ impl Look {
             }
             Self::Kelvin(kelvin) => (kelvin, GLANCE * kelvin),
         }
+    }
+
+    /// Least and greatest temperature that may look so, by so many `deviations` of a glance, kelvin.
+    pub(crate) fn ends(self, rated_kelvin: f64, deviations: f64) -> [f64; 2] {
+        let (low, high) = match self {
+            Self::Word(word) => word.kelvins(rated_kelvin),
+            Self::Kelvin(kelvin) => (kelvin, kelvin),
+        };
+        let by = GLANCE * deviations;
+        [low * (1.0 - by), high * (1.0 + by)].map(|end| end.clamp(AMBIENT_KELVIN, HIGHEST_KELVIN))
     }
 }
 

@@ -1,7 +1,7 @@
 //! How honest the stated weights are, over many made-up benches.
 
 use lampladder_core::diagnosis::{self, Candidate, Forecast};
-use lampladder_core::readings::{self, Kind, Readings, Response};
+use lampladder_core::readings::{self, Kind, Readings, Response, Rule};
 
 use crate::simulated::{self, Panel, Random};
 
@@ -49,7 +49,7 @@ pub struct Tally {
     /// Benches called unexplained although they were not.
     pub unexplained: usize,
     /// Readings refused although they belonged together.
-    pub refused: usize,
+    pub refused: Vec<Rule>,
     /// 95 % bands of current and power: how many there were, and how many held the truth.
     pub amps: (usize, usize),
     /// The same of power.
@@ -76,7 +76,7 @@ pub fn tally(start: u64, benches: usize) -> Tally {
             if let Some(point) = &truth.settled {
                 let growth = readings::growth(setup.plate.family());
                 match readings::interpret(&setup.bank, &exact.some(&mut random), growth) {
-                    Err(_) => tally.refused += 1,
+                    Err(refused) => tally.refused.push(refused.contradictions[0].rule),
                     Ok(found) => {
                         for (estimate, exact, count) in [
                             (found.amps, point.amps, &mut tally.amps),
@@ -179,7 +179,12 @@ impl Tally {
         );
         println!(
             "  of {} benches {} wrongly unexplained, {} wrongly refused",
-            self.benches, self.unexplained, self.refused
+            self.benches,
+            self.unexplained,
+            self.refused.len()
         );
+        for rule in &self.refused {
+            println!("  {rule:?}");
+        }
     }
 }

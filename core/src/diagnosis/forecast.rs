@@ -12,7 +12,9 @@ use crate::condition::Condition;
 use crate::family::Family;
 use crate::load::{Load, Mode};
 use crate::plate::Plate;
-use crate::readings::{HALF_WAVE_FACTOR, Kind, Reading, Response, current_factor, load_volts_factor};
+use crate::readings::{
+    HALF_WAVE_FACTOR, Kind, Reading, Response, current_factor, half_wave_load_factor, load_volts_factor,
+};
 use crate::setup::Setup;
 use crate::steady::{self, Sketch, Sketched, SteadyError, Warm};
 use crate::supply::Supply;
@@ -259,7 +261,9 @@ impl Solved<'_> {
         let pulses = |half_angle: f64| (current_factor(half_angle), load_volts_factor(half_angle));
         match self.load {
             _ if self.supply.is_direct() || point.amps <= 0.0 => (1.0, 1.0),
-            Load::HalfShort(_) => (HALF_WAVE_FACTOR, 1.0),
+            Load::HalfShort(short) => {
+                (HALF_WAVE_FACTOR, half_wave_load_factor(short.ohms() * point.amps / point.bank_volts))
+            }
             Load::Rectifier(rectifier) => {
                 let crest = rectifier.open_volts(self.supply.volts(), self.supply.hertz()).max(1.0);
                 pulses(libm::acos((point.load_dc_volts.unwrap_or(0.0) / crest).clamp(0.0, 1.0)))

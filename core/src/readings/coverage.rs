@@ -75,6 +75,23 @@ impl Gathered {
     }
 }
 
+/// The uncertainty of a `value` from what each independent cause does to it: the excess kurtosis of the cause (0 normal,
+/// -1.2 rectangular), and the values that one standard uncertainty up and down gives. An end that is no number is passed
+/// over with its cause.
+///
+/// ```
+/// use lampladder_core::readings::combined;
+/// let estimate = combined(10.0, &[(0.0, [13.0, 7.0]), (0.0, [14.0, 6.0])]);
+/// assert_eq!(estimate.deviation, 5.0);
+/// ```
+pub fn combined(value: f64, causes: &[(f64, [f64; 2])]) -> Estimate {
+    let mut gathered = Gathered::around(value);
+    for &(kurtosis, ends) in causes {
+        gathered.cause(kurtosis, ends);
+    }
+    gathered.estimate()
+}
+
 /// A value with its standard uncertainty and its 95 % interval.
 #[derive(Debug, Clone, Copy, PartialEq)]
 pub struct Estimate {

@@ -2,7 +2,7 @@
 
 use alloc::vec::Vec;
 
-use super::contradiction::{Contradiction, Refused, Rule};
+use super::contradiction::{Contradiction, MOST_DEVIATIONS, Refused, Rule};
 use super::coverage::{Estimate, Gathered};
 use super::inputs::{Banks, Inputs, Place, Values, Weights};
 use super::{Kind, Readings};
@@ -195,14 +195,16 @@ fn contradictions(bank: &Bank, readings: &Readings, all: &Gathering) -> Vec<Cont
         libm::fabs(value(Place::AmpsApart)),
         all.deviation(Place::AmpsApart),
     ));
-    let measured = if lamps.is_nan() { meter } else { lamps };
-    let glow = value(Place::GlowAmps);
-    let glow_deviation = libm::hypot(
-        all.deviation(Place::GlowAmps),
-        all.deviation(if lamps.is_nan() { Place::MeterAmps } else { Place::LampAmps }),
-    );
-    let gap = libm::fabs(measured - glow);
-    found.extend(Contradiction::check(Rule::GlowAgrees, measured, glow, gap, glow_deviation));
+    let (measured, by) = if lamps.is_nan() { (meter, Place::MeterAmps) } else { (lamps, Place::LampAmps) };
+    if let Some(look) = readings.look() {
+        // A word is a range, so far from a normal distribution that its ends count, not its deviation.
+        let rated_kelvin = bank.groups()[0][0].rated_kelvin();
+        let [least, most] =
+            look.ends(rated_kelvin, MOST_DEVIATIONS).map(|end| bank.at_hottest_kelvin(end).amps);
+        let gap = (measured - most).max(least - measured);
+        let right = value(Place::GlowAmps);
+        found.extend(Contradiction::check(Rule::GlowAgrees, measured, right, gap, all.deviation(by)));
+    }
     let watts = value(Place::MeterWatts);
     let three_watts = value(Place::ThreeWatts);
     found.extend(Contradiction::check(

@@ -4,7 +4,7 @@
 //! bank, equipment with a rectifier and reservoir takes its current in pulses, `cos phi - cos theta` over a conduction
 //! angle of `2 theta`, and its voltage is a sinusoid clipped at the reservoir: both averages are closed forms.
 
-use core::f64::consts::{FRAC_1_SQRT_2, FRAC_PI_2, PI, SQRT_2};
+use core::f64::consts::{FRAC_PI_2, PI, SQRT_2};
 
 use crate::load::Pulse;
 
@@ -56,7 +56,14 @@ pub fn load_volts_factor(half_angle: f64) -> f64 {
 }
 
 /// True RMS over what an averaging meter shows where only one half wave passes: `sqrt 2`.
-pub const HALF_WAVE_FACTOR: f64 = 2.0 * FRAC_1_SQRT_2;
+pub const HALF_WAVE_FACTOR: f64 = SQRT_2;
+
+/// The same of the equipment's voltage there: one half wave in full, the other divided between the equipment's resistance
+/// and the bank's, whose ratio is `share`.
+pub fn half_wave_load_factor(share: f64) -> f64 {
+    let divided = share.max(0.0) / (1.0 + share.max(0.0));
+    SQRT_2 * libm::sqrt(1.0 + divided * divided) / (1.0 + divided)
+}
 
 #[cfg(test)]
 mod tests {
