@@ -43,8 +43,11 @@ pub mod panels;
 pub mod parts;
 mod reading;
 mod reduce;
+pub mod replay;
 pub mod start;
 pub mod step;
+pub mod story;
+pub mod theatre;
 pub mod words;
 
 use app::{App, AppProps};
