@@ -15,6 +15,9 @@ pub struct Numerals {
 /// Between a number and its unit: a space that does not break.
 const GAP: char = '\u{a0}';
 
+/// Volts and amperes below this are none: no bench meter shows them.
+const NOTHING: f64 = 5e-5;
+
 /// Most decimals that are ever written.
 const MOST_PLACES: i32 = 9;
 
@@ -92,6 +95,7 @@ impl Numerals {
     ///
     /// The first seconds have no band of their own: cold lamps, and reservoirs, differ by that much.
     pub fn about(self, value: f64, unit: &str) -> String {
+        let value = if value.abs() < NOTHING { 0.0 } else { value };
         self.value(&Band { value, low: value * 0.9, high: value * 1.1 }, unit)
     }
 
@@ -211,9 +215,13 @@ mod tests {
 
     #[test]
     fn what_is_known_to_a_tenth_has_two_digits() {
-        for (value, text) in
-            [(5.274, "5.3\u{a0}A"), (0.1523, "0.15\u{a0}A"), (0.0213, "21\u{a0}mA"), (813.2, "810\u{a0}A")]
-        {
+        for (value, text) in [
+            (5.274, "5.3\u{a0}A"),
+            (0.1523, "0.15\u{a0}A"),
+            (0.0213, "21\u{a0}mA"),
+            (813.2, "810\u{a0}A"),
+            (1e-9, "0\u{a0}mA"),
+        ] {
             assert_eq!(ENGLISH.about(value, "A"), text);
         }
         for (seconds, text) in

@@ -7,7 +7,7 @@ use lampladder_core::condition::Condition;
 use lampladder_core::family::Family;
 use lampladder_core::fuse::Standard;
 use lampladder_core::setup::Setup;
-use lampladder_core::switch_on::{Moment, Options, Progress, Run, SwitchOn, SwitchOnError};
+use lampladder_core::switch_on::{Energy, Moment, Options, Progress, Run, Sample, SwitchOn, SwitchOnError};
 
 /// When in the mains cycle the switch closes.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -281,8 +281,26 @@ fn go_on(
     };
     match run.advance(steps)? {
         Progress::Done => Ok(job.run.take().map(Run::finish)),
-        Progress::Reached(seconds) if seconds >= until => Ok(Some(run.clone().finish())),
+        Progress::Reached(seconds) if seconds >= until => Ok(Some(so_far(run.samples()))),
         _ => Ok(None),
+    }
+}
+
+/// A run of which nothing is known yet but what there is to see.
+fn so_far(samples: &[Sample]) -> SwitchOn {
+    SwitchOn {
+        switch_degrees: 0.0,
+        peak_amps: 0.0,
+        peak_seconds: 0.0,
+        i2t_amp2_seconds: 0.0,
+        settle_seconds: None,
+        samples: samples.to_vec(),
+        asked: Vec::new(),
+        heating: Vec::new(),
+        starts: Vec::new(),
+        energy: Energy::default(),
+        steps: 0,
+        evaluations: 0,
     }
 }
 

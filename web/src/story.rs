@@ -64,8 +64,6 @@ pub enum Cause {
     Speed,
     /// Heaters, or another lamp, become hot.
     Heaters,
-    /// The equipment takes next to nothing of the voltage.
-    TakesNoVolts,
     /// No current flows.
     NoCurrent,
 }
@@ -80,8 +78,6 @@ const GAIN: f64 = 0.1;
 const WARMED: f64 = 100.0;
 /// A reservoir's rise that does, over its last volts.
 const FILLED: f64 = 0.1;
-/// The equipment's volts, over the supply's, that are next to nothing.
-const NO_VOLTS: f64 = 0.15;
 /// A current that no lamp shows, amperes.
 const NO_AMPS: f64 = 1e-3;
 
@@ -94,8 +90,8 @@ pub struct Told {
     pub cause: Option<Cause>,
 }
 
-/// The story of a run behind these lamps, in the order of the bank, on a supply of `volts`.
-pub fn tell(run: &SwitchOn, lamps: &[&Lamp], volts: f64) -> Option<Told> {
+/// The story of a run behind these lamps, in the order of the bank.
+pub fn tell(run: &SwitchOn, lamps: &[&Lamp]) -> Option<Told> {
     let (first, last) = (run.samples.first()?, run.samples.last()?);
     let nearest = |lamp: usize| {
         let hottest = run.samples.iter().filter_map(|sample| sample.lamp_kelvin.get(lamp).copied());
@@ -119,9 +115,7 @@ pub fn tell(run: &SwitchOn, lamps: &[&Lamp], volts: f64) -> Option<Told> {
         Story::Dark => (last.amps_rms < NO_AMPS).then_some(Cause::NoCurrent),
         Story::Pulses { .. } => Some(Cause::Hunting),
         Story::Dims { .. } | Story::Dips { .. } => dimming(run, at_peak, last),
-        Story::Steady { .. } | Story::Rising { .. } => {
-            (last.load_volts_rms < NO_VOLTS * volts).then_some(Cause::TakesNoVolts)
-        }
+        Story::Steady { .. } | Story::Rising { .. } => None,
     };
     Some(Told { story, cause })
 }
@@ -258,7 +252,7 @@ mod tests {
         let options = Options { seconds, ..Options::default() };
         let run = simulate(&setup.supply, &setup.bank, &load, &options).expect("runs");
         let lamps: Vec<&Lamp> = setup.bank.groups().iter().flatten().collect();
-        (tell(&run, &lamps, 230.0).expect("a story"), run)
+        (tell(&run, &lamps).expect("a story"), run)
     }
 
     #[test]
@@ -273,7 +267,7 @@ mod tests {
             matches!(shorted.story, Story::Steady { word: GlowWord::Full, seconds } if seconds < 0.2),
             "{shorted:?}"
         );
-        assert_eq!(shorted.cause, Some(Cause::TakesNoVolts));
+        assert_eq!(shorted.cause, None);
         assert!(!alike(&radio.story, &shorted.story) && alike(&radio.story, &radio.story));
         let valves = told(Family::ValveTransformer, Condition::Healthy, 3.0).0;
         assert!(matches!(valves.story, Story::Dims { still: true, .. }), "{valves:?}");

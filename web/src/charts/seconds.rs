@@ -26,18 +26,20 @@ const APART: f64 = 12.0;
 
 /// Times that may be marked, seconds.
 const TIMES: [f64; 10] = [0.02, 0.1, 0.3, 1.0, 2.0, 3.0, 5.0, 10.0, 20.0, 30.0];
-/// How far apart marks must be, over the width.
-const BETWEEN: f64 = 0.11;
+/// How far apart marks must be, over the width, to have room for their texts.
+const BETWEEN: f64 = 0.12;
+/// The same in a table or a strip of moments.
+pub const IN_A_TABLE: f64 = 0.09;
 
 type Area = DrawingArea<CanvasBackend, Shift>;
 type Failure = DrawingAreaErrorKind<<CanvasBackend as DrawingBackend>::ErrorType>;
 type Line = Vec<(f64, f64)>;
 
-/// Times to mark on a scale that ends at `end`, none upon another.
-pub fn marks(end: f64) -> Vec<f64> {
+/// Times to mark on a scale that ends at `end`, so far apart over its width.
+pub fn marks(end: f64, between: f64) -> Vec<f64> {
     let mut all: Vec<f64> = Vec::new();
     for time in TIMES.into_iter().rev().filter(|time| *time <= end) {
-        let room = |other: &f64| place(*other, end) - place(time, end) >= BETWEEN;
+        let room = |other: &f64| place(*other, end) - place(time, end) >= between;
         if all.last().is_none_or(room) {
             all.push(time);
         }
@@ -115,7 +117,7 @@ impl Strip<'_> {
     fn ground(&self, name: &str, end: f64, named_times: bool) -> Result<(), Failure> {
         let (ink, numerals) = (self.ink, self.words.numerals);
         let thin = ink.line.stroke_width(self.frame.pixels(0.8));
-        for time in marks(end) {
+        for time in marks(end, BETWEEN) {
             let x = place(time, end);
             self.path(&[(x, 0.0), (x, self.most)], thin)?;
             if named_times {
@@ -173,7 +175,7 @@ mod tests {
     #[test]
     fn marks_stand_apart() {
         for end in [0.5, 3.0, 10.0, 30.0] {
-            let marks = marks(end);
+            let marks = marks(end, BETWEEN);
             assert!(marks.len() > 2, "{marks:?}");
             assert!(marks.windows(2).all(|pair| place(pair[1], end) - place(pair[0], end) >= BETWEEN));
         }

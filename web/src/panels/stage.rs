@@ -11,7 +11,7 @@ use yew::{Callback, InputEvent, MouseEvent, NodeRef};
 use crate::bench::Bench;
 use crate::browser::frames::Frames;
 use crate::browser::input;
-use crate::charts::seconds::marks;
+use crate::charts::seconds::{IN_A_TABLE, marks};
 use crate::describe::full;
 use crate::parts::el::{El, button, drawing, el};
 use crate::parts::svg::n;
@@ -162,7 +162,7 @@ pub(super) fn controls(bench: &Bench, theatre: &Theatre, hand: &Hand) -> El {
     let (name, sign) = if theatre.playing {
         (texts.pause, "M7 5 V19 M17 5 V19")
     } else if theatre.is_over() {
-        (texts.again, "M5 12 a7 7 0 1 0 3 -5.7 M4 4 L8 6.500 L5.500 10.500")
+        (texts.again, "M19 12 a7 7 0 1 1 -2.200 -5.100 L19 9 M19 3.500 V9 H13.500")
     } else {
         (texts.play, "M7 4.5 L19 12 L7 19.5 Z")
     };
@@ -177,8 +177,8 @@ pub(super) fn controls(bench: &Bench, theatre: &Theatre, hand: &Hand) -> El {
     let typed = {
         let hand = hand.clone();
         Callback::from(move |event: InputEvent| {
-            let Some(value) = input::text(&event).and_then(|text| text.parse::<f64>().ok()) else { return };
-            hand.act(|theatre| theatre.seek(time(value / STEPS, theatre.end())));
+            let Some(value) = input::text(&event).and_then(|text| text.parse::<u16>().ok()) else { return };
+            hand.act(|theatre| theatre.seek(time(f64::from(value) / STEPS, theatre.end())));
         })
     };
     let value = (place(theatre.seconds, end) * STEPS).round();
@@ -218,7 +218,7 @@ pub(super) fn chart(bench: &Bench, theatre: &Theatre, canvas: &NodeRef) -> El {
 /// A replay that does not move: some moments of both, side by side; a tap shows one in large.
 pub(super) fn strip(bench: &Bench, theatre: &Theatre, hand: &Hand) -> Option<El> {
     let work = theatre.work()?;
-    let all = marks(theatre.end());
+    let all = marks(theatre.end(), IN_A_TABLE);
     let skipped = all.len().saturating_sub(MOMENTS);
     let frames = all.into_iter().skip(skipped).map(|seconds| {
         let small = work.scenes.iter().enumerate().map(|(index, scene)| {

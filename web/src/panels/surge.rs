@@ -6,7 +6,7 @@ use lampladder_core::switch_on::{MAINS_OHMS, SwitchOn};
 use super::stage::lamps;
 use super::switch_on::wish;
 use crate::bench::{Bench, BenchHandle};
-use crate::charts::seconds::marks;
+use crate::charts::seconds::{IN_A_TABLE, marks};
 use crate::parts::choice::{Choice, choices};
 use crate::parts::el::{El, button, el, truth};
 use crate::parts::table::{row_head, table, whole};
@@ -36,11 +36,8 @@ fn figures(bench: &Bench, work: &Work) -> El {
     let heat = |run: &SwitchOn| numerals.about(run.i2t_amp2_seconds, "A²s");
     let last = |scene: &Scene| scene.whole()?.samples.last().cloned();
     let mut rows = vec![
-        row(texts.peak, &|scene| {
-            let run = scene.whole()?;
-            let after = (texts.after)(&numerals.duration(run.peak_seconds));
-            Some(format!("{}, {after}", numerals.about(run.peak_amps, "A")))
-        }),
+        row(texts.peak, &|scene| Some(numerals.about(scene.whole()?.peak_amps, "A"))),
+        row(texts.peak_after, &|scene| Some(numerals.duration(scene.whole()?.peak_seconds))),
         row(texts.heat, &|scene| scene.whole().map(heat)),
         row(texts.settles, &|scene| {
             let settled = scene.whole()?.settle_seconds.map(|seconds| numerals.duration(seconds));
@@ -81,7 +78,7 @@ fn moments(bench: &Bench, work: &Work) -> El {
     let words = bench.words();
     let texts = words.replay;
     let lamps = lamps(bench);
-    let rows = marks(work.ask.seconds).into_iter().map(|seconds| {
+    let rows = marks(work.ask.seconds, IN_A_TABLE).into_iter().map(|seconds| {
         let cell = |scene: &Scene| {
             let run =
                 scene.run().filter(|run| run.samples.last().is_some_and(|last| last.seconds >= seconds));

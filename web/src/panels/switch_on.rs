@@ -167,7 +167,7 @@ fn told(bench: &Bench, scenes: &[Scene; 2]) -> Option<Vec<El>> {
             lines.push(el("p").class("caution").with(name).text(": ").text(text).text("."));
             continue;
         }
-        let told = tell(scene.run()?, &lamps, bench.setup.supply.volts())?;
+        let told = tell(scene.run()?, &lamps)?;
         stories[index] = Some(told);
         let cause = told.cause.map_or_else(String::new, |cause| format!(": {}", (texts.cause)(cause)));
         lines.push(el("p").with(name).text(": ").text((texts.story)(&told.story)).text(cause).text("."));
@@ -184,7 +184,12 @@ fn told(bench: &Bench, scenes: &[Scene; 2]) -> Option<Vec<El>> {
 fn conditions(bench: &BenchHandle) -> El {
     let words = bench.words();
     let now = Ask::of(&bench.wish, &bench.setup, bench.condition).fault;
-    let all = bench.setup.plate.family().conditions().iter().copied();
+    let family = bench.setup.plate.family().conditions();
+    // The first ones are in view before the row is dragged: those that a repairer fears most.
+    let feared = [Condition::Shorted, Condition::Overloaded, Condition::Stalled];
+    let first = feared.into_iter().filter(|condition| family.contains(condition));
+    let rest = family.iter().copied().filter(|condition| !feared.contains(condition));
+    let all = first.chain(rest);
     let choice = |condition: Condition| Choice {
         text: (words.condition)(condition).to_owned(),
         chosen: condition == now,

@@ -75,7 +75,7 @@ pub struct ReplayWords {
     /// Peak current.
     pub peak: &'static str,
     /// When it flows.
-    pub after: fn(&str) -> String,
+    pub peak_after: &'static str,
     /// The squared current's integral.
     pub heat: &'static str,
     /// When it settles.

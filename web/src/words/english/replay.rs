@@ -19,7 +19,6 @@ pub(super) static REPLAY: ReplayWords = ReplayWords {
         Cause::Reservoir => "its reservoir fills",
         Cause::Speed => "the motor gains speed",
         Cause::Heaters => "its filaments warm up",
-        Cause::TakesNoVolts => "the lamp takes almost all of the voltage",
         Cause::NoCurrent => "no current flows",
     },
     stopped: |error, lamp| match error {
@@ -34,16 +33,16 @@ pub(super) static REPLAY: ReplayWords = ReplayWords {
         }
         _ => String::from("cannot be worked out with these numbers"),
     },
-    alike: "They look alike behind these lamps: a meter tells more, or larger lamps.",
+    alike: "They look alike behind these lamps: use a meter, or larger lamps.",
     assumes: |played| {
         let when = match played.closing {
-            Some(Closing::Crest) => ", switched on at the crest of the voltage",
-            Some(Closing::Zero) => ", switched on at the zero of the voltage",
-            Some(Closing::Worst) => ", switched on at the worst moment",
+            Some(Closing::Crest) => " at the crest",
+            Some(Closing::Zero) => " at zero volts",
+            Some(Closing::Worst) => " at the worst moment",
             None => "",
         };
         format!(
-            "Assumes {}, {} {} that takes what its plate says, everything cold, lamps as printed{when}.",
+            "Assumes {}, {} {}, lamps as printed, cold start{when}.",
             played.supply, played.size, played.family
         )
     },
@@ -61,16 +60,16 @@ pub(super) static REPLAY: ReplayWords = ReplayWords {
                   stretched at the beginning, where most happens.",
     slow: "Slow to 0.5 s",
     speed: "Speed",
-    closes: "When the switch closes",
+    closes: "Where in the mains cycle it is switched on",
     closing: |closing| match closing {
-        Closing::Crest => "At the crest",
-        Closing::Zero => "At zero",
-        Closing::Worst => "Worst moment",
+        Closing::Crest => "Crest",
+        Closing::Zero => "Zero",
+        Closing::Worst => "Worst",
     },
     span: "How long",
     surge: "The surge in figures",
     peak: "Peak current",
-    after: |seconds| format!("after {seconds}"),
+    peak_after: "It flows after",
     heat: "I²t of the first 0.1 s",
     settles: "Steady after",
     unsettled: |seconds| format!("not within {seconds}"),
@@ -85,8 +84,8 @@ pub(super) static REPLAY: ReplayWords = ReplayWords {
     same: "the same",
     straight_means: |ohms| {
         format!(
-            "Straight on the mains assumes {ohms} of wiring and no fuse. Cold lamps, wiring and reservoirs differ: \
-             two digits are the most that can be said."
+            "The equipment takes just what its plate says. Straight on the mains assumes {ohms} of wiring and no \
+             fuse. Cold lamps, wiring and reservoirs differ: two digits are the most that can be said."
         )
     },
     time_column: "After",
@@ -154,10 +153,10 @@ fn story(story: &Story) -> String {
             format!("pulses about every {}, up to {}", about(seconds), glow(bright))
         }
         Story::Steady { word, seconds } if seconds <= AT_ONCE => {
-            format!("{} almost at once, and stays so", glow(word))
+            format!("{} at once, and stays", glow(word))
         }
         Story::Steady { word, seconds } if seconds <= SLOW => {
-            format!("comes up to {} within about {}, and stays so", glow(word), about(seconds))
+            format!("{} within {}, and stays", glow(word), about(seconds))
         }
         Story::Steady { word, seconds } => {
             format!("rises slowly to {}, over about {}", glow(word), about(seconds))
@@ -167,13 +166,13 @@ fn story(story: &Story) -> String {
             format!("{} flash of about {}, then {}", a(bright), about(seconds), glow(then))
         }
         Story::Dims { bright, then, seconds, still: false } => {
-            format!("{} first, dims slowly to {} over about {}", glow(bright), glow(then), about(seconds))
+            format!("{}, dims to {} over about {}", glow(bright), glow(then), about(seconds))
         }
         Story::Dims { bright, then, .. } => {
-            format!("{} first, dims slowly to {} and is still dimming at the end", glow(bright), glow(then))
+            format!("{}, dims to {} and goes on dimming", glow(bright), glow(then))
         }
         Story::Dips { bright, dim, seconds, then } => format!(
-            "{} first, dims to {} by about {}, then comes up to {}",
+            "{}, dims to {} by about {}, then comes up to {}",
             glow(bright),
             glow(dim),
             about(seconds),
@@ -193,7 +192,7 @@ mod tests {
             Story::Dims { bright: GlowWord::Orange, then: GlowWord::Dark, seconds: 0.23, still: false };
         assert_eq!(story(&flash), "an orange flash of about 0.23\u{a0}s, then dark");
         let short = Story::Steady { word: GlowWord::Full, seconds: 0.06 };
-        assert_eq!(story(&short), "full almost at once, and stays so");
+        assert_eq!(story(&short), "full at once, and stays");
         let hunting = Story::Pulses { seconds: Some(0.8), bright: GlowWord::Amber };
         assert_eq!(story(&hunting), "pulses about every 0.8\u{a0}s, up to amber");
         for text in
