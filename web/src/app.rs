@@ -15,6 +15,7 @@ use crate::panels::details::details;
 use crate::panels::frame::{CAUTIONS_BUTTON, header, notes, tabs};
 use crate::panels::send;
 use crate::panels::sheet::Sheet;
+use crate::panels::switch_on::switch_on;
 use crate::panels::voltage_bar::voltage_bar;
 use crate::parts::el::{button, el, several};
 use lampladder_core::link;
@@ -102,6 +103,7 @@ fn page(bench: &BenchHandle) -> Html {
     }
     let (class, panel) = match bench.tab {
         Tab::Expect => ("page on-expect", details(bench)),
+        Tab::SwitchOn => ("page on-switch-on", switch_on(bench)),
         Tab::Curve => ("page on-curve", curve(bench)),
     };
     let result = el("div")

@@ -12,6 +12,7 @@ use yew::UseReducerHandle;
 
 use crate::answers::Answers;
 use crate::draft::{Draft, Fault, Place, Slot};
+use crate::replay::Wish;
 use crate::words::{Language, Words};
 
 /// The state with its dispatcher, as components have it.
@@ -36,6 +37,8 @@ pub enum Part {
 pub enum Tab {
     /// Healthy, overloaded and shorted.
     Expect,
+    /// The first seconds.
+    SwitchOn,
     /// The curves that meet.
     Curve,
 }
@@ -123,6 +126,8 @@ pub struct Bench {
     pub refused: Option<Refused>,
     /// The panel.
     pub tab: Tab,
+    /// What is wanted of the first seconds.
+    pub wish: Wish,
     /// The light.
     pub theme: Theme,
     /// What is in front.
@@ -172,6 +177,8 @@ pub enum Msg {
     Why,
     /// Go to a panel.
     Go(Tab),
+    /// Something else is wanted of the first seconds.
+    Wish(Wish),
     /// Change the light.
     Light(Theme),
     /// The cautions are accepted, or closed again.
@@ -207,6 +214,7 @@ impl Bench {
             lamp: Place::default(),
             refused: None,
             tab: Tab::Expect,
+            wish: Wish::default(),
             theme: Theme::Auto,
             stage: Stage::Unread,
             notes: Vec::new(),

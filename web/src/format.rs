@@ -15,6 +15,9 @@ pub struct Numerals {
 /// Between a number and its unit: a space that does not break.
 const GAP: char = '\u{a0}';
 
+/// Volts and amperes below this are none: no bench meter shows them.
+const NOTHING: f64 = 5e-5;
+
 /// Most decimals that are ever written.
 const MOST_PLACES: i32 = 9;
 
@@ -88,6 +91,24 @@ impl Numerals {
         with_unit(self.plain(value), "", unit)
     }
 
+    /// A value of which nothing is known better than a tenth.
+    ///
+    /// The first seconds have no band of their own: cold lamps, and reservoirs, differ by that much.
+    pub fn about(self, value: f64, unit: &str) -> String {
+        let value = if value.abs() < NOTHING { 0.0 } else { value };
+        self.value(&Band { value, low: value * 0.9, high: value * 1.1 }, unit)
+    }
+
+    /// A duration, as a person would count it: one digit, or two from 1 to 3.
+    pub fn duration(self, seconds: f64) -> String {
+        let (scale, prefix) = prefix(seconds, "s");
+        let value = seconds * scale;
+        let first = exponent(value);
+        let more = i32::from(value < 3.0 * 10f64.powi(first));
+        let digits = 10f64.powi(more - first);
+        with_unit(self.plain((value * digits).round() / digits), prefix, "s")
+    }
+
     /// A limit, to three digits and no more decimals than it needs.
     pub fn short(self, value: f64) -> String {
         let rounded = 10f64.powi(2 - exponent(value));
@@ -105,9 +126,9 @@ impl Numerals {
     }
 }
 
-/// Milliamperes below a tenth of an ampere, as meters have it; no prefix for the rest.
+/// Milliamperes below a tenth of an ampere, as meters have it, and milliseconds; no prefix for the rest.
 fn prefix(value: f64, unit: &str) -> (f64, &'static str) {
-    if unit == "A" && value.abs() < 0.0995 { (1000.0, "m") } else { (1.0, "") }
+    if (unit == "A" || unit == "s") && value.abs() < 0.0995 { (1000.0, "m") } else { (1.0, "") }
 }
 
 fn with_unit(mut text: String, prefix: &str, unit: &str) -> String {
@@ -190,6 +211,26 @@ mod tests {
         }
         let lost = Band { value: f64::NAN, low: f64::NAN, high: f64::NAN };
         assert_eq!(ENGLISH.value(&lost, "V"), "?\u{a0}V");
+    }
+
+    #[test]
+    fn what_is_known_to_a_tenth_has_two_digits() {
+        for (value, text) in [
+            (5.274, "5.3\u{a0}A"),
+            (0.1523, "0.15\u{a0}A"),
+            (0.0213, "21\u{a0}mA"),
+            (813.2, "810\u{a0}A"),
+            (1e-9, "0\u{a0}mA"),
+        ] {
+            assert_eq!(ENGLISH.about(value, "A"), text);
+        }
+        for (seconds, text) in
+            [(0.27, "0.27"), (0.34, "0.3"), (0.2, "0.2"), (18.9, "19"), (4.6, "5"), (30.0, "30")]
+        {
+            assert_eq!(ENGLISH.duration(seconds), format!("{text}\u{a0}s"));
+        }
+        assert_eq!(ENGLISH.duration(0.0613), "60\u{a0}ms");
+        assert_eq!(ENGLISH.duration(0.0), "0\u{a0}ms");
     }
 
     #[test]

@@ -28,6 +28,13 @@
 //! | `fill-auto`, `fill-vacuum`, `fill-gas`, `add-point`, `remove-point-0`, `lamp-life` | more of a lamp |
 //! | `choose-family`, then `family-transformer-supply`, `family-heater`, `family-plain` and so on | kinds of equipment |
 //! | `refused-microwave`, `refused-medical`, `refused-three-phase` | what the page is not for; the reason is `refusal` |
+//! | `tab-switch-on`, `replay` | the first seconds; `data-busy` while they are worked out, `data-milliseconds` spent on the healthy run |
+//! | `story`, `beside-shorted` and so on | what to look for; the conditions to set beside the healthy one |
+//! | `scene-healthy`, `scene-other` | with `data-condition`, `data-glow`, `data-kelvin`, `data-amps` at the present moment |
+//! | `play`, `scrubber`, `seconds-chart` | `play` has `data-state` `playing` or `still`, `scrubber` `data-seconds` and `data-end` |
+//! | `moments`, `moment-20` and so on | the strip of those who want less motion; milliseconds |
+//! | `slow`, `span-3`, `closing-crest`, `closing-zero`, `closing-worst` | how it plays, how long, when the switch closes |
+//! | `surge`, `moments-table`, `fuse`, `fuse-more`, `fuse-less`, `fuse-table` | the figures, the fuse check |
 //! | `tab-expect`, `tab-curve`, `chart`, `crossings`, `bank-curve` | panels |
 
 pub mod advice;
@@ -43,8 +50,11 @@ pub mod panels;
 pub mod parts;
 mod reading;
 mod reduce;
+pub mod replay;
 pub mod start;
 pub mod step;
+pub mod story;
+pub mod theatre;
 pub mod words;
 
 use app::{App, AppProps};

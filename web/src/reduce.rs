@@ -24,6 +24,7 @@ impl Bench {
             Msg::ChooseFamily => self.choosing = !self.choosing,
             Msg::Why => self.why = !self.why,
             Msg::Go(tab) => self.tab = tab,
+            Msg::Wish(wish) => self.wish = wish,
             Msg::Light(theme) => self.theme = theme,
             Msg::Accept => self.stage = Stage::Bench,
             Msg::Cautions => self.stage = Stage::Reread,

@@ -6,6 +6,7 @@
 pub mod cautions;
 pub mod dialog;
 pub mod fragment;
+pub mod frames;
 pub mod input;
 pub mod storage;
 pub mod theme;

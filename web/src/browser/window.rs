@@ -73,3 +73,15 @@ pub fn width() -> f64 {
 pub fn pixel_ratio() -> f64 {
     web_sys::window().map_or(1.0, |window| window.device_pixel_ratio())
 }
+
+/// Milliseconds of a clock that never goes back; 0 where there is none.
+pub fn now() -> f64 {
+    web_sys::window().and_then(|window| window.performance()).map_or(0.0, |clock| clock.now())
+}
+
+/// Whether the person has asked for less motion.
+pub fn wants_stillness() -> bool {
+    let query =
+        web_sys::window().and_then(|window| window.match_media("(prefers-reduced-motion: reduce)").ok()?);
+    query.is_some_and(|query| query.matches())
+}

@@ -7,7 +7,7 @@ use plotters::coord::Shift;
 use plotters::drawing::{DrawingArea, IntoDrawingArea};
 use plotters::style::RGBColor;
 use plotters_canvas::CanvasBackend;
-use web_sys::wasm_bindgen::JsCast;
+use web_sys::wasm_bindgen::{JsCast, JsValue};
 use web_sys::{CanvasRenderingContext2d, HtmlCanvasElement};
 
 use crate::browser::window::pixel_ratio;
@@ -24,6 +24,8 @@ pub(super) struct Frame {
     /// Canvas pixels in a CSS pixel.
     ratio: f64,
     size: (f64, f64),
+    /// Room around it, CSS pixels: left, top, right, bottom.
+    margins: [f64; 4],
     most: (f64, f64),
 }
 
@@ -46,14 +48,29 @@ impl Frame {
         canvas: &HtmlCanvasElement,
         most: (f64, f64),
     ) -> Option<(Self, DrawingArea<CanvasBackend, Shift>)> {
+        Self::within(canvas, HEIGHT, MARGINS, most)
+    }
+
+    /// The same on a canvas of another height, with other room around it.
+    pub(super) fn within(
+        canvas: &HtmlCanvasElement,
+        height: f64,
+        margins: [f64; 4],
+        most: (f64, f64),
+    ) -> Option<(Self, DrawingArea<CanvasBackend, Shift>)> {
         // The library knows nothing of fine screens: make the canvas that much larger, and everything on it too.
         let ratio = pixel_ratio().max(2.0);
-        let size = (f64::from(canvas.client_width()).max(200.0), HEIGHT);
+        let size = (f64::from(canvas.client_width()).max(200.0), height);
         canvas.set_width(whole(size.0 * ratio).unsigned_abs());
         canvas.set_height(whole(size.1 * ratio).unsigned_abs());
         let context = canvas.get_context("2d").ok()??.dyn_into().ok()?;
         let area = CanvasBackend::with_canvas_object(canvas.clone())?.into_drawing_area();
-        Some((Self { context, ratio, size, most }, area))
+        Some((Self { context, ratio, size, margins, most }, area))
+    }
+
+    /// Another frame on the same canvas.
+    pub(super) fn beside(&self, margins: [f64; 4], most: (f64, f64)) -> Self {
+        Self { context: self.context.clone(), margins, most, ..*self }
     }
 
     /// Where a point lies, canvas pixels.
@@ -79,8 +96,15 @@ impl Frame {
         let _ = self.context.fill_text(text, x + by.0 * self.ratio, y + by.1 * self.ratio);
     }
 
+    /// Draws broken lines from here on, by CSS pixels; whole ones where nothing is given.
+    pub(super) fn dash(&self, css: &[f64]) {
+        let pattern: js_sys::Array =
+            css.iter().map(|length| JsValue::from_f64(length * self.ratio)).collect();
+        let _ = self.context.set_line_dash(&pattern);
+    }
+
     fn place(&self, (x, y): (f64, f64)) -> (f64, f64) {
-        let [left, top, right, bottom] = MARGINS;
+        let [left, top, right, bottom] = self.margins;
         let width = self.size.0 - left - right;
         let height = self.size.1 - top - bottom;
         let css = (left + width * x / self.most.0, top + height * (1.0 - y / self.most.1));

@@ -4,3 +4,4 @@
 pub mod curve;
 mod frame;
 pub mod ink;
+pub mod seconds;

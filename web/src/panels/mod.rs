@@ -14,7 +14,10 @@ pub mod equipment;
 pub mod frame;
 pub mod lamp;
 pub mod sheet;
+pub mod stage;
 pub mod supply;
+pub mod surge;
+pub mod switch_on;
 pub mod voltage_bar;
 
 use yew::{Callback, MouseEvent};

@@ -1,5 +1,7 @@
 //! English.
 
+mod replay;
+
 use lampladder_core::condition::Condition;
 use lampladder_core::detail::Detail;
 use lampladder_core::error::InputError;
@@ -32,6 +34,7 @@ pub(super) static WORDS: Words = Words {
     },
     tab: |tab| match tab {
         Tab::Expect => "Expect",
+        Tab::SwitchOn => "Switch-on",
         Tab::Curve => "Curve",
     },
     panels: "Panels",
@@ -164,6 +167,7 @@ pub(super) static WORDS: Words = Words {
     band_note: "Ranges hold 95 of 100 cases: lamps differ within the limits of their standard, published tables of \
                 tungsten differ, and healthy equipment takes less or more than its plate.",
     table: &TABLE,
+    replay: &replay::REPLAY,
     slot,
     fault,
     step: |which, up| format!("{}: {}", slot(which), if up { "more" } else { "less" }),

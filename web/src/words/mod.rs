@@ -4,6 +4,7 @@
 //! The cautions stand in static/index.html, since they must show without the program.
 
 mod english;
+pub mod replay;
 
 use lampladder_core::condition::Condition;
 use lampladder_core::family::{self, Family, Warning};
@@ -187,6 +188,8 @@ pub struct Words {
     pub band_note: &'static str,
     /// Names of the columns and headings of the tables.
     pub table: &'static TableWords,
+    /// Texts of the switch-on panel.
+    pub replay: &'static replay::ReplayWords,
     /// Name of a field.
     pub slot: fn(Slot) -> &'static str,
     /// What is wrong with a field.
