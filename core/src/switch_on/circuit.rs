@@ -101,9 +101,9 @@ pub(super) struct Instant {
 const EDGE: f64 = 0.3;
 const LEAST_EDGE: f64 = 1e-6;
 
-/// Size of a filament's temperature, kelvin: a twentieth of what it becomes, because its error is a loss of energy,
+/// Size of a filament's temperature, kelvin: a hundredth of what it becomes, because its error is a loss of energy,
 /// which adds up, while that of a voltage or current dies away.
-pub(super) const KELVIN_SIZE: f64 = 100.0;
+pub(super) const KELVIN_SIZE: f64 = 20.0;
 
 const MOST_BODIES: usize = Bank::MOST_LAMPS;
 
@@ -254,6 +254,11 @@ impl Circuit {
         }
     }
 
+    /// Whether any diodes conduct.
+    pub(super) fn conducts(&self) -> bool {
+        self.modes.iter().any(|mode| mode.conducts != 0.0)
+    }
+
     /// The least of all margins.
     pub(super) fn margin(&self, seconds: f64, state: &[f64], volts: Option<f64>) -> f64 {
         let mut least = f64::INFINITY;
@@ -306,15 +311,17 @@ impl Circuit {
 }
 
 impl System for Circuit {
+    type Seen = Instant;
+
     fn len(&self) -> usize {
         self.scale.len()
     }
 
-    fn slope(&self, seconds: f64, state: &[f64], slope: &mut [f64]) {
+    fn slope(&self, seconds: f64, state: &[f64], slope: &mut [f64]) -> Instant {
         if self.is_plain() {
-            self.slope_with(seconds, state, &self.hot::<1>(state), slope);
+            self.slope_with(seconds, state, &self.hot::<1>(state), slope)
         } else {
-            self.slope_with(seconds, state, &self.hot::<MOST_BODIES>(state), slope);
+            self.slope_with(seconds, state, &self.hot::<MOST_BODIES>(state), slope)
         }
     }
 
@@ -324,18 +331,26 @@ impl System for Circuit {
 }
 
 impl Circuit {
-    fn slope_with<const N: usize>(&self, seconds: f64, state: &[f64], hot: &Hot<N>, slope: &mut [f64]) {
-        let (amps, volts) = self.terminals(seconds, state, hot.ohms + self.source.ohms);
+    fn slope_with<const N: usize>(
+        &self,
+        seconds: f64,
+        state: &[f64],
+        hot: &Hot<N>,
+        slope: &mut [f64],
+    ) -> Instant {
+        let instant = self.instant_with(seconds, state, hot);
+        let square = instant.amps * instant.amps;
         for (group, ohms) in self.groups.iter().zip(&hot.group_ohms) {
-            let square = amps * amps * ohms * ohms;
             for &(at, _) in &group.members {
                 let heat = &hot.heats[at];
-                slope[at] = (square / heat.ohms - heat.lost_watts) / heat.joules_per_kelvin;
+                // I^2 Rg^2 / R: the group's voltage on this lamp.
+                slope[at] = (square * ohms * ohms / heat.ohms - heat.lost_watts) / heat.joules_per_kelvin;
             }
         }
         let here = At { seconds, state, modes: &self.modes };
         for branch in &self.branches {
-            branch.slopes(volts, here, slope);
+            branch.slopes(instant.volts, here, slope);
         }
+        instant
     }
 }

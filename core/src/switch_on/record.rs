@@ -5,47 +5,61 @@ use alloc::vec::Vec;
 
 use super::branch::Inside;
 use super::circuit::Instant;
-use super::{Energy, Heating, Sample};
+use super::{Energy, Heating, Options, Sample};
 
-/// A quantity at the start, the middle and the end of a segment, taken as a parabola between.
-type Three = [f64; 3];
+/// What is integrated over time.
+#[derive(Debug, Clone, Copy, Default)]
+pub(super) struct Rates {
+    /// Squared current, ampere squared, and squared load voltage, volt squared.
+    squares: [f64; 2],
+    bank_watts: f64,
+    lost_watts: f64,
+}
 
-/// One accepted step, as far as windows and peaks need it.
+impl Rates {
+    /// The sum of what a few instants show, each with its weight.
+    pub(super) fn sum<'a>(instants: impl Iterator<Item = (f64, &'a Instant)>) -> Self {
+        let mut sum = Self::default();
+        for (weight, instant) in instants {
+            sum.squares[0] += weight * instant.amps * instant.amps;
+            sum.squares[1] += weight * instant.volts * instant.volts;
+            sum.bank_watts += weight * instant.bank_watts;
+            sum.lost_watts += weight * instant.lost_watts;
+        }
+        sum
+    }
+}
+
+/// One accepted step, as far as windows need it.
 #[derive(Debug, Clone, Copy)]
 struct Segment {
     start: f64,
     seconds: f64,
-    /// Integrals of amps² and volts² up to the start.
+    /// Integrals of the squares up to the start, and over the step.
     totals: [f64; 2],
-    squares: [Three; 2],
+    gains: [f64; 2],
+    /// The squares at both ends.
+    ends: [[f64; 2]; 2],
 }
 
 impl Segment {
-    /// Integrals up to a share of the segment.
+    /// Integrals up to a share of the segment: the cubic that has their values and slopes at both ends.
     fn totals_at(&self, share: f64) -> [f64; 2] {
         core::array::from_fn(|index| {
-            self.totals[index] + self.seconds * parabola_integral(&self.squares[index], share)
+            let gain = self.gains[index];
+            let (first, last) = (self.seconds * self.ends[0][index], self.seconds * self.ends[1][index]);
+            let (square, cube) = (3.0 * gain - 2.0 * first - last, first + last - 2.0 * gain);
+            self.totals[index] + share * (first + share * (square + share * cube))
         })
     }
 }
 
-/// Integral of the parabola through `three` from 0 to `share`; Simpson's rule at 1.
-fn parabola_integral([start, middle, end]: &Three, share: f64) -> f64 {
-    let slope = 4.0 * middle - 3.0 * start - end;
-    let bend = 2.0 * (start - 2.0 * middle + end);
-    share * (start + share * (slope / 2.0 + share * bend / 3.0))
-}
-
-/// Where and how high the parabola through `three` has its crest inside, if it has one.
-fn parabola_crest([start, middle, end]: &Three) -> Option<(f64, f64)> {
-    let slope = 4.0 * middle - 3.0 * start - end;
-    let bend = 2.0 * (start - 2.0 * middle + end);
-    let share = -slope / (2.0 * bend);
-    (bend < 0.0 && share > 0.0 && share < 1.0).then(|| (share, start + 0.5 * share * slope))
-}
-
 /// Integrals beyond which the surge is over and the grid's samples are fine enough for a fuse.
 const SURGE_SECONDS: f64 = 0.2;
+
+/// A step whose ends stay below this share of the highest current so far cannot hold a higher one: steps end at every
+/// quarter period, and a crest is no narrower than a third of that.
+const NEAR_PEAK: f64 = 0.5;
 
 /// Over which the surge's heat is given.
 const I2T_SECONDS: f64 = 0.1;
@@ -78,11 +92,16 @@ impl Recorder {
         }
     }
 
-    /// Takes in an accepted step, known at its start, middle and end.
-    pub(super) fn segment(&mut self, start: f64, seconds: f64, three: &[Instant; 3]) {
-        let square = |value: fn(&Instant) -> f64| three.map(|instant| value(&instant) * value(&instant));
-        let squares = [square(|instant| instant.amps), square(|instant| instant.volts)];
-        let segment = Segment { start, seconds, totals: self.totals, squares };
+    /// Takes in an accepted step, known at its ends, with the mean of what is integrated.
+    pub(super) fn segment(&mut self, start: f64, seconds: f64, [first, last]: [&Instant; 2], mean: &Rates) {
+        let square = |instant: &Instant| [instant.amps * instant.amps, instant.volts * instant.volts];
+        let segment = Segment {
+            start,
+            seconds,
+            totals: self.totals,
+            gains: mean.squares.map(|square| square * seconds),
+            ends: [square(first), square(last)],
+        };
         self.totals = segment.totals_at(1.0);
         let end = start + seconds;
         if start < I2T_SECONDS {
@@ -91,26 +110,37 @@ impl Recorder {
         if end < SURGE_SECONDS {
             self.heating.push(Heating { seconds: end, amp2_seconds: self.totals[0] });
         }
-        let mut peak = |seconds: f64, amps: f64| {
-            if amps > self.peak.1 {
-                self.peak = (seconds, amps);
-            }
-        };
-        for (share, instant) in [0.0, 0.5, 1.0].into_iter().zip(three) {
-            peak(start + share * seconds, instant.amps.abs());
-        }
-        if let Some((share, amps)) = parabola_crest(&three.map(|instant| instant.amps.abs())) {
-            peak(start + share * seconds, amps);
-        }
-        let simpson = |value: fn(&Instant) -> f64| {
-            seconds / 6.0 * (value(&three[0]) + 4.0 * value(&three[1]) + value(&three[2]))
-        };
-        self.energy.into_lamps_joules += simpson(|instant| instant.bank_watts);
-        self.energy.lost_joules += simpson(|instant| instant.lost_watts);
+        self.peak_at(start, first.amps.abs());
+        self.peak_at(end, last.amps.abs());
+        self.energy.into_lamps_joules += seconds * mean.bank_watts;
+        self.energy.lost_joules += seconds * mean.lost_watts;
         while self.segments.front().is_some_and(|old| old.start + old.seconds < start - self.period) {
             self.segments.pop_front();
         }
         self.segments.push_back(segment);
+    }
+
+    fn peak_at(&mut self, seconds: f64, amps: f64) {
+        if amps > self.peak.1 {
+            self.peak = (seconds, amps);
+        }
+    }
+
+    /// Whether the crest of the current may lie inside a step that begins and ends with these.
+    pub(super) fn may_peak(&self, first: f64, last: f64) -> bool {
+        first.abs().max(last.abs()) > NEAR_PEAK * self.peak.1
+    }
+
+    /// Takes in the crest of the parabola through the current at the start, middle and end of a step.
+    pub(super) fn crest(&mut self, start: f64, seconds: f64, three: [f64; 3]) {
+        let [first, middle, last] = three.map(f64::abs);
+        self.peak_at(start + 0.5 * seconds, middle);
+        let slope = 4.0 * middle - 3.0 * first - last;
+        let bend = 2.0 * (first - 2.0 * middle + last);
+        let share = -slope / (2.0 * bend);
+        if bend < 0.0 && share > 0.0 && share < 1.0 {
+            self.peak_at(start + share * seconds, first + 0.5 * share * slope);
+        }
     }
 
     /// A sample at a time inside the last segment.
@@ -150,6 +180,25 @@ impl Recorder {
     }
 }
 
+/// Most samples on a grid.
+const MOST_SAMPLES: f64 = 2000.0;
+
+/// Distance of the samples, seconds.
+pub(super) fn sample_grid(options: &Options, period: f64) -> f64 {
+    let finest = if options.sample_seconds > 0.0 {
+        options.sample_seconds
+    } else if period > 0.0 {
+        period / 2.0
+    } else {
+        options.seconds / 1000.0
+    };
+    if finest <= 0.0 {
+        return 1.0;
+    }
+    // Whole multiples, so that every sample lies at the same place in the mains cycle.
+    finest * libm::ceil(options.seconds / finest / MOST_SAMPLES).max(1.0)
+}
+
 /// When every lamp is within this share of its last rise above ambient, and the current within [`SAME_AMPS`] of its
 /// last value, the run counts as settled: 1 %, a change of light that nobody sees.
 const SAME_RISE: f64 = 0.01;
@@ -184,13 +233,23 @@ mod tests {
     use super::*;
 
     #[test]
-    fn a_parabola_is_integrated_and_crested_exactly() {
-        // 1 + 4 s - 3 s^2 at 0, 1/2, 1.
-        let three = [1.0, 2.25, 2.0];
-        assert!((parabola_integral(&three, 1.0) - 2.0).abs() < 1e-12);
-        assert!((parabola_integral(&three, 0.5) - (0.5 + 0.5 - 0.125)).abs() < 1e-12);
-        let (share, crest) = parabola_crest(&three).expect("inside");
-        assert!((share - 2.0 / 3.0).abs() < 1e-12 && (crest - 7.0 / 3.0).abs() < 1e-12);
-        assert_eq!(parabola_crest(&[0.0, 1.0, 2.0]), None);
+    fn a_crest_inside_a_step_is_found() {
+        // 1 + 4 s - 3 s^2 at 0, 1/2, 1, over two seconds from 5 s: 7/3 at 2/3.
+        let mut recorder = Recorder::new(0.02);
+        recorder.crest(5.0, 2.0, [1.0, -2.25, 2.0]);
+        assert!((recorder.peak.0 - (5.0 + 4.0 / 3.0)).abs() < 1e-12);
+        assert!((recorder.peak.1 - 7.0 / 3.0).abs() < 1e-12);
+    }
+
+    #[test]
+    fn an_integral_is_read_inside_a_step() {
+        // Current 1 + t over one second: the integral of its square is ((1 + t)^3 - 1) / 3, a cubic.
+        let at = |amps: f64| Instant { amps, ..Instant::default() };
+        let mut recorder = Recorder::new(0.02);
+        let mean = Rates { squares: [7.0 / 3.0, 0.0], ..Rates::default() };
+        recorder.segment(0.0, 1.0, [&at(1.0), &at(2.0)], &mean);
+        let exact = |t: f64| ((1.0 + t) * (1.0 + t) * (1.0 + t) - 1.0) / 3.0;
+        assert!((recorder.totals_at(0.3)[0] - exact(0.3)).abs() < 1e-12);
+        assert!((recorder.i2t - exact(0.1)).abs() < 1e-12);
     }
 }

@@ -9,11 +9,14 @@ use alloc::vec::Vec;
 
 /// A system `dy/dt = slope(t, y)`, smooth as long as nobody changes it.
 pub(super) trait System {
+    /// What else the system tells with its slope.
+    type Seen: Copy + Default;
+
     /// How many variables.
     fn len(&self) -> usize;
 
     /// The slope at a time and state.
-    fn slope(&self, seconds: f64, state: &[f64], slope: &mut [f64]);
+    fn slope(&self, seconds: f64, state: &[f64], slope: &mut [f64]) -> Self::Seen;
 
     /// Size of each variable against which its error is measured.
     fn scale(&self) -> &[f64];
@@ -80,7 +83,7 @@ const DENSE: [[f64; 5]; 2] = [
 
 /// The workspace of one system, and the last step taken.
 #[derive(Debug, Clone)]
-pub(super) struct Stepper {
+pub(super) struct Rosenbrock {
     n: usize,
     base: Vec<f64>,
     drift: Vec<f64>,
@@ -100,7 +103,7 @@ pub(super) struct Stepper {
     pub(super) evaluations: u64,
 }
 
-impl Stepper {
+impl Rosenbrock {
     pub(super) fn new(n: usize) -> Self {
         let zeros = |count: usize| alloc::vec![0.0; count];
         Self {
@@ -275,6 +278,8 @@ mod tests {
     struct Pushed;
 
     impl System for Pushed {
+        type Seen = ();
+
         fn len(&self) -> usize {
             2
         }
@@ -291,7 +296,7 @@ mod tests {
 
     /// The state after 2 s in `steps` equal steps, and half way through the last step.
     fn run(steps: u32) -> ([f64; 2], [f64; 2]) {
-        let mut stepper = Stepper::new(2);
+        let mut stepper = Rosenbrock::new(2);
         let mut state = [0.3, -0.1];
         let mut middle = [0.0; 2];
         let h = 2.0 / f64::from(steps);
@@ -321,7 +326,7 @@ mod tests {
         let middle = |steps: u32| run(steps).1[0];
         let exact = |steps: u32| {
             let fine = 200;
-            let mut stepper = Stepper::new(2);
+            let mut stepper = Rosenbrock::new(2);
             let mut state = [0.3, -0.1];
             let h = (2.0 - 1.0 / f64::from(steps)) / f64::from(fine);
             for step in 0..fine {
@@ -340,6 +345,8 @@ mod tests {
     struct Stiff([f64; 1]);
 
     impl System for Stiff {
+        type Seen = ();
+
         fn len(&self) -> usize {
             1
         }
@@ -356,7 +363,7 @@ mod tests {
     #[test]
     fn a_nanosecond_time_constant_takes_long_steps() {
         let stiff = Stiff([1.0]);
-        let mut stepper = Stepper::new(1);
+        let mut stepper = Rosenbrock::new(1);
         let mut state = [0.0];
         for step in 0..20 {
             let seconds = 0.1 * f64::from(step);

@@ -1,12 +1,13 @@
 //! One run through the first seconds, in slices of any size.
 
 use alloc::vec::Vec;
-use core::f64::consts::{FRAC_PI_2, PI};
+use core::f64::consts::FRAC_PI_2;
 
 use super::build::Builder;
 use super::circuit::{Circuit, Instant, Source};
-use super::record::{Recorder, settle_seconds};
-use super::rosenbrock::{Stepper, System};
+use super::explicit::WEIGHTS;
+use super::record::{Rates, Recorder, sample_grid, settle_seconds};
+use super::stepper::Stepper;
 use super::worst::Search;
 use super::{MAINS_OHMS, Moment, Options, Sample, SwitchOn, SwitchOnError};
 use crate::bank::Bank;
@@ -78,14 +79,6 @@ pub(super) struct Given {
 const MOST_TRIES: f64 = 100_000.0;
 const MOST_TRIES_PER_PERIOD: f64 = 300.0;
 
-/// Most samples on an automatic grid.
-const MOST_SAMPLES: f64 = 2000.0;
-
-/// Least and greatest factor from one step to the next, and the safety factor (Hairer and Wanner, IV.7).
-const SHRINK: f64 = 0.2;
-const GROW: f64 = 5.0;
-const SAFETY: f64 = 0.9;
-
 impl Run {
     /// A run of a load behind a bank, or straight on the mains.
     ///
@@ -138,7 +131,7 @@ impl Run {
             search,
             places,
             switch_degrees,
-            stepper: Stepper::new(circuit.len()),
+            stepper: Stepper::new(&circuit),
             middle: state.clone(),
             seconds: 0.0,
             next: longest * 1e-3,
@@ -219,7 +212,7 @@ impl Run {
             starts: self.recorder.starts,
             energy,
             steps: self.steps,
-            evaluations: self.stepper.evaluations,
+            evaluations: self.stepper.evaluations(),
         }
     }
 
@@ -241,9 +234,8 @@ impl Run {
     fn step(&mut self) -> Result<(), SwitchOnError> {
         let stop = self.stop();
         let room = stop - self.seconds;
-        let omega = self.circuit.source().omega;
-        let rush = 1e-6 / if omega > 0.0 { omega } else { 2.0 * PI };
-        self.stepper.start(&self.circuit, self.seconds, &self.state, rush);
+        let (tolerance, start) = (self.given.options.tolerance, self.seconds);
+        self.stepper.start(&self.circuit, start, &self.state);
         let length = loop {
             let wanted = self.next.min(self.longest);
             // Neither a sliver left over nor a step much longer than wanted.
@@ -255,94 +247,128 @@ impl Run {
                 wanted
             };
             self.tries += 1;
-            if self.tries > self.most_tries || length < self.seconds * 1e-15 || length <= 0.0 {
-                return Err(SwitchOnError::TooManySteps { seconds: self.seconds });
+            if self.tries > self.most_tries || length < start * 1e-15 || length <= 0.0 {
+                return Err(SwitchOnError::TooManySteps { seconds: start });
             }
-            let tolerance = self.given.options.tolerance;
-            let error = self.stepper.attempt(&self.circuit, self.seconds, length, tolerance);
-            let factor = if error.is_finite() { SAFETY / libm::sqrt(libm::sqrt(error)) } else { SHRINK };
-            self.next = length * factor.clamp(SHRINK, GROW);
+            let (error, factor) = self.stepper.attempt(&self.circuit, start, length, tolerance);
+            self.next = length * factor;
             if error <= 1.0 {
                 break length;
             }
         };
         self.steps += 1;
-        self.stepper.keep();
-        let start = self.seconds;
-        let (middle, end, share) = self.until_edge(start, length);
-        let seconds = share * length;
-        self.recorder.segment(start, seconds, &[self.now, middle, end]);
-        self.seconds = if share == 1.0 && length == room { stop } else { start + seconds };
+        let short = length < SHORT_SHARE * self.longest;
+        self.stepper.keep(&self.circuit, length, short);
+        let share = self.until_edge(start, length);
+        self.seconds = if share == 1.0 && length == room { stop } else { start + share * length };
         self.take_samples(start, length);
-        self.now = end;
         if share < 1.0 || self.seconds >= self.circuit.due() {
             let starts = &mut self.recorder.starts;
             let seconds = self.seconds;
             self.circuit.settle_modes(seconds, &self.state, || starts.push(seconds));
             self.now = self.circuit.instant(seconds, &self.state);
+            self.stepper.choose(&self.circuit, true);
+        } else {
+            self.stepper.choose(&self.circuit, false);
         }
-        if let Some(body) = self.circuit.melting(&self.state) {
-            return Err(self.melts(body));
+        match self.circuit.melting(&self.state) {
+            Some(body) => Err(self.melts(body)),
+            None => Ok(()),
         }
-        Ok(())
     }
 
-    /// Moves the state to the end of the step or to the first edge in it; gives the loop half way there and there,
-    /// and the share of the step that is used.
-    fn until_edge(&mut self, start: f64, length: f64) -> (Instant, Instant, f64) {
-        self.stepper.inside(0.5, &mut self.middle);
-        let half = start + 0.5 * length;
-        let middle = self.circuit.instant(half, &self.middle);
-        self.state.copy_from_slice(&self.stepper.to);
-        let end = self.circuit.instant(start + length, &self.state);
-        if self.circuit.modes.is_empty() {
-            return (middle, end, 1.0);
-        }
-        let at_middle = self.circuit.margin(half, &self.middle, Some(middle.volts));
-        let (from, to) = if at_middle <= 0.0 {
-            ((0.0, 1.0), (0.5, at_middle))
-        } else {
-            let at_end = self.circuit.margin(start + length, &self.state, Some(end.volts));
-            if at_end > 0.0 {
-                return (middle, end, 1.0);
-            }
-            ((0.5, at_middle), (1.0, at_end))
+    /// Moves the state to the end of the step or to the first edge in it, and records what happened on the way; gives
+    /// the share of the step that is used.
+    fn until_edge(&mut self, start: f64, length: f64) -> f64 {
+        let seen = self.stepper.seen();
+        self.state.copy_from_slice(self.stepper.to());
+        let end = match seen {
+            Some(seen) => seen[6],
+            None => self.circuit.instant(start + length, &self.state),
         };
-        let share = self.edge(start, length, from, to);
-        self.stepper.inside(0.5 * share, &mut self.middle);
-        let middle = self.circuit.instant(start + 0.5 * share * length, &self.middle);
-        self.stepper.inside(share, &mut self.state);
-        let end = self.circuit.instant(start + share * length, &self.state);
-        (middle, end, share)
+        let has_modes = !self.circuit.modes.is_empty();
+        // The middle is needed where nothing was seen on the way, where a diode might open and close again within the
+        // step, and where the current may have its highest crest.
+        let first = self.now;
+        let may_peak = self.recorder.may_peak(first.amps, end.amps);
+        let mut middle = None;
+        if seen.is_none() || may_peak || (has_modes && !self.circuit.conducts()) {
+            self.stepper.inside(0.5, &mut self.middle);
+            middle = Some(self.circuit.instant(start + 0.5 * length, &self.middle));
+        }
+        if has_modes && let Some((from, to)) = self.bracket(start, length, middle.as_ref(), &end) {
+            let share = self.edge(start, length, from, to);
+            self.stepper.inside(0.5 * share, &mut self.middle);
+            let middle = self.circuit.instant(start + 0.5 * share * length, &self.middle);
+            self.stepper.inside(share, &mut self.state);
+            let end = self.circuit.instant(start + share * length, &self.state);
+            self.record(start, share * length, &middle, &end);
+            return share;
+        }
+        match (seen, middle) {
+            (Some(seen), middle) => {
+                let mean = Rates::sum(WEIGHTS.into_iter().zip(seen));
+                self.recorder.segment(start, length, [&first, &end], &mean);
+                if let Some(middle) = middle {
+                    self.recorder.crest(start, length, [first.amps, middle.amps, end.amps]);
+                }
+                self.now = end;
+            }
+            (None, Some(middle)) => self.record(start, length, &middle, &end),
+            (None, None) => {}
+        }
+        1.0
+    }
+
+    /// Records a step by Simpson's rule.
+    fn record(&mut self, start: f64, seconds: f64, middle: &Instant, end: &Instant) {
+        let first = self.now;
+        let weighted = [(1.0 / 6.0, &first), (4.0 / 6.0, middle), (1.0 / 6.0, end)];
+        self.recorder.segment(start, seconds, [&first, end], &Rates::sum(weighted.into_iter()));
+        self.recorder.crest(start, seconds, [first.amps, middle.amps, end.amps]);
+        self.now = *end;
+    }
+
+    /// Shares of the step between which a mode changes, with the least margins there.
+    fn bracket(
+        &self,
+        start: f64,
+        length: f64,
+        middle: Option<&Instant>,
+        end: &Instant,
+    ) -> Option<((f64, f64), (f64, f64))> {
+        let mut from = (0.0, f64::NAN);
+        if let Some(middle) = middle {
+            let margin = self.circuit.margin(start + 0.5 * length, &self.middle, Some(middle.volts));
+            if margin <= 0.0 {
+                return Some((from, (0.5, margin)));
+            }
+            from = (0.5, margin);
+        }
+        let margin = self.circuit.margin(start + length, &self.state, Some(end.volts));
+        (margin <= 0.0).then_some((from, (1.0, margin)))
     }
 
     /// The share of the step at which the first mode changes, between two shares with their margins.
     fn edge(&mut self, start: f64, length: f64, mut from: (f64, f64), to: (f64, f64)) -> f64 {
-        if from.0 == 0.0 {
-            from.1 = self.circuit.margin(start, &self.given_state(0.0), None);
-            if from.1 <= 0.0 {
-                // The margin at the start is only rounded below zero: the edge is here.
-                return LEAST_SHARE;
-            }
-        }
         let mut point = core::mem::take(&mut self.middle);
-        let found = roots::between(
-            |share| {
-                self.stepper.inside(share, &mut point);
-                self.circuit.margin(start + share * length, &point, None)
-            },
-            from,
-            to,
-            Tolerance { x: 1e-10, residual: 0.5 * self.circuit.slack() },
-        );
+        let mut margin = |share: f64| {
+            self.stepper.inside(share, &mut point);
+            self.circuit.margin(start + share * length, &point, None)
+        };
+        if from.1.is_nan() {
+            from.1 = margin(from.0);
+        }
+        // A margin that is only rounded below zero at the start: the edge is there.
+        let share = if from.1 <= 0.0 {
+            LEAST_SHARE
+        } else {
+            let tolerance = Tolerance { x: 1e-10, residual: 0.5 * self.circuit.slack() };
+            let found = roots::between(&mut margin, from, to, tolerance);
+            found.map_or(to.0, |root| root.x.max(LEAST_SHARE))
+        };
         self.middle = point;
-        found.map_or(to.0, |root| root.x.max(LEAST_SHARE))
-    }
-
-    fn given_state(&self, share: f64) -> Vec<f64> {
-        let mut state = self.state.clone();
-        self.stepper.inside(share, &mut state);
-        state
+        share
     }
 
     /// Samples that fall due up to the present; the last step began at `start` and would have been `length` long.
@@ -401,20 +427,8 @@ impl Run {
     }
 }
 
+/// A step shorter than this share of the longest one may be held back by stability alone.
+const SHORT_SHARE: f64 = 0.3;
+
 /// The smallest share of a step that counts as progress.
 const LEAST_SHARE: f64 = 1e-9;
-
-fn sample_grid(options: &Options, period: f64) -> f64 {
-    let finest = if options.sample_seconds > 0.0 {
-        options.sample_seconds
-    } else if period > 0.0 {
-        period / 2.0
-    } else {
-        options.seconds / 1000.0
-    };
-    if finest <= 0.0 {
-        return 1.0;
-    }
-    // Whole multiples, so that every sample lies at the same place in the mains cycle.
-    finest * libm::ceil(options.seconds / finest / MOST_SAMPLES).max(1.0)
-}
