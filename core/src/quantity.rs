@@ -77,8 +77,8 @@ pub fn parse(text: &str, field: Field) -> Result<f64, QuantityError> {
         return Err(not_a_number);
     }
     let (number, tail) = split_number(text);
-    let (exponent, rest) = strip_unit(tail, field).ok_or(QuantityError::WrongUnit { field })?;
     let mut number = plain_digits(&number).ok_or(not_a_number)?;
+    let (exponent, rest) = strip_unit(tail, field).ok_or(QuantityError::WrongUnit { field })?;
     if !rest.is_empty() {
         // A prefix in place of the decimal point: 1k2, 4R7.
         let whole = !number.contains('.') && rest.bytes().all(|byte| byte.is_ascii_digit());

@@ -1,19 +1,16 @@
 //! English.
 
+mod faults;
 mod replay;
 
 use lampladder_core::condition::Condition;
-use lampladder_core::detail::Detail;
-use lampladder_core::error::InputError;
 use lampladder_core::family::{self, Family, Warning};
 use lampladder_core::glow::GlowWord;
 use lampladder_core::lamp::Fill;
 use lampladder_core::link::LinkError;
-use lampladder_core::quantity::QuantityError;
 
 use super::{Alike, Assumed, EditWords, FamilyWords, TableWords, Words};
 use crate::bench::{Note, Part, Tab, Theme, Unsuitable};
-use crate::draft::{Fault, LampPart, Slot};
 use crate::format::Numerals;
 
 const NUMERALS: Numerals = Numerals { decimal: '.' };
@@ -168,9 +165,9 @@ pub(super) static WORDS: Words = Words {
                 tungsten differ, and healthy equipment takes less or more than its plate.",
     table: &TABLE,
     replay: &replay::REPLAY,
-    slot,
-    fault,
-    step: |which, up| format!("{}: {}", slot(which), if up { "more" } else { "less" }),
+    slot: faults::slot,
+    fault: faults::fault,
+    step: |which, up| format!("{}: {}", faults::slot(which), if up { "more" } else { "less" }),
     family: |kind| {
         let (name, noun, examples) = match kind {
             Family::TransformerSupply => {
@@ -354,89 +351,6 @@ fn assumptions(assumed: &Assumed) -> Vec<String> {
     all
 }
 
-const fn slot(slot: Slot) -> &'static str {
-    match slot {
-        Slot::SupplyVolts => "Supply volts",
-        Slot::SupplyHertz => "Frequency",
-        Slot::SupplyOhms => "Source resistance",
-        Slot::PlateVolts => "Plate volts",
-        Slot::PlateWatts => "Plate watts",
-        Slot::PlateAmps => "Plate amps",
-        Slot::PlateVoltAmps => "Plate volt-amps",
-        Slot::PlatePowerFactor => "Power factor",
-        Slot::Detail(which) => detail(which),
-        Slot::Lamp(_, part) => match part {
-            LampPart::Volts => "Lamp volts",
-            LampPart::Watts => "Lamp watts",
-            LampPart::Lumens => "Printed lumens",
-            LampPart::ColdOhms => "Cold resistance",
-            LampPart::PointVolts(_) => "Measured volts",
-            LampPart::PointAmps(_) => "Measured amps",
-        },
-    }
-}
-
-const fn detail(which: Detail) -> &'static str {
-    match which {
-        Detail::MagnetisingShare => "Magnetising current, share of rated",
-        Detail::CoreShare => "Core loss, share of plate watts",
-        Detail::WindingShare => "Winding drop, share of rated",
-        Detail::ReservoirSeconds => "Reservoir discharges in",
-        Detail::HeaterShare => "Heaters, share of plate watts",
-        Detail::NoLoadShare => "Running free, share of plate watts",
-        Detail::StallMultiple => "Stalled current, times rated",
-        Detail::IdleShare => "Idle, share of plate watts",
-        Detail::StartVolts => "Starts at DC volts",
-        Detail::StopVolts => "Stops at DC volts",
-        Detail::MicrofaradsPerWatt => "Reservoir for each watt",
-        Detail::SeriesOhms => "Resistance before the rectifier",
-        Detail::DegaussColdOhms => "Degauss coil, cold",
-        Detail::DegaussWarmAmps => "Degauss coil, warm",
-        Detail::DegaussTripWatts => "Heat that trips the degauss",
-        Detail::BreakawayShare => "Torque to break away, share of rated",
-        Detail::MeasuredOhms => "Ohms at the plug",
-        Detail::RestartSeconds => "Waits before a restart",
-        other => other.name(),
-    }
-}
-
-fn fault(which: Slot, fault: &Fault) -> String {
-    let name = slot(which);
-    match fault {
-        Fault::Text(QuantityError::Empty { .. }) => format!("{name} is empty."),
-        Fault::Text(QuantityError::WrongUnit { field }) if field.unit().is_empty() => {
-            format!("{name} has no unit.")
-        }
-        Fault::Text(QuantityError::WrongUnit { field }) => {
-            format!("{name} is measured in {}.", field.unit())
-        }
-        Fault::Number(
-            InputError::OutOfRange { low, high, .. } | InputError::DetailOutOfRange { low, high, .. },
-        ) => range(name, which.unit(), *low, *high),
-        Fault::Number(InputError::Missing { .. }) => {
-            format!("{name} is empty. Watts, amps or volt-amps: one of them is needed.")
-        }
-        Fault::Number(InputError::Conflict { field, limit, .. }) => {
-            format!("{name} can be at most {} here.", NUMERALS.quantity(*limit, field.unit()))
-        }
-        Fault::Number(InputError::NeedsAlternating { .. }) => String::from(
-            "This equipment needs alternating current; on DC use a heater, or plain with power factor 1.",
-        ),
-        _ => format!("{name} is not a number. Type it like 60, 0.5 or 1k2."),
-    }
-}
-
-fn range(name: &str, unit: &str, low: f64, high: f64) -> String {
-    #[expect(
-        clippy::float_cmp,
-        reason = "the two ends are the same constant where only one value is allowed"
-    )]
-    if low == high {
-        return format!("{name} must be {} here.", NUMERALS.quantity(low, unit));
-    }
-    format!("{name} must be from {} to {}.", NUMERALS.short(low), NUMERALS.short_quantity(high, unit))
-}
-
 static EDIT: EditWords = EditWords {
     usual_volts: "Usual voltages",
     usual_hertz: "Usual frequencies",
@@ -514,14 +428,6 @@ mod tests {
 
     #[test]
     fn nothing_says_safe() {
-        use lampladder_core::error::Field;
-        let fault = Fault::Number(InputError::OutOfRange {
-            field: Field::Watts,
-            value: 0.0,
-            low: 0.05,
-            high: 5000.0,
-        });
-        assert_eq!(super::fault(Slot::PlateWatts, &fault), "Plate watts must be from 0.05 to 5000\u{a0}W.");
         for word in GlowWord::ALL {
             assert!(!glow(word).contains("safe"));
         }
