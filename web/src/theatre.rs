@@ -17,6 +17,18 @@ const STEPS: u32 = 60;
 /// Milliseconds without a change before anything is run: a person who types is not done.
 const QUIET: f64 = 250.0;
 
+/// Whether it moves.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
+enum Play {
+    /// It begins by itself as soon as there is something to see.
+    Waiting,
+    /// It plays.
+    Playing,
+    /// It stands.
+    #[default]
+    Still,
+}
+
 /// The stage.
 #[derive(Debug, Default)]
 pub struct Theatre {
@@ -25,13 +37,11 @@ pub struct Theatre {
     pub version: u32,
     /// Where the play stands, seconds after the switch closed.
     pub seconds: f64,
-    /// Whether it is playing.
-    pub playing: bool,
+    play: Play,
     /// Whether it begins by itself.
     pub autoplay: bool,
     /// Whether the beginning plays slowly.
     pub slow: bool,
-    waits: bool,
     not_before: f64,
     last_frame: Option<f64>,
 }
@@ -52,15 +62,14 @@ impl Theatre {
         self.work = Some(Work::new(ask, self.work.as_ref()));
         self.version += 1;
         self.seconds = 0.0;
-        self.playing = false;
-        self.waits = true;
+        self.play = if self.autoplay { Play::Waiting } else { Play::Still };
         self.last_frame = None;
     }
 
     /// One frame; whether there is something to draw.
     pub fn frame(&mut self, now: f64, clock: impl Fn() -> f64) -> bool {
-        let mut draw = self.playing;
-        self.play(now);
+        let mut draw = self.is_playing();
+        self.go_on(now);
         if let Some(work) = &mut self.work
             && now >= self.not_before
         {
@@ -74,17 +83,21 @@ impl Theatre {
                     break;
                 }
             }
-            if self.waits && work.reach() > 0.0 {
-                self.waits = false;
-                self.playing = self.autoplay;
+            if self.play == Play::Waiting && work.reach() > 0.0 {
+                self.play = Play::Playing;
             }
         }
         draw
     }
 
+    /// Whether it is playing.
+    pub fn is_playing(&self) -> bool {
+        self.play == Play::Playing
+    }
+
     /// Whether frames are needed.
     pub fn is_busy(&self) -> bool {
-        self.playing || self.work.as_ref().is_some_and(|work| !work.is_done())
+        self.is_playing() || self.work.as_ref().is_some_and(|work| !work.is_done())
     }
 
     /// Where the play ends, seconds.
@@ -102,8 +115,7 @@ impl Theatre {
         if self.is_over() {
             self.seconds = 0.0;
         }
-        self.playing = !self.playing;
-        self.waits = false;
+        self.play = if self.is_playing() { Play::Still } else { Play::Playing };
         self.last_frame = None;
     }
 
@@ -111,13 +123,12 @@ impl Theatre {
     pub fn seek(&mut self, seconds: f64) {
         let reach = self.work.as_ref().map_or(0.0, Work::reach);
         self.seconds = seconds.clamp(0.0, reach);
-        self.playing = false;
-        self.waits = false;
+        self.play = Play::Still;
     }
 
-    fn play(&mut self, now: f64) {
+    fn go_on(&mut self, now: f64) {
         let last = self.last_frame.replace(now);
-        let Some(work) = self.work.as_ref().filter(|_| self.playing) else { return };
+        let Some(work) = self.work.as_ref().filter(|_| self.play == Play::Playing) else { return };
         let mut wall = last.map_or(0.0, |last| ((now - last) / 1000.0).clamp(0.0, LONGEST_FRAME));
         if self.slow && self.seconds < SLOW_UNTIL {
             let slowly = wall.min((SLOW_UNTIL - self.seconds) / SLOWLY);
@@ -125,7 +136,9 @@ impl Theatre {
             wall -= slowly;
         }
         self.seconds = (self.seconds + wall).min(work.reach());
-        self.playing = self.seconds < work.ask.seconds;
+        if self.seconds >= work.ask.seconds {
+            self.play = Play::Still;
+        }
     }
 }
 
@@ -163,7 +176,7 @@ mod tests {
     #[test]
     fn it_plays_in_real_time_to_its_end_and_then_again() {
         let mut theatre = ready(true, false);
-        assert!(theatre.playing && theatre.seconds == 0.0);
+        assert!(theatre.is_playing() && theatre.seconds == 0.0);
         for frame in 1..=60_u32 {
             assert!(theatre.frame(f64::from(frame) * 16.0, || 0.0));
         }
@@ -171,9 +184,9 @@ mod tests {
         for frame in 61..=260_u32 {
             theatre.frame(f64::from(frame) * 16.0, || 0.0);
         }
-        assert!(theatre.is_over() && !theatre.playing && !theatre.is_busy());
+        assert!(theatre.is_over() && !theatre.is_playing() && !theatre.is_busy());
         theatre.toggle();
-        assert!(theatre.playing && theatre.seconds == 0.0);
+        assert!(theatre.is_playing() && theatre.seconds == 0.0);
     }
 
     #[test]
@@ -189,13 +202,13 @@ mod tests {
     #[test]
     fn those_who_want_stillness_begin_it_themselves() {
         let mut theatre = ready(false, false);
-        assert!(!theatre.playing && !theatre.is_busy());
+        assert!(!theatre.is_playing() && !theatre.is_busy());
         theatre.seek(99.0);
         assert_eq!(theatre.seconds, 3.0);
         theatre.seek(0.5);
-        assert!(!theatre.playing && theatre.seconds == 0.5);
+        assert!(!theatre.is_playing() && theatre.seconds == 0.5);
         theatre.toggle();
-        assert!(theatre.playing);
+        assert!(theatre.is_playing());
     }
 
     #[test]

@@ -1,6 +1,6 @@
 //! Something to do before every frame, for as long as there is something to do.
 
-use std::cell::{Cell, RefCell};
+use std::cell::{Cell, OnceCell};
 use std::rc::Rc;
 
 use wasm_bindgen::JsCast;
@@ -12,7 +12,7 @@ pub struct Frames(Rc<Loop>);
 
 #[derive(Debug, Default)]
 struct Loop {
-    each: RefCell<Option<Closure<dyn FnMut(f64)>>>,
+    each: OnceCell<Closure<dyn FnMut(f64)>>,
     asked: Cell<Option<i32>>,
 }
 
@@ -29,7 +29,7 @@ impl Frames {
                 inner.wake();
             }
         });
-        new.0.each.replace(Some(each));
+        let _ = new.0.each.set(each);
         new
     }
 
@@ -44,8 +44,7 @@ impl Loop {
         if self.asked.get().is_some() {
             return;
         }
-        let each = self.each.borrow();
-        let (Some(window), Some(each)) = (web_sys::window(), each.as_ref()) else { return };
+        let (Some(window), Some(each)) = (web_sys::window(), self.each.get()) else { return };
         self.asked.set(window.request_animation_frame(each.as_ref().unchecked_ref()).ok());
     }
 }

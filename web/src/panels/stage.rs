@@ -89,9 +89,8 @@ fn figure(bench: &Bench, scene: &Scene, index: usize, seconds: f64) -> El {
                 Some((glow.name(), kelvin, sample.amps_rms)),
             )
         }
-        Ok(None) => (words.none, String::from(words.none), None),
         Err(SwitchOnError::FilamentMelts { .. }) => (words.burnt, String::from(words.none), None),
-        Err(_) => (words.none, String::from(words.none), None),
+        Ok(None) | Err(_) => (words.none, String::from(words.none), None),
     };
     let name = el("strong").with(el("i").class(SWATCHES[index])).text((words.condition)(scene.condition));
     let figure = el("div")
@@ -159,7 +158,7 @@ fn bank(
 pub(super) fn controls(bench: &Bench, theatre: &Theatre, hand: &Hand) -> El {
     let words = bench.words();
     let texts = words.replay;
-    let (name, sign) = if theatre.playing {
+    let (name, sign) = if theatre.is_playing() {
         (texts.pause, "M7 5 V19 M17 5 V19")
     } else if theatre.is_over() {
         (texts.again, "M19 12 a7 7 0 1 1 -2.200 -5.100 L19 9 M19 3.500 V9 H13.500")
@@ -168,7 +167,7 @@ pub(super) fn controls(bench: &Bench, theatre: &Theatre, hand: &Hand) -> El {
     };
     let end = theatre.end();
     let clock = clock(bench, theatre.seconds);
-    let state = if theatre.playing { "playing" } else { "still" };
+    let state = if theatre.is_playing() { "playing" } else { "still" };
     let play = button("play", "play", hand.click(Theatre::toggle))
         .set("aria-label", name)
         .set("data-state", state)
@@ -190,7 +189,7 @@ pub(super) fn controls(bench: &Bench, theatre: &Theatre, hand: &Hand) -> El {
         .set("class", "scrubber")
         .set("aria-label", texts.time)
         // A reader that follows every change of a playing replay would never be silent.
-        .put("aria-valuetext", if theatre.playing { String::from(texts.playing) } else { clock })
+        .put("aria-valuetext", if theatre.is_playing() { String::from(texts.playing) } else { clock })
         .test("scrubber")
         .put("data-seconds", full(theatre.seconds))
         .put("data-end", full(end))
