@@ -1,14 +1,13 @@
 //! How fast a switch-mode supply pulses that starts, pulls its own input down, stops and starts again.
 //!
 //! Averaged over the mains cycle: each filament's heat and the reservoir's charge are integrated with the closed
-//! form of the rectifier's pulse, with a fixed step of the classical fourth-order Runge-Kutta method, until two
-//! starts in a row are the same distance apart.
+//! form of the rectifier's pulse by the classical fourth-order Runge-Kutta method, each step as long as nothing
+//! changes by more than a few per cent, until two starts in a row are the same distance apart.
 
 use alloc::vec::Vec;
 use core::f64::consts::SQRT_2;
 
-use crate::bank::Bank;
-use crate::lamp::Lamp;
+use crate::bank::{Bank, Strand};
 use crate::load::{Load, Rectifier, Thresholds};
 use crate::supply::Supply;
 use crate::tungsten::AMBIENT_KELVIN;
@@ -17,10 +16,20 @@ use crate::wire::Wire;
 /// Where the integration gives up, seconds.
 pub(crate) const LONGEST_SECONDS: f64 = 30.0;
 
-const STEP_SECONDS: f64 = 1e-3;
+/// Longest and shortest step, seconds.
+const STRIDES: (f64, f64) = (0.02, 1e-4);
+
+/// Change of a value in one step, relative to itself.
+const CHANGE: f64 = 0.04;
+
+/// More steps than any hunting takes that has a period.
+const MOST_STEPS: usize = 50_000;
 
 /// Two periods this close, relatively, are one.
 const SAME: f64 = 0.01;
+
+/// DC volts, then the kelvin of every distinct filament of the bank.
+type State = [f64; 1 + Bank::MOST_LAMPS];
 
 /// Time from one start to the next, seconds; `None` where fewer than two starts fit into 30 s.
 pub(crate) fn period_seconds(supply: &Supply, bank: &Bank, load: &Load) -> Option<f64> {
@@ -32,21 +41,14 @@ pub(crate) fn period_seconds(supply: &Supply, bank: &Bank, load: &Load) -> Optio
         _ => return None,
     };
     let model = Averaged::new(supply, bank, &rectifier);
-    let mut state = model.cold();
+    let mut state = [AMBIENT_KELVIN; 1 + Bank::MOST_LAMPS];
+    state[0] = 0.0;
     let mut running = false;
-    let mut waited = 0.0;
+    let (mut seconds, mut waited) = (0.0, 0.0);
     let (mut last_start, mut last_period) = (None, None);
-    let steps = LONGEST_SECONDS / STEP_SECONDS;
-    let mut seconds = 0.0;
-    while seconds < steps * STEP_SECONDS {
-        model.step(&mut state, running);
-        seconds += STEP_SECONDS;
-        let dc_volts = state[0];
-        if running && dc_volts < stop_volts {
-            running = false;
-        } else if !running && dc_volts >= start_volts && waited < restart_seconds {
-            waited += STEP_SECONDS;
-        } else if !running && dc_volts >= start_volts {
+    for _ in 0..MOST_STEPS {
+        let charged = state[0] >= start_volts;
+        if !running && charged && waited >= restart_seconds {
             running = true;
             waited = 0.0;
             let period = last_start.map(|start: f64| seconds - start);
@@ -58,40 +60,59 @@ pub(crate) fn period_seconds(supply: &Supply, bank: &Bank, load: &Load) -> Optio
             last_start = Some(seconds);
             last_period = period;
         }
+        if seconds > LONGEST_SECONDS {
+            break;
+        }
+        let slope = model.slope(&state, running);
+        let mut stride = model.stride(&state, &slope);
+        if !running && charged {
+            stride = stride.min(restart_seconds - waited);
+        }
+        let next = model.step(&state, &slope, stride, running);
+        let threshold = if running { stop_volts } else { start_volts };
+        let crossed = if running { next[0] < stop_volts } else { !charged && next[0] >= start_volts };
+        if crossed {
+            // Along a step this short a straight line finds the moment; at least a little time passes.
+            let part = ((threshold - state[0]) / (next[0] - state[0])).clamp(0.01, 1.0);
+            for (value, end) in state.iter_mut().zip(next) {
+                *value += part * (end - *value);
+            }
+            state[0] = threshold;
+            seconds += part * stride;
+            running = false;
+        } else {
+            state = next;
+            seconds += stride;
+            waited += if !running && charged { stride } else { 0.0 };
+        }
     }
     last_period
 }
 
-/// State: DC volts, then every filament's kelvin in the order of the bank.
 struct Averaged<'a> {
     supply: &'a Supply,
-    bank: &'a Bank,
     rectifier: &'a Rectifier,
-    wires: Vec<Wire>,
+    strands: Vec<(Strand<'a>, Wire)>,
 }
 
 impl<'a> Averaged<'a> {
     fn new(supply: &'a Supply, bank: &'a Bank, rectifier: &'a Rectifier) -> Self {
-        let wires = bank.groups().iter().flatten().map(|lamp| Wire::of(lamp.filament())).collect();
-        Self { supply, bank, rectifier, wires }
+        let strands = bank.strands().map(|strand| (strand, Wire::of(strand.filament))).collect();
+        Self { supply, rectifier, strands }
     }
 
-    fn cold(&self) -> Vec<f64> {
-        let mut state = alloc::vec![AMBIENT_KELVIN; 1 + self.wires.len()];
-        state[0] = 0.0;
-        state
-    }
-
-    fn slope(&self, state: &[f64], running: bool) -> Vec<f64> {
-        let ohms = |lamp: &Lamp, kelvin: f64| lamp.filament().at_rise(kelvin - AMBIENT_KELVIN).ohms;
-        let mut kelvins = state[1..].iter();
-        let mut group_ohms = Vec::with_capacity(self.bank.groups().len());
-        for group in self.bank.groups() {
-            let siemens: f64 =
-                group.iter().zip(kelvins.by_ref()).map(|(lamp, &kelvin)| 1.0 / ohms(lamp, kelvin)).sum();
-            group_ohms.push(1.0 / siemens);
+    fn slope(&self, state: &State, running: bool) -> State {
+        let mut points = [(0.0, 0.0); Bank::MOST_LAMPS];
+        let mut groups = [(0.0, 0.0); Bank::MOST_LAMPS];
+        for ((point, (strand, _)), kelvin) in points.iter_mut().zip(&self.strands).zip(&state[1..]) {
+            let here = strand.filament.at_rise(kelvin - AMBIENT_KELVIN);
+            *point = (here.ohms, here.watts);
+            let (siemens, times) = &mut groups[strand.group];
+            *siemens += strand.count / here.ohms;
+            *times = strand.times;
         }
-        let bank_ohms: f64 = group_ohms.iter().sum();
+        let in_series = groups.iter().filter(|group| group.0 > 0.0);
+        let bank_ohms: f64 = in_series.map(|(siemens, times)| times / siemens).sum();
         let dc_volts = state[0].max(0.0);
         let (mean, rms) = self.currents(bank_ohms + self.supply.ohms(), dc_volts);
         let drawn = if running {
@@ -100,17 +121,11 @@ impl<'a> Averaged<'a> {
         } else {
             0.0
         };
-        let mut slope = alloc::vec![(mean - drawn) / self.rectifier.spec().farads];
-        let lamps = self
-            .bank
-            .groups()
-            .iter()
-            .zip(&group_ohms)
-            .flat_map(|(group, &ohms)| group.iter().map(move |lamp| (lamp, ohms)));
-        for (((lamp, ohms), wire), &kelvin) in lamps.zip(&self.wires).zip(&state[1..]) {
-            let point = lamp.filament().at_rise(kelvin - AMBIENT_KELVIN);
-            let volts = rms * ohms;
-            slope.push((volts * volts / point.ohms - point.watts) / wire.joules_per_kelvin(kelvin));
+        let mut slope = [0.0; 1 + Bank::MOST_LAMPS];
+        slope[0] = (mean - drawn) / self.rectifier.spec().farads;
+        for (index, ((strand, wire), (ohms, watts))) in self.strands.iter().zip(points).enumerate() {
+            let volts = rms / groups[strand.group].0;
+            slope[1 + index] = (volts * volts / ohms - watts) / wire.joules_per_kelvin(state[1 + index]);
         }
         slope
     }
@@ -132,18 +147,26 @@ impl<'a> Averaged<'a> {
         (crest / ohms * pulse.mean(), crest / ohms * pulse.rms())
     }
 
-    fn step(&self, state: &mut [f64], running: bool) {
-        let h = STEP_SECONDS;
-        let moved = |slope: &[f64], by: f64| -> Vec<f64> {
-            state.iter().zip(slope).map(|(value, slope)| value + by * slope).collect()
+    /// How long a step may be at this slope.
+    fn stride(&self, state: &State, slope: &State) -> f64 {
+        let least_volts = 0.05 * self.supply.volts();
+        let volts = state[0].max(least_volts) / slope[0].abs();
+        let kelvins = state[1..].iter().zip(&slope[1..]).map(|(kelvin, slope)| kelvin / slope.abs());
+        (CHANGE * kelvins.fold(volts, f64::min)).clamp(STRIDES.1, STRIDES.0)
+    }
+
+    /// One step of the classical method, its first slope known.
+    fn step(&self, state: &State, k1: &State, h: f64, running: bool) -> State {
+        let moved = |slope: &State, by: f64| -> State {
+            core::array::from_fn(|index| state[index] + by * slope[index])
         };
-        let k1 = self.slope(state, running);
-        let k2 = self.slope(&moved(&k1, h / 2.0), running);
+        let k2 = self.slope(&moved(k1, h / 2.0), running);
         let k3 = self.slope(&moved(&k2, h / 2.0), running);
         let k4 = self.slope(&moved(&k3, h), running);
-        for (index, value) in state.iter_mut().enumerate() {
-            *value += h / 6.0 * (k1[index] + 2.0 * (k2[index] + k3[index]) + k4[index]);
-        }
-        state[0] = state[0].max(0.0);
+        let mut next: State = core::array::from_fn(|index| {
+            state[index] + h / 6.0 * (k1[index] + 2.0 * (k2[index] + k3[index]) + k4[index])
+        });
+        next[0] = next[0].max(0.0);
+        next
     }
 }
