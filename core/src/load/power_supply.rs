@@ -6,6 +6,7 @@
 //! current is taken as a sinusoid a quarter period behind the voltage, so that it adds in quadrature; the pulse is
 //! then that of a rectifier behind the Thevenin equivalent of the rest, and all averages are closed forms.
 
+use core::cell::Cell;
 use core::f64::consts::{FRAC_PI_2, SQRT_2};
 
 use super::conduction::Pulse;
@@ -62,6 +63,22 @@ const INNER: f64 = 1e-11;
 
 /// Source resistance that stands for none, ohms.
 const STIFF_OHMS: f64 = 1e-6;
+
+/// How closely the coarse searches end.
+const COARSE: f64 = 1e-5;
+
+/// Where the inner searches of a coarse response ended last: the next ones begin there.
+#[derive(Debug, Clone)]
+pub(crate) struct Near {
+    heater_ln_rise: Cell<f64>,
+    magnetising_amps: Cell<f64>,
+}
+
+impl Default for Near {
+    fn default() -> Self {
+        Self { heater_ln_rise: Cell::new(f64::NAN), magnetising_amps: Cell::new(f64::NAN) }
+    }
+}
 
 /// What a supply takes at one feed.
 struct Response {
@@ -152,21 +169,55 @@ impl PowerSupply {
     /// What it takes, its inner searches ended at `inner`.
     fn respond(&self, feed: &Feed, inner: f64) -> Response {
         let Some(heater) = &self.heater else {
-            return self.with(feed, self.beside(feed.volts), inner).0;
+            return self.with(feed, self.beside(feed.volts), inner, None).0;
         };
         // Find the heater voltage that the heaters themselves leave.
-        let left = |ln_volts: f64| libm::log(self.with(feed, self.beside(libm::exp(ln_volts)), inner).1);
+        let left =
+            |ln_volts: f64| libm::log(self.with(feed, self.beside(libm::exp(ln_volts)), inner, None).1);
         let most = libm::log(feed.volts);
         let span = (most - 20.0, most);
         let guess = most - libm::log1p(0.7 * feed.ohms / heater.at_volts(0.6 * feed.volts).ohms);
         let tolerance = Tolerance { x: inner, residual: inner };
         let found = roots::fixed_point(left, span, guess, tolerance)
             .or_else(|| roots::decreasing_from(|x| left(x) - x, span, guess, tolerance));
-        self.with(feed, self.beside(libm::exp(found.map_or(most, |root| root.x))), inner).0
+        self.with(feed, self.beside(libm::exp(found.map_or(most, |root| root.x))), inner, None).0
+    }
+
+    /// The same to one part in a hundred thousand, from `near` a point found before.
+    fn coarse_response(&self, feed: &Feed, near: &Near) -> Response {
+        let Some(heater) = &self.heater else {
+            return self.with(feed, self.beside(feed.volts), COARSE, Some(near)).0;
+        };
+        // In the heaters' temperature, so that their own curve is evaluated and not searched.
+        let at = |ln_rise: f64| {
+            let point = heater.at_ln_rise(ln_rise);
+            let beside = Beside {
+                siemens: 1.0 / self.spec.core_ohms + 1.0 / point.ohms,
+                emission: self.emission(point.kelvin()),
+            };
+            (self.with(feed, beside, COARSE, Some(near)), point.volts())
+        };
+        let moved = |ln_rise: f64| {
+            let ((_, left), volts) = at(ln_rise);
+            ln_rise + libm::log(left / volts)
+        };
+        let guess = match near.heater_ln_rise.get() {
+            known if known.is_finite() => known,
+            _ => heater.guess_ln_rise(0.6 * feed.volts / self.spec.rated_volts),
+        };
+        let tolerance = Tolerance { x: COARSE, residual: COARSE };
+        let span = Filament::ln_rise_span();
+        match roots::fixed_point(moved, span, guess, tolerance) {
+            Some(root) => {
+                near.heater_ln_rise.set(root.x);
+                at(root.x).0.0
+            }
+            None => self.respond(feed, COARSE),
+        }
     }
 
     /// The response with what stands beside frozen, and the volts on the mains side.
-    fn with(&self, feed: &Feed, beside: Beside, inner: f64) -> (Response, f64) {
+    fn with(&self, feed: &Feed, beside: Beside, inner: f64, near: Option<&Near>) -> (Response, f64) {
         // Find the magnetising current that belongs to the voltage it leaves.
         let direct = feed.hertz == 0.0;
         let most = if direct { 0.0 } else { self.magnetising_amps(feed.volts).min(feed.volts / feed.ohms) };
@@ -174,9 +225,15 @@ impl PowerSupply {
         let magnetising = if most > 0.0 {
             let tolerance = Tolerance { x: inner * most, residual: inner * most };
             let gap = |amps: f64| wanted(amps) - amps;
-            roots::fixed_point(wanted, (0.0, most), wanted(0.0).min(most), tolerance)
+            let known = near.map(|near| near.magnetising_amps.get()).filter(|amps| amps.is_finite());
+            let guess = known.unwrap_or_else(|| wanted(0.0)).min(most);
+            let found = roots::fixed_point(wanted, (0.0, most), guess, tolerance)
                 .or_else(|| roots::between(gap, (0.0, gap(0.0)), (most, gap(most)), tolerance))
-                .map_or(most, |root| root.x)
+                .map_or(most, |root| root.x);
+            if let Some(near) = near {
+                near.magnetising_amps.set(found);
+            }
+            found
         } else {
             0.0
         };
@@ -247,9 +304,15 @@ impl PowerSupply {
         libm::log(self.respond(feed, INNER).amps / feed.amps).clamp(-FAR, FAR)
     }
 
-    /// The same to one part in a hundred thousand.
-    pub(super) fn coarse_excess(&self, feed: &Feed) -> f64 {
-        libm::log(self.respond(feed, 1e-5).amps / feed.amps).clamp(-FAR, FAR)
+    /// The same to one part in a hundred thousand, from `near` a point found before.
+    pub(super) fn coarse_excess(&self, feed: &Feed, near: &Near) -> f64 {
+        libm::log(self.coarse_response(feed, near).amps / feed.amps).clamp(-FAR, FAR)
+    }
+
+    /// The terminals to one part in a hundred thousand.
+    pub(super) fn coarse_terminal(&self, feed: &Feed, near: &Near) -> Terminal {
+        let response = self.coarse_response(feed, near);
+        Terminal::from_power(feed, response.watts, Some(response.dc_volts))
     }
 
     pub(super) fn terminal(&self, feed: &Feed) -> Terminal {
