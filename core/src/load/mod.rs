@@ -167,8 +167,8 @@ impl Load {
         }
     }
 
-    /// The same to one part in a hundred thousand, which is cheaper where it takes searches of its own; they start
-    /// from `near` those of a similar load.
+    /// The same within a thousandth, which is cheaper where it takes searches of its own; they start from `near` those of
+    /// a similar load.
     pub(crate) fn coarse_excess(&self, feed: &Feed, near: &Near) -> f64 {
         match self {
             Self::PowerSupply(supply) => supply.coarse_excess(feed, near),

@@ -169,24 +169,24 @@ impl PowerSupply {
     /// What it takes, its inner searches ended at `inner`.
     fn respond(&self, feed: &Feed, inner: f64) -> Response {
         let Some(heater) = &self.heater else {
-            return self.with(feed, self.beside(feed.volts), inner, None).0;
+            return self.with(feed, self.beside(feed.volts), inner).0;
         };
         // Find the heater voltage that the heaters themselves leave.
-        let left =
-            |ln_volts: f64| libm::log(self.with(feed, self.beside(libm::exp(ln_volts)), inner, None).1);
+        let left = |ln_volts: f64| libm::log(self.with(feed, self.beside(libm::exp(ln_volts)), inner).1);
         let most = libm::log(feed.volts);
         let span = (most - 20.0, most);
         let guess = most - libm::log1p(0.7 * feed.ohms / heater.at_volts(0.6 * feed.volts).ohms);
         let tolerance = Tolerance { x: inner, residual: inner };
         let found = roots::fixed_point(left, span, guess, tolerance)
             .or_else(|| roots::decreasing_from(|x| left(x) - x, span, guess, tolerance));
-        self.with(feed, self.beside(libm::exp(found.map_or(most, |root| root.x))), inner, None).0
+        self.with(feed, self.beside(libm::exp(found.map_or(most, |root| root.x))), inner).0
     }
 
-    /// The same to one part in a hundred thousand, from `near` a point found before.
+    /// The same a little off, from `near` a point found before: by less than a thousandth once a search around it has
+    /// come to rest.
     fn coarse_response(&self, feed: &Feed, near: &Near) -> Response {
         let Some(heater) = &self.heater else {
-            return self.with(feed, self.beside(feed.volts), COARSE, Some(near)).0;
+            return self.with_lagging(feed, self.beside(feed.volts), near).0;
         };
         // In the heaters' temperature, so that their own curve is evaluated and not searched.
         let at = |ln_rise: f64| {
@@ -195,11 +195,11 @@ impl PowerSupply {
                 siemens: 1.0 / self.spec.core_ohms + 1.0 / point.ohms,
                 emission: self.emission(point.kelvin()),
             };
-            (self.with(feed, beside, COARSE, Some(near)), point.volts())
+            (self.with_lagging(feed, beside, near), point.volts())
         };
-        let moved = |ln_rise: f64| {
+        let excess = |ln_rise: f64| {
             let ((_, left), volts) = at(ln_rise);
-            ln_rise + libm::log(left / volts)
+            libm::log(left / volts)
         };
         let guess = match near.heater_ln_rise.get() {
             known if known.is_finite() => known,
@@ -207,17 +207,36 @@ impl PowerSupply {
         };
         let tolerance = Tolerance { x: COARSE, residual: COARSE };
         let span = Filament::ln_rise_span();
-        match roots::fixed_point(moved, span, guess, tolerance) {
-            Some(root) => {
-                near.heater_ln_rise.set(root.x);
-                at(root.x).0.0
-            }
-            None => self.respond(feed, COARSE),
+        // A high tension that sets in can be far steeper than a straight line: then the bracket.
+        let found = roots::fixed_point(|x| x + excess(x), span, guess, tolerance)
+            .or_else(|| roots::decreasing_from(excess, span, guess, tolerance));
+        let ln_rise = found.map_or(guess, |root| root.x);
+        near.heater_ln_rise.set(ln_rise);
+        at(ln_rise).0.0
+    }
+
+    /// As [`Self::with`], but with the magnetising current that the last call left: it shifts the voltage in quadrature
+    /// only, so that it lags by next to nothing along a search.
+    fn with_lagging(&self, feed: &Feed, beside: Beside, near: &Near) -> (Response, f64) {
+        let most = if feed.hertz == 0.0 { 0.0 } else { self.magnetising_amps(feed.volts) };
+        let most = most.min(0.99 * feed.volts / feed.ohms);
+        let mut lagging = near.magnetising_amps.get();
+        if lagging.is_nan() {
+            lagging = self.magnetising_amps(self.behind(feed, 0.0, beside).fundamental_volts);
         }
+        let in_phase = self.behind(feed, lagging.min(most), beside);
+        let magnetising = self.magnetising_amps(in_phase.fundamental_volts).min(most);
+        near.magnetising_amps.set(magnetising);
+        let response = Response {
+            amps: libm::hypot(in_phase.amps, magnetising),
+            watts: in_phase.watts,
+            dc_volts: in_phase.dc_volts,
+        };
+        (response, in_phase.volts)
     }
 
     /// The response with what stands beside frozen, and the volts on the mains side.
-    fn with(&self, feed: &Feed, beside: Beside, inner: f64, near: Option<&Near>) -> (Response, f64) {
+    fn with(&self, feed: &Feed, beside: Beside, inner: f64) -> (Response, f64) {
         // Find the magnetising current that belongs to the voltage it leaves.
         let direct = feed.hertz == 0.0;
         let most = if direct { 0.0 } else { self.magnetising_amps(feed.volts).min(feed.volts / feed.ohms) };
@@ -225,15 +244,9 @@ impl PowerSupply {
         let magnetising = if most > 0.0 {
             let tolerance = Tolerance { x: inner * most, residual: inner * most };
             let gap = |amps: f64| wanted(amps) - amps;
-            let known = near.map(|near| near.magnetising_amps.get()).filter(|amps| amps.is_finite());
-            let guess = known.unwrap_or_else(|| wanted(0.0)).min(most);
-            let found = roots::fixed_point(wanted, (0.0, most), guess, tolerance)
+            roots::fixed_point(wanted, (0.0, most), wanted(0.0).min(most), tolerance)
                 .or_else(|| roots::between(gap, (0.0, gap(0.0)), (most, gap(most)), tolerance))
-                .map_or(most, |root| root.x);
-            if let Some(near) = near {
-                near.magnetising_amps.set(found);
-            }
-            found
+                .map_or(most, |root| root.x)
         } else {
             0.0
         };
@@ -304,12 +317,12 @@ impl PowerSupply {
         libm::log(self.respond(feed, INNER).amps / feed.amps).clamp(-FAR, FAR)
     }
 
-    /// The same to one part in a hundred thousand, from `near` a point found before.
+    /// The same a little off, from `near` a point found before.
     pub(super) fn coarse_excess(&self, feed: &Feed, near: &Near) -> f64 {
         libm::log(self.coarse_response(feed, near).amps / feed.amps).clamp(-FAR, FAR)
     }
 
-    /// The terminals to one part in a hundred thousand.
+    /// The terminals, as closely as that.
     pub(super) fn coarse_terminal(&self, feed: &Feed, near: &Near) -> Terminal {
         let response = self.coarse_response(feed, near);
         Terminal::from_power(feed, response.watts, Some(response.dc_volts))
