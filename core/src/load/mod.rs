@@ -23,6 +23,7 @@ pub use degauss::Degauss;
 pub use half_short::HalfShort;
 pub use impedance::Impedance;
 pub use induction_motor::{InductionMotor, InductionMotorSpec};
+pub(crate) use power_supply::Near;
 pub use power_supply::{PowerSupply, PowerSupplySpec};
 pub use rectifier::{Draw, Rectifier, RectifierSpec};
 pub use universal_motor::{UniversalMotor, UniversalMotorSpec};
@@ -166,11 +167,20 @@ impl Load {
         }
     }
 
-    /// The same to one part in a hundred thousand, which is cheaper where it takes searches of its own.
-    pub(crate) fn coarse_excess(&self, feed: &Feed) -> f64 {
+    /// The same within a thousandth, which is cheaper where it takes searches of its own; they start from `near` those of
+    /// a similar load.
+    pub(crate) fn coarse_excess(&self, feed: &Feed, near: &Near) -> f64 {
         match self {
-            Self::PowerSupply(supply) => supply.coarse_excess(feed),
+            Self::PowerSupply(supply) => supply.coarse_excess(feed, near),
             _ => self.excess(feed),
+        }
+    }
+
+    /// What the terminals show, as closely as [`Self::coarse_excess`].
+    pub(crate) fn coarse_terminal(&self, feed: &Feed, near: &Near) -> Terminal {
+        match self {
+            Self::PowerSupply(supply) => supply.coarse_terminal(feed, near),
+            _ => self.terminal(feed),
         }
     }
 

@@ -6,6 +6,7 @@
 //! current is taken as a sinusoid a quarter period behind the voltage, so that it adds in quadrature; the pulse is
 //! then that of a rectifier behind the Thevenin equivalent of the rest, and all averages are closed forms.
 
+use core::cell::Cell;
 use core::f64::consts::{FRAC_PI_2, SQRT_2};
 
 use super::conduction::Pulse;
@@ -62,6 +63,22 @@ const INNER: f64 = 1e-11;
 
 /// Source resistance that stands for none, ohms.
 const STIFF_OHMS: f64 = 1e-6;
+
+/// How closely the coarse searches end.
+const COARSE: f64 = 1e-5;
+
+/// Where the inner searches of a coarse response ended last: the next ones begin there.
+#[derive(Debug, Clone)]
+pub(crate) struct Near {
+    heater_ln_rise: Cell<f64>,
+    magnetising_amps: Cell<f64>,
+}
+
+impl Default for Near {
+    fn default() -> Self {
+        Self { heater_ln_rise: Cell::new(f64::NAN), magnetising_amps: Cell::new(f64::NAN) }
+    }
+}
 
 /// What a supply takes at one feed.
 struct Response {
@@ -165,6 +182,59 @@ impl PowerSupply {
         self.with(feed, self.beside(libm::exp(found.map_or(most, |root| root.x))), inner).0
     }
 
+    /// The same a little off, from `near` a point found before: by less than a thousandth once a search around it has
+    /// come to rest.
+    fn coarse_response(&self, feed: &Feed, near: &Near) -> Response {
+        let Some(heater) = &self.heater else {
+            return self.with_lagging(feed, self.beside(feed.volts), near).0;
+        };
+        // In the heaters' temperature, so that their own curve is evaluated and not searched.
+        let at = |ln_rise: f64| {
+            let point = heater.at_ln_rise(ln_rise);
+            let beside = Beside {
+                siemens: 1.0 / self.spec.core_ohms + 1.0 / point.ohms,
+                emission: self.emission(point.kelvin()),
+            };
+            (self.with_lagging(feed, beside, near), point.volts())
+        };
+        let excess = |ln_rise: f64| {
+            let ((_, left), volts) = at(ln_rise);
+            libm::log(left / volts)
+        };
+        let guess = match near.heater_ln_rise.get() {
+            known if known.is_finite() => known,
+            _ => heater.guess_ln_rise(0.6 * feed.volts / self.spec.rated_volts),
+        };
+        let tolerance = Tolerance { x: COARSE, residual: COARSE };
+        let span = Filament::ln_rise_span();
+        // A high tension that sets in can be far steeper than a straight line: then the bracket.
+        let found = roots::fixed_point(|x| x + excess(x), span, guess, tolerance)
+            .or_else(|| roots::decreasing_from(excess, span, guess, tolerance));
+        let ln_rise = found.map_or(guess, |root| root.x);
+        near.heater_ln_rise.set(ln_rise);
+        at(ln_rise).0.0
+    }
+
+    /// As [`Self::with`], but with the magnetising current that the last call left: it shifts the voltage in quadrature
+    /// only, so that it lags by next to nothing along a search.
+    fn with_lagging(&self, feed: &Feed, beside: Beside, near: &Near) -> (Response, f64) {
+        let most = if feed.hertz == 0.0 { 0.0 } else { self.magnetising_amps(feed.volts) };
+        let most = most.min(0.99 * feed.volts / feed.ohms);
+        let mut lagging = near.magnetising_amps.get();
+        if lagging.is_nan() {
+            lagging = self.magnetising_amps(self.behind(feed, 0.0, beside).fundamental_volts);
+        }
+        let in_phase = self.behind(feed, lagging.min(most), beside);
+        let magnetising = self.magnetising_amps(in_phase.fundamental_volts).min(most);
+        near.magnetising_amps.set(magnetising);
+        let response = Response {
+            amps: libm::hypot(in_phase.amps, magnetising),
+            watts: in_phase.watts,
+            dc_volts: in_phase.dc_volts,
+        };
+        (response, in_phase.volts)
+    }
+
     /// The response with what stands beside frozen, and the volts on the mains side.
     fn with(&self, feed: &Feed, beside: Beside, inner: f64) -> (Response, f64) {
         // Find the magnetising current that belongs to the voltage it leaves.
@@ -247,9 +317,15 @@ impl PowerSupply {
         libm::log(self.respond(feed, INNER).amps / feed.amps).clamp(-FAR, FAR)
     }
 
-    /// The same to one part in a hundred thousand.
-    pub(super) fn coarse_excess(&self, feed: &Feed) -> f64 {
-        libm::log(self.respond(feed, 1e-5).amps / feed.amps).clamp(-FAR, FAR)
+    /// The same a little off, from `near` a point found before.
+    pub(super) fn coarse_excess(&self, feed: &Feed, near: &Near) -> f64 {
+        libm::log(self.coarse_response(feed, near).amps / feed.amps).clamp(-FAR, FAR)
+    }
+
+    /// The terminals, as closely as that.
+    pub(super) fn coarse_terminal(&self, feed: &Feed, near: &Near) -> Terminal {
+        let response = self.coarse_response(feed, near);
+        Terminal::from_power(feed, response.watts, Some(response.dc_volts))
     }
 
     pub(super) fn terminal(&self, feed: &Feed) -> Terminal {

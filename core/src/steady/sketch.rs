@@ -4,7 +4,7 @@
 use super::{Circuit, LEAST_SLIP, SteadyError};
 use crate::bank::{Bank, Walk};
 use crate::filament::Filament;
-use crate::load::{InductionMotor, Load, Mode, Terminal};
+use crate::load::{InductionMotor, Load, Mode, Near, Terminal};
 use crate::roots::{self, Tolerance};
 use crate::supply::Supply;
 
@@ -37,8 +37,9 @@ pub(crate) enum Sketched {
 }
 
 /// Where a similar circuit settled: the next search begins there.
-#[derive(Debug, Clone, Copy, Default)]
+#[derive(Debug, Clone, Default)]
 pub(crate) struct Warm {
+    near: Near,
     ln_rise: Option<f64>,
     ln_slip: Option<f64>,
 }
@@ -92,7 +93,7 @@ fn turning(
         Circuit { supply, bank, walk, load: &load, mode: Mode::Turning }.coarse_point(warm)
     };
     let span = (libm::log(LEAST_SLIP), 0.0);
-    let mut inner = *warm;
+    let mut inner = warm.clone();
     let mut slowing = |ln_slip: f64| {
         at(ln_slip, &mut inner).map_or(f64::NAN, |point| motor.slowing(libm::exp(ln_slip), point.amps))
     };
@@ -140,7 +141,7 @@ impl Circuit<'_> {
         let hottest = short.one_root_from(self.bank.guess_ln_rise(self.supply.volts()), COARSE)?;
         let root = first_falling(|x| self.excess(x), (low.min(hottest.x - 1.0), hottest.x));
         let Some(root) = root else { return Ok(Sketched::Hunts) };
-        let point = self.sketch_at(root.x);
+        let point = self.sketch_at(root.x, &warm.near);
         let crest = if self.supply.is_direct() { 1.0 } else { core::f64::consts::SQRT_2 };
         let dc_volts = point.load_dc_volts.unwrap_or(crest * point.load_volts);
         let runs = self.load.thresholds().is_none_or(|thresholds| dc_volts >= thresholds.stop_volts);
@@ -149,16 +150,20 @@ impl Circuit<'_> {
 
     fn coarse_point(&self, warm: &mut Warm) -> Result<Sketch, SteadyError> {
         let guess = warm.ln_rise.unwrap_or_else(|| self.bank.guess_ln_rise(0.5 * self.supply.volts()));
-        let excess = |x| self.load.coarse_excess(&self.feed(&self.walk.to(x)));
-        let span = Filament::ln_rise_span();
-        let root = roots::decreasing_from(excess, span, guess, COARSE).ok_or_else(|| self.melts(span.1))?;
+        let root = if self.load.linear().is_some() {
+            self.one_root_from(guess, COARSE)?
+        } else {
+            let excess = |x| self.load.coarse_excess(&self.feed(&self.walk.to(x)), &warm.near);
+            let span = Filament::ln_rise_span();
+            roots::decreasing_from(excess, span, guess, COARSE).ok_or_else(|| self.melts(span.1))?
+        };
         warm.ln_rise = Some(root.x);
-        Ok(self.sketch_at(root.x))
+        Ok(self.sketch_at(root.x, &warm.near))
     }
 
-    fn sketch_at(&self, ln_rise: f64) -> Sketch {
+    fn sketch_at(&self, ln_rise: f64, near: &Near) -> Sketch {
         let bank = self.walk.to(ln_rise);
-        let Terminal { volts, watts, dc_volts } = self.load.terminal(&self.feed(&bank));
+        let Terminal { volts, watts, dc_volts } = self.load.coarse_terminal(&self.feed(&bank), near);
         Sketch {
             mode: self.mode,
             amps: bank.amps,
