@@ -15,12 +15,12 @@ use crate::theatre::place;
 use crate::words::Words;
 
 /// Height of the chart, CSS pixels; static/replay.css has the same figure.
-const HEIGHT: f64 = 152.0;
+const HEIGHT: f64 = 146.0;
 /// Room left and right of both strips; the scrubber above keeps to it, in static/replay.css.
 const LEFT: f64 = 58.0;
 const RIGHT: f64 = 40.0;
 /// Top and bottom of the two strips, CSS pixels from the chart's.
-const STRIPS: [(f64, f64); 2] = [(14.0, 68.0), (82.0, 134.0)];
+const STRIPS: [(f64, f64); 2] = [(14.0, 65.0), (79.0, 128.0)];
 /// Ends of two lines that are nearer than this share a place, CSS pixels.
 const APART: f64 = 12.0;
 

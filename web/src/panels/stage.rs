@@ -42,8 +42,8 @@ impl Hand {
 }
 
 /// Room for a bank's lamps, user units.
-const ROOM: Well = Well { x: 0.0, y: 0.0, width: 160.0, height: 78.0 };
-const VIEW: &str = "0 0 160 78";
+const ROOM: Well = Well { x: 0.0, y: 0.0, width: 160.0, height: 72.0 };
+const VIEW: &str = "0 0 160 72";
 const SMALL: Well = Well { x: 0.0, y: 0.0, width: 44.0, height: 30.0 };
 const SMALL_VIEW: &str = "0 0 44 30";
 /// Steps of the scrubber from end to end.
