@@ -6,18 +6,18 @@ use std::path::{Path, PathBuf};
 
 use anyhow::{Context, Result};
 
-/// The root of the checkout, known since this program was compiled in it.
-///
-/// `cargo xtask` sets the variable again at run time; that one wins, so a checkout may be moved.
+/// The root of the checkout: cargo says where this package lies, Trunk starts its hook in the root, and failing both
+/// it is where this program was compiled.
 pub(crate) fn root() -> PathBuf {
-    let package =
-        env::var_os("CARGO_MANIFEST_DIR").map_or_else(|| env!("CARGO_MANIFEST_DIR").into(), PathBuf::from);
-    // Cargo run from another member still names xtask's own folder here, for it is xtask's binary that runs; the
-    // compiled-in path covers the hook that Trunk starts, where the variable is absent.
-    match package.parent() {
-        Some(root) if root.join("Trunk.toml").exists() => root.to_path_buf(),
-        _ => Path::new(env!("CARGO_MANIFEST_DIR")).parent().map_or_else(PathBuf::new, Path::to_path_buf),
-    }
+    let packages =
+        [env::var_os("CARGO_MANIFEST_DIR").map(PathBuf::from), Some(env!("CARGO_MANIFEST_DIR").into())];
+    let [run, compiled] = packages.map(|package| Some(package?.parent()?.to_path_buf()));
+    let here = env::current_dir().ok();
+    [run, here, compiled]
+        .into_iter()
+        .flatten()
+        .find(|root| root.join("Trunk.toml").is_file())
+        .unwrap_or_default()
 }
 
 /// The built page.
