@@ -51,12 +51,14 @@ fn lamp_button(bench: &BenchHandle, place: Place, lamp: &LampDraft) -> El {
     let filament = state.map_or(Filament::Unknown, |lamp| Filament::Glowing(lamp.glow));
     let wrong = bench.faults.iter().any(|(slot, _)| matches!(slot, Slot::Lamp(other, _) if *other == place));
     let (class, mark) = if wrong { ("bulb is-wrong", " !") } else { ("bulb", "") };
-    let rating = format!("{}\u{a0}W", lamp.watts.trim().trim_end_matches(['W', 'w']).trim_end());
+    // What is heard holds what is seen, to the letter: who speaks to the phone says what stands on the button.
+    let watts = lamp.watts.trim().trim_end_matches(['W', 'w']).trim_end();
+    let rating = format!("{watts}\u{a0}W{mark}");
     let name = format!("lamp-{}-{}", place.group, place.lamp);
-    let heard = (words.lamp)(place, false, &rating) + mark;
+    let heard = (words.lamp)(place, false, &rating);
     button(class, name.clone(), send(bench, Msg::Choose(place)))
         .set("aria-pressed", truth(bench.lamp == place))
         .put("aria-label", heard)
         .with(lone(&name, "0 0 52 34", SMALL, filament))
-        .with(el("span").text(rating).text(mark))
+        .with(el("span").text(rating))
 }
