@@ -9,7 +9,7 @@ use super::supply::more;
 use crate::bench::{BenchHandle, Msg, Refused};
 use crate::draft::Slot;
 use crate::parts::choice::{Choice, choices};
-use crate::parts::el::{El, button, drawing, el, truth};
+use crate::parts::el::{El, button, drawing, el, place, truth};
 use crate::parts::{field, picture};
 
 const UNSUITABLE: [(Unsuitable, &str); 3] = [
@@ -34,9 +34,11 @@ pub fn equipment_editor(bench: &BenchHandle) -> Vec<El> {
         all.push(el("h3").text(words.edit.not_for));
         all.push(choices(words.edit.not_for, refusals(bench)));
     }
-    if let Some(Refused::Equipment(kind)) = bench.refused {
-        all.push(refusal((words.refuse_equipment)(kind)));
-    }
+    let refused = match bench.refused {
+        Some(Refused::Equipment(kind)) => Some(refusal((words.refuse_equipment)(kind))),
+        _ => None,
+    };
+    all.push(place(refused));
     if family == Family::Measured {
         all.push(field::stepped(bench, Slot::Detail(Detail::MeasuredOhms)));
     } else {

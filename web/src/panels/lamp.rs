@@ -9,7 +9,7 @@ use crate::bench::{BenchHandle, MOST_POINTS, Msg, Refused, Unsuitable};
 use crate::describe;
 use crate::draft::{LampPart, Slot};
 use crate::parts::choice::{Choice, choices};
-use crate::parts::el::{El, button, el};
+use crate::parts::el::{El, button, el, place};
 use crate::parts::field;
 use crate::step::{STOCK_WATTS, USUAL_VOLTS};
 
@@ -30,13 +30,15 @@ pub fn lamp_editor(bench: &BenchHandle) -> Vec<El> {
             .with(field::stepped(bench, slot(LampPart::Watts)))
             .with(field::stepped(bench, slot(LampPart::Volts))),
     ];
-    all.extend(lamp_volts(bench));
+    all.push(place(lamp_volts(bench)));
     all.push(el("h3").text(words.edit.kind));
     all.push(kinds(bench));
-    if let Some(Refused::Lamp(kind)) = bench.refused {
-        all.push(refusal((words.refusal)(kind)));
-    }
-    all.extend(life(bench));
+    let refused = match bench.refused {
+        Some(Refused::Lamp(kind)) => Some(refusal((words.refusal)(kind))),
+        _ => None,
+    };
+    all.push(place(refused));
+    all.push(place(life(bench)));
     let known = more(words.edit.lamp_more).maybe(filling(bench));
     let known = known
         .with(field::plain(bench, slot(LampPart::Lumens), words.edit.optional))

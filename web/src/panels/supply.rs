@@ -6,7 +6,7 @@ use super::send;
 use crate::bench::{BenchHandle, Msg};
 use crate::draft::Slot;
 use crate::parts::choice::{Choice, choices};
-use crate::parts::el::{El, button, el};
+use crate::parts::el::{El, button, el, place};
 use crate::parts::field;
 use crate::step::USUAL_VOLTS;
 
@@ -20,7 +20,7 @@ pub fn supply_editor(bench: &BenchHandle) -> Vec<El> {
         choices(words.edit.usual_volts, quick(bench, Slot::SupplyVolts, &USUAL_VOLTS, "volts")),
         field::stepped(bench, Slot::SupplyVolts),
     ];
-    all.extend(follow(bench));
+    all.push(place(follow(bench)));
     all.push(choices(words.edit.usual_hertz, quick(bench, Slot::SupplyHertz, &USUAL_HERTZ, "hertz")));
     all.push(field::plain(bench, Slot::SupplyHertz, ""));
     all.push(more(words.more).with(field::plain(bench, Slot::SupplyOhms, words.edit.ohms_hint)));

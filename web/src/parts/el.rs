@@ -30,6 +30,13 @@ pub fn drawing(view_box: &'static str) -> El {
     el("svg").set("viewBox", view_box).set("aria-hidden", "true").set("focusable", "false")
 }
 
+/// A place for an element that comes and goes while its neighbours are typed into. Children are matched by their
+/// number: without the place, the field beside it would be drawn anew, and the keyboard would leave it.
+#[inline(never)]
+pub fn place(child: Option<El>) -> El {
+    el("div").class("place").maybe(child)
+}
+
 /// The text of a truth in attributes.
 pub const fn truth(value: bool) -> &'static str {
     if value { "true" } else { "false" }

@@ -141,7 +141,7 @@ pub(super) static WORDS: Words = Words {
         if alone {
             format!("the {rating} lamp")
         } else {
-            format!("lamp {}.{} ({rating})", place.group + 1, place.lamp + 1)
+            format!("lamp {}.{}, {rating}", place.group + 1, place.lamp + 1)
         }
     },
     over_rated: |lamp, condition, percent, life| {
