@@ -129,7 +129,7 @@ impl fmt::Display for SteadyError {
 impl core::error::Error for SteadyError {}
 
 /// Samples over the range of a load that may have several points.
-const SAMPLES: u32 = 16;
+const SAMPLES: u32 = 10;
 
 /// Relative step of a numerical slope.
 const NUDGE: f64 = 1e-6;
@@ -165,9 +165,12 @@ pub fn solve(supply: &Supply, bank: &Bank, load: &Load) -> Result<Steady, Steady
     Ok(Steady { outcome, equilibria })
 }
 
-/// The points of [`solve`] without the outcome: where there is none, the period of the hunting costs thousands of
-/// times as much as the points, and a search over banks has no use for it.
-pub(crate) fn equilibria(supply: &Supply, bank: &Bank, load: &Load) -> Result<Vec<Equilibrium>, SteadyError> {
+/// The points of [`solve`], in order of rising current, without the outcome: where there is none, the period of the
+/// hunting costs far more than the points, and a search over banks has no use for it.
+///
+/// # Errors
+/// As [`solve`].
+pub fn equilibria(supply: &Supply, bank: &Bank, load: &Load) -> Result<Vec<Equilibrium>, SteadyError> {
     load.check(supply)?;
     let mut equilibria = Vec::new();
     let walk = Walk::new(bank);

@@ -7,6 +7,7 @@ use std::hint::black_box;
 use std::time::{Duration, Instant};
 
 use lampladder_core::bank::Bank;
+use lampladder_core::condition::Condition;
 use lampladder_core::family::Family;
 use lampladder_core::lamp::Lamp;
 use lampladder_core::load::{Corrected, CorrectedSpec, Impedance, Load};
@@ -159,7 +160,7 @@ fn all_equilibria() {
                 .iter()
                 .map(|&condition| {
                     let load = plate.load(condition, 1.0).expect("one of its own");
-                    (time(|| drop(black_box(steady::solve(&supply, bank, &load)))), condition)
+                    (time(|| drop(black_box(steady::equilibria(&supply, bank, &load)))), condition)
                 })
                 .max_by_key(|slowest| slowest.0)
                 .expect("every family has a condition");
@@ -173,9 +174,9 @@ fn all_equilibria() {
     let hungry = Load::Corrected(Corrected::new(spec).expect("in range"));
     print!("{:<24}", "20 W corrected");
     for (_, bank) in &banks {
-        print!("{:>28.1}", micros(time(|| drop(black_box(steady::solve(&supply, bank, &hungry))))));
+        print!("{:>28.1}", micros(time(|| drop(black_box(steady::equilibria(&supply, bank, &hungry))))));
     }
-    print!("\n{:<24}", "  by a sweep of 1000");
+    print!("\n{:<24}", "by a sweep of 1000");
     for (_, bank) in &banks {
         print!(
             "{:>28.1}",

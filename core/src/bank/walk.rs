@@ -97,6 +97,18 @@ enum Goal {
     Amps(f64),
 }
 
+/// Where the filaments of one kind stand.
+#[derive(Debug, Clone, Copy, Default)]
+struct Place {
+    /// Logarithm of the rise.
+    ln_rise: f64,
+    /// Logarithm of their volts, and its slope against that of the rise, one step before.
+    ln_volts: f64,
+    volts_slope: f64,
+    /// By how much they move for a small move of the leading filament.
+    pace: f64,
+}
+
 /// Where a group stands.
 #[derive(Clone, Copy)]
 struct Stand {
@@ -117,37 +129,37 @@ pub(crate) struct Step {
 }
 
 impl Group {
-    /// Brings the filaments from `rises` (logarithms) to the goal, and leaves them there.
-    fn settle(kinds: &[Kind], goal: Goal, rises: &mut [f64]) -> Stand {
+    /// Brings the filaments to the goal, and leaves them there.
+    fn settle(kinds: &[Kind], goal: Goal, places: &mut [Place]) -> Stand {
         let (low, high) = Filament::ln_rise_span();
         let mut steps = 0;
         loop {
             // sum of I (1 + g (v - v_k)) = amps, with v_k = ln volts of filament k and g = d ln I / d ln V.
-            let mut slopes = [(0.0, 0.0); Bank::MOST_LAMPS];
             let (mut total, mut gain, mut weighted) = (0.0, 0.0, 0.0);
             // No further than filaments can step, so that an absurd goal stays a number.
             let mut reach = f64::NEG_INFINITY;
-            for ((kind, rise), slope) in kinds.iter().zip(rises.iter()).zip(&mut slopes) {
-                let point = kind.filament.at_ln_rise(*rise);
-                let ln_volts = 0.5 * libm::log(point.watts * point.ohms);
+            for (kind, place) in kinds.iter().zip(places.iter_mut()) {
+                let point = kind.filament.at_ln_rise(place.ln_rise);
+                place.ln_volts = 0.5 * libm::log(point.watts * point.ohms);
+                place.volts_slope = point.volts_slope();
                 let amps = kind.count * point.amps();
-                let share = amps * point.amps_slope() / point.volts_slope();
+                let share = amps * point.amps_slope() / place.volts_slope;
                 total += amps;
                 gain += share;
-                weighted += share * ln_volts;
-                reach = f64::max(reach, ln_volts + LONGEST_STEP * point.volts_slope());
-                *slope = (ln_volts, point.volts_slope());
+                weighted += share * place.ln_volts;
+                reach = f64::max(reach, place.ln_volts + LONGEST_STEP * place.volts_slope);
             }
             let ln_volts = match goal {
                 Goal::LnVolts(ln_volts) => ln_volts,
                 Goal::Amps(amps) => ((amps - total + weighted) / gain).min(reach),
             };
             let mut largest: f64 = 0.0;
-            for (rise, (here, slope)) in rises.iter_mut().zip(slopes) {
-                let moved =
-                    (*rise + ((ln_volts - here) / slope).clamp(-LONGEST_STEP, LONGEST_STEP)).clamp(low, high);
-                largest = largest.max((moved - *rise).abs());
-                *rise = moved;
+            for place in places.iter_mut().take(kinds.len()) {
+                let step =
+                    ((ln_volts - place.ln_volts) / place.volts_slope).clamp(-LONGEST_STEP, LONGEST_STEP);
+                let moved = (place.ln_rise + step).clamp(low, high);
+                largest = largest.max((moved - place.ln_rise).abs());
+                place.ln_rise = moved;
             }
             steps += 1;
             if largest < CONVERGED || steps == MOST_STEPS {
@@ -172,18 +184,19 @@ const CONVERGED: f64 = 3e-7;
 #[derive(Debug, Clone)]
 pub(crate) struct Walk<'a> {
     bank: &'a Bank,
-    /// Logarithm of the rise of every kind, the leading filament first.
-    rises: Cell<[f64; Bank::MOST_LAMPS]>,
+    /// Of every kind, the leading filament first.
+    places: Cell<[Place; Bank::MOST_LAMPS]>,
 }
 
 impl<'a> Walk<'a> {
     /// Sets out with every filament at its rating.
     pub(crate) fn new(bank: &'a Bank) -> Self {
-        let mut rises = [0.0; Bank::MOST_LAMPS];
-        for (rise, kind) in rises.iter_mut().zip(bank.chain.kinds()) {
-            *rise = libm::log(kind.filament.shape().kelvin - AMBIENT_KELVIN);
+        let mut places = [Place::default(); Bank::MOST_LAMPS];
+        for (place, kind) in places.iter_mut().zip(bank.chain.kinds()) {
+            place.ln_rise = libm::log(kind.filament.shape().kelvin - AMBIENT_KELVIN);
+            place.pace = 1.0;
         }
-        Self { bank, rises: Cell::new(rises) }
+        Self { bank, places: Cell::new(places) }
     }
 
     /// To where the leading filament is at a logarithm of the rise above ambient. Volts and amperes both grow with it,
@@ -195,74 +208,81 @@ impl<'a> Walk<'a> {
     /// The same, with the slopes there.
     pub(crate) fn step_to(&self, ln_rise: f64) -> Step {
         let (low, high) = Filament::ln_rise_span();
-        let mut rises = self.rises.get();
-        let moved = ln_rise - rises[0];
-        for rise in &mut rises {
-            *rise = (*rise + moved).clamp(low, high);
+        let mut places = self.places.get();
+        let moved = ln_rise - places[0].ln_rise;
+        for place in &mut places {
+            place.ln_rise = (place.ln_rise + place.pace * moved).clamp(low, high);
         }
-        rises[0] = ln_rise;
+        places[0].ln_rise = ln_rise;
         let groups = &self.bank.chain.groups;
         let first = &groups[0];
         let lead: FilamentPoint = first.kinds[0].filament.at_ln_rise(ln_rise);
         let mut amps = first.kinds[0].count * lead.amps();
         // d I / d ln rise of the first group, all of whose filaments have the lead's volts.
         let mut growth = amps * lead.amps_slope();
-        let (own, others) = rises.split_at_mut(first.kinds.len());
+        let (own, others) = places.split_at_mut(first.kinds.len());
         if first.kinds.len() > 1 {
             let ln_volts = 0.5 * libm::log(lead.watts * lead.ohms);
             let beside = Group::settle(&first.kinds[1..], Goal::LnVolts(ln_volts), &mut own[1..]);
             amps += beside.amps;
             growth += beside.gain * lead.volts_slope();
+            for place in &mut own[1..] {
+                place.pace = lead.volts_slope() / place.volts_slope;
+            }
         }
         let amps_slope = growth / amps;
         let first_volts = first.times * lead.volts();
-        let (other_volts, other_growth) = settle_chain(&groups[1..], amps, others);
+        let (other_volts, other_growth) = settle_chain(&groups[1..], amps, amps_slope, others);
         let volts = first_volts + other_volts;
-        let volts_slope = (first_volts * lead.volts_slope() + other_growth * amps_slope) / volts;
-        Step { point: self.arrive(volts, amps, rises), volts_slope, amps_slope }
+        let volts_slope = (first_volts * lead.volts_slope() + other_growth) / volts;
+        Step { point: self.arrive(volts, amps, places), volts_slope, amps_slope }
     }
 
     /// To a current through the chain, amperes, above 0.
     pub(crate) fn to_amps(&self, amps: f64) -> BankPoint {
-        let mut rises = self.rises.get();
-        let (volts, _) = settle_chain(&self.bank.chain.groups, amps, &mut rises);
-        self.arrive(volts, amps, rises)
+        let mut places = self.places.get();
+        let (volts, _) = settle_chain(&self.bank.chain.groups, amps, 1.0, &mut places);
+        self.arrive(volts, amps, places)
     }
 
-    fn arrive(&self, volts: f64, amps: f64, rises: [f64; Bank::MOST_LAMPS]) -> BankPoint {
-        self.rises.set(rises);
-        let kinds = self.bank.chain.kinds().count();
-        let hottest = rises[..kinds].iter().copied().fold(f64::NEG_INFINITY, f64::max);
-        let hottest = libm::exp(hottest.min(Filament::ln_rise_span().1));
+    fn arrive(&self, volts: f64, amps: f64, places: [Place; Bank::MOST_LAMPS]) -> BankPoint {
+        self.places.set(places);
+        let rises = self.bank.chain.kinds().zip(&places).map(|(_, place)| place.ln_rise);
+        let hottest = libm::exp(rises.fold(f64::NEG_INFINITY, f64::max).min(Filament::ln_rise_span().1));
         BankPoint { volts, amps, hottest_kelvin: AMBIENT_KELVIN + hottest }
     }
 
     /// The logarithm of the leading filament's rise here.
     pub(crate) fn ln_rise(&self) -> f64 {
-        self.rises.get()[0]
+        self.places.get()[0].ln_rise
     }
 
     /// Every lamp's state here, in the order of the bank.
     pub(crate) fn lamps(&self) -> Vec<Vec<LampState>> {
-        let rises = self.rises.get();
+        let places = self.places.get();
         let mut states = [None; Bank::MOST_LAMPS];
-        for ((state, kind), rise) in states.iter_mut().zip(self.bank.chain.kinds()).zip(rises) {
-            *state = Some(LampState::from(&kind.filament.at_ln_rise(rise)));
+        for ((state, kind), place) in states.iter_mut().zip(self.bank.chain.kinds()).zip(places) {
+            *state = Some(LampState::from(&kind.filament.at_ln_rise(place.ln_rise)));
         }
-        let places = self.bank.chain.places.iter();
-        places.map(|group| group.iter().filter_map(|&kind| states[kind]).collect()).collect()
+        let kinds = self.bank.chain.places.iter();
+        kinds.map(|group| group.iter().filter_map(|&kind| states[kind]).collect()).collect()
     }
 }
 
-/// Brings groups in series to a current; their volts together, and how many more volts one more in ln amperes takes.
-fn settle_chain(groups: &[Group], amps: f64, rises: &mut [f64]) -> (f64, f64) {
-    let mut rest = rises;
+/// Brings groups in series to a current, where a small move of the lead changes ln amperes by `amps_slope` of it; their
+/// volts together, and how many more volts that move brings.
+fn settle_chain(groups: &[Group], amps: f64, amps_slope: f64, places: &mut [Place]) -> (f64, f64) {
+    let mut rest = places;
     let (mut volts, mut growth) = (0.0, 0.0);
     for group in groups {
         let (own, others) = rest.split_at_mut(group.kinds.len());
         let stand = Group::settle(&group.kinds, Goal::Amps(amps), own);
+        let ln_volts_growth = amps_slope * amps / stand.gain;
         volts += group.times * stand.volts;
-        growth += group.times * stand.volts * amps / stand.gain;
+        growth += group.times * stand.volts * ln_volts_growth;
+        for place in own {
+            place.pace = ln_volts_growth / place.volts_slope;
+        }
         rest = others;
     }
     (volts, growth)

@@ -25,14 +25,14 @@ impl Pulse {
         if wanted > FRAC_PI_2 {
             return None;
         }
-        // Newton in logarithms, from the narrow-pulse limit (4/15) theta^5.
-        let mut theta = libm::pow(3.75 * wanted, 0.2).clamp(1e-60, FRAC_PI_2);
+        // From the two leading terms of the inverse of (4/15) t^5 (1 - 5/21 t^2 ...): within 0.5 % everywhere.
+        let narrow = libm::pow(3.75 * wanted, 0.2).max(1e-60);
+        let mut theta = (narrow * (1.0 + narrow * narrow / 21.0)).min(FRAC_PI_2);
         for _ in 0..NEWTON_STEPS {
-            let value = square(theta);
-            let slope = 4.0 * libm::sin(theta) * mean(theta);
-            let step = libm::log(wanted / value) * value / (slope * theta);
-            theta = (theta * libm::exp(step)).min(FRAC_PI_2);
-            if step.abs() < 1e-14 {
+            let step = (wanted - square(theta)) / (4.0 * libm::sin(theta) * mean(theta));
+            theta = (theta + step).min(FRAC_PI_2);
+            // What is left is of the order of the square.
+            if step.abs() < 1e-9 * theta {
                 break;
             }
         }
