@@ -7,7 +7,6 @@ use std::hint::black_box;
 use std::time::{Duration, Instant};
 
 use lampladder_core::bank::Bank;
-use lampladder_core::condition::Condition;
 use lampladder_core::family::Family;
 use lampladder_core::lamp::Lamp;
 use lampladder_core::load::{Corrected, CorrectedSpec, Impedance, Load};
