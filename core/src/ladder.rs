@@ -29,6 +29,7 @@ pub use pool::MOST_LAMPS;
 pub use refusal::{LadderError, WayForward};
 pub use signs::{GoOn, Level, Signs, Stop};
 
+use self::missing::Reached;
 use self::pool::{Candidate, Pool};
 use self::search::{Blocked, Path, Question};
 use crate::bank::Bank;
@@ -138,8 +139,10 @@ pub struct Ladder {
     /// Volts at healthy equipment behind the last rung over the supply's, where that is less than
     /// [`LimitsSpec::least_share`], or 0 where it does not run: good for finding a short, not for running it.
     pub falls_short: Option<f64>,
-    /// The single lamp that would improve the ladder most, if any does.
+    /// The single lamp that would improve the ladder most, if any does; not looked for by [`plan_rungs`].
     pub missing: Option<Missing>,
+    /// What other ladders are compared with.
+    reached: Reached,
 }
 
 /// A step of the ladder.
@@ -186,6 +189,24 @@ const SUPPLY_ABOVE_PLATE: f64 = 0.15;
 /// # Ok::<(), Box<dyn std::error::Error>>(())
 /// ```
 pub fn plan(supply: &Supply, stock: &Stock, plate: &Plate, limits: &Limits) -> Result<Ladder, LadderError> {
+    let mut ladder = plan_rungs(supply, stock, plate, limits)?;
+    let healthy = plate.load(Condition::Healthy, 1.0)?;
+    let question = Question { supply, plate, healthy: &healthy, limits };
+    ladder.missing = missing::best_addition(&question, stock, Some(ladder.reached))?;
+    Ok(ladder)
+}
+
+/// As [`plan`], without the search for the missing lamp, which takes most of the time: for a page that shows the rungs
+/// first, and then asks [`gain_of`] for one of [`usual_ratings`] at a time.
+///
+/// # Errors
+/// As [`plan`].
+pub fn plan_rungs(
+    supply: &Supply,
+    stock: &Stock,
+    plate: &Plate,
+    limits: &Limits,
+) -> Result<Ladder, LadderError> {
     let (supply_volts, plate_volts, family) = (supply.volts(), plate.volts(), plate.family());
     if plate.is_too_powerful() {
         return Err(LadderError::Unsuitable { reason: Unsuitable::TooPowerful, family });
@@ -208,7 +229,6 @@ pub fn plan(supply: &Supply, stock: &Stock, plate: &Plate, limits: &Limits) -> R
     if path.share < least && sensible < least {
         return Err(LadderError::BeyondAnyBank { share: sensible, family });
     }
-    let missing = missing::best_addition(&question, stock, Some(&path))?;
     let rungs = rungs(&question, &pool, stock, &path)?;
     let last_short_amps = rungs.last().map_or(0.0, |rung| rung.short_amps);
     Ok(Ladder {
@@ -221,8 +241,32 @@ pub fn plan(supply: &Supply, stock: &Stock, plate: &Plate, limits: &Limits) -> R
             decision: Decision::Persons,
         },
         falls_short: (path.share < least || path.share == 0.0).then_some(path.share),
-        missing,
+        missing: None,
+        reached: Reached::of(&path),
     })
+}
+
+/// The ratings of lamps that may be worth looking for on this supply, in order of rising watts.
+pub fn usual_ratings(supply: &Supply, limits: &Limits) -> Vec<Rating> {
+    missing::usual_ratings(supply, limits).collect()
+}
+
+/// What one lamp more of `rating` would change for `ladder`, which [`plan_rungs`] made of the same things.
+///
+/// The best of [`usual_ratings`], by [`Gain::beats`], is what [`plan`] calls the missing lamp.
+///
+/// # Errors
+/// A rating out of range.
+pub fn gain_of(
+    supply: &Supply,
+    stock: &Stock,
+    plate: &Plate,
+    limits: &Limits,
+    (ladder, rating): (&Ladder, Rating),
+) -> Result<Option<Gain>, LadderError> {
+    let healthy = plate.load(Condition::Healthy, 1.0)?;
+    let question = Question { supply, plate, healthy: &healthy, limits };
+    Ok(missing::gain_of(&question, stock, Some(ladder.reached), rating)?)
 }
 
 /// Volts at healthy equipment behind the strongest bank that makes sense, over the supply's: six lamps of what a holder
@@ -255,7 +299,7 @@ fn refusal(
     }
     let spec = limits.spec();
     let fallback =
-        Rating { volts: missing::usual_volts(question), watts: spec.holder_watts.min(FALLBACK_WATTS) };
+        Rating { volts: missing::usual_volts(supply, limits), watts: spec.holder_watts.min(FALLBACK_WATTS) };
     let rating = missing.map_or(fallback, |missing| missing.rating);
     if pool.some_too_hot {
         return Ok(LadderError::TooHot { holder_watts: spec.holder_watts, rating });
