@@ -7,12 +7,14 @@ mod decimal;
 mod v1;
 
 use alloc::string::String;
+use alloc::vec::Vec;
 use core::fmt;
 
 use base64ct::{Base64UrlUnpadded, Encoding};
 
 use crate::error::InputError;
 use crate::setup::Setup;
+use crate::stock::Stock;
 
 /// Longest text that is looked at: the fullest bench, eight lamps with 64 measured points each, takes 16,000.
 pub const LONGEST: usize = 20_000;
@@ -51,11 +53,7 @@ impl core::error::Error for LinkError {}
 ///
 /// The same set-up gives the same text, and [`decode`] gives the very same set-up back.
 pub fn encode(setup: &Setup) -> String {
-    let mut bytes = v1::encode(setup);
-    bytes.push(check(&bytes));
-    let mut text = String::from("1");
-    text.push_str(&Base64UrlUnpadded::encode_string(&bytes));
-    text
+    written("1", v1::encode(setup))
 }
 
 /// The set-up in a text, with or without the leading `#`.
@@ -63,8 +61,43 @@ pub fn encode(setup: &Setup) -> String {
 /// # Errors
 /// Anything but a whole link of a known version with numbers in range; never a panic, whatever the text.
 pub fn decode(text: &str) -> Result<Setup, LinkError> {
-    let text = text.trim().trim_start_matches('#');
-    if text.len() > LONGEST {
+    v1::decode(&read(text.trim().trim_start_matches('#'), LONGEST)?)
+}
+
+/// What a text of a stock begins with, so that nobody takes it for a set-up.
+const STOCK: char = 's';
+
+/// A stock as a text of URL-safe characters, for the phone to keep: `s`, the version, and the rest as in a link.
+///
+/// The same stock gives the same text, and [`decode_stock`] gives the very same stock back.
+pub fn encode_stock(stock: &Stock) -> String {
+    written("s1", v1::encode_stock(stock))
+}
+
+/// The stock in a text that [`encode_stock`] made.
+///
+/// # Errors
+/// Anything but a whole text of a known version with numbers in range; never a panic, whatever the text.
+pub fn decode_stock(text: &str) -> Result<Stock, LinkError> {
+    let text = text.trim();
+    if text.is_empty() {
+        return Err(LinkError::Empty);
+    }
+    // Twelve kinds of 64 points each are half as long again as the fullest bench.
+    v1::decode_stock(&read(text.strip_prefix(STOCK).ok_or(LinkError::Damaged)?, 2 * LONGEST)?)
+}
+
+/// A version, and a record with its check byte.
+fn written(version: &str, mut record: Vec<u8>) -> String {
+    record.push(check(&record));
+    let mut text = String::from(version);
+    text.push_str(&Base64UrlUnpadded::encode_string(&record));
+    text
+}
+
+/// The record in a text of version 1.
+fn read(text: &str, longest: usize) -> Result<Vec<u8>, LinkError> {
+    if text.len() > longest {
         return Err(LinkError::TooLong);
     }
     let mut characters = text.chars();
@@ -74,12 +107,9 @@ pub fn decode(text: &str) -> Result<Setup, LinkError> {
         Some('2'..='9') => return Err(LinkError::Newer),
         Some(_) => return Err(LinkError::Damaged),
     }
-    let bytes = Base64UrlUnpadded::decode_vec(characters.as_str()).map_err(|_| LinkError::Damaged)?;
-    let (&last, record) = bytes.split_last().ok_or(LinkError::Damaged)?;
-    if check(record) != last {
-        return Err(LinkError::Damaged);
-    }
-    v1::decode(record)
+    let mut bytes = Base64UrlUnpadded::decode_vec(characters.as_str()).map_err(|_| LinkError::Damaged)?;
+    let last = bytes.pop().ok_or(LinkError::Damaged)?;
+    if check(&bytes) == last { Ok(bytes) } else { Err(LinkError::Damaged) }
 }
 
 /// CRC-8 with the polynomial x^8 + x^2 + x + 1 (ITU-T I.432.1): finds every single changed character and all but
@@ -101,6 +131,25 @@ mod tests {
         assert_eq!(decode(&text), Ok(setup.clone()));
         assert_eq!(decode(&alloc::format!("#{text}")), Ok(setup));
         assert!(text.len() < 45, "{text}");
+    }
+
+    #[test]
+    fn a_stock_comes_back_and_is_no_set_up() {
+        let lamp = |watts| crate::lamp::Lamp::new(230.0, watts).expect("a lamp");
+        let measured = crate::lamp::LampSpec { cold_ohms: Some(61.5), ..lamp(60.0).spec().clone() };
+        let measured = crate::lamp::Lamp::from_spec(measured).expect("a lamp");
+        let stock =
+            Stock::new([(lamp(60.0), 2.0), (measured, 1.0), (lamp(25.0), 99.0)]).expect("three kinds");
+        let text = encode_stock(&stock);
+        assert_eq!(decode_stock(&text), Ok(stock));
+        assert_eq!(decode_stock(&encode_stock(&Stock::default())), Ok(Stock::default()));
+        assert_eq!(decode(&text), Err(LinkError::Damaged));
+        assert_eq!(decode_stock(&encode(&Setup::example().expect("in range"))), Err(LinkError::Damaged));
+        for cut in 1..text.len() {
+            assert!(decode_stock(&text[..cut]).is_err(), "cut at {cut}");
+        }
+        assert_eq!(decode_stock(" "), Err(LinkError::Empty));
+        assert_eq!(decode_stock("s2abc"), Err(LinkError::Newer));
     }
 
     #[test]

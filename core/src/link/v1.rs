@@ -13,6 +13,7 @@ use crate::family::Family;
 use crate::lamp::{Fill, Lamp, LampSpec, Point};
 use crate::plate::{Plate, PlateSpec};
 use crate::setup::Setup;
+use crate::stock::{Owned, Stock};
 use crate::supply::Supply;
 
 #[derive(Serialize, Deserialize)]
@@ -102,34 +103,43 @@ fn known<T: Copy>(codes: &[(T, u8)], code: u8) -> Option<T> {
 
 pub(super) fn encode(setup: &Setup) -> Vec<u8> {
     let Setup { supply, bank, plate } = setup;
-    let lamp = |lamp: &Lamp| {
-        let LampSpec { volts, watts, fill, lumens, cold_ohms, ref points, rated_kelvin, gas_share } =
-            *lamp.spec();
-        let plain = lumens.is_none()
-            && cold_ohms.is_none()
-            && points.is_empty()
-            && rated_kelvin.is_none()
-            && gas_share.is_none();
-        LampRecord {
-            volts: volts.into(),
-            watts: watts.into(),
-            fill: fill.map_or(0, |fill| code_of(&FILLS, &fill)),
-            extras: (!plain).then(|| Extras {
-                lumens: lumens.map(Into::into),
-                cold_ohms: cold_ohms.map(Into::into),
-                rated_kelvin: rated_kelvin.map(Into::into),
-                gas_share: gas_share.map(Into::into),
-                points: points.iter().map(|point| (point.volts.into(), point.amps.into())).collect(),
-            }),
-        }
-    };
     let record = Record {
         supply: [supply.volts(), supply.hertz(), supply.ohms()].map(Into::into),
-        bank: bank.groups().iter().map(|group| group.iter().map(lamp).collect()).collect(),
+        bank: bank.groups().iter().map(|group| group.iter().map(lamp_record).collect()).collect(),
         plate: plate_record(plate.spec()),
     };
     // Writing into a growing vector cannot fail; an empty record would be refused by its check byte.
     postcard::to_allocvec(&record).unwrap_or_default()
+}
+
+/// The kinds of a stock, each with its count.
+pub(super) fn encode_stock(stock: &Stock) -> Vec<u8> {
+    let owned = |owned: &Owned| (lamp_record(owned.lamp()), owned.count());
+    let record: Vec<(LampRecord, u8)> = stock.kinds().iter().map(owned).collect();
+    // As in `encode`.
+    postcard::to_allocvec(&record).unwrap_or_default()
+}
+
+fn lamp_record(lamp: &Lamp) -> LampRecord {
+    let LampSpec { volts, watts, fill, lumens, cold_ohms, ref points, rated_kelvin, gas_share } =
+        *lamp.spec();
+    let plain = lumens.is_none()
+        && cold_ohms.is_none()
+        && points.is_empty()
+        && rated_kelvin.is_none()
+        && gas_share.is_none();
+    LampRecord {
+        volts: volts.into(),
+        watts: watts.into(),
+        fill: fill.map_or(0, |fill| code_of(&FILLS, &fill)),
+        extras: (!plain).then(|| Extras {
+            lumens: lumens.map(Into::into),
+            cold_ohms: cold_ohms.map(Into::into),
+            rated_kelvin: rated_kelvin.map(Into::into),
+            gas_share: gas_share.map(Into::into),
+            points: points.iter().map(|point| (point.volts.into(), point.amps.into())).collect(),
+        }),
+    }
 }
 
 fn plate_record(spec: &PlateSpec) -> PlateRecord {
@@ -153,26 +163,6 @@ pub(super) fn decode(bytes: &[u8]) -> Result<Setup, LinkError> {
     if !rest.is_empty() {
         return Err(LinkError::Damaged);
     }
-    let number = |value: Decimal| value.to_f64().ok_or(LinkError::Damaged);
-    let optional = |value: Option<Decimal>| value.map(number).transpose();
-    let lamp = |lamp: LampRecord| -> Result<Lamp, LinkError> {
-        let fill = match lamp.fill {
-            0 => None,
-            code => Some(known(&FILLS, code).ok_or(LinkError::Newer)?),
-        };
-        let mut spec =
-            LampSpec { volts: number(lamp.volts)?, watts: number(lamp.watts)?, fill, ..LampSpec::default() };
-        if let Some(extras) = lamp.extras {
-            spec.lumens = optional(extras.lumens)?;
-            spec.cold_ohms = optional(extras.cold_ohms)?;
-            spec.rated_kelvin = optional(extras.rated_kelvin)?;
-            spec.gas_share = optional(extras.gas_share)?;
-            for (volts, amps) in extras.points {
-                spec.points.push(Point { volts: number(volts)?, amps: number(amps)? });
-            }
-        }
-        Lamp::from_spec(spec).map_err(LinkError::Refused)
-    };
     let [volts, hertz, ohms] = record.supply;
     let supply = Supply::new(number(volts)?, number(hertz)?, number(ohms)?).map_err(LinkError::Refused)?;
     // Refuse a crowded bank before building its lamps.
@@ -181,7 +171,7 @@ pub(super) fn decode(bytes: &[u8]) -> Result<Setup, LinkError> {
     }
     let mut groups = Vec::new();
     for group in record.bank {
-        groups.push(group.into_iter().map(lamp).collect::<Result<Vec<_>, _>>()?);
+        groups.push(group.into_iter().map(lamp_of).collect::<Result<Vec<_>, _>>()?);
     }
     let bank = Bank::new(groups).map_err(LinkError::Refused)?;
     let plate = record.plate;
@@ -196,4 +186,45 @@ pub(super) fn decode(bytes: &[u8]) -> Result<Setup, LinkError> {
     }
     let plate = Plate::from_spec(spec).map_err(LinkError::Refused)?;
     Ok(Setup { supply, bank, plate })
+}
+
+pub(super) fn decode_stock(bytes: &[u8]) -> Result<Stock, LinkError> {
+    let (record, rest): (Vec<(LampRecord, u8)>, &[u8]) =
+        postcard::take_from_bytes(bytes).map_err(|_| LinkError::Damaged)?;
+    // Refuse a crowd before building its lamps.
+    if !rest.is_empty() || record.len() > Stock::MOST_KINDS {
+        return Err(LinkError::Damaged);
+    }
+    let mut stock = Stock::default();
+    for (lamp, count) in record {
+        stock.add(lamp_of(lamp)?, f64::from(count)).map_err(LinkError::Refused)?;
+    }
+    Ok(stock)
+}
+
+fn lamp_of(lamp: LampRecord) -> Result<Lamp, LinkError> {
+    let fill = match lamp.fill {
+        0 => None,
+        code => Some(known(&FILLS, code).ok_or(LinkError::Newer)?),
+    };
+    let mut spec =
+        LampSpec { volts: number(lamp.volts)?, watts: number(lamp.watts)?, fill, ..LampSpec::default() };
+    if let Some(extras) = lamp.extras {
+        spec.lumens = optional(extras.lumens)?;
+        spec.cold_ohms = optional(extras.cold_ohms)?;
+        spec.rated_kelvin = optional(extras.rated_kelvin)?;
+        spec.gas_share = optional(extras.gas_share)?;
+        for (volts, amps) in extras.points {
+            spec.points.push(Point { volts: number(volts)?, amps: number(amps)? });
+        }
+    }
+    Lamp::from_spec(spec).map_err(LinkError::Refused)
+}
+
+fn number(value: Decimal) -> Result<f64, LinkError> {
+    value.to_f64().ok_or(LinkError::Damaged)
+}
+
+fn optional(value: Option<Decimal>) -> Result<Option<f64>, LinkError> {
+    value.map(number).transpose()
 }
