@@ -132,3 +132,92 @@ pub fn diagnose_from(forecast: &Forecast, readings: &Readings, prior: &[f64]) ->
     let next = next::candidates(forecast, readings, &evidence, &weighed);
     Diagnosis { ranking, explained, fit, advice, next }
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::plate::Plate;
+    use crate::readings::{Behaviour, Kind, Meter, Reading, Response};
+    use crate::setup::Setup;
+
+    fn setup(family: Family, watts: f64) -> Setup {
+        let plate = Plate::new(family, 230.0, watts, None).expect("a common plate");
+        Setup { plate, ..Setup::example().expect("the example") }
+    }
+
+    fn read(numbers: &[(Kind, f64)], behaviour: Option<Behaviour>) -> Readings {
+        let mut readings = Readings::default();
+        for &(kind, value) in numbers {
+            readings.add(Reading::new(kind, value, Meter::usual()).expect("in range"));
+        }
+        readings.set_behaviour(behaviour);
+        readings
+    }
+
+    fn found(setup: &Setup, readings: &Readings) -> Diagnosis {
+        let supply = readings.get(Kind::SupplyVolts);
+        let forecast = Forecast::complete(setup, supply, Response::TrueRms).expect("on the mains");
+        let found = diagnose(&forecast, readings);
+        assert!((found.ranking.iter().map(|one| one.weight).sum::<f64>() - 1.0).abs() < 1e-9);
+        assert_eq!(found, diagnose(&forecast, readings));
+        found
+    }
+
+    #[test]
+    fn the_whole_supply_on_the_lamp_is_a_short() {
+        let readings =
+            read(&[(Kind::SupplyVolts, 231.0), (Kind::BankVolts, 231.0), (Kind::LoadVolts, 0.3)], None);
+        let found = found(&setup(Family::TransformerSupply, 45.0), &readings);
+        assert_eq!(found.ranking[0].condition, Condition::Shorted);
+        assert_eq!(found.advice, Advice::Stop);
+    }
+
+    #[test]
+    fn what_a_healthy_set_shows_lets_one_go_on() {
+        let setup = setup(Family::TransformerSupply, 45.0);
+        let shown =
+            crate::expect::prospect(&setup, Condition::Healthy).expect("solvable").shown.expect("settles");
+        let numbers = [(Kind::BankVolts, shown.bank_volts.value), (Kind::LoadVolts, shown.load_volts.value)];
+        let found = found(&setup, &read(&numbers, Some(Behaviour::FlashThenDim)));
+        assert_eq!(found.ranking[0].condition, Condition::Healthy);
+        assert_eq!(found.advice, Advice::GoOn);
+    }
+
+    #[test]
+    fn a_pulsing_converter_decides_nothing_and_asks_for_more() {
+        let found = found(&setup(Family::SwitchMode, 90.0), &read(&[], Some(Behaviour::Pulsing)));
+        assert!(found.explained);
+        assert_eq!(found.advice, Advice::MeasureFirst);
+        assert!(found.next.windows(2).all(|pair| pair[0].bits >= pair[1].bits));
+    }
+
+    #[test]
+    fn volts_that_a_resistor_cannot_split_are_not_explained() {
+        let numbers = [(Kind::SupplyVolts, 230.0), (Kind::BankVolts, 150.0), (Kind::LoadVolts, 150.0)];
+        let found = found(&setup(Family::Heater, 100.0), &read(&numbers, None));
+        assert!(!found.explained, "{found:?}");
+        assert_eq!(found.advice, Advice::MeasureFirst);
+    }
+
+    #[test]
+    fn nothing_read_leaves_the_prior_and_a_first_reading_with_its_meanings() {
+        let setup = setup(Family::UniversalMotor, 500.0);
+        let found = found(&setup, &Readings::default());
+        let before = prior(Family::UniversalMotor);
+        assert!((found.ranking[0].weight - before[0]).abs() < 1e-6);
+        assert_eq!(found.advice, Advice::MeasureFirst);
+        let first = &found.next[0];
+        let probability: f64 = first.meanings.iter().map(|meaning| meaning.probability).sum();
+        assert!(first.bits > 0.5 && (probability - 1.0).abs() < 1e-9, "{first:?}");
+    }
+
+    #[test]
+    fn a_forecast_in_slices_is_the_same_forecast() {
+        let setup = setup(Family::InductionMotor, 60.0);
+        let whole = Forecast::complete(&setup, None, Response::TrueRms).expect("on the mains");
+        let mut slices = Forecast::new(&setup, None, Response::TrueRms).expect("on the mains");
+        while !slices.advance(60) {}
+        let readings = read(&[(Kind::BankVolts, 40.0)], None);
+        assert_eq!(diagnose(&whole, &readings), diagnose(&slices, &readings));
+    }
+}

@@ -3,6 +3,7 @@
 - readings_jcgm.json: example H.2 of JCGM 100:2008 from its own data, by the package `uncertainties`.
 - readings_uncertainty.json: current, power, power factor and resistance of made-up readings behind a lamp, with standard
   uncertainties by `uncertainties` from the same independent causes as the core's, here through explicit variables.
+- readings_points.json: the sequence of Sobol with the direction numbers of Joe and Kuo, by scipy.
 - readings_waveforms.json: equipment that distorts its current, integrated over one period with numpy: what true RMS and
   averaging meters show, and the real power as the mean of volts times amperes.
 """
@@ -10,6 +11,7 @@
 import numpy as np
 from scipy.interpolate import PchipInterpolator
 from scipy.optimize import brentq
+from scipy.stats.qmc import Sobol
 from uncertainties import correlated_values, ufloat, umath, wrap
 
 from shared import lamp as lamps
@@ -219,3 +221,8 @@ for note, watts, source, load in [
         case["half_angle"] = float(np.arccos(np.max(np.abs(equipment)) / CREST))
     waveforms.append(case)
 write("readings_waveforms.json", waveforms)
+
+# --- the points that a diagnosis draws its benches from ---------------------------------------------------------------
+
+points = Sobol(16, scramble=False).random(256)
+write("readings_points.json", [{"index": index, "point": list(points[index])} for index in [0, 1, 2, 3, 7, 100, 200, 255]])

@@ -2,6 +2,7 @@
 //! answers of `tests/oracle/readings.py`.
 
 use lampladder_core::bank::Bank;
+use lampladder_core::diagnosis::sobol::{self, Sobol};
 use lampladder_core::family::Family;
 use lampladder_core::lamp::Lamp;
 use lampladder_core::plate::Plate;
@@ -330,4 +331,18 @@ fn what_cannot_be_known_is_missing() {
     let off = [(Kind::SupplyVolts, 233.0), (Kind::BankVolts, 0.0), (Kind::LoadVolts, 233.0)];
     let off = found(&bank, &by(Meter::usual(), &off));
     assert!(off.load_power_factor.is_none() && off.load_ohms.is_none());
+}
+
+#[derive(Deserialize)]
+struct Drawn {
+    index: u32,
+    point: [f64; sobol::AXES],
+}
+
+#[test]
+fn benches_are_drawn_from_the_same_points_as_scipys() {
+    let sobol = Sobol::new();
+    for drawn in cases::<Drawn>("readings_points.json") {
+        assert_eq!(sobol.point(drawn.index), drawn.point, "point {}", drawn.index);
+    }
 }
