@@ -136,7 +136,7 @@ class Rectifier:
 class PowerSupply:
     """Flux over its rated crest, reservoir, heater temperature."""
 
-    LINEAR, FULL, JOULES_PER_WATT = 0.6, 1.4, 10.0
+    LINEAR, FULL, JOULES_PER_WATT = 0.6, 1.4, 20.0
 
     def __init__(self, remanence=0.0, hertz=50.0, **numbers):
         self.__dict__.update(numbers)
@@ -158,7 +158,7 @@ class PowerSupply:
 
     def magnetising(self, flux):
         inside = np.clip(flux, -self.FULL, self.FULL)
-        slope = self.linear + 9 * self.ninth * self.FULL**8
+        slope = max(self.linear + 9 * self.ninth * self.FULL**8, np.sqrt(2) * self.rated_volts / (0.73 * self.winding_ohms))
         return self.linear * inside + self.ninth * inside**9 + slope * (flux - inside)
 
     def parts(self, state):

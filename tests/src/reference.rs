@@ -313,3 +313,85 @@ pub struct DischargeRow {
 pub fn capacitor_discharge() -> Vec<DischargeRow> {
     rows("limits_capacitor_discharge.csv")
 }
+
+/// A row of [`lamp_inrush`].
+#[derive(Debug, Clone, Deserialize)]
+pub struct Inrush {
+    /// Rated volts, where the row is about one lamp.
+    pub volts: Option<f64>,
+    /// Rated watts.
+    pub watts: Option<f64>,
+    /// Least multiple of the rated current.
+    pub multiple_of_rated_current_low: Option<f64>,
+    /// Greatest.
+    pub multiple_high: Option<f64>,
+    /// What happens when, in words.
+    pub time_note: String,
+}
+
+/// Inrush of lamps, the source in each row. Published second hand.
+pub fn lamp_inrush() -> Vec<Inrush> {
+    rows("lamp_inrush.csv")
+}
+
+/// A row of [`fuse_gates_iec`].
+#[derive(Debug, Clone, Deserialize)]
+pub struct IecGate {
+    /// Sheet of IEC 60127-2.
+    pub sheet: u8,
+    /// Least rated current of the row.
+    pub rated_amps_from: f64,
+    /// Greatest.
+    pub rated_amps_to: f64,
+    /// Multiple of the rated current.
+    pub multiple_of_rating: f64,
+    /// It holds at least so long.
+    pub prearcing_seconds_min: Option<f64>,
+    /// It has opened after so long.
+    pub prearcing_seconds_max: Option<f64>,
+    /// How far the row is to be trusted.
+    pub status: String,
+}
+
+/// Gates of IEC 60127-2 as data sheets declare them, status in each row.
+pub fn fuse_gates_iec() -> Vec<IecGate> {
+    rows("fuse_gates_iec60127_2.csv")
+}
+
+/// A row of [`fuse_gates_ul`].
+#[derive(Debug, Clone, Deserialize)]
+pub struct UlGate {
+    /// Multiple of the rated current.
+    pub multiple_of_rating: f64,
+    /// Least rated current of the row.
+    pub rated_amps_from: f64,
+    /// Greatest.
+    pub rated_amps_to: f64,
+    /// What it must do.
+    pub requirement: String,
+    /// It holds at least so long.
+    pub seconds_min: Option<f64>,
+    /// It has opened after so long.
+    pub seconds_max: Option<f64>,
+    /// How far the row is to be trusted.
+    pub status: String,
+}
+
+/// Gates of UL 248-14, status in each row.
+pub fn fuse_gates_ul() -> Vec<UlGate> {
+    rows("fuse_gates_ul248_14.csv")
+}
+
+/// A row of [`fuse_melting`].
+#[derive(Debug, Clone, Copy, Deserialize)]
+pub struct Melting {
+    /// Rated current.
+    pub rated_amps: f64,
+    /// Melting heat, ampere squared seconds.
+    pub melting_amp2_seconds: f64,
+}
+
+/// Melting heat of one maker's 5 x 20 mm time-lag series. Published second hand.
+pub fn fuse_melting() -> Vec<Melting> {
+    rows("fuse_time_lag_5x20_melting_i2t.csv")
+}

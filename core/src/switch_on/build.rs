@@ -22,7 +22,7 @@ const PRIMARY_SHARE: f64 = 0.5;
 
 /// Heat in valve heaters and cathodes at their working temperature, over their rated watts, seconds: from it follow the
 /// 10 to 20 s after which a set begins to play (common practice, no source).
-const HEATER_SECONDS: f64 = 10.0;
+const HEATER_SECONDS: f64 = 20.0;
 
 /// Periods of the mains over which a corrector averages its voltage (design value).
 const CORRECTOR_PERIODS: f64 = 1.0;
@@ -176,7 +176,12 @@ impl Builder {
         if spec.magnetising_amps > 0.0 {
             branches.push(Branch::Core(Core {
                 primary_ohms: PRIMARY_SHARE * spec.winding_ohms,
-                magnetising: Magnetising::of(spec.rated_volts, spec.magnetising_amps, self.omega()),
+                magnetising: Magnetising::of(
+                    spec.rated_volts,
+                    spec.magnetising_amps,
+                    self.omega(),
+                    spec.winding_ohms,
+                ),
                 at: self.variable(self.remanence, 1.0),
             }));
         }

@@ -36,6 +36,10 @@ const KNEE: f64 = 1.0 - LINEAR;
 /// and small transformers are run at about 1.4 T (design values, no source).
 const FULL: f64 = 1.4;
 
+/// Reactance of the winding in air over the resistance of all windings: what an ordinary core at the class defaults has by
+/// its own law (derived), so that only leaner cores differ.
+const AIR: f64 = 0.73;
+
 /// RMS of `sin^9`, and the mean of `sin * sin^9`.
 const NINTH: f64 = 0.430_662_955_284_857_9;
 const COMMON: f64 = 63.0 / 256.0;
@@ -44,15 +48,19 @@ impl Magnetising {
     /// The core that takes `amps` RMS at `volts` RMS and `omega` radian per second: the steady solver's law in the time
     /// domain. Its current is `linear x + knee x^9` over a sinusoidal flux `x`, the first with 0.6, the second with 0.4
     /// of the RMS, scaled so that both together have the whole.
-    pub(super) fn of(volts: f64, amps: f64, omega: f64) -> Self {
+    ///
+    /// Beyond [`FULL`] its slope is that of the law or, where that is more, of the winding in air, whose reactance goes
+    /// with its resistance `winding_ohms`: a strip-wound core takes little before it is full, and then a great deal.
+    pub(super) fn of(volts: f64, amps: f64, omega: f64, winding_ohms: f64) -> Self {
         let together = LINEAR * LINEAR + KNEE * KNEE + 2.0 * LINEAR * KNEE * COMMON / (FRAC_1_SQRT_2 * NINTH);
         let unit = amps / libm::sqrt(together);
         let (linear_amps, knee_amps) = (unit * LINEAR / FRAC_1_SQRT_2, unit * KNEE / NINTH);
+        let in_air = if winding_ohms > 0.0 { SQRT_2 * volts / (AIR * winding_ohms) } else { 0.0 };
         Self {
             rated_flux: SQRT_2 * volts / omega,
             linear_amps,
             knee_amps,
-            air_amps: linear_amps + 9.0 * knee_amps * eighth(FULL),
+            air_amps: (linear_amps + 9.0 * knee_amps * eighth(FULL)).max(in_air),
         }
     }
 
@@ -84,7 +92,7 @@ mod tests {
 
     #[test]
     fn the_current_over_a_sinusoidal_flux_has_its_rms() {
-        let core = Magnetising::of(230.0, 0.05, 314.0);
+        let core = Magnetising::of(230.0, 0.05, 314.0, 100.0);
         let steps = 3600;
         let square: f64 = (0..steps)
             .map(|step| core.amps(libm::sin(core::f64::consts::PI * f64::from(step) / 1800.0)))
@@ -95,7 +103,7 @@ mod tests {
 
     #[test]
     fn current_and_slope_are_continuous_where_the_core_is_full() {
-        let core = Magnetising::of(230.0, 0.05, 314.0);
+        let core = Magnetising::of(230.0, 0.05, 314.0, 100.0);
         let slope = |x: f64| (core.amps(x + 1e-6) - core.amps(x - 1e-6)) / 2e-6;
         assert!((core.amps(FULL + 1e-9) / core.amps(FULL - 1e-9) - 1.0).abs() < 1e-6);
         assert!((slope(FULL + 1e-5) / slope(FULL - 1e-5) - 1.0).abs() < 1e-3);
