@@ -92,8 +92,7 @@ fn trade_fact_the_zero_is_soft_the_crest_is_hard_and_the_surge_is_soon_over() {
     // Common practice, no source.
     let one = lamp(230.0, 100.0);
     let at = |degrees: f64| {
-        let options =
-            Options { seconds: 0.5, moment: Moment::Degrees(degrees), ..Options::default() };
+        let options = Options { seconds: 0.5, moment: Moment::Degrees(degrees), ..Options::default() };
         simulate(&mains(230.0), &Bank::single(one.clone()), &Load::Short, &options).expect("runs")
     };
     let peaks: Vec<f64> = (0..=6).map(|step| at(15.0 * f64::from(step)).peak_amps).collect();
@@ -181,8 +180,7 @@ fn core(magnetising_share: f64, winding_share: f64) -> Load {
 }
 
 fn inrush(load: &Load, degrees: f64, remanence: f64) -> SwitchOn {
-    let options =
-        Options { seconds: 0.2, moment: Moment::Degrees(degrees), remanence, ..Options::default() };
+    let options = Options { seconds: 0.2, moment: Moment::Degrees(degrees), remanence, ..Options::default() };
     straight(&mains(230.0), load, &options).expect("runs")
 }
 
@@ -253,7 +251,8 @@ fn the_end_of_the_run_is_the_steady_point() {
         (Family::Plain, 60.0, 5.0),
         (Family::Lamp, 60.0, 5.0),
     ] {
-        let load = Plate::new(family, 230.0, watts, None).and_then(|plate| plate.load(Condition::Healthy, 1.0));
+        let load =
+            Plate::new(family, 230.0, watts, None).and_then(|plate| plate.load(Condition::Healthy, 1.0));
         let load = load.expect("a load");
         let bank = Bank::single(lamp(230.0, 100.0));
         let options = Options { seconds, ..Options::default() };
