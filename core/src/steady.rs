@@ -414,3 +414,26 @@ pub fn refused_field(error: &SteadyError) -> Field {
         SteadyError::FilamentMelts { .. } => Field::Volts,
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::lamp::Lamp;
+    use crate::load::Impedance;
+
+    #[test]
+    fn one_lamp_before_a_resistor_takes_at_most_twelve_evaluations() {
+        let supply = Supply::new(230.0, 50.0, 0.0).expect("the mains");
+        for watts in [15.0, 60.0, 200.0] {
+            let bank = Bank::single(Lamp::new(230.0, watts).expect("a stock size"));
+            for ohms in [0.1, 1.0, 30.0, 529.0, 3000.0, 1e5, 1e7] {
+                let load = Load::Impedance(Impedance::new(ohms, 0.0).expect("in range"));
+                let solved = solve(&supply, &bank, &load).expect("solvable");
+                let [point] = solved.equilibria.as_slice() else { panic!("one point") };
+                assert!(point.evaluations <= 12, "{watts} W, {ohms} ohm: {}", point.evaluations);
+                let left_over = point.bank_volts + point.load_volts - 230.0;
+                assert!(left_over.abs() < 1e-9 * 230.0, "{watts} W, {ohms} ohm: {left_over} V");
+            }
+        }
+    }
+}
