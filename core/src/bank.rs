@@ -119,22 +119,6 @@ impl Bank {
         walk.to(found.map_or(span.1, |root| root.x))
     }
 
-    /// Volts at which the first group to reach its rating does so, when the bank stands alone: the highest
-    /// supply voltage that overdrives no lamp of a shorted set.
-    pub fn rated_volts(&self) -> f64 {
-        let group_rating =
-            |group: &Vec<Lamp>| group.iter().map(Lamp::rated_volts).fold(f64::INFINITY, f64::min);
-        let least_amps = self
-            .groups
-            .iter()
-            .map(|group| {
-                let volts = group_rating(group);
-                group.iter().map(|lamp| lamp.at_volts(volts).amps).sum()
-            })
-            .fold(f64::INFINITY, f64::min);
-        self.at_amps(least_amps).volts
-    }
-
     /// The lamp whose temperature drives [`Self::at_ln_rise`].
     fn lead(&self) -> &Filament {
         self.groups[0][0].filament()

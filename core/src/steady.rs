@@ -14,7 +14,7 @@ pub(crate) use sketch::{Sketch, Sketched, Warm, sketch};
 
 use crate::bank::{Bank, BankPoint, Walk};
 use crate::complex::Complex;
-use crate::error::{Field, InputError};
+use crate::error::InputError;
 use crate::filament::Filament;
 use crate::hunt;
 use crate::lamp::LampState;
@@ -405,14 +405,6 @@ fn melting(states: &[Vec<LampState>]) -> Option<SteadyError> {
         let lamp = lamps.iter().position(|state| state.kelvin > HIGHEST_KELVIN - 1e-6)?;
         Some(SteadyError::FilamentMelts { group, lamp })
     })
-}
-
-/// The first property of a request that [`solve`] would refuse, for callers that check before they show.
-pub fn refused_field(error: &SteadyError) -> Field {
-    match error {
-        SteadyError::Input(error) => error.field(),
-        SteadyError::FilamentMelts { .. } => Field::Volts,
-    }
 }
 
 #[cfg(test)]
