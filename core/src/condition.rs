@@ -1,7 +1,9 @@
 //! States that equipment can be in.
 
+use serde::{Deserialize, Serialize};
+
 /// What state the equipment is in. Each family has those that can happen to it.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum Condition {
     /// It takes what its plate says; a motor runs free.

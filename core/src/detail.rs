@@ -1,7 +1,9 @@
 //! Class defaults: what the rating plate does not print and the model needs.
 
+use serde::{Deserialize, Serialize};
+
 /// One number that a family needs beside its plate.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum Detail {
     /// Magnetising current at plate volts, over plate watts per volt.

@@ -2,11 +2,13 @@
 
 use core::fmt;
 
+use serde::{Deserialize, Serialize};
+
 use crate::condition::Condition;
 use crate::detail::Detail;
 
 /// A property that a person or a request can set, named as in the JSON contract.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum Field {
     /// RMS or DC potential difference, volts.
@@ -206,7 +208,7 @@ impl Field {
 }
 
 /// Why an input was refused.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum InputError {
     /// Not a finite number.

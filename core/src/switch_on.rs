@@ -41,6 +41,8 @@ use core::fmt;
 
 pub use run::{Progress, Run};
 
+use serde::{Deserialize, Serialize};
+
 use crate::bank::Bank;
 use crate::error::{Field, InputError, within};
 use crate::load::Load;
@@ -116,7 +118,7 @@ impl Options {
 
 /// The circuit at one time. RMS values are over the period of the mains that ends there, with nothing flowing before
 /// the switch closed; on direct current they are the values themselves.
-#[derive(Debug, Clone, PartialEq)]
+#[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
 pub struct Sample {
     /// Time since the switch closed, seconds.
     pub seconds: f64,
@@ -135,7 +137,7 @@ pub struct Sample {
 }
 
 /// Integral of the squared current from the start to a time.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 pub struct Heating {
     /// Time since the switch closed, seconds.
     pub seconds: f64,
@@ -144,7 +146,7 @@ pub struct Heating {
 }
 
 /// Where the energy of all lamps of the bank went.
-#[derive(Debug, Clone, Copy, Default, PartialEq)]
+#[derive(Debug, Clone, Copy, Default, PartialEq, Serialize, Deserialize)]
 pub struct Energy {
     /// Taken from the circuit, joule.
     pub into_lamps_joules: f64,
@@ -155,7 +157,7 @@ pub struct Energy {
 }
 
 /// The first seconds.
-#[derive(Debug, Clone, PartialEq)]
+#[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
 pub struct SwitchOn {
     /// Angle at which the switch closed, degrees.
     pub switch_degrees: f64,
@@ -195,7 +197,7 @@ impl SwitchOn {
 }
 
 /// Why there is no answer.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum SwitchOnError {
     /// A number that has no meaning here.

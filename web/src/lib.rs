@@ -49,6 +49,7 @@ pub mod format;
 pub mod panels;
 pub mod parts;
 mod reading;
+pub mod reckoner;
 mod reduce;
 pub mod replay;
 pub mod start;

@@ -1,7 +1,8 @@
-//! The replay on its stage: what is worked out, and where the play stands. It knows no browser; the frames of a page
-//! drive it.
+//! The replay on its stage: what is known of it, and where the play stands. It knows no browser and no reckoner; the
+//! frames of a page drive it.
 
-use crate::replay::{Ask, Work};
+use crate::reckoner::runs::News;
+use crate::replay::{Ask, Show};
 
 /// How slow is slow.
 pub const SLOWLY: f64 = 0.1;
@@ -10,10 +11,6 @@ pub const SLOW_UNTIL: f64 = 0.5;
 
 /// Longest time between two frames that counts: a page in the background draws none, seconds.
 const LONGEST_FRAME: f64 = 0.1;
-/// Milliseconds of each frame that the working out may take: half of it, so that typing and drawing find their time.
-const SLICE: f64 = 8.0;
-/// Steps of the solver between two looks at the clock.
-const STEPS: u32 = 60;
 /// Milliseconds without a change before anything is run: a person who types is not done.
 const QUIET: f64 = 250.0;
 
@@ -29,11 +26,24 @@ enum Play {
     Still,
 }
 
+/// How it stands with the reckoner.
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
+enum Inquiry {
+    /// It is still to be asked.
+    Due,
+    /// It has been asked, or there is nothing to ask.
+    #[default]
+    Made,
+    /// It cannot be had: what is missing stays so.
+    Lost,
+}
+
 /// The stage.
 #[derive(Debug, Default)]
 pub struct Theatre {
-    work: Option<Work>,
-    /// Changed whenever the work has something new to show.
+    show: Option<Show>,
+    inquiry: Inquiry,
+    /// Changed whenever there is something new to show.
     pub version: u32,
     /// Where the play stands, seconds after the switch closed.
     pub seconds: f64,
@@ -47,19 +57,20 @@ pub struct Theatre {
 }
 
 impl Theatre {
-    /// What is worked out so far.
-    pub const fn work(&self) -> Option<&Work> {
-        self.work.as_ref()
+    /// What is known so far.
+    pub const fn show(&self) -> Option<&Show> {
+        self.show.as_ref()
     }
 
     /// Asks for a replay; what was at work for another one is dropped.
     pub fn ask(&mut self, ask: Ask, now: f64) {
-        if self.work.as_ref().is_some_and(|work| work.ask == ask) {
+        if self.show.as_ref().is_some_and(|show| show.ask == ask) {
             return;
         }
         // The first replay is waited for; a later one may be the middle of a word.
-        self.not_before = if self.work.is_some() { now + QUIET } else { now };
-        self.work = Some(Work::new(ask, self.work.as_ref()));
+        self.not_before = if self.show.is_some() { now + QUIET } else { now };
+        self.show = Some(Show::new(ask, self.show.as_ref()));
+        self.inquiry = Inquiry::Due;
         self.version += 1;
         self.seconds = 0.0;
         self.play = if self.autoplay { Play::Waiting } else { Play::Still };
@@ -67,27 +78,40 @@ impl Theatre {
     }
 
     /// One frame; whether there is something to draw.
-    pub fn frame(&mut self, now: f64, clock: impl Fn() -> f64) -> bool {
-        let mut draw = self.is_playing();
+    pub fn frame(&mut self, now: f64) -> bool {
+        let draw = self.is_playing();
         self.go_on(now);
-        if let Some(work) = &mut self.work
-            && now >= self.not_before
-        {
-            let until = clock() + SLICE;
-            while !work.is_done() {
-                if work.advance(STEPS, &clock) {
-                    self.version += 1;
-                    draw = true;
-                }
-                if clock() >= until {
-                    break;
-                }
-            }
-            if self.play == Play::Waiting && work.reach() > 0.0 {
-                self.play = Play::Playing;
-            }
-        }
         draw
+    }
+
+    /// What the reckoner is to be asked now; once for each replay, and not before the typing rests.
+    pub fn question(&mut self, now: f64) -> Option<&Ask> {
+        if self.inquiry != Inquiry::Due || now < self.not_before {
+            return None;
+        }
+        self.inquiry = Inquiry::Made;
+        self.show.as_ref().map(|show| &show.ask)
+    }
+
+    /// Takes in what the reckoner has found.
+    pub fn learn(&mut self, news: News) {
+        let Some(show) = &mut self.show else { return };
+        show.learn(news);
+        self.version += 1;
+        if self.play == Play::Waiting && show.reach() > 0.0 {
+            self.play = Play::Playing;
+        }
+    }
+
+    /// The reckoner cannot be had.
+    pub fn lose(&mut self) {
+        self.inquiry = Inquiry::Lost;
+        self.version += 1;
+    }
+
+    /// Whether the reckoner cannot be had.
+    pub fn is_lost(&self) -> bool {
+        self.inquiry == Inquiry::Lost
     }
 
     /// Whether it is playing.
@@ -97,12 +121,12 @@ impl Theatre {
 
     /// Whether frames are needed.
     pub fn is_busy(&self) -> bool {
-        self.is_playing() || self.work.as_ref().is_some_and(|work| !work.is_done())
+        self.is_playing() || self.inquiry == Inquiry::Due
     }
 
     /// Where the play ends, seconds.
     pub fn end(&self) -> f64 {
-        self.work.as_ref().map_or(0.0, |work| work.ask.seconds)
+        self.show.as_ref().map_or(0.0, |show| show.ask.seconds)
     }
 
     /// Whether it has come to its end.
@@ -121,22 +145,22 @@ impl Theatre {
 
     /// Goes to a time, and stays there.
     pub fn seek(&mut self, seconds: f64) {
-        let reach = self.work.as_ref().map_or(0.0, Work::reach);
+        let reach = self.show.as_ref().map_or(0.0, Show::reach);
         self.seconds = seconds.clamp(0.0, reach);
         self.play = Play::Still;
     }
 
     fn go_on(&mut self, now: f64) {
         let last = self.last_frame.replace(now);
-        let Some(work) = self.work.as_ref().filter(|_| self.play == Play::Playing) else { return };
+        let Some(show) = self.show.as_ref().filter(|_| self.play == Play::Playing) else { return };
         let mut wall = last.map_or(0.0, |last| ((now - last) / 1000.0).clamp(0.0, LONGEST_FRAME));
         if self.slow && self.seconds < SLOW_UNTIL {
             let slowly = wall.min((SLOW_UNTIL - self.seconds) / SLOWLY);
             self.seconds += slowly * SLOWLY;
             wall -= slowly;
         }
-        self.seconds = (self.seconds + wall).min(work.reach());
-        if self.seconds >= work.ask.seconds {
+        self.seconds = (self.seconds + wall).min(show.reach());
+        if self.seconds >= show.ask.seconds {
             self.play = Play::Still;
         }
     }
@@ -159,8 +183,9 @@ mod tests {
     use crate::replay::Wish;
     use lampladder_core::condition::Condition;
     use lampladder_core::setup::Setup;
-    use std::cell::Cell;
     use std::rc::Rc;
+
+    use crate::reckoner::runs::everything;
 
     fn ask(wish: &Wish) -> Ask {
         Ask::of(wish, &Rc::new(Setup::example().expect("in range")), Condition::Healthy)
@@ -169,7 +194,11 @@ mod tests {
     fn ready(autoplay: bool, slow: bool) -> Theatre {
         let mut theatre = Theatre { autoplay, slow, ..Theatre::default() };
         theatre.ask(ask(&Wish::default()), 0.0);
-        theatre.frame(0.0, || 0.0);
+        theatre.frame(0.0);
+        let wanted = theatre.question(0.0).expect("asked at once").wanted();
+        for news in everything(wanted) {
+            theatre.learn(news);
+        }
         theatre
     }
 
@@ -178,11 +207,11 @@ mod tests {
         let mut theatre = ready(true, false);
         assert!(theatre.is_playing() && theatre.seconds == 0.0);
         for frame in 1..=60_u32 {
-            assert!(theatre.frame(f64::from(frame) * 16.0, || 0.0));
+            assert!(theatre.frame(f64::from(frame) * 16.0));
         }
         assert!((theatre.seconds - 0.96).abs() < 0.017, "{}", theatre.seconds);
         for frame in 61..=260_u32 {
-            theatre.frame(f64::from(frame) * 16.0, || 0.0);
+            theatre.frame(f64::from(frame) * 16.0);
         }
         assert!(theatre.is_over() && !theatre.is_playing() && !theatre.is_busy());
         theatre.toggle();
@@ -192,9 +221,9 @@ mod tests {
     #[test]
     fn the_first_half_second_can_last_five() {
         let mut theatre = ready(true, true);
-        theatre.frame(1000.0, || 0.0);
+        theatre.frame(1000.0);
         for frame in 1..=60_u32 {
-            theatre.frame(1000.0 + f64::from(frame) * 100.0, || 0.0);
+            theatre.frame(1000.0 + f64::from(frame) * 100.0);
         }
         assert!((theatre.seconds - 1.6).abs() < 0.001, "{}", theatre.seconds);
     }
@@ -212,22 +241,18 @@ mod tests {
     }
 
     #[test]
-    fn a_slice_ends_when_its_time_is_over_and_a_change_waits_for_quiet() {
-        let now = Cell::new(0.0);
-        let clock = || {
-            now.set(now.get() + 1.0);
-            now.get()
-        };
-        let mut theatre = Theatre::default();
-        theatre.ask(ask(&Wish::default()), 0.0);
-        theatre.frame(0.0, clock);
-        assert!(now.get() < 20.0 && theatre.is_busy());
+    fn a_change_waits_for_quiet_and_is_asked_once() {
+        let mut theatre = ready(false, false);
         let other = ask(&Wish { seconds: Some(10.0), ..Wish::default() });
-        theatre.ask(other, 100.0);
-        let version = theatre.version;
-        assert!(!theatre.frame(200.0, || 0.0) && theatre.is_busy());
-        theatre.frame(400.0, || 0.0);
-        assert!(theatre.version > version && !theatre.work().expect("work").reach().is_nan());
+        theatre.ask(other.clone(), 100.0);
+        assert!(theatre.question(200.0).is_none() && theatre.is_busy());
+        assert_eq!(theatre.question(400.0), Some(&other));
+        assert!(theatre.question(500.0).is_none() && !theatre.is_busy());
+        assert!(theatre.show().is_some_and(|show| !show.done && show.reach() == 0.0));
+        theatre.lose();
+        assert!(theatre.is_lost());
+        theatre.ask(ask(&Wish::default()), 600.0);
+        assert!(!theatre.is_lost());
     }
 
     #[test]

@@ -8,6 +8,7 @@ pub mod dialog;
 pub mod fragment;
 pub mod frames;
 pub mod input;
+pub mod reckoner;
 pub mod storage;
 pub mod theme;
 pub mod window;

@@ -53,7 +53,7 @@ const MOMENTS: usize = 6;
 
 /// The two lamps, or what is known of them.
 pub(super) fn scenes(bench: &Bench, theatre: &Theatre) -> El {
-    let all = theatre.work().map(|work| &work.scenes);
+    let all = theatre.show().map(|show| &show.scenes);
     let scene = |(index, scene): (usize, &Scene)| figure(bench, scene, index, theatre.seconds);
     el("div").class("scenes").each(all.into_iter().flatten().enumerate().map(scene))
 }
@@ -216,11 +216,11 @@ pub(super) fn chart(bench: &Bench, theatre: &Theatre, canvas: &NodeRef) -> El {
 
 /// A replay that does not move: some moments of both, side by side; a tap shows one in large.
 pub(super) fn strip(bench: &Bench, theatre: &Theatre, hand: &Hand) -> Option<El> {
-    let work = theatre.work()?;
+    let show = theatre.show()?;
     let all = marks(theatre.end(), IN_A_TABLE);
     let skipped = all.len().saturating_sub(MOMENTS);
     let frames = all.into_iter().skip(skipped).map(|seconds| {
-        let small = work.scenes.iter().enumerate().map(|(index, scene)| {
+        let small = show.scenes.iter().enumerate().map(|(index, scene)| {
             let id = format!("strip-{index}-{}", n(seconds * 1000.0));
             bank(bench, &id, SMALL_VIEW, SMALL, &moment(scene, seconds))
         });

@@ -10,29 +10,29 @@ use crate::charts::seconds::{IN_A_TABLE, marks};
 use crate::parts::choice::{Choice, choices};
 use crate::parts::el::{El, button, el, truth};
 use crate::parts::table::{row_head, table, whole};
-use crate::replay::{Scene, Wish, Work};
+use crate::replay::{Scene, Show, Wish};
 use crate::story;
 
 /// All tables.
-pub(super) fn tables(bench: &BenchHandle, work: &Work) -> [El; 3] {
-    [figures(bench, work), moments(bench, work), fuse(bench, work)]
+pub(super) fn tables(bench: &BenchHandle, show: &Show) -> [El; 3] {
+    [figures(bench, show), moments(bench, show), fuse(bench, show)]
 }
 
 /// One cell for each of the two conditions; a dash where there is nothing to say.
-fn cells(bench: &Bench, work: &Work, name: &'static str, text: impl Fn(&Scene) -> Option<String>) -> El {
+fn cells(bench: &Bench, show: &Show, name: &'static str, text: impl Fn(&Scene) -> Option<String>) -> El {
     let none = || String::from(bench.words().none);
     let cell = |scene: &Scene| whole(text(scene).unwrap_or_else(none));
-    el("tr").with(row_head(name)).each(work.scenes.iter().map(cell))
+    el("tr").with(row_head(name)).each(show.scenes.iter().map(cell))
 }
 
 fn straight(scene: &Scene) -> Option<&SwitchOn> {
     scene.straight.as_ref()?.run.as_ref()
 }
 
-fn figures(bench: &Bench, work: &Work) -> El {
+fn figures(bench: &Bench, show: &Show) -> El {
     let words = bench.words();
     let (texts, numerals) = (words.replay, words.numerals);
-    let row = |name, text: &dyn Fn(&Scene) -> Option<String>| cells(bench, work, name, text);
+    let row = |name, text: &dyn Fn(&Scene) -> Option<String>| cells(bench, show, name, text);
     let heat = |run: &SwitchOn| numerals.about(run.i2t_amp2_seconds, "A²s");
     let last = |scene: &Scene| scene.whole()?.samples.last().cloned();
     let mut rows = vec![
@@ -41,15 +41,15 @@ fn figures(bench: &Bench, work: &Work) -> El {
         row(texts.heat, &|scene| scene.whole().map(heat)),
         row(texts.settles, &|scene| {
             let settled = scene.whole()?.settle_seconds.map(|seconds| numerals.duration(seconds));
-            Some(settled.unwrap_or_else(|| (texts.unsettled)(&numerals.quantity(work.ask.seconds, "s"))))
+            Some(settled.unwrap_or_else(|| (texts.unsettled)(&numerals.quantity(show.ask.seconds, "s"))))
         }),
     ];
-    if work.scenes.iter().any(|scene| scene.whole().is_some_and(|run| run.pulse_seconds().is_some())) {
+    if show.scenes.iter().any(|scene| scene.whole().is_some_and(|run| run.pulse_seconds().is_some())) {
         rows.push(row(texts.pulse, &|scene| Some(numerals.duration(scene.whole()?.pulse_seconds()?))));
     }
     rows.push(row(texts.last_amps, &|scene| Some(numerals.about(last(scene)?.amps_rms, "A"))));
     rows.push(row(texts.last_volts, &|scene| Some(numerals.about(last(scene)?.load_volts_rms, "V"))));
-    if work.scenes.iter().any(|scene| last(scene).is_some_and(|last| last.load_dc_volts.is_some())) {
+    if show.scenes.iter().any(|scene| last(scene).is_some_and(|last| last.load_dc_volts.is_some())) {
         rows.push(row(texts.last_dc, &|scene| Some(numerals.about(last(scene)?.load_dc_volts?, "V"))));
     }
     rows.push(row(texts.straight_peak, &|scene| Some(numerals.about(straight(scene)?.peak_amps, "A"))));
@@ -61,24 +61,24 @@ fn figures(bench: &Bench, work: &Work) -> El {
             if ratio < 1.05 { String::from(texts.same) } else { (texts.times_less)(&numerals.ratio(ratio)) }
         })
     }));
-    let ohms = if work.ask.setup.supply.ohms() > 0.0 { work.ask.setup.supply.ohms() } else { MAINS_OHMS };
+    let ohms = if show.ask.setup.supply.ohms() > 0.0 { show.ask.setup.supply.ohms() } else { MAINS_OHMS };
     el("div")
         .with(el("h2").text(texts.surge))
-        .with(table(&heads(bench, work, ""), rows).test("surge"))
+        .with(table(&heads(bench, show, ""), rows).test("surge"))
         .with(el("p").class("hint").text((texts.straight_means)(&numerals.short_quantity(ohms, "Ω"))))
 }
 
-fn heads(bench: &Bench, work: &Work, first: &'static str) -> [&'static str; 3] {
+fn heads(bench: &Bench, show: &Show, first: &'static str) -> [&'static str; 3] {
     let name = |scene: &Scene| (bench.words().condition)(scene.condition);
-    [first, name(&work.scenes[0]), name(&work.scenes[1])]
+    [first, name(&show.scenes[0]), name(&show.scenes[1])]
 }
 
 /// What the chart shows, for those who cannot see it.
-fn moments(bench: &Bench, work: &Work) -> El {
+fn moments(bench: &Bench, show: &Show) -> El {
     let words = bench.words();
     let texts = words.replay;
     let lamps = lamps(bench);
-    let rows = marks(work.ask.seconds, IN_A_TABLE).into_iter().map(|seconds| {
+    let rows = marks(show.ask.seconds, IN_A_TABLE).into_iter().map(|seconds| {
         let cell = |scene: &Scene| {
             let run =
                 scene.run().filter(|run| run.samples.last().is_some_and(|last| last.seconds >= seconds));
@@ -94,11 +94,11 @@ fn moments(bench: &Bench, work: &Work) -> El {
                 .with(el("small").text((texts.figures)(&amps, &volts)))
         };
         let head = row_head(words.numerals.duration(seconds));
-        el("tr").with(head).each(work.scenes.iter().map(cell))
+        el("tr").with(head).each(show.scenes.iter().map(cell))
     });
     el("div")
         .with(el("h2").text(texts.moment_by_moment))
-        .with(table(&heads(bench, work, texts.time_column), rows.collect()).test("moments-table"))
+        .with(table(&heads(bench, show, texts.time_column), rows.collect()).test("moments-table"))
 }
 
 /// Preferred rated currents, amperes: the series of IEC 60127, and what else is sold in the UL range.
@@ -123,7 +123,7 @@ fn fitting(standard: Standard, amps: f64) -> f64 {
     if up == amps { down } else { up }
 }
 
-fn fuse(bench: &BenchHandle, work: &Work) -> El {
+fn fuse(bench: &BenchHandle, show: &Show) -> El {
     let words = bench.words();
     let texts = words.replay;
     let now = bench.wish;
@@ -157,22 +157,22 @@ fn fuse(bench: &BenchHandle, work: &Work) -> El {
         .with(choices(texts.standards, standards.to_vec()))
         .with(el("p").class("hint").text((texts.standard_means)(now.standard)))
         .with(rated)
-        .each(verdicts(bench, work))
+        .each(verdicts(bench, show))
 }
 
-fn verdicts(bench: &Bench, work: &Work) -> Vec<El> {
+fn verdicts(bench: &Bench, show: &Show) -> Vec<El> {
     let texts = bench.words().replay;
     let Ok(fuse) = Fuse::new(bench.wish.standard, bench.wish.rated_amps) else { return Vec::new() };
     let judged = |run: Option<&SwitchOn>| run.map(|run| fuse.judge(run));
     let verdict = |judged: Option<Judgement>| Some((texts.verdict)(judged?.verdict).to_owned());
     let rows = vec![
-        cells(bench, work, texts.behind, |scene| verdict(judged(scene.whole()))),
-        cells(bench, work, texts.straight, |scene| verdict(judged(straight(scene)))),
+        cells(bench, show, texts.behind, |scene| verdict(judged(scene.whole()))),
+        cells(bench, show, texts.straight, |scene| verdict(judged(straight(scene)))),
     ];
     let status = fuse.gates().iter().map(|gate| gate.status).max();
     let status = status.unwrap_or(lampladder_core::fuse::Status::Memory);
     vec![
-        table(&heads(bench, work, ""), rows).test("fuse-table"),
+        table(&heads(bench, show, ""), rows).test("fuse-table"),
         el("p").class("hint").text((texts.fuse_note)(status)),
     ]
 }

@@ -4,8 +4,8 @@ use std::cell::RefCell;
 use std::rc::Rc;
 
 use yew::{
-    Html, Properties, function_component, html, use_effect_with, use_force_update, use_memo, use_mut_ref,
-    use_node_ref, use_state_eq,
+    Html, Properties, function_component, html, use_effect, use_effect_with, use_force_update, use_memo,
+    use_mut_ref, use_node_ref, use_state_eq,
 };
 
 use super::advice::wrong_fields;
@@ -13,6 +13,7 @@ use super::stage::{Hand, chart, controls, lamps, scenes, strip};
 use super::{send, surge};
 use crate::bench::{Bench, BenchHandle, Msg};
 use crate::browser::frames::Frames;
+use crate::browser::reckoner;
 use crate::browser::window::{Listener, now, wants_stillness, width};
 use crate::charts::ink::Ink;
 use crate::charts::seconds::draw;
@@ -20,6 +21,7 @@ use crate::describe;
 use crate::draft::Place;
 use crate::parts::choice::{Choice, choices};
 use crate::parts::el::{El, el, truth};
+use crate::reckoner::{Answer, Ask as Question};
 use crate::replay::{Ask, Closing, SPANS, Scene, Wish};
 use crate::story::{Told, alike, tell};
 use crate::theatre::Theatre;
@@ -52,14 +54,23 @@ pub fn Replay(props: &ReplayProps) -> Html {
         let (theatre, update) = (Rc::clone(&theatre), update.clone());
         use_memo((), |()| {
             Frames::new(move |at| {
-                let draw = theatre.borrow_mut().frame(at, now);
-                if draw {
+                if theatre.borrow_mut().frame(at) {
                     update.force_update();
                 }
+                inquire(&theatre, &update, at);
                 theatre.borrow().is_busy()
             })
         })
     };
+    {
+        let (frames, theatre) = (frames.clone(), Rc::clone(&theatre));
+        // An answer of the reckoner may have set it going.
+        use_effect(move || {
+            if theatre.borrow().is_busy() {
+                frames.wake();
+            }
+        });
+    }
     let hand = Hand { theatre: Rc::clone(&theatre), frames, update };
     let still = use_state_eq(wants_stillness);
     {
@@ -93,20 +104,34 @@ pub fn Replay(props: &ReplayProps) -> Html {
         let drawn = (theatre.borrow().version, bench.theme, bench.language, *size, Ink::now());
         use_effect_with(drawn, move |(_, _, language, _, _)| {
             let theatre = theatre.borrow();
-            let (Some(canvas), Some(work)) = (canvas.cast(), theatre.work()) else { return };
-            let runs = work.scenes.each_ref().map(Scene::run);
+            let (Some(canvas), Some(show)) = (canvas.cast(), theatre.show()) else { return };
+            let runs = show.scenes.each_ref().map(Scene::run);
             // A chart that cannot be drawn leaves the tables, which say the same.
-            let _ = draw(&canvas, runs, work.ask.seconds, &Ink::now(), language.words());
+            let _ = draw(&canvas, runs, show.ask.seconds, &Ink::now(), language.words());
         });
     }
     view(bench, &hand, &canvas)
 }
 
+/// Asks the reckoner where there is something to ask.
+fn inquire(theatre: &Rc<RefCell<Theatre>>, update: &yew::UseForceUpdateHandle, now: f64) {
+    let Some(wanted) = theatre.borrow_mut().question(now).map(Ask::wanted) else { return };
+    let (theatre, update) = (Rc::downgrade(theatre), update.clone());
+    reckoner::ask(Question::Replay(wanted), move |answer| {
+        let Some(theatre) = theatre.upgrade() else { return };
+        match answer {
+            Ok(Answer::Replay(news)) => theatre.borrow_mut().learn(*news),
+            _ => theatre.borrow_mut().lose(),
+        }
+        update.force_update();
+    });
+}
+
 fn view(bench: &BenchHandle, hand: &Hand, canvas: &yew::NodeRef) -> Html {
     let theatre = hand.theatre.borrow();
-    let work = theatre.work();
-    let busy = work.is_none_or(|work| !work.is_done());
-    let milliseconds = work.and_then(crate::replay::Work::milliseconds).unwrap_or_default();
+    let show = theatre.show();
+    let busy = !theatre.is_lost() && show.is_none_or(|show| !show.done);
+    let milliseconds = show.and_then(|show| show.milliseconds).unwrap_or_default();
     el("div")
         .test("replay")
         .set("data-busy", truth(busy))
@@ -119,7 +144,7 @@ fn view(bench: &BenchHandle, hand: &Hand, canvas: &yew::NodeRef) -> Html {
         .with(chart(bench, &theatre, canvas))
         .with(el("p").class("hint").text(bench.words().replay.chart_means))
         .with(options(bench))
-        .each(work.map(|work| surge::tables(bench, work)).into_iter().flatten())
+        .each(show.map(|show| surge::tables(bench, show)).into_iter().flatten())
         .html()
 }
 
@@ -128,8 +153,9 @@ fn watch(bench: &Bench, theatre: &Theatre) -> El {
     let words = bench.words();
     let texts = words.replay;
     let stale = bench.is_stale().then(|| el("p").class("stale").text((words.stale)(&wrong_fields(bench))));
-    let lines = theatre.work().and_then(|work| told(bench, &work.scenes));
-    let body = lines.unwrap_or_else(|| vec![el("p").text(texts.working)]);
+    let lines = theatre.show().and_then(|show| told(bench, &show.scenes));
+    let waiting = if theatre.is_lost() { words.reckoner_lost } else { texts.working };
+    let body = lines.unwrap_or_else(|| vec![el("p").text(waiting)]);
     let setup = &bench.setup;
     let played = Played {
         supply: describe::supply(setup, words),

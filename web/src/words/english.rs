@@ -91,6 +91,7 @@ pub(super) static WORDS: Words = Words {
         if from == to { String::from(glow(from)) } else { format!("{} to {}", glow(from), glow(to)) }
     },
     none: "–",
+    reckoner_lost: "This part of the program could not be loaded. Go where there is a connection, and reload the page.",
     bank,
     direct: "DC",
     across_bank: |several| if several { "lamps" } else { "lamp" },

@@ -122,6 +122,8 @@ pub struct Words {
     pub glow_range: fn(GlowWord, GlowWord) -> String,
     /// Where there is no number.
     pub none: &'static str,
+    /// What takes longer to work out cannot be had.
+    pub reckoner_lost: &'static str,
     /// A bank in a few words.
     pub bank: fn(&[Vec<Alike>]) -> String,
     /// Direct current.

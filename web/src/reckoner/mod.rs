@@ -1,0 +1,178 @@
+//! The reckoner: a second program beside the page, for whatever takes longer than a frame.
+//!
+//! It runs in a worker of the browser, so that typing never waits for it, and it is fetched after the first answer, so
+//! that a first load stays small. Page and reckoner exchange [`Ask`]s and [`Answer`]s as bytes; how they travel is in
+//! [`crate::browser::reckoner`]. Here is what the reckoner does with them, without any browser.
+//!
+//! For each [`Subject`] only the newest question counts: a [`Desk`] drops the work for an older one.
+
+pub mod runs;
+
+use serde::{Deserialize, Serialize};
+
+/// What is asked. The newest of a subject replaces the one before.
+#[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
+pub enum Ask {
+    /// The first seconds.
+    Replay(runs::Wanted),
+}
+
+/// What is answered: once, or piece by piece.
+#[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
+pub enum Answer {
+    /// One run of a replay.
+    Replay(Box<runs::News>),
+    /// The question cannot be read: page and reckoner are of different versions.
+    Unreadable,
+}
+
+/// What a question is about.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Subject {
+    /// The first seconds.
+    Replay,
+}
+
+impl Ask {
+    /// What it is about.
+    pub const fn subject(&self) -> Subject {
+        match self {
+            Self::Replay(_) => Subject::Replay,
+        }
+    }
+}
+
+/// Numbers the questions, so that a late answer to an old one is known as such.
+pub type Number = u32;
+
+/// Milliseconds of a clock that never goes back.
+pub type Clock<'a> = &'a dyn Fn() -> f64;
+
+/// What a stretch of work has come to.
+#[derive(Debug)]
+pub enum Step {
+    /// Nothing to tell yet.
+    More,
+    /// Something to tell, and more to do.
+    News(Answer),
+    /// The last of it.
+    Last(Answer),
+    /// There was nothing to do.
+    Over,
+}
+
+/// Work that goes on a stretch at a time, some milliseconds each.
+pub trait Task {
+    /// Goes on.
+    fn go_on(&mut self, clock: Clock<'_>) -> Step;
+}
+
+/// One question at work. What is finished stays: the next question may begin where it ended.
+#[derive(Debug)]
+struct Seat<T> {
+    number: Number,
+    busy: bool,
+    task: T,
+}
+
+/// What is at work.
+#[derive(Debug, Default)]
+pub struct Desk {
+    replay: Option<Seat<runs::Runs>>,
+}
+
+impl Desk {
+    /// Takes a question; an answer where there is one at once.
+    pub fn put(&mut self, number: Number, ask: Ask) -> Option<Answer> {
+        let taken = match ask {
+            Ask::Replay(wanted) => {
+                let earlier = self.replay.take().map(|seat| seat.task);
+                runs::Runs::new(wanted, earlier)
+                    .map(|task| self.replay = Some(Seat { number, busy: true, task }))
+                    .is_ok()
+            }
+        };
+        if taken { None } else { Some(Answer::Unreadable) }
+    }
+
+    /// Whether there is anything to do.
+    pub fn is_busy(&self) -> bool {
+        self.replay.as_ref().is_some_and(|seat| seat.busy)
+    }
+
+    /// Goes on for a stretch; what there is to tell.
+    pub fn go_on(&mut self, clock: Clock<'_>) -> Option<(Number, Answer)> {
+        self.replay.as_mut().and_then(|seat| seat.go_on(clock))
+    }
+}
+
+impl<T: Task> Seat<T> {
+    fn go_on(&mut self, clock: Clock<'_>) -> Option<(Number, Answer)> {
+        if !self.busy {
+            return None;
+        }
+        let (busy, answer) = match self.task.go_on(clock) {
+            Step::More => (true, None),
+            Step::News(answer) => (true, Some(answer)),
+            Step::Last(answer) => (false, Some(answer)),
+            Step::Over => (false, None),
+        };
+        self.busy = busy;
+        answer.map(|answer| (self.number, answer))
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use std::rc::Rc;
+
+    use super::*;
+    use crate::replay::{self, Wish};
+    use lampladder_core::condition::Condition;
+    use lampladder_core::setup::Setup;
+
+    fn replay() -> Ask {
+        let setup = Rc::new(Setup::example().expect("in range"));
+        Ask::Replay(replay::Ask::of(&Wish::default(), &setup, Condition::Healthy).wanted())
+    }
+
+    #[test]
+    fn a_newer_question_takes_the_place_of_the_older() {
+        let mut desk = Desk::default();
+        assert!(!desk.is_busy() && desk.put(1, replay()).is_none() && desk.is_busy());
+        assert!(desk.put(2, replay()).is_none());
+        let mut told = 0;
+        while desk.is_busy() {
+            if let Some((number, _)) = desk.go_on(&|| 0.0) {
+                assert_eq!(number, 2);
+                told += 1;
+            }
+        }
+        assert_eq!(told, 4);
+    }
+
+    #[test]
+    fn questions_and_answers_survive_the_way() {
+        let ask = replay();
+        let bytes = postcard::to_allocvec(&(7 as Number, &ask)).expect("in memory");
+        assert_eq!(postcard::from_bytes::<(Number, Ask)>(&bytes).expect("whole"), (7, ask.clone()));
+        let mut desk = Desk::default();
+        desk.put(7, ask);
+        let answer = loop {
+            if let Some(answer) = desk.go_on(&|| 0.0) {
+                break answer;
+            }
+        };
+        let bytes = postcard::to_allocvec(&answer).expect("in memory");
+        assert_eq!(postcard::from_bytes::<(Number, Answer)>(&bytes).expect("whole"), answer);
+    }
+
+    #[test]
+    fn a_bench_of_another_version_is_said_to_be_so() {
+        let Ask::Replay(wanted) = replay();
+        let other = Ask::Replay(runs::Wanted { setup: String::from("9zzz"), ..wanted });
+        let mut desk = Desk::default();
+        assert_eq!(desk.put(1, other), Some(Answer::Unreadable));
+        assert!(!desk.is_busy());
+    }
+}
