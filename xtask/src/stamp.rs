@@ -1,4 +1,5 @@
-//! What Trunk's output still needs: no inline script, and a service worker that knows its files.
+//! What Trunk's output still needs: no inline script, names that change with the contents, and a service worker that
+//! knows its files.
 
 use std::fs;
 use std::path::Path;
@@ -16,7 +17,7 @@ pub fn finish(folder: &Path, template: &str) -> Result<usize> {
     let index = folder.join("index.html");
     let html = fs::read_to_string(&index).with_context(|| format!("{} cannot be read", index.display()))?;
     let (html, scripts) = externalise(&html)?;
-    let html = without_idle_integrity(&html);
+    let html = rename_reckoner(folder, without_idle_integrity(&html))?;
     for script in &scripts {
         fs::write(folder.join(&script.name), &script.text)?;
     }
@@ -86,6 +87,36 @@ fn without_idle_integrity(html: &str) -> String {
     out + rest
 }
 
+/// The reckoner's files, each after those that it names.
+const RECKONER: [&str; 3] = ["reckoner_bg.wasm", "reckoner.js", "reckoner_loader.js"];
+
+/// Trunk names a worker's files without a hash. They get one here, or a page could meet the reckoner of an older build
+/// in the browser's own cache.
+fn rename_reckoner(folder: &Path, html: String) -> Result<String> {
+    let mut renamed: Vec<(&str, String)> = Vec::new();
+    for name in RECKONER {
+        let file = folder.join(name);
+        let mut bytes = fs::read(&file).with_context(|| format!("{} cannot be read", file.display()))?;
+        if !name.ends_with(".wasm") {
+            bytes = with_names(&String::from_utf8(bytes)?, &renamed).into_bytes();
+        }
+        let new = name.replacen("reckoner", &format!("reckoner-{:016x}", hash(&bytes)), 1);
+        fs::write(folder.join(&new), bytes)?;
+        fs::remove_file(file)?;
+        renamed.push((name, new));
+    }
+    let named = with_names(&html, &renamed);
+    if named == html {
+        bail!("index.html does not name {}", RECKONER[2]);
+    }
+    Ok(named)
+}
+
+/// A text in which files go by their new names.
+fn with_names(text: &str, renamed: &[(&str, String)]) -> String {
+    renamed.iter().fold(text.to_owned(), |text, (old, new)| text.replace(old, new))
+}
+
 const VERSION: &str = "const VERSION = \"unstamped\";";
 const FILES: &str = "const FILES = [];";
 
@@ -124,7 +155,7 @@ fn hash(bytes: &[u8]) -> u64 {
 
 #[cfg(test)]
 mod tests {
-    use super::{externalise, hash, without_idle_integrity, worker};
+    use super::{externalise, hash, rename_reckoner, without_idle_integrity, worker};
 
     #[test]
     fn hash_agrees_with_the_published_test_vectors() {
@@ -148,6 +179,33 @@ mod tests {
             "{out}"
         );
         assert!(externalise("<script>never ends").is_err());
+    }
+
+    #[test]
+    fn the_reckoner_gets_names_that_change_with_its_contents() {
+        let folder = std::env::temp_dir().join(format!("lampladder-stamp-{}", std::process::id()));
+        std::fs::create_dir_all(&folder).expect("a folder");
+        let names = |wasm: &str| {
+            let write = |name: &str, text: &str| std::fs::write(folder.join(name), text).expect("written");
+            write("reckoner_bg.wasm", wasm);
+            write("reckoner.js", "fetch('reckoner_bg.wasm')");
+            write(
+                "reckoner_loader.js",
+                "importScripts(\"./reckoner.js\");wasm_bindgen(\"./reckoner_bg.wasm\");",
+            );
+            rename_reckoner(&folder, String::from("<meta content=\"./reckoner_loader.js\">"))
+                .expect("renamed")
+        };
+        let (one, other) = (names("one"), names("other"));
+        assert_ne!(one, other);
+        let loader = one.trim_start_matches("<meta content=\"./").trim_end_matches("\">");
+        let text = std::fs::read_to_string(folder.join(loader)).expect("the file that the page names");
+        let script = text.split('"').nth(1).expect("a script").trim_start_matches("./");
+        assert!(folder.join(script).is_file() && !folder.join("reckoner.js").exists());
+        let wasm = text.split('"').nth(3).expect("a program").trim_start_matches("./");
+        assert_eq!(std::fs::read_to_string(folder.join(wasm)).expect("the program"), "one");
+        assert!(rename_reckoner(&folder, String::new()).is_err());
+        std::fs::remove_dir_all(folder).expect("removed");
     }
 
     #[test]
