@@ -37,3 +37,28 @@ fn described(violation: &Value) -> String {
         nodes.map(|node| format!("    {}\n      {}", node["html"], node["failureSummary"])).collect();
     format!("  {}: {}\n{}", violation["id"], violation["help"], nodes.join("\n"))
 }
+
+/// Sizes of the window: a small phone's, and a wide one.
+const SIZES: [(u32, u32); 2] = [(360, 640), (1280, 800)];
+/// Lights.
+const THEMES: [&str; 2] = ["light", "dark"];
+
+/// Checks and pictures the screen as it stands, in each size and theme.
+///
+/// # Errors
+/// What the checker finds, and a screen that is wider than a small phone.
+pub fn look(browser: &Browser, screen: &str) -> Result<()> {
+    for (width, height) in SIZES {
+        browser.resize(width, height)?;
+        for theme in THEMES {
+            browser.prefer(theme)?;
+            let name = format!("{screen}-{theme}-{width}");
+            browser.picture(&name)?;
+            check(browser, &name)?;
+        }
+    }
+    browser.resize(360, 640)?;
+    let wide = browser.script("return document.documentElement.scrollWidth - window.innerWidth")?;
+    ensure!(wide.as_i64().context("a width")? <= 0, "{screen} is wider than a small phone by {wide}");
+    Ok(())
+}

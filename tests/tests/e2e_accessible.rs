@@ -2,12 +2,10 @@
 //! at when `LAMPLADDER_SHOTS` names a folder.
 
 use anyhow::{Context, Result, ensure};
+use lampladder_tests::accessibility::look;
 use lampladder_tests::browser::Browser;
 use lampladder_tests::page::{self, ACCEPT, CAUTIONS, OPEN_CAUTIONS};
-use lampladder_tests::{accessibility, surroundings};
-
-const SIZES: [(u32, u32); 2] = [(360, 640), (1280, 800)];
-const THEMES: [&str; 2] = ["light", "dark"];
+use lampladder_tests::surroundings;
 
 #[test]
 fn every_screen_passes_the_accessibility_checker_in_both_themes() -> Result<()> {
@@ -34,23 +32,6 @@ fn every_screen_passes_the_accessibility_checker_in_both_themes() -> Result<()> 
     browser.tap(OPEN_CAUTIONS)?;
     browser.see(CAUTIONS)?;
     look(&browser, "cautions-again")
-}
-
-/// Checks and pictures the screen as it stands, in each size and theme.
-fn look(browser: &Browser, screen: &str) -> Result<()> {
-    for (width, height) in SIZES {
-        browser.resize(width, height)?;
-        for theme in THEMES {
-            browser.prefer(theme)?;
-            let name = format!("{screen}-{theme}-{width}");
-            browser.picture(&name)?;
-            accessibility::check(browser, &name)?;
-        }
-    }
-    browser.resize(360, 640)?;
-    let wide = browser.script("return document.documentElement.scrollWidth - window.innerWidth")?;
-    ensure!(wide.as_i64().context("a width")? <= 0, "{screen} is wider than a small phone by {wide}");
-    Ok(())
 }
 
 #[test]
