@@ -171,8 +171,8 @@ pub(super) fn controls(bench: &Bench, theatre: &Theatre, hand: &Hand) -> El {
     let play = button("play", "play", hand.click(Theatre::toggle))
         .set("aria-label", name)
         .set("data-state", state)
-        .with(drawing("0 0 24 24").with(el("path").class("play-sign").set("d", sign)))
-        .with(el("small").set("aria-hidden", "true").text(clock.clone()));
+        .with(drawing("0 0 24 24").with(el("path").class("play-sign").set("d", sign)));
+    let time_shown = el("small").class("clock").set("aria-hidden", "true").text(clock.clone());
     let typed = {
         let hand = hand.clone();
         Callback::from(move |event: InputEvent| {
@@ -195,7 +195,7 @@ pub(super) fn controls(bench: &Bench, theatre: &Theatre, hand: &Hand) -> El {
         .put("data-end", full(end))
         .value(n(value))
         .typed(typed);
-    el("div").class("controls").with(play).with(scrubber)
+    el("div").class("controls").with(play).with(time_shown).with(scrubber)
 }
 
 fn clock(bench: &Bench, seconds: f64) -> String {

@@ -256,7 +256,7 @@ fn options(bench: &BenchHandle) -> El {
     };
     let alternating = !bench.setup.supply.is_direct();
     let row =
-        |name: &'static str, all: Vec<Choice>| el("div").with(el("h3").text(name)).with(choices(name, all));
+        |name: &'static str, all: Vec<Choice>| el("div").with(el("h2").text(name)).with(choices(name, all));
     el("div")
         .class("options")
         .with(row(texts.speed, vec![slow]))

@@ -7,7 +7,10 @@ use crate::words::Words;
 
 /// A table under its column heads, in a frame of its own where it is too wide.
 pub fn table(heads: &[&'static str], rows: Vec<El>) -> El {
-    let head = el("tr").each(heads.iter().map(|head| el("th").set("scope", "col").text(*head)));
+    // A corner without a text heads nothing.
+    let head =
+        |text: &'static str| if text.is_empty() { el("td") } else { el("th").set("scope", "col").text(text) };
+    let head = el("tr").each(heads.iter().map(|text| head(text)));
     let table = el("table").with(el("thead").with(head)).with(el("tbody").each(rows));
     // A keyboard reaches what can be scrolled.
     el("div").class("scroll").set("tabindex", "0").with(table)
