@@ -101,8 +101,8 @@ fn rename_reckoner(folder: &Path, html: String) -> Result<String> {
     for name in RECKONER {
         let file = folder.join(name);
         let mut bytes = fs::read(&file).with_context(|| format!("{} cannot be read", file.display()))?;
-        if !name.ends_with(".wasm") {
-            bytes = with_names(&String::from_utf8(bytes)?, &renamed).into_bytes();
+        if let Ok(text) = core::str::from_utf8(&bytes) {
+            bytes = with_names(text, &renamed).into_bytes();
         }
         let new = name.replacen("reckoner", &format!("reckoner-{:016x}", hash(&bytes)), 1);
         fs::write(folder.join(&new), bytes)?;

@@ -195,7 +195,7 @@ pub(super) fn controls(bench: &Bench, theatre: &Theatre, hand: &Hand) -> El {
         .put("data-end", full(end))
         .value(n(value))
         .typed(typed);
-    el("div").class("controls").with(play).with(time_shown).with(scrubber)
+    el("div").class("controls").with(play).with(scrubber).with(time_shown)
 }
 
 fn clock(bench: &Bench, seconds: f64) -> String {
