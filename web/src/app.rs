@@ -67,6 +67,16 @@ pub fn App(props: &AppProps) -> Html {
             move || drop(listener)
         });
     }
+    {
+        let dispatcher = bench.dispatcher();
+        let family = bench.setup.plate.family();
+        let further = bench.tab == Tab::Expect && bench.answers.unasked(family).is_some();
+        // One condition a frame: a key that is pressed meanwhile is not kept waiting for the rest.
+        use_effect_with((bench.answers.clone(), further), move |(_, further)| {
+            let next = further.then(|| NextFrame::new(move || dispatcher.dispatch(Msg::AskFurther)));
+            move || drop(next)
+        });
+    }
     use_effect_with(bench.theme, |light| theme::apply(*light));
     let before = use_mut_ref(|| None::<Stage>);
     use_effect_with(bench.stage, move |stage| {

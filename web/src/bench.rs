@@ -165,6 +165,8 @@ pub enum Msg {
     AddPoint,
     /// A measured point less.
     RemovePoint(usize),
+    /// There is a moment to ask about one more condition.
+    AskFurther,
     /// Show this condition on the loop.
     Show(Condition),
     /// Open an editor.
@@ -200,7 +202,7 @@ impl Bench {
     /// A set-up whose parts do not go together, such as a transformer on direct current.
     pub fn with(setup: Setup) -> Result<Self, InputError> {
         let language = Language::default();
-        let answers = Rc::new(Answers::of(&setup)?);
+        let answers = Rc::new(Answers::of(&setup, Condition::Healthy)?);
         Ok(Self {
             draft: Draft::of(&setup, language.words().numerals),
             setup: Rc::new(setup),

@@ -32,6 +32,12 @@ impl Bench {
                 self.lamp = place;
                 self.refused = None;
             }
+            Msg::AskFurther => {
+                if let Some(condition) = self.answers.unasked(self.setup.plate.family()) {
+                    let answers = Rc::unwrap_or_clone(self.answers);
+                    self.answers = Rc::new(answers.with(&self.setup, condition));
+                }
+            }
             Msg::Refuse(kind) => self.refused = Some(kind),
             Msg::Arrive(setup) => return self.arrive(setup),
             Msg::Tell(note) => {
@@ -55,7 +61,7 @@ impl Bench {
     }
 
     fn arrive(mut self, setup: Setup) -> Self {
-        let answers = match Answers::of(&setup) {
+        let answers = match Answers::of(&setup, self.condition) {
             Ok(answers) => answers,
             Err(error) => return self.after(Msg::Tell(Note::BadLink(LinkError::Refused(error)))),
         };
@@ -165,7 +171,7 @@ impl Bench {
         self.edited = true;
         self.notes.retain(|note| *note == Note::NothingKept);
         match self.draft.read() {
-            Ok(setup) => match Answers::of(&setup) {
+            Ok(setup) => match Answers::of(&setup, self.condition) {
                 Ok(answers) => {
                     self.faults.clear();
                     self.setup = Rc::new(setup);

@@ -178,7 +178,7 @@ mod tests {
         assert_eq!(clipped(&line, (2.0, 2.0)), vec![(0.0, 1.0), (1.0, 1.0), (2.0, 1.0)]);
         let curves = Curves::of(
             &Setup::example().expect("in range"),
-            &Answers::of(&Setup::example().expect("in range")).expect("answers"),
+            &Answers::of(&Setup::example().expect("in range"), Condition::Healthy).expect("answers"),
         );
         for (_, line) in &curves.loads {
             assert!(line.len() > 1);

@@ -1,10 +1,10 @@
-//! Healthy, overloaded and shorted side by side, as they would look; a tap shows one on the loop.
+//! The conditions side by side, as they would look; a tap shows one on the loop.
 
 use lampladder_core::condition::Condition;
 use lampladder_core::steady::Outcome;
 
 use super::send;
-use crate::answers::brightest;
+use crate::answers::{brightest, others};
 use crate::bench::{BenchHandle, Msg};
 use crate::describe::full;
 use crate::parts::el::{El, button, el, truth};
@@ -12,13 +12,25 @@ use crate::parts::well::{Filament, Well, lone};
 
 const CELL: Well = Well { x: 0.0, y: 0.0, width: 96.0, height: 54.0 };
 
-/// The cells.
+/// Healthy, overloaded and shorted.
 pub fn comparison(bench: &BenchHandle) -> El {
-    el("div")
-        .class("cells")
-        .set("role", "group")
-        .set("aria-label", bench.words().conditions)
-        .each(bench.answers.all().iter().map(|(condition, _)| cell(bench, *condition)))
+    cells(bench, bench.words().conditions, bench.answers.all().iter().map(|(condition, _)| *condition))
+}
+
+/// What else this kind of equipment can have.
+pub fn other_conditions(bench: &BenchHandle) -> Option<El> {
+    let words = bench.words();
+    let all: Vec<Condition> = others(bench.setup.plate.family()).collect();
+    if all.is_empty() {
+        return None;
+    }
+    let section = el("section").class("others").with(el("h2").text(words.other_conditions));
+    Some(section.with(cells(bench, words.other_conditions, all.into_iter())))
+}
+
+fn cells(bench: &BenchHandle, name: &'static str, all: impl Iterator<Item = Condition>) -> El {
+    let all = all.map(|condition| cell(bench, condition));
+    el("div").class("cells").set("role", "group").set("aria-label", name).each(all)
 }
 
 fn cell(bench: &BenchHandle, condition: Condition) -> El {
@@ -35,6 +47,7 @@ fn cell(bench: &BenchHandle, condition: Condition) -> El {
         (Some(lamp), _) => (words.glow)(lamp.glow.word),
         (None, Some(Outcome::Hunts { .. })) => words.pulsing,
         (None, _) if filament == Filament::Broken => words.burnt,
+        (None, None) => words.coming,
         _ => words.none,
     };
     let cell = button("cell", format!("cell-{name}"), send(bench, Msg::Show(condition)))

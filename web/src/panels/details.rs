@@ -3,18 +3,20 @@
 use lampladder_core::condition::{Condition, OVERLOAD};
 use lampladder_core::expect::LampShown;
 
-use crate::bench::Bench;
+use super::comparison::other_conditions;
+use super::points::points;
+use crate::bench::{Bench, BenchHandle};
 use crate::describe;
 use crate::draft::Place;
 use crate::parts::el::{El, el};
 use crate::parts::table::{banded, row_head, table, whole};
 
 /// The details.
-pub fn details(bench: &Bench) -> El {
+pub fn details(bench: &BenchHandle) -> El {
     let words = bench.words();
     let heads = words.table;
     let several = bench.setup.bank.lamp_count() > 1;
-    let conditions = bench.answers.all().iter().map(|(condition, _)| *condition);
+    let conditions: Vec<Condition> = bench.answers.asked().collect();
     let mut lamp_heads = vec![heads.condition];
     if several {
         lamp_heads.push(heads.lamp);
@@ -25,15 +27,17 @@ pub fn details(bench: &Bench) -> El {
     el("section")
         .class("details")
         .set("aria-labelledby", "details-title")
+        .maybe(points(bench))
+        .maybe(other_conditions(bench))
         .with(el("h2").set("id", "details-title").text(heads.details))
         .with(table(
             &[heads.condition, heads.amps, heads.short_bank_volts, heads.short_load_volts, heads.load_watts],
-            conditions.clone().map(|condition| row(bench, condition)).collect(),
+            conditions.iter().map(|condition| row(bench, *condition)).collect(),
         ))
         .with(el("h2").text(heads.every_lamp))
         .with(table(
             &lamp_heads,
-            conditions.flat_map(|condition| lamp_rows(bench, condition, several)).collect(),
+            conditions.iter().flat_map(|condition| lamp_rows(bench, *condition, several)).collect(),
         ))
         .with(el("h2").text(heads.assumed))
         .with(el("ul").each(lines.map(|line| el("li").text(line))))

@@ -13,6 +13,7 @@ pub mod details;
 pub mod equipment;
 pub mod frame;
 pub mod lamp;
+pub mod points;
 pub mod sheet;
 pub mod stage;
 pub mod supply;

@@ -2,6 +2,7 @@
 
 mod faults;
 mod replay;
+mod ways;
 
 use lampladder_core::condition::Condition;
 use lampladder_core::family::{self, Family, Warning};
@@ -79,6 +80,10 @@ pub(super) static WORDS: Words = Words {
         other => other.name(),
     },
     conditions: "Condition of the equipment",
+    other_conditions: "What else it can have",
+    coming: "…",
+    ways: |condition| format!("It can come to rest in two ways, {condition}"),
+    mode: ways::mode,
     condition_means: |condition, overload| match condition {
         Condition::Healthy => String::from("as its plate says; a motor running free"),
         Condition::Overloaded => format!("takes {overload} times what its plate says"),

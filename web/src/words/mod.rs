@@ -11,6 +11,7 @@ use lampladder_core::family::{self, Family, Warning};
 use lampladder_core::glow::GlowWord;
 use lampladder_core::lamp::Fill;
 use lampladder_core::link::LinkError;
+use lampladder_core::load::Mode;
 
 use crate::bench::{Note, Part, Tab, Theme, Unsuitable};
 use crate::draft::{Fault, Place, Slot};
@@ -45,6 +46,15 @@ pub struct FamilyWords {
     pub noun: &'static str,
     /// Things of that kind.
     pub examples: &'static str,
+}
+
+/// A way in which equipment can work at rest.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub struct ModeWords {
+    /// Its name.
+    pub name: &'static str,
+    /// When it comes to be.
+    pub decides: &'static str,
 }
 
 /// What a result took for granted, already as text.
@@ -114,6 +124,14 @@ pub struct Words {
     pub if_condition: fn(Condition) -> &'static str,
     /// Asks for one of the conditions.
     pub conditions: &'static str,
+    /// Heading of the conditions that are not compared at a glance.
+    pub other_conditions: &'static str,
+    /// In a cell whose answer is on its way.
+    pub coming: &'static str,
+    /// The circuit can come to rest in several ways, "if healthy".
+    pub ways: fn(&str) -> String,
+    /// One of these ways.
+    pub mode: fn(Mode) -> ModeWords,
     /// What a condition means.
     pub condition_means: fn(Condition, &str) -> String,
     /// Name of a glow.
