@@ -197,3 +197,36 @@ fn editors_open_and_close() {
     let closed = open.after(Msg::Close);
     assert_eq!((closed.open, closed.choosing), (None, false));
 }
+
+#[test]
+fn the_other_conditions_are_asked_about_one_by_one() {
+    let mut bench = bench();
+    let family = bench.setup.plate.family();
+    let mut asked = 0;
+    while bench.answers.unasked(family).is_some() {
+        bench = bench.after(Msg::AskFurther);
+        asked += 1;
+    }
+    assert_eq!(bench.answers.asked().count(), family.conditions().len());
+    assert_eq!(asked + bench.answers.all().len(), family.conditions().len());
+    // What is looked at stays so while somebody types.
+    bench = bench.after(Msg::Show(Condition::ShortedDiode)).after(typed(Slot::PlateWatts, "50"));
+    assert_eq!(bench.condition, Condition::ShortedDiode);
+    assert!(bench.answers.shown(Condition::ShortedDiode).is_some());
+    assert!(bench.answers.get(Condition::LeakyReservoir).is_none());
+    let bench = bench.after(Msg::Family(Family::Heater));
+    assert_eq!(bench.condition, Condition::Healthy);
+}
+
+#[test]
+fn a_motor_that_stands_or_turns_has_two_ways_to_come_to_rest() {
+    // Among larger and larger lamps there is a stretch where a standing motor stays standing and a turning one turns.
+    let two = (1..=8_u32).find(|count| {
+        let mut bench = bench().after(Msg::Family(Family::InductionMotor));
+        for _ in 1..*count {
+            bench = bench.after(Msg::AddParallel);
+        }
+        bench.answers.stable(Condition::Healthy).len() == 2
+    });
+    assert!(two.is_some());
+}

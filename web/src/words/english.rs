@@ -1,8 +1,8 @@
 //! English.
 
+mod conditions;
 mod faults;
 mod replay;
-mod ways;
 
 use lampladder_core::condition::Condition;
 use lampladder_core::family::{self, Family, Warning};
@@ -49,48 +49,14 @@ pub(super) static WORDS: Words = Words {
     circuit: |supply, bank, equipment| {
         format!("Closed loop: supply {supply}, then {bank} in the line, then equipment of {equipment}.")
     },
-    condition: |condition| match condition {
-        Condition::Healthy => "Healthy",
-        Condition::Idle => "Idle",
-        Condition::Working => "Working",
-        Condition::Overloaded => "Overloaded",
-        Condition::Shorted => "Shorted",
-        Condition::OpenCircuit => "Open",
-        Condition::LeakyReservoir => "Leaky reservoir",
-        Condition::ShortedReservoir => "Shorted reservoir",
-        Condition::ShortedDiode => "Shorted diode",
-        Condition::ShortedWinding => "Shorted winding",
-        Condition::OutputConducting => "Output conducting",
-        Condition::Stalled => "Stalled",
-        other => other.name(),
-    },
-    if_condition: |condition| match condition {
-        Condition::Healthy => "if healthy",
-        Condition::Idle => "if idle",
-        Condition::Working => "if working",
-        Condition::Overloaded => "if overloaded",
-        Condition::Shorted => "if shorted",
-        Condition::OpenCircuit => "if open",
-        Condition::LeakyReservoir => "if the reservoir leaks",
-        Condition::ShortedReservoir => "if the reservoir is shorted",
-        Condition::ShortedDiode => "if a diode is shorted",
-        Condition::ShortedWinding => "if a winding is shorted",
-        Condition::OutputConducting => "if the output conducts",
-        Condition::Stalled => "if stalled",
-        other => other.name(),
-    },
+    condition: conditions::name,
+    if_condition: conditions::if_so,
     conditions: "Condition of the equipment",
     other_conditions: "What else it can have",
     coming: "…",
     ways: |condition| format!("It can come to rest in two ways, {condition}"),
-    mode: ways::mode,
-    condition_means: |condition, overload| match condition {
-        Condition::Healthy => String::from("as its plate says; a motor running free"),
-        Condition::Overloaded => format!("takes {overload} times what its plate says"),
-        Condition::Shorted => String::from("its two input wires joined"),
-        Condition::Stalled => String::from("the shaft does not turn"),
-        other => String::from(other.name()),
-    },
+    mode: conditions::mode,
+    condition_means: conditions::means,
     glow,
     glow_range: |from, to| {
         if from == to { String::from(glow(from)) } else { format!("{} to {}", glow(from), glow(to)) }
