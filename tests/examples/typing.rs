@@ -5,11 +5,10 @@
 
 use anyhow::{Context, Result, ensure};
 use lampladder_tests::browser::Browser;
+use lampladder_tests::timing::{THROTTLE, report};
 use lampladder_tests::{page, surroundings};
 use serde_json::{Value, json};
 
-/// How many times slower than this machine: about a cheap phone.
-const THROTTLE: u32 = 6;
 const KEYS: usize = 40;
 /// Milliseconds from the key to the changed answer; the median must be below.
 const BUDGET: f64 = 50.0;
@@ -65,13 +64,4 @@ fn main() -> Result<()> {
     println!("{KEYS} keys, processor throttled {THROTTLE} times, {agent}");
     ensure!(changed < BUDGET, "the median of {changed:.1} ms is over the budget of {BUDGET} ms");
     Ok(())
-}
-
-/// Prints the spread and gives the median.
-fn report(what: &str, mut times: Vec<f64>) -> Result<f64> {
-    times.sort_by(f64::total_cmp);
-    let at = |share: usize| times.get((times.len() - 1) * share / 100).copied().context("no times");
-    let (median, late, worst) = (at(50)?, at(95)?, at(100)?);
-    println!("{what:<24} median {median:6.1} ms   95 % {late:6.1} ms   worst {worst:6.1} ms");
-    Ok(median)
 }

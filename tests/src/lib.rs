@@ -19,3 +19,4 @@ pub mod reference;
 pub mod reliability;
 pub mod simulated;
 pub mod surroundings;
+pub mod timing;

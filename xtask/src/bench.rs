@@ -5,13 +5,19 @@ use anyhow::{Result, bail};
 use crate::checks::browser_tests;
 use crate::{oracle, page, place, run};
 
-/// The bench that is none of cargo's: it times the page.
-const TYPING: &str = "typing";
+/// The benches that are none of cargo's: they time the page.
+const OF_THE_PAGE: [(&str, &str); 2] = [
+    ("typing", "typing to new result, in Chromium with the CPU throttled 6 times"),
+    ("replay", "the first seconds worked out and replayed, in Chromium with the CPU throttled 6 times"),
+];
 
 pub(crate) fn bench(arguments: &[String]) -> Result<()> {
     let native = place::rust_files("tests/benches")?;
-    if let Some(other) = arguments.iter().find(|name| *name != TYPING && !native.contains(name)) {
-        bail!("there is no bench `{other}`; there are: {}, {TYPING}", native.join(", "));
+    let of_the_page = |name: &str| OF_THE_PAGE.iter().any(|(known, _)| *known == name);
+    if let Some(other) = arguments.iter().find(|name| !of_the_page(name) && !native.contains(name)) {
+        let known: Vec<&str> =
+            native.iter().map(String::as_str).chain(OF_THE_PAGE.map(|(name, _)| name)).collect();
+        bail!("there is no bench `{other}`; there are: {}", known.join(", "));
     }
     let wanted = |name: &str| arguments.is_empty() || arguments.iter().any(|given| given == name);
     for name in native.iter().filter(|name| wanted(name)) {
@@ -26,12 +32,16 @@ pub(crate) fn bench(arguments: &[String]) -> Result<()> {
         }
         run::run(command.args(["bench", "--quiet", "-p", "lampladder-tests", "--bench", name]))?;
     }
-    if wanted(TYPING) {
-        println!("== typing to new result, in Chromium with the CPU throttled 6 times");
-        let folder = page::build()?;
+    let mut folder = None;
+    for (name, what) in OF_THE_PAGE.into_iter().filter(|(name, _)| wanted(name)) {
+        println!("== {name}: {what}");
+        let folder = match &folder {
+            Some(folder) => folder,
+            None => folder.insert(page::build()?),
+        };
         let mut command = run::command("cargo");
-        browser_tests(&mut command, &folder)?;
-        run::run(command.args(["run", "--quiet", "-p", "lampladder-tests", "--example", "typing"]))?;
+        browser_tests(&mut command, folder)?;
+        run::run(command.args(["run", "--quiet", "-p", "lampladder-tests", "--example", name]))?;
     }
     Ok(())
 }
