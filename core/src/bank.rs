@@ -4,7 +4,7 @@ mod walk;
 
 use alloc::vec::Vec;
 
-pub(crate) use walk::{Strand, Walk};
+pub(crate) use walk::{Step, Strand, Walk};
 
 use crate::error::{Field, InputError, within};
 use crate::filament::Filament;
@@ -127,13 +127,6 @@ impl Bank {
     /// The bank with its first filament at a logarithm of the rise above ambient.
     pub fn at_ln_rise(&self, ln_rise: f64) -> BankPoint {
         Walk::new(self).to(ln_rise)
-    }
-
-    /// The logarithm of the lead's rise at a current, amperes above 0.
-    pub(crate) fn ln_rise_at_amps(&self, amps: f64) -> f64 {
-        let walk = Walk::new(self);
-        walk.to_amps(amps);
-        walk.ln_rise()
     }
 
     /// A first guess of the logarithm of the lead's rise when the bank takes about `volts`.

@@ -2,25 +2,25 @@
 //!
 //! The search runs in one variable, the temperature of the bank's first filament: at each temperature the bank
 //! has one current and one resistance, and the load says whether it wants more or less than that. Loads whose
-//! wanted current falls as the bank heats cross once; a constant power can cross twice or never, so its whole
-//! range is sampled and every dip that comes close to zero is followed down.
+//! wanted current falls as the bank heats cross once; a constant power crosses twice or never, either side of one
+//! hump; a turning motor is searched in its slip.
 
+mod hungry;
 mod sketch;
+mod turning;
 
 use alloc::vec::Vec;
 use core::fmt;
 
 pub(crate) use sketch::{Sketch, Sketched, Warm, sketch};
 
-use crate::bank::{Bank, BankPoint, Walk};
-use crate::complex::Complex;
+use crate::bank::{Bank, BankPoint, Step, Walk};
 use crate::error::InputError;
 use crate::filament::Filament;
 use crate::hunt;
 use crate::lamp::LampState;
-use crate::load::{Feed, InductionMotor, Load, Mode};
+use crate::load::{Feed, Load, Mode, Near};
 use crate::roots::{self, Root, Tolerance};
-use crate::scan;
 use crate::supply::Supply;
 use crate::tungsten::{AMBIENT_KELVIN, HIGHEST_KELVIN};
 
@@ -128,21 +128,8 @@ impl fmt::Display for SteadyError {
 
 impl core::error::Error for SteadyError {}
 
-/// Samples over the range of a load that may have several points.
-const SAMPLES: u32 = 10;
-
-/// Relative step of a numerical slope.
-const NUDGE: f64 = 1e-6;
-
-/// How closely the bank is settled for each slip that a motor is tried at: the slip found is as good, and at it the
-/// bank is settled again, finely.
-const SETTLED: Tolerance = Tolerance { x: 1e-10, residual: 1e-8 };
-
 /// More Newton steps than crossing the whole span of temperature by clamped ones takes.
 const MOST_STEPS: u32 = 60;
-
-/// Least slip of a motor that is looked at.
-const LEAST_SLIP: f64 = 1e-6;
 
 /// Finds every steady point.
 ///
@@ -175,7 +162,7 @@ pub fn equilibria(supply: &Supply, bank: &Bank, load: &Load) -> Result<Vec<Equil
     let mut equilibria = Vec::new();
     let walk = Walk::new(bank);
     for (mode, load) in load.modes() {
-        let circuit = Circuit { supply, bank, walk: &walk, load: &load, mode };
+        let circuit = Circuit { supply, bank, walk: &walk, near: &Near::fine(), load: &load, mode };
         for point in circuit.points()? {
             // In order as they come: a handful, for which the library's sorting is 4 KB of the page.
             let place = equilibria.partition_point(|known: &Equilibrium| known.amps < point.amps);
@@ -190,6 +177,7 @@ struct Circuit<'a> {
     supply: &'a Supply,
     bank: &'a Bank,
     walk: &'a Walk<'a>,
+    near: &'a Near,
     load: &'a Load,
     mode: Mode,
 }
@@ -216,10 +204,11 @@ impl Circuit<'_> {
         if !self.load.may_have_several() {
             return Ok(alloc::vec![self.point_at(self.one_root()?)?]);
         }
-        let mut points = Vec::new();
-        for scan::Crossing { x, residual, evaluations, .. } in self.all_roots()? {
-            points.push(self.point_at(Root { x, residual, evaluations })?);
-        }
+        let Some(pair) = self.hungry_points(Tolerance::FINE)? else { return Ok(Vec::new()) };
+        let mut points = alloc::vec![self.point_at(pair.rising)?, self.point_at(pair.falling)?];
+        // A hotter bank leaves less on the falling side, so that it heats the more. On the rising side it returns, and so
+        // does the reservoir where, at a frozen bank, more current brings more.
+        points[1].stable = false;
         points.retain(|point| self.keeps_running(point));
         Ok(points)
     }
@@ -244,7 +233,7 @@ impl Circuit<'_> {
     }
 
     fn excess(&self, ln_rise: f64) -> f64 {
-        self.load.excess(&self.feed(&self.walk.to(ln_rise)))
+        self.load.excess(&self.feed(&self.walk.to(ln_rise)), self.near)
     }
 
     fn one_root(&self) -> Result<Root, SteadyError> {
@@ -263,21 +252,15 @@ impl Circuit<'_> {
     /// logarithms the curve is nearly straight, so that a clamped step cannot run away.
     fn linear_root(
         &self,
-        (ohms, reactance): (f64, f64),
+        impedance: (f64, f64),
         guess: f64,
         tolerance: Tolerance,
     ) -> Result<Root, SteadyError> {
         let (low, high) = Filament::ln_rise_span();
         let mut x = guess.clamp(low, high);
         for evaluations in 1..=MOST_STEPS {
-            let step = self.walk.step_to(x);
-            let bank_ohms = step.point.ohms();
-            let in_phase = bank_ohms + self.supply.ohms() + ohms;
-            let square = in_phase * in_phase + reactance * reactance;
-            let residual = libm::log(self.supply.volts() / (step.point.amps * libm::sqrt(square)));
-            let slope =
-                step.amps_slope + in_phase * bank_ohms * (step.volts_slope - step.amps_slope) / square;
-            let next = (x + (residual / slope).clamp(-3.0, 3.0)).clamp(low, high);
+            let (residual, step) = self.linear_step(impedance, &self.walk.step_to(x));
+            let next = (x + step).clamp(low, high);
             if residual.abs() <= tolerance.residual || (next - x).abs() <= tolerance.x && next < high {
                 return Ok(Root { x, residual, evaluations });
             }
@@ -289,49 +272,14 @@ impl Circuit<'_> {
         Err(self.melts(high))
     }
 
-    /// Every root from the least possible current up to what a dead short would take.
-    fn all_roots(&self) -> Result<Vec<scan::Crossing>, SteadyError> {
-        let hottest = Circuit { load: &Load::Short, ..*self }.one_root()?;
-        // No power comes from less current than if all of it stood at the supply's voltage.
-        let least_amps = 0.99 * self.load.least_watts() / self.supply.volts();
-        let low = self.bank.ln_rise_at_amps(least_amps).min(hottest.x - 1.0);
-        Ok(scan::all(|x| self.excess(x), (low, hottest.x), SAMPLES))
-    }
-
-    /// Every steady point of a turning motor. At one bank temperature two slips can take the same current, so this
-    /// search runs in the slip, with the bank settled for each.
-    fn turning_points(&self, motor: &InductionMotor) -> Result<Vec<Equilibrium>, SteadyError> {
-        let mut guess = self.bank.guess_ln_rise(0.5 * self.supply.volts());
-        let mut settle = |slip: f64| {
-            let circuit = Circuit { load: &motor.frozen(slip), ..*self };
-            let root = circuit.one_root_from(guess, SETTLED);
-            if let Ok(root) = root {
-                guess = root.x;
-            }
-            root
-        };
-        let slowing = |ln_slip: f64| {
-            let slip = libm::exp(ln_slip);
-            settle(slip).map_or(f64::NAN, |root| motor.slowing(slip, self.walk.to(root.x).amps))
-        };
-        let roots = scan::all(slowing, (libm::log(LEAST_SLIP), 0.0), SAMPLES);
-        let mut points = Vec::new();
-        for root in roots {
-            let slip = libm::exp(root.x);
-            let load = motor.frozen(slip);
-            let circuit = Circuit { load: &load, ..*self };
-            let settled = circuit.one_root()?;
-            let point = circuit.point_at(Root { evaluations: root.evaluations, ..settled })?;
-            // At a frozen bank a faster shaft must find less torque to spare, and so it must with a settled one.
-            let ohms = point.bank_volts / point.amps + self.supply.ohms();
-            let frozen = |slip: f64| {
-                let total = motor.impedance(slip) + Complex::new(ohms, 0.0);
-                motor.slowing(slip, self.supply.volts() / total.magnitude())
-            };
-            let fast = frozen(slip * (1.0 + NUDGE)) < frozen(slip * (1.0 - NUDGE));
-            points.push(Equilibrium { stable: fast && root.falling, ..point });
-        }
-        Ok(points)
+    /// Logarithm of the current that a linear load would take over that of the bank, and Newton's step from here.
+    fn linear_step(&self, (ohms, reactance): (f64, f64), step: &Step) -> (f64, f64) {
+        let bank_ohms = step.point.ohms();
+        let in_phase = bank_ohms + self.supply.ohms() + ohms;
+        let square = in_phase * in_phase + reactance * reactance;
+        let residual = libm::log(self.supply.volts() / (step.point.amps * libm::sqrt(square)));
+        let slope = step.amps_slope + in_phase * bank_ohms * (step.volts_slope - step.amps_slope) / square;
+        (residual, (residual / slope).clamp(-3.0, 3.0))
     }
 
     /// Which lamp ends the search at the top of the span.
@@ -347,11 +295,11 @@ impl Circuit<'_> {
             return Err(error);
         }
         let feed = self.feed(&bank);
-        let terminal = self.load.terminal(&feed);
+        let terminal = self.load.terminal(&feed, self.near);
         let apparent = terminal.volts * bank.amps;
         Ok(Equilibrium {
             mode: self.mode,
-            stable: !self.load.may_have_several() || self.is_stable(root.x, &feed),
+            stable: !self.load.may_have_several() || self.load.served(&feed).by_amps > 0.0,
             amps: bank.amps,
             bank_volts: bank.volts,
             load_volts: terminal.volts,
@@ -362,16 +310,6 @@ impl Circuit<'_> {
             residual: root.residual,
             evaluations: root.evaluations,
         })
-    }
-
-    /// Stable where the fast state returns (at a frozen bank, more current lowers what the load wants) and the
-    /// slow one does (a hotter bank leaves the load wanting less than the bank needs to stay hot).
-    fn is_stable(&self, ln_rise: f64, feed: &Feed) -> bool {
-        let here = self.load.excess(feed);
-        let more = Feed { amps: feed.amps * (1.0 + NUDGE), ..*feed };
-        let fast = self.load.excess(&more) < here;
-        let slow = self.excess(ln_rise + NUDGE) < self.excess(ln_rise - NUDGE);
-        fast && slow
     }
 
     /// A point below the voltage at which a converter stops is none.

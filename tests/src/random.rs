@@ -6,10 +6,11 @@
 
 use lampladder_core::bank::Bank;
 use lampladder_core::condition::Condition;
+use lampladder_core::detail::Detail;
 use lampladder_core::family::Family;
 use lampladder_core::lamp::{Fill, Lamp, LampSpec};
-use lampladder_core::load::{Draw, Impedance, Load, Rectifier, RectifierSpec};
-use lampladder_core::plate::Plate;
+use lampladder_core::load::{Draw, Impedance, InductionMotor, Load, Rectifier, RectifierSpec};
+use lampladder_core::plate::{Plate, PlateSpec};
 use lampladder_core::supply::Supply;
 use proptest::prelude::*;
 use proptest::test_runner::Config;
@@ -74,10 +75,12 @@ pub fn supply() -> impl Strategy<Value = Supply> {
 
 /// A constant-power draw behind a rectifier, that never stops by itself.
 pub fn hungry() -> impl Strategy<Value = Rectifier> {
-    let numbers = (log_uniform(0.01, 2000.0), prop_oneof![Just(0.0), log_uniform(0.01, 100.0)], 0.0..3.0);
-    numbers.prop_map(|(watts, series_ohms, diode_volts)| {
+    let shunt = prop::option::of(log_uniform(300.0, 1e6));
+    let numbers =
+        (log_uniform(0.01, 2000.0), prop_oneof![Just(0.0), log_uniform(0.01, 100.0)], 0.0..3.0, shunt);
+    numbers.prop_map(|(watts, series_ohms, diode_volts, shunt_ohms)| {
         let draw = Draw::Watts { watts, start_volts: 1.0, stop_volts: 0.0, restart_seconds: 0.0 };
-        Rectifier::new(RectifierSpec { farads: 1e-4, series_ohms, diode_volts, draw, shunt_ohms: None })
+        Rectifier::new(RectifierSpec { farads: 1e-4, series_ohms, diode_volts, draw, shunt_ohms })
             .expect("in range")
     })
 }
@@ -95,6 +98,27 @@ pub fn rectifier() -> impl Strategy<Value = Rectifier> {
     (draw, rest).prop_map(|(draw, (farads, series_ohms, diode_volts, shunt_ohms))| {
         Rectifier::new(RectifierSpec { farads, series_ohms, diode_volts, draw, shunt_ohms })
             .expect("in range")
+    })
+}
+
+/// An induction motor from its plate, healthy, idle or overloaded, easy or hard to move.
+pub fn induction_motor() -> impl Strategy<Value = InductionMotor> {
+    let rating = (prop_oneof![Just(230.0), 100.0..250.0], log_uniform(1.0, 2000.0), 0.3..0.95);
+    let kind = (
+        prop::sample::select(&[Condition::Healthy, Condition::Idle, Condition::Overloaded][..]),
+        1.5..10.0,
+        0.0..3.0,
+    );
+    (rating, kind).prop_map(|((volts, watts, power_factor), (condition, stall, breakaway))| {
+        let spec = PlateSpec {
+            watts: Some(watts),
+            power_factor: Some(power_factor),
+            details: vec![(Detail::StallMultiple, stall), (Detail::BreakawayShare, breakaway)],
+            ..PlateSpec::new(Family::InductionMotor, volts)
+        };
+        let load = Plate::from_spec(spec).and_then(|plate| plate.load(condition, 1.0));
+        let Ok(Load::InductionMotor(motor)) = load else { panic!("a motor") };
+        motor
     })
 }
 

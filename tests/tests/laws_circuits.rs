@@ -1,11 +1,12 @@
 //! Kirchhoff's laws, the balance of power, and that no steady point is missed, on random circuits.
 
 use lampladder_core::bank::Bank;
-use lampladder_core::load::{Corrected, CorrectedSpec, Draw, Load, Rectifier};
+use lampladder_core::load::{Corrected, CorrectedSpec, Draw, Load, Mode, Rectifier};
 use lampladder_core::steady::{self, Equilibrium, Outcome, Steady, SteadyError};
 use lampladder_core::supply::Supply;
 use lampladder_tests::random::{
-    any_lamp, bank, cases, hungry, impedance, load, log_uniform, mains, mains_lamp, rectifier, supply,
+    any_lamp, bank, cases, hungry, impedance, induction_motor, load, log_uniform, mains, mains_lamp,
+    rectifier, supply,
 };
 use proptest::prelude::*;
 
@@ -207,15 +208,20 @@ proptest! {
         let Draw::Watts { watts, .. } = spec.draw else { return Ok(()) };
         let most_amps = bank.at_volts(supply.volts()).amps;
         let yields = |amps: f64| {
-            let before = bank.at_amps(amps).volts / amps + supply.ohms() + spec.series_ohms;
+            let before = bank.at_amps(amps).volts / amps + supply.ohms();
+            let shunt = spec.shunt_ohms.map_or(0.0, |ohms| 1.0 / ohms);
+            // Thevenin's equivalent of what stands ahead of the rectifier.
+            let open = 1.0 / (1.0 + before * shunt);
+            let inner = before * open + spec.series_ohms;
             if supply.hertz() == 0.0 {
-                let dc_volts = supply.volts() - amps * before - spec.diode_volts;
-                return (dc_volts > 0.0).then_some(dc_volts * amps);
+                let rectified = amps - (supply.volts() - amps * before) * shunt;
+                let dc_volts = supply.volts() * open - rectified * inner - spec.diode_volts;
+                return (dc_volts > 0.0 && rectified > 0.0).then_some(dc_volts * rectified);
             }
-            let crest = std::f64::consts::SQRT_2 * supply.volts();
-            let theta = angle_of(amps * before / crest)?;
+            let crest = std::f64::consts::SQRT_2 * supply.volts() * open;
+            let theta = angle_of(amps, std::f64::consts::SQRT_2 * supply.volts() * open * shunt, open * crest / inner)?;
             let dc_volts = crest * theta.cos() - spec.diode_volts;
-            let mean = 2.0 / std::f64::consts::PI * crest / before * (theta.sin() - theta * theta.cos());
+            let mean = 2.0 / std::f64::consts::PI * crest / inner * (theta.sin() - theta * theta.cos());
             (dc_volts > 0.0).then_some(dc_volts * mean)
         };
         let (found, clear) = brute_force(&yields, most_amps, watts);
@@ -233,24 +239,89 @@ proptest! {
     }
 }
 
-/// Half the conduction angle of a pulse with this RMS, by bisection of the textbook formula.
-fn angle_of(rms: f64) -> Option<f64> {
-    let square = |theta: f64| {
-        // Below a tenth of a radian the formula cancels: its leading term.
-        if theta < 0.1 {
-            4.0 / 15.0 * theta.powi(5) * (1.0 - 5.0 / 21.0 * theta.powi(2))
+/// Half the conduction angle of a pulse that makes this RMS current beside a sinusoid of `idle` at its crest, where the
+/// pulse itself brings `unit` at most; by bisection of the textbook formulas.
+fn angle_of(amps: f64, idle: f64, unit: f64) -> Option<f64> {
+    let wanted = std::f64::consts::PI * amps.powi(2);
+    let made = |theta: f64| {
+        // Below a tenth of a radian the formulas cancel: their leading terms.
+        let (own, cross) = if theta < 0.1 {
+            (
+                4.0 / 15.0 * theta.powi(5) * (1.0 - 5.0 / 21.0 * theta.powi(2)),
+                4.0 / 3.0 * theta.powi(3) * (1.0 - 0.2 * theta.powi(2)),
+            )
         } else {
-            theta * (1.0 + 2.0 * theta.cos().powi(2)) - 1.5 * (2.0 * theta).sin()
-        }
+            let own = theta * (1.0 + 2.0 * theta.cos().powi(2)) - 1.5 * (2.0 * theta).sin();
+            (own, 2.0 * theta - (2.0 * theta).sin())
+        };
+        std::f64::consts::FRAC_PI_2 * idle.powi(2) + idle * unit * cross + unit.powi(2) * own
     };
     let (mut low, mut high) = (0.0, std::f64::consts::FRAC_PI_2);
-    let wanted = std::f64::consts::PI * rms * rms;
-    if wanted > square(high) {
+    if wanted < made(low) || wanted > made(high) {
         return None;
     }
     for _ in 0..60 {
         let middle = 0.5 * (low + high);
-        if square(middle) < wanted { low = middle } else { high = middle }
+        if made(middle) < wanted { low = middle } else { high = middle }
     }
     Some(0.5 * (low + high))
+}
+
+/// Amperes that settle behind a bank before an impedance, by the secant method from where they settled last.
+fn settled_amps(supply: &Supply, bank: &Bank, ohms: f64, reactance: f64, near: f64) -> f64 {
+    let left = |ln_amps: f64| {
+        let amps = ln_amps.exp();
+        let in_phase = bank.at_amps(amps).volts / amps + supply.ohms() + ohms;
+        (supply.volts() / (amps * in_phase.hypot(reactance))).ln()
+    };
+    let (mut before, mut here) = (near.ln() + 0.01, near.ln());
+    let (mut left_before, mut left_here) = (left(before), left(here));
+    for _ in 0..60 {
+        if left_here.abs() < 1e-11 || here == before {
+            break;
+        }
+        let next = here - left_here * (here - before) / (left_here - left_before);
+        (before, left_before) = (here, left_here);
+        (here, left_here) = (next, left(next));
+    }
+    here.exp()
+}
+
+proptest! {
+    #![proptest_config(cases(24))]
+
+    #[test]
+    fn no_point_of_a_turning_motor_is_missed(supply in mains(), bank in bank(mains_lamp()), motor in induction_motor()) {
+        const STEPS: u32 = 400;
+        let Some(solved) = solved(&supply, &bank, &Load::InductionMotor(motor)) else { return Ok(()) };
+        // A sweep of slips, evenly in the logarithm up to 0.1 and evenly from there.
+        let slip = |step: u32| {
+            let share = f64::from(step) / f64::from(STEPS);
+            if share < 0.4 { 0.1 * (20.0 * (share - 0.4)).exp() } else { 0.1 + 0.9 * (share - 0.4) / 0.6 }
+        };
+        let mut amps = 0.5 * bank.at_volts(supply.volts()).amps;
+        let curve: Vec<(f64, f64)> = (0..=STEPS)
+            .map(|step| {
+                let impedance = motor.impedance(slip(step));
+                amps = settled_amps(&supply, &bank, impedance.real, impedance.imaginary, amps);
+                let slip = slip(step);
+                (amps, (motor.load_watts(slip) / motor.torque_watts(slip, amps)).ln())
+            })
+            .collect();
+        let turning = |three: &&[(f64, f64)]| (three[1].1 - three[0].1) * (three[2].1 - three[1].1) <= 0.0;
+        let clear = curve.windows(3).filter(turning).all(|three| three[1].1.abs() > 3e-3)
+            // A root next to standstill may lie on either side of it.
+            && curve[curve.len() - 1].1.abs() > 1e-3;
+        if clear {
+            let mut found: Vec<f64> =
+                curve.windows(2).filter(|two| two[0].1 * two[1].1 < 0.0).map(|two| 0.5 * (two[0].0 + two[1].0)).collect();
+            found.sort_by(f64::total_cmp);
+            let ours: Vec<f64> =
+                solved.equilibria.iter().filter(|point| point.mode == Mode::Turning).map(|point| point.amps).collect();
+            prop_assert_eq!(ours.len(), found.len(), "core {:?}, sweep {:?}", ours, found);
+            for (core, sweep) in ours.iter().zip(&found) {
+                prop_assert!((core / sweep - 1.0).abs() < 0.05, "core {core}, sweep {sweep}");
+            }
+        }
+    }
 }

@@ -253,7 +253,7 @@ impl<'a> Walk<'a> {
     }
 
     /// The logarithm of the leading filament's rise here.
-    pub(crate) fn ln_rise(&self) -> f64 {
+    pub(crate) fn lead_ln_rise(&self) -> f64 {
         self.places.get()[0].ln_rise
     }
 

@@ -1,6 +1,6 @@
 //! A switch-mode supply with power-factor correction: it takes a constant power in phase with its voltage.
 
-use super::{Draw, FAR, Feed, Rectifier, RectifierSpec};
+use super::{Draw, Feed, Rectifier, RectifierSpec, Served};
 use crate::error::{Field, InputError, within};
 
 /// The numbers that describe a [`Corrected`] supply.
@@ -54,11 +54,14 @@ impl Corrected {
         })
     }
 
-    pub(super) fn excess(&self, feed: &Feed) -> f64 {
-        let volts = feed.volts - feed.ohms * feed.amps;
-        if volts <= 0.0 {
-            return FAR;
+    /// `I (Vs - R I)` over the watts.
+    pub(super) fn served(&self, feed: &Feed) -> Served {
+        let drop = feed.ohms * feed.amps;
+        let unit = feed.amps / self.spec.watts;
+        Served {
+            share: unit * (feed.volts - drop),
+            by_amps: unit * (feed.volts - 2.0 * drop),
+            by_ohms: -unit * drop,
         }
-        libm::log(self.spec.watts / (volts * feed.amps)).clamp(-FAR, FAR)
     }
 }

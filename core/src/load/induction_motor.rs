@@ -85,6 +85,13 @@ impl InductionMotor {
         self.spec.steady_watts + self.spec.windage_watts * speed * speed
     }
 
+    /// A slip below which no steady point can lie on a supply of `volts`: nothing that stands ahead of the rotor raises
+    /// its voltage, so its torque is at most `V^2 s / R2`, while the load's is at least `(1 - 2 s)` of that at full speed.
+    pub(crate) fn least_slip(&self, volts: f64) -> f64 {
+        let load = self.load_watts(0.0);
+        0.999 * load / (volts * volts / self.spec.rotor_ohms + 2.0 * load)
+    }
+
     /// The motor at a frozen slip, as a linear load.
     pub(crate) fn frozen(&self, slip: f64) -> Load {
         let impedance = self.impedance(slip);

@@ -139,13 +139,30 @@ pub(crate) struct Thresholds {
     pub(crate) restart_seconds: f64,
 }
 
+/// What a constant-power load would get at a feed, over what it wants, and by how much that grows with ln amperes and
+/// with ln ohms of the feed.
+#[derive(Debug, Clone, Copy, PartialEq)]
+pub(crate) struct Served {
+    pub(crate) share: f64,
+    pub(crate) by_amps: f64,
+    pub(crate) by_ohms: f64,
+}
+
+impl Served {
+    /// Nothing, and more current would bring something.
+    pub(crate) const TOO_LITTLE: Self = Self { share: 0.0, by_amps: 1.0, by_ohms: 0.0 };
+    /// Nothing, and less current would bring something.
+    pub(crate) const TOO_MUCH: Self = Self { share: 0.0, by_amps: -1.0, by_ohms: 0.0 };
+}
+
 /// A mismatch that stands for "far too much" or "far too little": logarithms of current ratios stay well below.
 const FAR: f64 = 60.0;
 
 impl Load {
     /// Logarithm of the current that the load would take over the current that the bank stands at, or a quantity of
-    /// the same sign: positive where, at the bank's resistance, the load would come to take more.
-    pub(crate) fn excess(&self, feed: &Feed) -> f64 {
+    /// the same sign: positive where, at the bank's resistance, the load would come to take more. Searches of the load's
+    /// own start from `near` those of a similar feed.
+    pub(crate) fn excess(&self, feed: &Feed, near: &Near) -> f64 {
         match self {
             Self::Short => libm::log(feed.volts / (feed.ohms * feed.amps)),
             Self::Open => -FAR,
@@ -158,29 +175,12 @@ impl Load {
                 libm::log(lamp.filament().at_volts(left).amps() / feed.amps)
             }
             Self::Rectifier(rectifier) => rectifier.excess(feed),
-            Self::PowerSupply(supply) => supply.excess(feed),
+            Self::PowerSupply(supply) => supply.excess(feed, near),
             Self::HalfShort(short) => short.excess(feed),
-            Self::Corrected(corrected) => corrected.excess(feed),
+            Self::Corrected(corrected) => -libm::log(corrected.served(feed).share.max(libm::exp(-FAR))),
             Self::Degauss(degauss) => degauss.warm().excess(feed),
             Self::UniversalMotor(motor) => motor.excess(feed),
-            Self::InductionMotor(motor) => motor.frozen(1.0).excess(feed),
-        }
-    }
-
-    /// The same within a thousandth, which is cheaper where it takes searches of its own; they start from `near` those of
-    /// a similar load.
-    pub(crate) fn coarse_excess(&self, feed: &Feed, near: &Near) -> f64 {
-        match self {
-            Self::PowerSupply(supply) => supply.coarse_excess(feed, near),
-            _ => self.excess(feed),
-        }
-    }
-
-    /// What the terminals show, as closely as [`Self::coarse_excess`].
-    pub(crate) fn coarse_terminal(&self, feed: &Feed, near: &Near) -> Terminal {
-        match self {
-            Self::PowerSupply(supply) => supply.coarse_terminal(feed, near),
-            _ => self.terminal(feed),
+            Self::InductionMotor(motor) => motor.frozen(1.0).excess(feed, near),
         }
     }
 
@@ -194,7 +194,7 @@ impl Load {
     }
 
     /// What the terminals show where [`Self::excess`] vanishes.
-    pub(crate) fn terminal(&self, feed: &Feed) -> Terminal {
+    pub(crate) fn terminal(&self, feed: &Feed, near: &Near) -> Terminal {
         match self {
             Self::Short => Terminal { volts: 0.0, watts: 0.0, dc_volts: None },
             Self::Open => Terminal { volts: feed.volts, watts: 0.0, dc_volts: None },
@@ -205,11 +205,11 @@ impl Load {
                 Terminal { volts, watts: volts * feed.amps, dc_volts: None }
             }
             Self::Rectifier(rectifier) => rectifier.terminal(feed),
-            Self::PowerSupply(supply) => supply.terminal(feed),
+            Self::PowerSupply(supply) => supply.terminal(feed, near),
             Self::HalfShort(short) => short.terminal(feed),
             Self::Degauss(degauss) => degauss.warm().terminal(feed),
             Self::UniversalMotor(motor) => motor.terminal(feed),
-            Self::InductionMotor(motor) => motor.frozen(1.0).terminal(feed),
+            Self::InductionMotor(motor) => motor.frozen(1.0).terminal(feed, near),
         }
     }
 
@@ -242,6 +242,15 @@ impl Load {
             Self::Rectifier(rectifier) => rectifier.is_constant_power(),
             Self::Corrected(_) => true,
             _ => false,
+        }
+    }
+
+    /// What a constant-power load would get.
+    pub(crate) fn served(&self, feed: &Feed) -> Served {
+        match self {
+            Self::Rectifier(rectifier) => rectifier.served(feed),
+            Self::Corrected(corrected) => corrected.served(feed),
+            _ => Served::TOO_MUCH,
         }
     }
 

@@ -1,11 +1,10 @@
 //! A bridge rectifier and reservoir straight on the mains, and what draws from the reservoir.
 
-use core::f64::consts::{FRAC_PI_2, SQRT_2};
+use core::f64::consts::{PI, SQRT_2};
 
 use super::conduction::Pulse;
-use super::{FAR, Feed, Terminal};
+use super::{FAR, Feed, Served, Terminal};
 use crate::error::{Field, InputError, within};
-use crate::roots::{self, Tolerance};
 
 /// What draws from the reservoir.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -94,26 +93,73 @@ impl Rectifier {
         }
     }
 
+    /// The circuit ahead of the reservoir, as a source behind a resistance.
+    fn source(&self, feed: &Feed) -> Source {
+        let share = self.spec.shunt_ohms.map_or(1.0, |shunt| shunt / (shunt + feed.ohms));
+        let wave = if feed.hertz == 0.0 { 1.0 } else { SQRT_2 };
+        Source {
+            share,
+            crest: wave * feed.volts * share,
+            ohms: feed.ohms * share + self.spec.series_ohms,
+            idle: self.spec.shunt_ohms.map_or(0.0, |shunt| wave * feed.volts / (feed.ohms + shunt)),
+        }
+    }
+
     /// The reservoir's volts and the mean current into it, for the current that the bank stands at; `None` where
     /// that is more than even an empty reservoir would take.
     pub(crate) fn reservoir(&self, feed: &Feed) -> Option<Reservoir> {
-        let share = self.spec.shunt_ohms.map_or(1.0, |shunt| shunt / (shunt + feed.ohms));
-        let ohms = feed.ohms * share + self.spec.series_ohms;
+        let source = self.source(feed);
         let (dc_volts, mean_amps, rms_amps) = if feed.hertz == 0.0 {
-            let beside =
-                self.spec.shunt_ohms.map_or(0.0, |shunt| (feed.volts - feed.amps * feed.ohms) / shunt);
-            let amps = feed.amps - beside;
-            (feed.volts * share - amps * ohms - self.spec.diode_volts, amps, amps)
+            let amps = source.rectified(feed);
+            (source.crest - amps * source.ohms - self.spec.diode_volts, amps, amps)
         } else {
-            let crest = SQRT_2 * feed.volts * share;
-            let pulse = match self.spec.shunt_ohms {
-                None => Pulse::of_rms(feed.amps * ohms / crest)?,
-                Some(shunt) => beside_shunt(feed, shunt, crest / ohms, share)?,
-            };
-            let unit = crest / ohms;
-            (crest * pulse.share() - self.spec.diode_volts, unit * pulse.mean(), unit * pulse.rms())
+            let pulse = source.pulse(feed).ok()?;
+            let unit = source.crest / source.ohms;
+            (source.crest * pulse.share() - self.spec.diode_volts, unit * pulse.mean(), unit * pulse.rms())
         };
         (dc_volts > 0.0 && mean_amps > 0.0).then_some(Reservoir { dc_volts, mean_amps, rms_amps })
+    }
+
+    /// What a constant-power draw would get, over what it wants, with its slopes: those of reservoir volts times mean
+    /// current, at the angle that the current asks for.
+    pub(super) fn served(&self, feed: &Feed) -> Served {
+        let Draw::Watts { watts, .. } = self.spec.draw else { return Served::TOO_MUCH };
+        let source = self.source(feed);
+        let Source { share, crest, ohms, idle } = source;
+        // d ln crest = d ln share = -yielding d ln R, and d ln ohms = stiffening d ln R.
+        let yielding = 1.0 - share;
+        let stiffening = feed.ohms * share * share / ohms;
+        if feed.hertz == 0.0 {
+            let amps = source.rectified(feed);
+            let dc_volts = crest - amps * ohms - self.spec.diode_volts;
+            let (amps_by_amps, amps_by_ohms) = (feed.amps / share, feed.amps * (1.0 / share - 1.0));
+            let volts_by_ohms = -yielding * crest - ohms * (stiffening * amps + amps_by_ohms);
+            return Served {
+                share: dc_volts * amps / watts,
+                by_amps: (dc_volts - ohms * amps) * amps_by_amps / watts,
+                by_ohms: (dc_volts * amps_by_ohms + volts_by_ohms * amps) / watts,
+            };
+        }
+        let pulse = match source.pulse(feed) {
+            Ok(pulse) => pulse,
+            Err(nothing) => return nothing,
+        };
+        let unit = crest / ohms;
+        let dc_volts = crest * pulse.share() - self.spec.diode_volts;
+        let (mean, square) = (unit * pulse.mean(), 2.0 * feed.amps * feed.amps);
+        // The square of the feed's current is made of the shunt's, the pulse's and twice what the two share.
+        let (cross, own) = (share * idle * unit, share * share * unit * unit);
+        let wider = cross * pulse.fundamental_slope() + own * pulse.mean_square_slope();
+        let square_by_ohms = -yielding * square
+            - (yielding + stiffening) * (cross * pulse.fundamental() + 2.0 * own * pulse.mean_square());
+        let watts_by_angle = dc_volts * unit * pulse.mean_slope() - crest * pulse.sin() * mean;
+        let watts_by_ohms =
+            -yielding * crest * pulse.share() * mean - (yielding + stiffening) * dc_volts * mean;
+        Served {
+            share: dc_volts * mean / watts,
+            by_amps: watts_by_angle * square / wider / watts,
+            by_ohms: (watts_by_ohms - watts_by_angle * square_by_ohms / wider) / watts,
+        }
     }
 
     /// DC volts that an idle reservoir charges to.
@@ -159,18 +205,49 @@ pub(crate) struct Reservoir {
     pub(crate) rms_amps: f64,
 }
 
-/// The pulse that, together with a sinusoid into a shunt, makes the RMS current of the feed.
-fn beside_shunt(feed: &Feed, shunt: f64, unit: f64, share: f64) -> Option<Pulse> {
-    let idle = SQRT_2 * feed.volts / (feed.ohms + shunt);
-    let gap = |theta: f64| {
-        let pulse = Pulse { theta };
-        let rms = share * unit * pulse.rms();
-        let square = 0.5 * idle * idle + share * idle * unit * pulse.fundamental() + rms * rms;
-        libm::sqrt(square) - feed.amps
-    };
-    let tolerance = Tolerance { x: 1e-14, residual: 1e-14 * feed.amps };
-    roots::between(gap, (0.0, gap(0.0)), (FRAC_PI_2, gap(FRAC_PI_2)), tolerance)
-        .map(|root| Pulse { theta: root.x })
+/// What stands ahead of the reservoir.
+#[derive(Clone, Copy)]
+struct Source {
+    /// Share of the source that a shunt leaves.
+    share: f64,
+    /// Highest volts.
+    crest: f64,
+    /// Resistance, ohms.
+    ohms: f64,
+    /// Highest current into the shunt while the rectifier does not conduct, amperes.
+    idle: f64,
+}
+
+impl Source {
+    /// On direct current, what the shunt does not take.
+    fn rectified(&self, feed: &Feed) -> f64 {
+        (feed.amps - self.idle) / self.share
+    }
+
+    /// The pulse that, together with the sinusoid into the shunt, makes the RMS current of the feed; the other way
+    /// round what there is to get: the shunt alone takes more, or not even an empty reservoir would bring so much.
+    fn pulse(&self, feed: &Feed) -> Result<Pulse, Served> {
+        let unit = self.crest / self.ohms;
+        if self.idle == 0.0 {
+            return Pulse::of_rms(feed.amps / unit).ok_or(Served::TOO_MUCH);
+        }
+        let wanted = feed.amps * feed.amps - 0.5 * self.idle * self.idle;
+        // What the pulse adds, by its fundamental beside the shunt's sinusoid and by its own square.
+        let (cross, own) = (self.share * self.idle * unit, self.share * self.share * unit * unit);
+        if wanted < 0.0 {
+            return Err(Served::TOO_LITTLE);
+        }
+        if wanted > cross + 0.5 * own {
+            return Err(Served::TOO_MUCH);
+        }
+        // Each part alone by its leading term. Their sum grows and is convex in the angle, so Newton's method never
+        // fails.
+        let narrow = libm::cbrt(0.75 * PI * wanted / cross).min(libm::pow(3.75 * PI * wanted / own, 0.2));
+        Ok(Pulse::refined(narrow.max(1e-60), |pulse| {
+            let left = wanted - cross * pulse.fundamental() - own * pulse.mean_square();
+            (left, cross * pulse.fundamental_slope() + own * pulse.mean_square_slope())
+        }))
+    }
 }
 
 /// A converter starts at 1 to 1000 DC volts and stops at no more.

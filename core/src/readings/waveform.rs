@@ -40,7 +40,7 @@ impl Waveform {
 /// True RMS of a current in pulses, and of the voltage across a bank that carries it, over what an averaging meter
 /// shows; 1 at a half angle of 90 degrees, 1.48 at 40.
 pub fn current_factor(half_angle: f64) -> f64 {
-    let pulse = Pulse { theta: half_angle.clamp(1e-3, FRAC_PI_2) };
+    let pulse = Pulse::at(half_angle.clamp(1e-3, FRAC_PI_2));
     pulse.rms() / pulse.mean() / SINE_FORM
 }
 

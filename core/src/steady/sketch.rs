@@ -1,7 +1,8 @@
 //! The point at which the circuit settles, to a few parts in ten thousand and nothing else: for the thousands of
 //! circuits that a diagnosis compares.
 
-use super::{Circuit, LEAST_SLIP, SteadyError};
+use super::turning::LEAST_SLIP;
+use super::{Circuit, SteadyError};
 use crate::bank::{Bank, Walk};
 use crate::filament::Filament;
 use crate::load::{InductionMotor, Load, Mode, Near, Terminal};
@@ -37,11 +38,17 @@ pub(crate) enum Sketched {
 }
 
 /// Where a similar circuit settled: the next search begins there.
-#[derive(Debug, Clone, Default)]
+#[derive(Debug, Clone)]
 pub(crate) struct Warm {
     near: Near,
     ln_rise: Option<f64>,
     ln_slip: Option<f64>,
+}
+
+impl Default for Warm {
+    fn default() -> Self {
+        Self { near: Near::coarse(), ln_rise: None, ln_slip: None }
+    }
 }
 
 /// The point at which equipment that was off settles, as [`super::Steady::settled`] finds it, but coarsely.
@@ -55,42 +62,45 @@ pub(crate) fn sketch(
     warm: &mut Warm,
 ) -> Result<Sketched, SteadyError> {
     load.check(supply)?;
-    let walk = &Walk::new(bank);
-    match load {
+    let near = warm.near.clone();
+    let found =
+        found(&Circuit { supply, bank, walk: &Walk::new(bank), near: &near, load, mode: Mode::Only }, warm);
+    warm.near = near;
+    found
+}
+
+fn found(circuit: &Circuit<'_>, warm: &mut Warm) -> Result<Sketched, SteadyError> {
+    match circuit.load {
         Load::InductionMotor(motor) => {
             let standing = motor.frozen(1.0);
-            let circuit = Circuit { supply, bank, walk, load: &standing, mode: Mode::Standing };
-            let point = circuit.coarse_point(warm)?;
+            let point = Circuit { load: &standing, mode: Mode::Standing, ..*circuit }.coarse_point(warm)?;
             if motor.stays_standing(point.amps) {
                 return Ok(Sketched::Settles(point));
             }
-            Ok(Sketched::Settles(turning(supply, bank, walk, motor, warm)?.unwrap_or(point)))
+            Ok(Sketched::Settles(turning(circuit, motor, warm)?.unwrap_or(point)))
         }
         Load::Degauss(degauss) => {
             let cold = Load::Impedance(*degauss.cold());
-            let circuit = Circuit { supply, bank, walk, load: &cold, mode: Mode::DegaussCold };
-            let point = circuit.coarse_point(warm)?;
+            let point = Circuit { load: &cold, mode: Mode::DegaussCold, ..*circuit }.coarse_point(warm)?;
             if degauss.stays_cold(point.amps) {
                 return Ok(Sketched::Settles(point));
             }
             let load = Load::Rectifier(*degauss.warm());
-            Circuit { supply, bank, walk, load: &load, mode: Mode::DegaussWarm }.sketched(warm)
+            Circuit { load: &load, mode: Mode::DegaussWarm, ..*circuit }.sketched(warm)
         }
-        _ => Circuit { supply, bank, walk, load, mode: Mode::Only }.sketched(warm),
+        _ => circuit.sketched(warm),
     }
 }
 
 /// The running point of least slip.
 fn turning(
-    supply: &Supply,
-    bank: &Bank,
-    walk: &Walk<'_>,
+    circuit: &Circuit<'_>,
     motor: &InductionMotor,
     warm: &mut Warm,
 ) -> Result<Option<Sketch>, SteadyError> {
     let at = |ln_slip: f64, warm: &mut Warm| {
         let load = motor.frozen(libm::exp(ln_slip));
-        Circuit { supply, bank, walk, load: &load, mode: Mode::Turning }.coarse_point(warm)
+        Circuit { load: &load, mode: Mode::Turning, ..*circuit }.coarse_point(warm)
     };
     let span = (libm::log(LEAST_SLIP), 0.0);
     let mut inner = warm.clone();
@@ -135,13 +145,8 @@ impl Circuit<'_> {
         if !self.load.may_have_several() {
             return self.coarse_point(warm).map(Sketched::Settles);
         }
-        let least_amps = 0.99 * self.load.least_watts() / self.supply.volts();
-        let low = self.bank.ln_rise_at_amps(least_amps);
-        let short = Circuit { load: &Load::Short, ..*self };
-        let hottest = short.one_root_from(self.bank.guess_ln_rise(self.supply.volts()), COARSE)?;
-        let root = first_falling(|x| self.excess(x), (low.min(hottest.x - 1.0), hottest.x));
-        let Some(root) = root else { return Ok(Sketched::Hunts) };
-        let point = self.sketch_at(root.x, &warm.near);
+        let Some(pair) = self.hungry_points(COARSE)? else { return Ok(Sketched::Hunts) };
+        let point = self.sketch_at(pair.rising.x);
         let crest = if self.supply.is_direct() { 1.0 } else { core::f64::consts::SQRT_2 };
         let dc_volts = point.load_dc_volts.unwrap_or(crest * point.load_volts);
         let runs = self.load.thresholds().is_none_or(|thresholds| dc_volts >= thresholds.stop_volts);
@@ -153,17 +158,17 @@ impl Circuit<'_> {
         let root = if self.load.linear().is_some() {
             self.one_root_from(guess, COARSE)?
         } else {
-            let excess = |x| self.load.coarse_excess(&self.feed(&self.walk.to(x)), &warm.near);
             let span = Filament::ln_rise_span();
-            roots::decreasing_from(excess, span, guess, COARSE).ok_or_else(|| self.melts(span.1))?
+            roots::decreasing_from(|x| self.excess(x), span, guess, COARSE)
+                .ok_or_else(|| self.melts(span.1))?
         };
         warm.ln_rise = Some(root.x);
-        Ok(self.sketch_at(root.x, &warm.near))
+        Ok(self.sketch_at(root.x))
     }
 
-    fn sketch_at(&self, ln_rise: f64, near: &Near) -> Sketch {
+    fn sketch_at(&self, ln_rise: f64) -> Sketch {
         let bank = self.walk.to(ln_rise);
-        let Terminal { volts, watts, dc_volts } = self.load.coarse_terminal(&self.feed(&bank), near);
+        let Terminal { volts, watts, dc_volts } = self.load.terminal(&self.feed(&bank), self.near);
         Sketch {
             mode: self.mode,
             amps: bank.amps,
