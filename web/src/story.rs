@@ -76,7 +76,7 @@ const MOVING: f64 = 0.01;
 const GAIN: f64 = 0.1;
 /// A heater's rise that does, kelvin.
 const WARMED: f64 = 100.0;
-/// A reservoir's rise that does, over its last volts.
+/// A reservoir's rise that does, over its highest volts; and the least of these, over the volts at the equipment.
 const FILLED: f64 = 0.1;
 /// A current that no lamp shows, amperes.
 const NO_AMPS: f64 = 1e-3;
@@ -110,27 +110,37 @@ pub fn tell(run: &SwitchOn, lamps: &[&Lamp]) -> Option<Told> {
     } else {
         shape(&line, kelvin(first), run.settle_seconds.is_none(), word)
     };
-    let at_peak = run.samples.iter().find(|sample| sample.seconds >= peak_at).unwrap_or(first);
     let cause = match story {
         Story::Dark => (last.amps_rms < NO_AMPS).then_some(Cause::NoCurrent),
         Story::Pulses { .. } => Some(Cause::Hunting),
-        Story::Dims { .. } | Story::Dips { .. } => dimming(run, at_peak, last),
+        Story::Dims { .. } => dimming(run, peak_at, last.seconds),
+        Story::Dips { seconds, .. } => {
+            let before: Vec<(f64, f64)> = line.iter().copied().filter(|at| at.0 <= seconds).collect();
+            dimming(run, highest(&before).0, seconds)
+        }
         Story::Steady { .. } | Story::Rising { .. } => None,
     };
     Some(Told { story, cause })
 }
 
-/// Why a lamp becomes dimmer after its brightest.
-fn dimming(run: &SwitchOn, at_peak: &Sample, last: &Sample) -> Option<Cause> {
+/// Why a lamp becomes dimmer between two times.
+fn dimming(run: &SwitchOn, from: f64, to: f64) -> Option<Cause> {
+    let between: Vec<&Sample> =
+        run.samples.iter().filter(|sample| (from..=to).contains(&sample.seconds)).collect();
+    let most =
+        |of: fn(&Sample) -> Option<f64>| between.iter().filter_map(|sample| of(sample)).fold(0.0, f64::max);
     let rise = |of: fn(&Sample) -> Option<f64>| {
-        let most = run.samples.iter().filter_map(of).fold(f64::MIN, f64::max);
-        of(at_peak).map_or(0.0, |then| most - then)
+        let then = between.first().and_then(|sample| of(sample));
+        then.map_or(0.0, |then| most(of) - then)
     };
+    let dc = |sample: &Sample| sample.load_dc_volts;
+    // A reservoir that is a short does not fill, whatever it gains.
+    let holds = most(dc) > FILLED * most(|sample| Some(sample.load_volts_rms));
     if rise(|sample| sample.load_speed) > GAIN {
         Some(Cause::Speed)
     } else if rise(|sample| sample.load_kelvin) > WARMED {
         Some(Cause::Heaters)
-    } else if rise(|sample| sample.load_dc_volts) > FILLED * last.load_dc_volts? {
+    } else if holds && rise(dc) > FILLED * most(dc) {
         Some(Cause::Reservoir)
     } else {
         None
@@ -274,6 +284,11 @@ mod tests {
         assert_eq!(valves.cause, Some(Cause::Heaters));
         let late = told(Family::ValveSeries, Condition::ShortedReservoir, 30.0).0;
         assert!(matches!(late.story, Story::Dips { .. }), "{late:?}");
+        assert_eq!(late.cause, Some(Cause::Heaters));
+        // A reservoir that is a short does not fill when the rectifier has become hot.
+        let late = told(Family::ValveTransformer, Condition::ShortedReservoir, 30.0).0;
+        assert!(matches!(late.story, Story::Dips { .. }), "{late:?}");
+        assert_eq!(late.cause, Some(Cause::Heaters));
         let switcher = told(Family::SwitchMode, Condition::Healthy, 3.0).0;
         assert!(matches!(switcher.story, Story::Pulses { seconds: Some(_), .. }), "{switcher:?}");
         let motor = told(Family::UniversalMotor, Condition::Healthy, 3.0).0;
