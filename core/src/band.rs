@@ -1,10 +1,12 @@
 //! A number with the interval that holds it 95 times in 100.
 
+use serde::{Deserialize, Serialize};
+
 /// Coverage factor of a 95 % interval of a normal distribution (JCGM 100:2008, table G.1).
 pub const COVERAGE: f64 = 1.96;
 
 /// A value with its 95 % interval.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 pub struct Band {
     /// Best estimate.
     pub value: f64,

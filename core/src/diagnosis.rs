@@ -28,12 +28,14 @@ pub use forecast::{Ending, Forecast};
 pub use next::{Candidate, Meaning, Next, Seen};
 pub use scale::MODEL as MODEL_DEVIATIONS;
 
+use serde::{Deserialize, Serialize};
+
 use crate::condition::Condition;
 use crate::family::Family;
 use crate::readings::Readings;
 
 /// One condition with its weight.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 pub struct Ranked {
     /// The condition.
     pub condition: Condition,
@@ -42,7 +44,7 @@ pub struct Ranked {
 }
 
 /// What to do with the next, larger bank.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum Advice {
     /// The readings are what equipment without a fault gives: the next bank may be wired.
@@ -65,7 +67,7 @@ impl Advice {
 }
 
 /// What the readings mean.
-#[derive(Debug, Clone, PartialEq)]
+#[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
 pub struct Diagnosis {
     /// Every condition of the family, the weightiest first.
     pub ranking: Vec<Ranked>,

@@ -3,6 +3,8 @@
 //! Spectral radiance is Planck's law times the measured spectral emissivity of tungsten; the observer is CIE
 //! 1931. The display colour is a rendering choice, described at [`display_colour`].
 
+use serde::{Deserialize, Serialize};
+
 use crate::observer::{COLOUR_MATCHING, FIRST_NANOMETRE, LUMENS_PER_WATT, STEP_NANOMETRES};
 use crate::tungsten::spectral_emissivity;
 
@@ -19,7 +21,7 @@ pub const DRAPER_KELVIN: f64 = 798.0;
 pub const TYPICAL_RATED_KELVIN: f64 = 2800.0;
 
 /// How bright and of which kind a glow is, from dark to beyond the rating.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Hash)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, PartialOrd, Ord, Hash, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum GlowWord {
     /// No visible light: under the Draper point.

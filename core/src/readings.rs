@@ -29,7 +29,11 @@ pub use coverage::{Estimate, combined, factor as coverage_factor};
 pub use found::{Found, interpret};
 pub use growth::growth;
 pub use meter::{Kind, Meter, MeterSpec, Reading, Response};
-pub use waveform::{HALF_WAVE_FACTOR, Waveform, current_factor, half_wave_load_factor, load_volts_factor};
+pub use waveform::{
+    HALF_WAVE_FACTOR, Waveform, current_factor, half_wave_load_factor, load_volts_factor, usual_waveform,
+};
+
+use serde::{Deserialize, Serialize};
 
 use crate::error::{Field, InputError, within};
 use crate::glow::GlowWord;
@@ -76,7 +80,7 @@ impl Look {
 }
 
 /// What the lamp does in the first seconds after switch-on.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum Behaviour {
     /// The same from the first half second on, dark or bright.

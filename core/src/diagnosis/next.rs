@@ -5,6 +5,8 @@
 
 use alloc::vec::Vec;
 
+use serde::{Deserialize, Serialize};
+
 use super::forecast::Forecast;
 use super::scale::{LOOK, reading_deviation, scaled_deviation, unscaled};
 use super::weigh::{Evidence, View, Weighed};
@@ -12,7 +14,7 @@ use crate::condition::Condition;
 use crate::readings::{Behaviour, Kind, Meter, Readings};
 
 /// What could be read next.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum Candidate {
     /// A number on a meter.
@@ -35,7 +37,7 @@ impl Candidate {
 }
 
 /// One range of outcomes, and what it would mean.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 pub struct Meaning {
     /// The outcomes.
     pub outcome: Seen,
@@ -48,7 +50,7 @@ pub struct Meaning {
 }
 
 /// Outcomes of a reading.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum Seen {
     /// A number between two, SI; from 0 and to infinity at the ends.
@@ -63,7 +65,7 @@ pub enum Seen {
 }
 
 /// A reading that could be taken next.
-#[derive(Debug, Clone, PartialEq)]
+#[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
 pub struct Next {
     /// Which.
     pub candidate: Candidate,

@@ -3,8 +3,10 @@
 use alloc::vec::Vec;
 use core::fmt;
 
+use serde::{Deserialize, Serialize};
+
 /// The law that two sides of a comparison obey, whatever the equipment does.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum Rule {
     /// The parts must reach the whole: left is `Vb + Vl`, right `Vs`, and left may not be less.
@@ -30,7 +32,7 @@ pub enum Rule {
 }
 
 /// One comparison that fails. Both sides are in the same SI unit.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 pub struct Contradiction {
     /// The law.
     pub rule: Rule,

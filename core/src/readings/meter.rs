@@ -1,9 +1,11 @@
 //! A meter's accuracy, and one reading taken with it.
 
+use serde::{Deserialize, Serialize};
+
 use crate::error::{Field, InputError, within};
 
 /// What a reading is of.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, PartialOrd, Ord)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, PartialOrd, Ord, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum Kind {
     /// Volts of the supply, RMS or DC.
@@ -65,7 +67,7 @@ impl Kind {
 }
 
 /// How a meter makes one number of a waveform.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Default, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum Response {
     /// The root of the mean square, direct part included.
@@ -76,7 +78,7 @@ pub enum Response {
 }
 
 /// The numbers of a [`Meter`].
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 pub struct MeterSpec {
     /// Per cent of what it shows (above 0, to 30).
     pub percent: f64,

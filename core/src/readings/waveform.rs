@@ -6,6 +6,7 @@
 
 use core::f64::consts::{FRAC_PI_2, PI, SQRT_2};
 
+use crate::family::Family;
 use crate::load::Pulse;
 
 /// RMS over mean of a rectified sinusoid.
@@ -34,6 +35,20 @@ impl Waveform {
             Self::Pulses => (40.0 * DEGREE, 80.0 * DEGREE),
             Self::Unknown => (40.0 * DEGREE, 90.0 * DEGREE),
         }
+    }
+}
+
+/// What is known of the waveform from the kind of equipment alone, whatever condition it is in: a sinusoid where nothing
+/// rectifies, else either (a set with a rectifier takes pulses while it works, and a sinusoid when it is shorted).
+pub const fn usual_waveform(family: Family) -> Waveform {
+    match family {
+        Family::Heater
+        | Family::Lamp
+        | Family::Measured
+        | Family::UniversalMotor
+        | Family::InductionMotor
+        | Family::SwitchModeCorrected => Waveform::Sine,
+        _ => Waveform::Unknown,
     }
 }
 

@@ -6,6 +6,7 @@
 //!
 //! For each [`Subject`] only the newest question counts: a [`Desk`] drops the work for an older one.
 
+pub mod diagnosis;
 pub mod runs;
 
 use serde::{Deserialize, Serialize};
@@ -15,6 +16,8 @@ use serde::{Deserialize, Serialize};
 pub enum Ask {
     /// The first seconds.
     Replay(runs::Wanted),
+    /// What readings mean.
+    Diagnosis(diagnosis::Taken),
 }
 
 /// What is answered: once, or piece by piece.
@@ -22,6 +25,8 @@ pub enum Ask {
 pub enum Answer {
     /// One run of a replay.
     Replay(Box<runs::News>),
+    /// What readings mean.
+    Diagnosis(Box<diagnosis::News>),
     /// The question cannot be read: page and reckoner are of different versions.
     Unreadable,
 }
@@ -31,6 +36,8 @@ pub enum Answer {
 pub enum Subject {
     /// The first seconds.
     Replay,
+    /// What readings mean.
+    Diagnosis,
 }
 
 impl Ask {
@@ -38,6 +45,7 @@ impl Ask {
     pub const fn subject(&self) -> Subject {
         match self {
             Self::Replay(_) => Subject::Replay,
+            Self::Diagnosis(_) => Subject::Diagnosis,
         }
     }
 }
@@ -79,6 +87,7 @@ struct Seat<T> {
 #[derive(Debug, Default)]
 pub struct Desk {
     replay: Option<Seat<runs::Runs>>,
+    diagnosis: Option<Seat<diagnosis::Diagnosing>>,
 }
 
 impl Desk {
@@ -91,6 +100,12 @@ impl Desk {
                     .map(|task| self.replay = Some(Seat { number, busy: true, task }))
                     .is_ok()
             }
+            Ask::Diagnosis(taken) => {
+                let earlier = self.diagnosis.take().map(|seat| seat.task);
+                diagnosis::Diagnosing::new(taken, earlier)
+                    .map(|task| self.diagnosis = Some(Seat { number, busy: true, task }))
+                    .is_ok()
+            }
         };
         if taken { None } else { Some(Answer::Unreadable) }
     }
@@ -98,10 +113,14 @@ impl Desk {
     /// Whether there is anything to do.
     pub fn is_busy(&self) -> bool {
         self.replay.as_ref().is_some_and(|seat| seat.busy)
+            || self.diagnosis.as_ref().is_some_and(|seat| seat.busy)
     }
 
-    /// Goes on for a stretch; what there is to tell.
+    /// Goes on for a stretch; what there is to tell. A diagnosis is short, so a replay waits for it.
     pub fn go_on(&mut self, clock: Clock<'_>) -> Option<(Number, Answer)> {
+        if let Some(seat) = self.diagnosis.as_mut().filter(|seat| seat.busy) {
+            return seat.go_on(clock);
+        }
         self.replay.as_mut().and_then(|seat| seat.go_on(clock))
     }
 }
@@ -169,7 +188,7 @@ mod tests {
 
     #[test]
     fn a_bench_of_another_version_is_said_to_be_so() {
-        let Ask::Replay(wanted) = replay();
+        let Ask::Replay(wanted) = replay() else { panic!("not a replay") };
         let other = Ask::Replay(runs::Wanted { setup: String::from("9zzz"), ..wanted });
         let mut desk = Desk::default();
         assert_eq!(desk.put(1, other), Some(Answer::Unreadable));
