@@ -178,6 +178,7 @@ fn unit_names(field: Field) -> &'static [&'static str] {
         "lm" => &["lm"],
         "K" => &["K"],
         "F" => &["F"],
+        "%" => &["%"],
         _ => &["x"],
     }
 }
