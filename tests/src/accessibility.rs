@@ -43,7 +43,8 @@ const SIZES: [(u32, u32); 2] = [(360, 640), (1280, 800)];
 /// Lights.
 const THEMES: [&str; 2] = ["light", "dark"];
 
-/// Checks and pictures the screen as it stands, in each size and theme.
+/// Pictures the screen as it stands, in each size and theme, and checks it at its whole height: what is scrolled out of
+/// view is checked too, and nothing is half under what stays in view.
 ///
 /// # Errors
 /// What the checker finds, and a screen that is wider than a small phone.
@@ -54,7 +55,11 @@ pub fn look(browser: &Browser, screen: &str) -> Result<()> {
             browser.prefer(theme)?;
             let name = format!("{screen}-{theme}-{width}");
             browser.picture(&name)?;
+            let tall = browser.script("return document.documentElement.scrollHeight")?;
+            let tall = u32::try_from(tall.as_u64().context("a height")?)?;
+            browser.resize(width, tall.max(height))?;
             check(browser, &name)?;
+            browser.resize(width, height)?;
         }
     }
     browser.resize(360, 640)?;

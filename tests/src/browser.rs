@@ -216,12 +216,14 @@ impl Browser {
         self.wait_for(element.prop("value"))??.with_context(|| format!("`{css}` holds no value"))
     }
 
-    /// Taps it. Something that lies over it makes this fail, as it would stop a finger.
+    /// Taps it, scrolled out from under what stays in view (the page says how far, by its `scroll-padding`). Something
+    /// that lies over it makes this fail, as it would stop a finger.
     ///
     /// # Errors
     /// When it is not there or cannot be tapped.
     pub fn tap(&self, css: &str) -> Result<()> {
         let element = self.element(css)?;
+        self.script(&format!("document.querySelector({}).scrollIntoView({{block: 'nearest'}})", json!(css)))?;
         self.wait_for(element.click())?.with_context(|| format!("`{css}` cannot be tapped"))
     }
 

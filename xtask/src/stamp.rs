@@ -90,6 +90,12 @@ fn without_idle_integrity(html: &str) -> String {
 /// The reckoner's files, each after those that it names.
 const RECKONER: [&str; 3] = ["reckoner_bg.wasm", "reckoner.js", "reckoner_loader.js"];
 
+/// Trunk's loader calls wasm-bindgen in a way that is answered by a warning on every visitor's console; this is the way
+/// that is not.
+fn with_call(loader: &str) -> String {
+    loader.replace("wasm_bindgen(\"", "wasm_bindgen({module_or_path:\"").replace(".wasm\")", ".wasm\"})")
+}
+
 /// Trunk names a worker's files without a hash. They get one here, or a page could meet the reckoner of an older build
 /// in the browser's own cache.
 fn rename_reckoner(folder: &Path, html: String) -> Result<String> {
@@ -102,7 +108,8 @@ fn rename_reckoner(folder: &Path, html: String) -> Result<String> {
         let file = folder.join(name);
         let mut bytes = fs::read(&file).with_context(|| format!("{} cannot be read", file.display()))?;
         if let Ok(text) = core::str::from_utf8(&bytes) {
-            bytes = with_names(text, &renamed).into_bytes();
+            let text = with_names(text, &renamed);
+            bytes = if name == RECKONER[2] { with_call(&text) } else { text }.into_bytes();
         }
         let new = name.replacen("reckoner", &format!("reckoner-{:016x}", hash(&bytes)), 1);
         fs::write(folder.join(&new), bytes)?;
@@ -201,6 +208,10 @@ mod tests {
         let loader = one.trim_start_matches("<meta content=\"./").trim_end_matches("\">");
         let text = std::fs::read_to_string(folder.join(loader)).expect("the file that the page names");
         let script = text.split('"').nth(1).expect("a script").trim_start_matches("./");
+        assert!(
+            text.contains("wasm_bindgen({module_or_path:\"./") && text.ends_with("_bg.wasm\"});"),
+            "{text}"
+        );
         assert!(folder.join(script).is_file() && !folder.join("reckoner.js").exists());
         let wasm = text.split('"').nth(3).expect("a program").trim_start_matches("./");
         assert_eq!(std::fs::read_to_string(folder.join(wasm)).expect("the program"), "one");
