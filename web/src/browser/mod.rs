@@ -4,10 +4,12 @@
 //! in its result or does nothing, and the page goes on.
 
 pub mod cautions;
+pub mod clock;
 pub mod dialog;
 pub mod fragment;
 pub mod frames;
 pub mod input;
+pub mod log;
 pub mod reckoner;
 pub mod storage;
 pub mod theme;

@@ -4,6 +4,8 @@ use web_sys::Storage;
 
 /// Name of the kept set-up.
 pub const SETUP: &str = "lampladder.setup";
+/// Name of the meter.
+pub const METER: &str = "lampladder.meter";
 /// Name of the chosen light.
 pub const THEME: &str = "lampladder.theme";
 /// Name of the accepted cautions, for this visit.

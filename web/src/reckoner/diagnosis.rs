@@ -254,17 +254,6 @@ mod tests {
     }
 
     #[test]
-    fn a_lamp_that_only_an_open_circuit_leaves_whole_leaves_only_that() {
-        let lamp = lampladder_core::lamp::Lamp::new(12.0, 60.0).expect("in range");
-        let bank = lampladder_core::bank::Bank::single(lamp);
-        let setup = Setup { bank, ..Setup::example().expect("in range") };
-        let taken = Taken { setup: link::encode(&setup), ..taken([None; 3]) };
-        let Outcome::Told { diagnosis, .. } = outcome(taken) else { panic!("not told") };
-        assert_eq!(diagnosis.ranking[0].condition, Condition::OpenCircuit);
-        assert_eq!(diagnosis.advice, Advice::MeasureFirst);
-    }
-
-    #[test]
     fn what_cannot_be_read_is_refused() {
         let bad = Taken { setup: String::from("9zzz"), ..taken([None; 3]) };
         assert!(Diagnosing::new(bad, None).is_err());

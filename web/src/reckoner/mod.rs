@@ -11,6 +11,8 @@ pub mod runs;
 
 use serde::{Deserialize, Serialize};
 
+use crate::log;
+
 /// What is asked. The newest of a subject replaces the one before.
 #[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
 pub enum Ask {
@@ -18,6 +20,8 @@ pub enum Ask {
     Replay(runs::Wanted),
     /// What readings mean.
     Diagnosis(diagnosis::Taken),
+    /// Something of the stored log: no work, but the reckoner's program has room for what it takes.
+    Log(log::Order),
 }
 
 /// What is answered: once, or piece by piece.
@@ -27,6 +31,8 @@ pub enum Answer {
     Replay(Box<runs::News>),
     /// What readings mean.
     Diagnosis(Box<diagnosis::News>),
+    /// What has become of the stored log.
+    Log(Box<log::News>),
     /// The question cannot be read: page and reckoner are of different versions.
     Unreadable,
 }
@@ -38,6 +44,8 @@ pub enum Subject {
     Replay,
     /// What readings mean.
     Diagnosis,
+    /// The stored log.
+    Log,
 }
 
 impl Ask {
@@ -46,6 +54,7 @@ impl Ask {
         match self {
             Self::Replay(_) => Subject::Replay,
             Self::Diagnosis(_) => Subject::Diagnosis,
+            Self::Log(_) => Subject::Log,
         }
     }
 }
@@ -100,6 +109,8 @@ impl Desk {
                     .map(|task| self.replay = Some(Seat { number, busy: true, task }))
                     .is_ok()
             }
+            // That is for whoever has a store.
+            Ask::Log(_) => false,
             Ask::Diagnosis(taken) => {
                 let earlier = self.diagnosis.take().map(|seat| seat.task);
                 diagnosis::Diagnosing::new(taken, earlier)

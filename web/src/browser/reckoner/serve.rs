@@ -5,8 +5,11 @@ use std::cell::RefCell;
 use js_sys::Uint8Array;
 use wasm_bindgen::JsCast;
 use wasm_bindgen::closure::Closure;
+use wasm_bindgen_futures::spawn_local;
 use web_sys::{DedicatedWorkerGlobalScope, MessageEvent};
 
+use crate::browser::log;
+use crate::log::Order;
 use crate::reckoner::{Answer, Ask, Desk, Number};
 
 /// Milliseconds of work between two looks at the messages: a newer question does not wait longer.
@@ -36,7 +39,14 @@ pub fn start() {
         let (number, ask): (Number, Option<Ask>) =
             postcard::from_bytes(&bytes).map_or((0, None), |(number, ask)| (number, Some(ask)));
         let at_once = PLACE.with_borrow_mut(|place| {
-            let answer = ask.map_or(Some(Answer::Unreadable), |ask| place.desk.put(number, ask));
+            let answer = match ask {
+                None => Some(Answer::Unreadable),
+                Some(Ask::Log(order)) => {
+                    spawn_local(keep(number, order));
+                    None
+                }
+                Some(ask) => place.desk.put(number, ask),
+            };
             place.wake();
             answer
         });
@@ -59,6 +69,11 @@ impl Place {
             self.waiting = scope().set_timeout_with_callback(again.as_ref().unchecked_ref()).is_ok();
         }
     }
+}
+
+async fn keep(number: Number, order: Order) {
+    let news = log::carry_out(order).await;
+    tell(&(number, Answer::Log(Box::new(news))));
 }
 
 fn now() -> f64 {
