@@ -7,18 +7,22 @@ use yew::{
 use crate::bench::{Bench, BenchHandle, Msg, Note, Stage, Tab};
 use crate::browser::window::{Listener, NextFrame};
 use crate::browser::{cautions, fragment, input, storage, theme};
+use crate::keeper::use_keeper;
+use crate::meter;
 use crate::panels::advice::advice_panel;
 use crate::panels::circuit::circuit;
 use crate::panels::comparison::comparison;
 use crate::panels::curve::curve;
 use crate::panels::details::details;
 use crate::panels::frame::{CAUTIONS_BUTTON, header, notes, tabs};
+use crate::panels::seen::seen;
 use crate::panels::send;
 use crate::panels::sheet::Sheet;
 use crate::panels::switch_on::switch_on;
 use crate::panels::voltage_bar::voltage_bar;
 use crate::parts::el::{button, el, several};
 use lampladder_core::link;
+use lampladder_core::readings::MeterSpec;
 
 /// What the page starts with.
 #[derive(Debug, Clone, PartialEq, Properties)]
@@ -78,6 +82,21 @@ pub fn App(props: &AppProps) -> Html {
         });
     }
     use_effect_with(bench.theme, |light| theme::apply(*light));
+    {
+        let dispatcher = bench.dispatcher();
+        use_effect_with(bench.seen.spec, move |spec| {
+            let kept = storage::read(storage::METER);
+            let text = meter::kept(spec);
+            // The usual meter needs no keeping, unless it takes the place of another.
+            if kept.as_ref() == Some(&text) || (kept.is_none() && *spec == MeterSpec::default()) {
+                return;
+            }
+            if storage::write(storage::METER, &text).is_err() {
+                dispatcher.dispatch(Msg::Tell(Note::NothingKept));
+            }
+        });
+    }
+    use_keeper(&bench);
     let before = use_mut_ref(|| None::<Stage>);
     use_effect_with(bench.stage, move |stage| {
         cautions::show(*stage != Stage::Bench);
@@ -113,6 +132,7 @@ fn page(bench: &BenchHandle) -> Html {
     }
     let (class, panel) = match bench.tab {
         Tab::Expect => ("page on-expect", details(bench)),
+        Tab::Seen => ("page on-seen", seen(bench)),
         Tab::SwitchOn => ("page on-switch-on", switch_on(bench)),
         Tab::Curve => ("page on-curve", curve(bench)),
     };

@@ -7,12 +7,14 @@ use lampladder_core::error::InputError;
 use lampladder_core::family::{self, Family};
 use lampladder_core::lamp::Fill;
 use lampladder_core::link::LinkError;
+use lampladder_core::readings::MeterSpec;
 use lampladder_core::setup::Setup;
 use yew::UseReducerHandle;
 
 use crate::answers::Answers;
 use crate::draft::{Draft, Fault, Place, Slot};
 use crate::replay::Wish;
+use crate::seen::{Deed, Seen};
 use crate::words::{Language, Words};
 
 /// The state with its dispatcher, as components have it.
@@ -37,6 +39,8 @@ pub enum Part {
 pub enum Tab {
     /// Healthy, overloaded and shorted.
     Expect,
+    /// What lamp and meter show.
+    Seen,
     /// The first seconds.
     SwitchOn,
     /// The curves that meet.
@@ -128,6 +132,8 @@ pub struct Bench {
     pub tab: Tab,
     /// What is wanted of the first seconds.
     pub wish: Wish,
+    /// What lamp and meter show.
+    pub seen: Seen,
     /// The light.
     pub theme: Theme,
     /// What is in front.
@@ -181,6 +187,8 @@ pub enum Msg {
     Go(Tab),
     /// Something else is wanted of the first seconds.
     Wish(Wish),
+    /// Something is done to what lamp and meter show.
+    Seen(Deed),
     /// Change the light.
     Light(Theme),
     /// The cautions are accepted, or closed again.
@@ -217,6 +225,7 @@ impl Bench {
             refused: None,
             tab: Tab::Expect,
             wish: Wish::default(),
+            seen: Seen::new(MeterSpec::default(), language.words().numerals),
             theme: Theme::Auto,
             stage: Stage::Unread,
             notes: Vec::new(),
@@ -231,7 +240,13 @@ impl Bench {
 
     /// What is wrong with a field.
     pub fn fault(&self, slot: Slot) -> Option<&Fault> {
-        self.faults.iter().find(|(other, _)| *other == slot).map(|(_, fault)| fault)
+        let mut all = self.faults.iter().chain(&self.seen.faults);
+        all.find(|(other, _)| *other == slot).map(|(_, fault)| fault)
+    }
+
+    /// What stands in a field.
+    pub fn text(&self, slot: Slot) -> &str {
+        self.seen.text(slot).unwrap_or_else(|| self.draft.text(slot))
     }
 
     /// Whether the result shown is not that of what is typed.

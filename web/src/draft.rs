@@ -5,6 +5,7 @@ use lampladder_core::error::{Field, InputError};
 use lampladder_core::family::Family;
 use lampladder_core::lamp::{Fill, Lamp};
 use lampladder_core::quantity::QuantityError;
+use lampladder_core::readings::Kind;
 use lampladder_core::setup::Setup;
 
 use crate::format::Numerals;
@@ -35,6 +36,31 @@ pub enum LampPart {
     PointAmps(usize),
 }
 
+/// A number on a meter's sheet.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum MeterPart {
+    /// Accuracy, per cent of the reading.
+    Percent,
+    /// Accuracy, counts of the last digit.
+    Digits,
+    /// The most that it counts to.
+    Counts,
+}
+
+impl MeterPart {
+    /// All of them, in the order in which they are printed.
+    pub const ALL: [Self; 3] = [Self::Percent, Self::Digits, Self::Counts];
+
+    /// The kind of quantity.
+    pub const fn field(self) -> Field {
+        match self {
+            Self::Percent => Field::Percent,
+            Self::Digits => Field::Digits,
+            Self::Counts => Field::Counts,
+        }
+    }
+}
+
 /// One field of the page.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
 pub enum Slot {
@@ -58,6 +84,10 @@ pub enum Slot {
     Detail(Detail),
     /// A property of one lamp.
     Lamp(Place, LampPart),
+    /// A reading of a meter.
+    Reading(Kind),
+    /// A number of the meter itself.
+    Meter(MeterPart),
 }
 
 impl Slot {
@@ -86,6 +116,8 @@ impl Slot {
                 LampPart::ColdOhms => Field::ColdOhms,
                 LampPart::PointAmps(_) => Field::Amps,
             },
+            Self::Reading(kind) => kind.field(),
+            Self::Meter(part) => part.field(),
         }
     }
 
@@ -105,6 +137,8 @@ pub enum Fault {
     Text(QuantityError),
     /// The number is refused.
     Number(InputError),
+    /// Without a unit it could be one of two things, a thousandfold apart.
+    NoUnit,
 }
 
 /// A lamp as typed.
@@ -238,6 +272,7 @@ impl Draft {
                 self.details.iter().find(|(known, _)| *known == detail).map_or("", |(_, text)| text)
             }
             Slot::Lamp(place, part) => self.lamp(place).map_or("", |lamp| lamp.text(part)),
+            Slot::Reading(_) | Slot::Meter(_) => "",
         }
     }
 
@@ -262,6 +297,7 @@ impl Draft {
             Slot::PlatePowerFactor => Some(&mut self.plate[4]),
             Slot::Detail(detail) => Some(self.detail_mut(detail)),
             Slot::Lamp(place, part) => self.lamp_mut(place).and_then(|lamp| lamp.text_mut(part)),
+            Slot::Reading(_) | Slot::Meter(_) => None,
         };
         if let Some(target) = target {
             *target = text;

@@ -126,9 +126,15 @@ impl Numerals {
     }
 }
 
-/// Milliamperes below a tenth of an ampere, as meters have it, and milliseconds; no prefix for the rest.
+/// Milliamperes below a tenth of an ampere, as meters have it, and milliseconds; kilohms and megohms; no prefix for the
+/// rest.
 fn prefix(value: f64, unit: &str) -> (f64, &'static str) {
-    if (unit == "A" || unit == "s") && value.abs() < 0.0995 { (1000.0, "m") } else { (1.0, "") }
+    match (unit, value.abs()) {
+        ("A" | "s", size) if size < 0.0995 => (1000.0, "m"),
+        ("Ω", size) if size >= 999_500.0 => (1e-6, "M"),
+        ("Ω", size) if size >= 999.5 => (1e-3, "k"),
+        _ => (1.0, ""),
+    }
 }
 
 fn with_unit(mut text: String, prefix: &str, unit: &str) -> String {
@@ -178,6 +184,7 @@ mod tests {
             (band(82.3, 4.2), "V", "82\u{a0}V", "78\u{2013}87\u{a0}V"),
             (band(82.3, 41.0), "V", "80\u{a0}V", "40\u{2013}120\u{a0}V"),
             (uneven, "V", "67\u{a0}V", "47\u{2013}74\u{a0}V"),
+            (band(1234.0, 30.0), "Ω", "1.23\u{a0}kΩ", "1.20\u{2013}1.26\u{a0}kΩ"),
             (band(0.0123, 0.002), "A", "12\u{a0}mA", "10\u{2013}14\u{a0}mA"),
             (band(229.96, 0.01), "V", "230\u{a0}V", "230\u{a0}V"),
             (Band::exact(230.0), "V", "230\u{a0}V", "230\u{a0}V"),

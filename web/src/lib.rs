@@ -34,6 +34,14 @@
 //! | `play`, `scrubber`, `seconds-chart` | `play` has `data-state` `playing` or `still`, `scrubber` `data-seconds` and `data-end` |
 //! | `moments`, `moment-20` and so on | the strip of those who want less motion; milliseconds |
 //! | `slow`, `span-3`, `closing-crest`, `closing-zero`, `closing-worst` | how it plays, how long, when the switch closes |
+//! | `tab-seen`, `seen` | readings; `data-busy` while they are judged, `data-milliseconds` spent on that |
+//! | `verdict`, `because` | the sentence, with `data-advice` `go-on`, `stop` or `measure-first`, `data-leader`, `data-weight`; what it rests on |
+//! | `left-out`, `clash`, `next-line` | readings that cannot be read; that cannot belong together; the next one |
+//! | `field-read-*`, `error-read-*`, `meaning-0`, `meaning-1` | `supply-volts`, `bank-volts`, `load-volts`, `amps`, `load-watts`, `plug-ohms`; the two meanings of a number without a unit |
+//! | `look-dull-red`, `behaves-flash-then-dim` and so on | taps |
+//! | `meter`, `meter-0`, `field-meter-percent`, `field-meter-digits`, `field-meter-counts`, `true-rms`, `averaging` | the meter |
+//! | `weight-healthy` and so on, `weight-rest`, `numbers`, `number-amps` and so on, `next` | with `data-value`, and numbers with `data-low`, `data-high` |
+//! | `keep`, `empty`, `undo`, `log`, `kept`, `kept-readings`, `note-text`, `delete`, `log-trouble`, `log-foreign` | the log |
 //! | `surge`, `moments-table`, `fuse`, `fuse-more`, `fuse-less`, `fuse-table` | the figures, the fuse check |
 //! | `tab-expect`, `tab-curve`, `chart`, `crossings`, `bank-curve` | panels |
 
@@ -46,12 +54,16 @@ pub mod charts;
 pub mod describe;
 pub mod draft;
 pub mod format;
+mod keeper;
+pub mod log;
+pub mod meter;
 pub mod panels;
 pub mod parts;
 mod reading;
 pub mod reckoner;
 mod reduce;
 pub mod replay;
+pub mod seen;
 pub mod start;
 pub mod step;
 pub mod story;

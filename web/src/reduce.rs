@@ -25,6 +25,15 @@ impl Bench {
             Msg::Why => self.why = !self.why,
             Msg::Go(tab) => self.tab = tab,
             Msg::Wish(wish) => self.wish = wish,
+            Msg::Seen(deed) => {
+                let numerals = self.words().numerals;
+                self.seen.act(deed, &self.setup, numerals);
+                self.seen.reread(&self.setup);
+            }
+            Msg::Type(slot, text) if self.seen.text(slot).is_some() => {
+                self.seen.set(slot, text);
+                self.seen.reread(&self.setup);
+            }
             Msg::Light(theme) => self.theme = theme,
             Msg::Accept => self.stage = Stage::Bench,
             Msg::Cautions => self.stage = Stage::Reread,
@@ -70,6 +79,7 @@ impl Bench {
         self.answers = Rc::new(answers);
         self.faults.clear();
         self.keep_condition();
+        self.seen.reread(&self.setup);
         self.edited = false;
         self.lamp = Place::default();
         self.refused = None;
@@ -177,6 +187,7 @@ impl Bench {
                     self.setup = Rc::new(setup);
                     self.answers = Rc::new(answers);
                     self.keep_condition();
+                    self.seen.reread(&self.setup);
                 }
                 Err(error) => self.faults = vec![(Slot::SupplyHertz, Fault::Number(error))],
             },

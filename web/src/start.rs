@@ -5,6 +5,8 @@ use lampladder_core::setup::Setup;
 
 use crate::bench::{Bench, Note, Stage};
 use crate::browser::{fragment, storage, theme};
+use crate::meter;
+use crate::seen::Seen;
 
 /// The set-up that was kept on this phone, if there is one that can be read.
 pub fn kept() -> Option<Setup> {
@@ -15,6 +17,8 @@ pub fn kept() -> Option<Setup> {
 pub fn bench() -> Option<Bench> {
     let mut bench = opened(fragment::read().as_deref(), storage::read(storage::SETUP).as_deref())?;
     bench.theme = theme::kept();
+    let meter = storage::read(storage::METER).and_then(|text| meter::from_kept(&text));
+    bench.seen = Seen::new(meter.unwrap_or_default(), bench.words().numerals);
     if storage::has_for_visit(storage::ACCEPTED) {
         bench.stage = Stage::Bench;
     }

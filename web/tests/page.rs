@@ -221,6 +221,51 @@ async fn the_chart_is_drawn_as_fine_as_the_screen() {
 }
 
 #[wasm_bindgen_test]
+async fn readings_are_typed_tapped_and_kept_even_where_nothing_stores_them() {
+    // No reckoner in this document: the panel says so, and goes on with what it can.
+    let _page = open_bench().await;
+    click("tab-seen").await;
+    assert!(text("verdict").contains("could not be loaded"), "{}", text("verdict"));
+    assert!(part("keep").has_attribute("disabled"));
+    type_into("field-read-bank-volts", "28,5 V").await;
+    type_into("field-read-amps", "160").await;
+    assert!(text("error-read-amps").contains("no unit"));
+    click("meaning-1").await;
+    let amps: HtmlInputElement = part("field-read-amps").unchecked_into();
+    assert_eq!(amps.value(), "160 mA");
+    assert!(find("error-read-amps").is_none());
+    click("look-dull-red").await;
+    assert_eq!(part("look-dull-red").get_attribute("aria-pressed").as_deref(), Some("true"));
+    click("keep").await;
+    for word in ["28.5", "0.16", "dull red", "60"] {
+        assert!(text("kept").contains(word), "{word}: {}", text("kept"));
+    }
+    assert!(text("log-trouble").contains("Not stored"), "{}", text("log-trouble"));
+    type_into("note-text", "hums").await;
+    click("empty").await;
+    assert_eq!(part("field-read-bank-volts").unchecked_into::<HtmlInputElement>().value(), "");
+    click("delete").await;
+    assert!(find("kept").is_none());
+    click("undo").await;
+    assert_eq!(part("note-text").unchecked_into::<HtmlInputElement>().value(), "hums");
+    click("undo").await;
+    assert_eq!(part("field-read-bank-volts").unchecked_into::<HtmlInputElement>().value(), "28,5 V");
+}
+
+#[wasm_bindgen_test]
+async fn the_meter_is_kept() {
+    let _page = open_bench().await;
+    click("tab-seen").await;
+    click("meter").await;
+    click("meter-2").await;
+    click("averaging").await;
+    assert_eq!(storage::read(storage::METER).as_deref(), Some("1 0.5 3 20000 a"));
+    click("meter-0").await;
+    click("true-rms").await;
+    assert_eq!(storage::read(storage::METER).as_deref(), Some("1 1 5 2000 t"));
+}
+
+#[wasm_bindgen_test]
 async fn the_light_changes_and_is_kept() {
     let _page = open_bench().await;
     let light = || part("theme").get_attribute("data-value").expect("a value");

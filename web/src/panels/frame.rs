@@ -41,8 +41,12 @@ pub fn header(bench: &BenchHandle) -> El {
 
 /// The list of panels.
 pub fn tabs(bench: &BenchHandle) -> El {
-    const TABS: [(Tab, &str); 3] =
-        [(Tab::Expect, "tab-expect"), (Tab::SwitchOn, "tab-switch-on"), (Tab::Curve, "tab-curve")];
+    const TABS: [(Tab, &str); 4] = [
+        (Tab::Expect, "tab-expect"),
+        (Tab::Seen, "tab-seen"),
+        (Tab::SwitchOn, "tab-switch-on"),
+        (Tab::Curve, "tab-curve"),
+    ];
     let words = bench.words();
     el("nav").class("tabs").set("aria-label", words.panels).each(TABS.map(|(tab, testid)| {
         let tab_button = button("tab", testid, send(bench, Msg::Go(tab))).text((words.tab)(tab));

@@ -5,7 +5,7 @@ use yew::{Callback, InputEvent};
 use super::el::{El, button, el, truth};
 use crate::bench::{BenchHandle, Msg};
 use crate::browser::input;
-use crate::draft::{LampPart, Slot};
+use crate::draft::{LampPart, MeterPart, Slot};
 use crate::panels::send;
 
 /// A field's name in addresses of elements; lamp fields exist for the lamp under edit only.
@@ -24,6 +24,10 @@ pub fn slug(slot: Slot) -> String {
         Slot::Lamp(_, LampPart::Watts) => "lamp-watts",
         Slot::Lamp(_, LampPart::Lumens) => "lamp-lumens",
         Slot::Lamp(_, LampPart::ColdOhms) => "lamp-cold-ohms",
+        Slot::Reading(kind) => return format!("read-{}", kind.field().name().replace('_', "-")),
+        Slot::Meter(MeterPart::Percent) => "meter-percent",
+        Slot::Meter(MeterPart::Digits) => "meter-digits",
+        Slot::Meter(MeterPart::Counts) => "meter-counts",
         Slot::Lamp(_, LampPart::PointVolts(index)) => return format!("point-{index}-volts"),
         Slot::Lamp(_, LampPart::PointAmps(index)) => return format!("point-{index}-amps"),
     };
@@ -88,7 +92,7 @@ fn entry(bench: &BenchHandle, slot: Slot, slug: &str, id: String, error_id: &str
         .set("maxlength", "40")
         .put("data-testid", format!("field-{slug}"))
         .set("aria-invalid", truth(wrong))
-        .value(bench.draft.text(slot).to_owned())
+        .value(bench.text(slot).to_owned())
         .typed(typed);
     if wrong { entry.put("aria-describedby", error_id.to_owned()) } else { entry }
 }

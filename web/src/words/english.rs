@@ -3,6 +3,7 @@
 mod conditions;
 mod faults;
 mod replay;
+mod seen;
 
 use lampladder_core::condition::Condition;
 use lampladder_core::family::{self, Family, Warning};
@@ -32,6 +33,7 @@ pub(super) static WORDS: Words = Words {
     },
     tab: |tab| match tab {
         Tab::Expect => "Expect",
+        Tab::Seen => "Seen",
         Tab::SwitchOn => "Switch-on",
         Tab::Curve => "Curve",
     },
@@ -137,6 +139,7 @@ pub(super) static WORDS: Words = Words {
                 tungsten differ, and healthy equipment takes less or more than its plate.",
     table: &TABLE,
     replay: &replay::REPLAY,
+    seen: &seen::SEEN,
     slot: faults::slot,
     fault: faults::fault,
     step: |which, up| format!("{}: {}", faults::slot(which), if up { "more" } else { "less" }),

@@ -5,6 +5,7 @@
 
 mod english;
 pub mod replay;
+pub mod seen;
 
 use lampladder_core::condition::Condition;
 use lampladder_core::family::{self, Family, Warning};
@@ -210,6 +211,8 @@ pub struct Words {
     pub table: &'static TableWords,
     /// Texts of the switch-on panel.
     pub replay: &'static replay::ReplayWords,
+    /// Texts of the panel of readings.
+    pub seen: &'static seen::SeenWords,
     /// Name of a field.
     pub slot: fn(Slot) -> &'static str,
     /// What is wrong with a field.

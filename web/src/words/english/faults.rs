@@ -5,9 +5,10 @@ use lampladder_core::error::InputError;
 use lampladder_core::quantity::QuantityError;
 
 use super::NUMERALS;
+use super::seen::SEEN;
 use crate::draft::{Fault, LampPart, Slot};
 
-pub(super) const fn slot(slot: Slot) -> &'static str {
+pub(super) fn slot(slot: Slot) -> &'static str {
     match slot {
         Slot::SupplyVolts => "Supply volts",
         Slot::SupplyHertz => "Frequency",
@@ -26,6 +27,8 @@ pub(super) const fn slot(slot: Slot) -> &'static str {
             LampPart::PointVolts(_) => "Measured volts",
             LampPart::PointAmps(_) => "Measured amps",
         },
+        Slot::Reading(kind) => (SEEN.kind)(kind),
+        Slot::Meter(part) => SEEN.meter_part[part as usize],
     }
 }
 
@@ -72,6 +75,7 @@ pub(super) fn fault(which: Slot, fault: &Fault) -> String {
         Fault::Number(InputError::Conflict { field, limit, .. }) => {
             format!("{name} can be at most {} here.", NUMERALS.quantity(*limit, field.unit()))
         }
+        Fault::NoUnit => format!("{name} has no unit, and that makes it doubtful. Which did you mean?"),
         Fault::Number(InputError::NeedsAlternating { .. }) => String::from(
             "This equipment needs alternating current; on DC use a heater, or plain with power factor 1.",
         ),
