@@ -5,12 +5,16 @@ use lampladder_core::condition::Condition;
 use lampladder_core::detail::Detail;
 use lampladder_core::error::{Field, InputError};
 use lampladder_core::family::Family;
+use lampladder_core::glow::GlowWord;
 use lampladder_core::lamp::Fill;
+use lampladder_core::link;
 use lampladder_core::quantity::QuantityError;
+use lampladder_core::readings::Kind;
 use lampladder_core::setup::Setup;
 use lampladder_web::advice::{Advice, Caution, advice, cautions};
 use lampladder_web::bench::{Bench, Msg, Note, Part, Refused, Unsuitable};
 use lampladder_web::draft::{Fault, LampPart, Place, Slot};
+use lampladder_web::seen::Deed;
 
 fn bench() -> Bench {
     Bench::with(Setup::example().expect("in range")).expect("goes together")
@@ -44,8 +48,8 @@ fn a_bad_number_is_kept_and_the_last_answer_stays() {
     let before = bench();
     for (text, fault) in [
         ("", Fault::Text(QuantityError::Empty { field: Field::Volts })),
-        ("abc", Fault::Text(QuantityError::WrongUnit { field: Field::Volts })),
-        ("NaN", Fault::Text(QuantityError::WrongUnit { field: Field::Volts })),
+        ("abc", Fault::Text(QuantityError::NotANumber { field: Field::Volts })),
+        ("NaN", Fault::Text(QuantityError::NotANumber { field: Field::Volts })),
     ] {
         let after = bench().after(typed(Slot::SupplyVolts, text));
         assert_eq!(after.draft.text(Slot::SupplyVolts), text);
@@ -60,6 +64,48 @@ fn a_bad_number_is_kept_and_the_last_answer_stays() {
         assert!(!mended.is_stale());
         assert_eq!(mended.setup.supply.volts(), 120.0);
     }
+}
+
+#[test]
+fn readings_are_no_part_of_the_set_up() {
+    let read = Slot::Reading(Kind::BankVolts);
+    let after = after([typed(read, "sixty"), typed(Slot::Reading(Kind::Amps), "0,16 A")]);
+    assert_eq!((after.text(read), after.edited, after.is_stale()), ("sixty", false, false));
+    assert!(after.fault(read).is_some() && after.fault(Slot::Reading(Kind::Amps)).is_none());
+    assert_eq!(after.setup, bench().setup);
+    let taken = after.seen.taken(&after.setup);
+    assert_eq!(taken.numbers, [None, None, None, Some(0.16), None, None]);
+    assert_eq!(taken.setup, link::encode(&after.setup));
+}
+
+#[test]
+fn whether_a_bare_number_is_doubtful_follows_the_lamps() {
+    let amps = Slot::Reading(Kind::Amps);
+    let doubted = after([typed(amps, "1.5")]);
+    assert_eq!(doubted.fault(amps), Some(&Fault::NoUnit));
+    assert_eq!(doubted.text(amps), "1.5");
+    let larger = doubted.after(typed(lamp(LampPart::Watts), "300"));
+    assert_eq!(larger.fault(amps), None);
+    let answered = after([typed(amps, "1.5"), typed(amps, "1.5 A")]);
+    assert_eq!(answered.fault(amps), None);
+}
+
+#[test]
+fn a_reading_is_kept_with_the_set_up_of_its_time() {
+    let kept = after([
+        typed(Slot::Reading(Kind::BankVolts), "28"),
+        Msg::Seen(Deed::Look(GlowWord::DullRed)),
+        Msg::Seen(Deed::Rung(Some(1))),
+        Msg::Seen(Deed::Keep(1e12, None)),
+        typed(lamp(LampPart::Watts), "100"),
+    ]);
+    let record = &kept.seen.log.records[0];
+    let setup = link::decode(&record.setup).expect("a link");
+    assert_eq!(setup.bank.groups()[0][0].rated_watts(), 60.0);
+    assert_eq!((record.rung, record.look), (Some(1), Some(GlowWord::DullRed)));
+    let undone = kept.after(Msg::Seen(Deed::Undo));
+    assert!(undone.seen.log.records.is_empty());
+    assert_eq!(undone.setup.bank.groups()[0][0].rated_watts(), 100.0);
 }
 
 #[test]
