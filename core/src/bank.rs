@@ -4,7 +4,7 @@ mod walk;
 
 use alloc::vec::Vec;
 
-pub(crate) use walk::{Step, Strand, Walk};
+pub(crate) use walk::{Step, Walk};
 
 use crate::error::{Field, InputError, within};
 use crate::filament::Filament;
@@ -68,11 +68,6 @@ impl Bank {
     /// The chain of groups.
     pub fn groups(&self) -> &[Vec<Lamp>] {
         &self.groups
-    }
-
-    /// Each distinct filament of each distinct group: equal ones behave alike.
-    pub(crate) fn strands(&self) -> impl Iterator<Item = Strand<'_>> {
-        self.chain.strands()
     }
 
     /// How many lamps.

@@ -59,8 +59,9 @@ pub enum Outcome {
     Settles,
     /// The load starts, pulls its own input down, stops and starts again.
     Hunts {
-        /// Time from one start to the next, seconds.
-        period_seconds: f64,
+        /// Time from one start to the next, seconds; `None` where it is too long to be worth a wait (20 s), or where
+        /// ripple keeps it running although the average would not.
+        period_seconds: Option<f64>,
     },
     /// The load's input never reaches the voltage at which it starts.
     DoesNotStart,
@@ -145,9 +146,7 @@ pub fn solve(supply: &Supply, bank: &Bank, load: &Load) -> Result<Steady, Steady
     } else if equilibria.iter().any(|point| point.mode == Mode::Off) {
         Outcome::DoesNotStart
     } else {
-        Outcome::Hunts {
-            period_seconds: hunt::period_seconds(supply, bank, load).unwrap_or(hunt::LONGEST_SECONDS),
-        }
+        Outcome::Hunts { period_seconds: hunt::period_seconds(supply, bank, load) }
     };
     Ok(Steady { outcome, equilibria })
 }

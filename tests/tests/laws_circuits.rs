@@ -14,13 +14,22 @@ use proptest::prelude::*;
 const KIRCHHOFF: f64 = 1e-9;
 const POWER: f64 = 1e-6;
 
-/// What two thousand midpoints of half a wave with two kinks leave over.
-const QUADRATURE: f64 = 3e-4;
+/// What six hundred midpoints of each smooth part of half a wave leave over.
+const QUADRATURE: f64 = 1e-5;
 
 /// The answer; none where a lamp would burn out or the load has no meaning on this supply, which are refusals.
 fn solved(supply: &Supply, bank: &Bank, load: &Load) -> Option<Steady> {
     match steady::solve(supply, bank, load) {
         Ok(solved) => Some(solved),
+        Err(SteadyError::FilamentMelts { .. } | SteadyError::Input(_)) => None,
+        Err(other) => panic!("{other}"),
+    }
+}
+
+/// Its steady points alone: how long a hunting one takes is no matter here.
+fn points(supply: &Supply, bank: &Bank, load: &Load) -> Option<Vec<Equilibrium>> {
+    match steady::equilibria(supply, bank, load) {
+        Ok(points) => Some(points),
         Err(SteadyError::FilamentMelts { .. } | SteadyError::Input(_)) => None,
         Err(other) => panic!("{other}"),
     }
@@ -76,7 +85,7 @@ proptest! {
         }
         match solved.outcome {
             Outcome::Settles => prop_assert!(solved.settled().is_some()),
-            Outcome::Hunts { period_seconds } => prop_assert!(period_seconds > 0.0 && period_seconds <= 30.0),
+            Outcome::Hunts { period_seconds } => prop_assert!(period_seconds.is_none_or(|seconds| seconds > 0.0)),
             Outcome::DoesNotStart => prop_assert!(solved.equilibria.iter().all(|point| point.amps == 0.0)),
             _ => {}
         }
@@ -135,26 +144,31 @@ struct Wave {
 
 /// Half a period of the circuit around a rectifier that holds its DC voltage, instant by instant.
 fn waveform(supply: &Supply, point: &Equilibrium, rectifier: &Rectifier) -> Wave {
-    const STEPS: u32 = 2000;
+    const STEPS: u32 = 600;
     let spec = rectifier.spec();
     let before = point.bank_volts / point.amps + supply.ohms();
     let held = point.load_dc_volts.expect("a reservoir") + spec.diode_volts;
     let shunt = spec.shunt_ohms.map_or(0.0, |ohms| 1.0 / ohms);
     let mut wave = Wave::default();
-    for step in 0..STEPS {
-        let angle = (f64::from(step) + 0.5) / f64::from(STEPS) * std::f64::consts::PI;
-        let source = std::f64::consts::SQRT_2 * supply.volts() * angle.sin();
-        // Without the rectifier the terminals would stand at `idle`, behind `inner`.
-        let inner = before / (1.0 + before * shunt);
-        let idle = source / (1.0 + before * shunt);
-        let rectified = ((idle - held) / (inner + spec.series_ohms)).max(0.0);
-        let volts = idle - rectified * inner;
-        let amps = rectified + volts * shunt;
-        let weight = 1.0 / f64::from(STEPS);
-        wave.amps += weight * amps * amps;
-        wave.volts += weight * volts * volts;
-        wave.watts += weight * volts * amps;
-        wave.mean_amps += weight * rectified;
+    // Without the rectifier the terminals would stand at `idle`, behind `inner`. It conducts between two angles, so that
+    // each of the three parts is smooth, however narrow the pulse.
+    let inner = before / (1.0 + before * shunt);
+    let crest = std::f64::consts::SQRT_2 * supply.volts() / (1.0 + before * shunt);
+    let begins = (held / crest).min(1.0).asin();
+    let ends = std::f64::consts::PI - begins;
+    for (from, to) in [(0.0, begins), (begins, ends), (ends, std::f64::consts::PI)] {
+        for step in 0..STEPS {
+            let angle = from + (f64::from(step) + 0.5) / f64::from(STEPS) * (to - from);
+            let idle = crest * angle.sin();
+            let rectified = ((idle - held) / (inner + spec.series_ohms)).max(0.0);
+            let volts = idle - rectified * inner;
+            let amps = rectified + volts * shunt;
+            let weight = (to - from) / std::f64::consts::PI / f64::from(STEPS);
+            wave.amps += weight * amps * amps;
+            wave.volts += weight * volts * volts;
+            wave.watts += weight * volts * amps;
+            wave.mean_amps += weight * rectified;
+        }
     }
     Wave { amps: wave.amps.sqrt(), volts: wave.volts.sqrt(), ..wave }
 }
@@ -184,12 +198,11 @@ fn brute_force(yields: &Yields<'_>, most_amps: f64, watts: f64) -> (Vec<f64>, bo
     (crossed.map(|pair| 0.5 * (pair[0].0 + pair[1].0)).collect(), clear)
 }
 
-fn compare(solved: &Steady, found: &[f64], clear: bool, most_amps: f64) -> Result<(), TestCaseError> {
+fn compare(points: &[Equilibrium], found: &[f64], clear: bool, most_amps: f64) -> Result<(), TestCaseError> {
     if !clear {
         return Ok(());
     }
-    let ours: Vec<f64> =
-        solved.equilibria.iter().map(|point| point.amps).filter(|&amps| amps > 0.0).collect();
+    let ours: Vec<f64> = points.iter().map(|point| point.amps).filter(|&amps| amps > 0.0).collect();
     prop_assert_eq!(ours.len(), found.len(), "core {:?}, sweep {:?}", ours, found);
     for (core, sweep) in ours.iter().zip(found) {
         prop_assert!((core - sweep).abs() < 1e-3 * most_amps + 0.05 * core, "core {core}, sweep {sweep}");
@@ -203,7 +216,7 @@ proptest! {
     #[test]
     fn no_point_of_a_hungry_rectifier_is_missed(supply in supply(), bank in bank(mains_lamp()), rectifier in hungry()) {
         let load = Load::Rectifier(rectifier);
-        let Some(solved) = solved(&supply, &bank, &load) else { return Ok(()) };
+        let Some(ours) = points(&supply, &bank, &load) else { return Ok(()) };
         let spec = rectifier.spec();
         let Draw::Watts { watts, .. } = spec.draw else { return Ok(()) };
         let most_amps = bank.at_volts(supply.volts()).amps;
@@ -225,17 +238,17 @@ proptest! {
             (dc_volts > 0.0).then_some(dc_volts * mean)
         };
         let (found, clear) = brute_force(&yields, most_amps, watts);
-        compare(&solved, &found, clear, most_amps)?;
+        compare(&ours, &found, clear, most_amps)?;
     }
 
     #[test]
     fn no_point_of_a_corrected_supply_is_missed(supply in supply(), bank in bank(mains_lamp()), watts in log_uniform(0.01, 2000.0)) {
         let load = Load::Corrected(Corrected::new(CorrectedSpec { watts, start_volts: 1.0, stop_volts: 0.0, restart_seconds: 0.1, farads: 1e-4 }).expect("in range"));
-        let Some(solved) = solved(&supply, &bank, &load) else { return Ok(()) };
+        let Some(ours) = points(&supply, &bank, &load) else { return Ok(()) };
         let most_amps = bank.at_volts(supply.volts()).amps;
         let yields = |amps: f64| Some(amps * (supply.volts() - bank.at_amps(amps).volts - amps * supply.ohms()));
         let (found, clear) = brute_force(&yields, most_amps, watts);
-        compare(&solved, &found, clear, most_amps)?;
+        compare(&ours, &found, clear, most_amps)?;
     }
 }
 
@@ -293,7 +306,7 @@ proptest! {
     #[test]
     fn no_point_of_a_turning_motor_is_missed(supply in mains(), bank in bank(mains_lamp()), motor in induction_motor()) {
         const STEPS: u32 = 400;
-        let Some(solved) = solved(&supply, &bank, &Load::InductionMotor(motor)) else { return Ok(()) };
+        let Some(ours) = points(&supply, &bank, &Load::InductionMotor(motor)) else { return Ok(()) };
         // A sweep of slips, evenly in the logarithm up to 0.1 and evenly from there.
         let slip = |step: u32| {
             let share = f64::from(step) / f64::from(STEPS);
@@ -317,7 +330,7 @@ proptest! {
                 curve.windows(2).filter(|two| two[0].1 * two[1].1 < 0.0).map(|two| 0.5 * (two[0].0 + two[1].0)).collect();
             found.sort_by(f64::total_cmp);
             let ours: Vec<f64> =
-                solved.equilibria.iter().filter(|point| point.mode == Mode::Turning).map(|point| point.amps).collect();
+                ours.iter().filter(|point| point.mode == Mode::Turning).map(|point| point.amps).collect();
             prop_assert_eq!(ours.len(), found.len(), "core {:?}, sweep {:?}", ours, found);
             for (core, sweep) in ours.iter().zip(&found) {
                 prop_assert!((core / sweep - 1.0).abs() < 0.05, "core {core}, sweep {sweep}");

@@ -17,8 +17,8 @@ pub enum Advice {
     BurnsOut(Place, Condition),
     /// Healthy equipment would start and stop, over and over.
     Pulses {
-        /// Time from one start to the next, seconds.
-        seconds: f64,
+        /// Time from one start to the next, seconds, where known.
+        seconds: Option<f64>,
     },
     /// Healthy equipment would not start behind these lamps.
     DoesNotStart,

@@ -196,7 +196,7 @@ pub(crate) fn plate(fields: &mut Fields<'_>) -> Result<Plate, Refusal> {
 pub(crate) fn outcome(outcome: &Outcome) -> Result<(&'static str, Option<f64>), Refusal> {
     match *outcome {
         Outcome::Settles => Ok(("settles", None)),
-        Outcome::Hunts { period_seconds } => Ok(("hunts", Some(period_seconds))),
+        Outcome::Hunts { period_seconds } => Ok(("hunts", period_seconds)),
         Outcome::DoesNotStart => Ok(("does-not-start", None)),
         other => Err(Refusal::whole_line(format!("the outcome {other:?} has no name here yet"))),
     }

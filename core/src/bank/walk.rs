@@ -64,30 +64,9 @@ impl Chain {
         Self { groups, places }
     }
 
-    /// Each distinct filament of each distinct group.
-    pub(super) fn strands(&self) -> impl Iterator<Item = Strand<'_>> {
-        self.groups.iter().enumerate().flat_map(|(group, Group { kinds, times })| {
-            kinds.iter().map(move |Kind { filament, count }| Strand {
-                filament,
-                count: *count,
-                group,
-                times: *times,
-            })
-        })
-    }
-
     fn kinds(&self) -> impl Iterator<Item = &Kind> {
         self.groups.iter().flat_map(|group| &group.kinds)
     }
-}
-
-/// A filament, how many equal ones stand beside it, in which distinct group, and how often that occurs in series.
-#[derive(Debug, Clone, Copy)]
-pub(crate) struct Strand<'a> {
-    pub(crate) filament: &'a Filament,
-    pub(crate) count: f64,
-    pub(crate) group: usize,
-    pub(crate) times: f64,
 }
 
 /// What a group is brought to.

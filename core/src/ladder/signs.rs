@@ -36,8 +36,8 @@ pub enum GoOn {
     },
     /// It starts, pulls its own input down and starts again: the lamp pulses, and that is as it should be here.
     Pulses {
-        /// From one start to the next, seconds.
-        period_seconds: f64,
+        /// From one start to the next, seconds, where known.
+        period_seconds: Option<f64>,
     },
     /// It stays off, and the lamp dark.
     StaysOff,

@@ -22,11 +22,6 @@ impl Pulse {
         Self { theta, sin, cos }
     }
 
-    /// The pulse that charges up to a held voltage of `share` of the crest (0 to 1).
-    pub(crate) fn holding(share: f64) -> Self {
-        Self::at(libm::acos(share.clamp(0.0, 1.0)))
-    }
-
     /// The pulse of an RMS current, in units of `Vp / R`; `None` above what a dead short would take.
     pub(crate) fn of_rms(rms: f64) -> Option<Self> {
         let square = rms * rms;

@@ -1,6 +1,6 @@
 //! A switch-mode supply with power-factor correction: it takes a constant power in phase with its voltage.
 
-use super::{Draw, Feed, Rectifier, RectifierSpec, Served};
+use super::{Feed, Served};
 use crate::error::{Field, InputError, within};
 
 /// The numbers that describe a [`Corrected`] supply.
@@ -40,18 +40,6 @@ impl Corrected {
     /// The numbers.
     pub const fn spec(&self) -> &CorrectedSpec {
         &self.spec
-    }
-
-    /// The plain rectifier that charges its reservoir while the corrector starves: how it hunts.
-    pub(crate) fn as_rectifier(&self) -> Result<Rectifier, InputError> {
-        let CorrectedSpec { watts, start_volts, stop_volts, restart_seconds, farads } = self.spec;
-        Rectifier::new(RectifierSpec {
-            farads,
-            series_ohms: 0.0,
-            diode_volts: 0.0,
-            draw: Draw::Watts { watts, start_volts, stop_volts, restart_seconds },
-            shunt_ohms: None,
-        })
     }
 
     /// `I (Vs - R I)` over the watts.

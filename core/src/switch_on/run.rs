@@ -186,6 +186,11 @@ impl Run {
         &self.samples
     }
 
+    /// When a converter in the load started so far, seconds.
+    pub(crate) fn starts(&self) -> &[f64] {
+        &self.recorder.starts
+    }
+
     /// Highest current so far and when it flowed: seconds, amperes.
     pub(super) const fn peak(&self) -> (f64, f64) {
         self.recorder.peak

@@ -60,8 +60,9 @@ fn sentence(bench: &Bench) -> (String, String) {
             ((words.burns_out)(&describe::lamp(&bench.setup, place, words), condition), String::new())
         }
         Advice::Pulses { seconds } => {
-            let band = Band { value: seconds, low: seconds * 0.7, high: seconds * 1.3 };
-            ((words.pulses)(&words.numerals.value(&band, "s")), String::new())
+            let period = seconds.map(|value| Band { value, low: value * 0.7, high: value * 1.3 });
+            let period = period.map(|band| words.numerals.value(&band, "s"));
+            ((words.pulses)(period.as_deref()), String::new())
         }
         Advice::Stands { glow } => {
             let glow = (words.glow_range)(glow.0, glow.1);

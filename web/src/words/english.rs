@@ -88,7 +88,8 @@ pub(super) static WORDS: Words = Words {
         )
     },
     pulses: |seconds| {
-        format!("Expect pulsing, about every {seconds}: healthy equipment starts, starves and starts again.")
+        let every = seconds.map_or_else(String::new, |seconds| format!(", about every {seconds}"));
+        format!("Expect pulsing{every}: healthy equipment starts, starves and starts again.")
     },
     stands: |glow| format!("Expect {glow}: a healthy motor stands still on this voltage, hums and heats."),
     looks_shorted: "A healthy set looks shorted behind these lamps: they cannot warm its degauss thermistor.",

@@ -164,7 +164,7 @@ pub struct Words {
     /// A lamp burns out: its name, condition.
     pub burns_out: fn(&str, Condition) -> String,
     /// The equipment starts and stops.
-    pub pulses: fn(&str) -> String,
+    pub pulses: fn(Option<&str>) -> String,
     /// A motor stands: the glow.
     pub stands: fn(&str) -> String,
     /// A picture-tube set looks shorted.

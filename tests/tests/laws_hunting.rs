@@ -1,0 +1,84 @@
+//! The period of a hunting supply as the steady solver gives it, against runs of the time domain that are finer, longer
+//! and begin at another moment.
+
+use lampladder_core::bank::Bank;
+use lampladder_core::condition::Condition;
+use lampladder_core::detail::Detail;
+use lampladder_core::family::Family;
+use lampladder_core::lamp::Lamp;
+use lampladder_core::load::Load;
+use lampladder_core::plate::{Plate, PlateSpec};
+use lampladder_core::steady::{self, Outcome};
+use lampladder_core::supply::Supply;
+use lampladder_core::switch_on::{Moment, Options, simulate};
+use lampladder_tests::random::{cases, log_uniform, mains};
+use proptest::prelude::*;
+
+/// The stated band: starts fall on crests of the mains, so that pulses differ by a period of it; and some beat.
+const SHARE: f64 = 0.05;
+
+fn converter() -> impl Strategy<Value = Load> {
+    let family = prop::sample::select(&[Family::SwitchMode, Family::SwitchModeCorrected][..]);
+    let condition = prop::sample::select(&[Condition::Healthy, Condition::Overloaded][..]);
+    let details = (prop::sample::select(&[0.0, 0.02, 0.1, 0.6, 2.0][..]), log_uniform(0.1, 20.0), 0.1..50.0);
+    (family, condition, log_uniform(5.0, 300.0), details).prop_map(|(family, condition, watts, details)| {
+        let details = vec![
+            (Detail::RestartSeconds, details.0),
+            (Detail::MicrofaradsPerWatt, details.1),
+            (Detail::SeriesOhms, details.2),
+        ];
+        let spec = PlateSpec { watts: Some(watts), details, ..PlateSpec::new(family, 230.0) };
+        Plate::from_spec(spec).and_then(|plate| plate.load(condition, 1.0)).expect("in range")
+    })
+}
+
+/// The middle one of the later half of all pulses, seconds; none where there are fewer than three.
+fn simulated(supply: &Supply, bank: &Bank, load: &Load, seconds: f64) -> Option<f64> {
+    let options =
+        Options { seconds, moment: Moment::Degrees(50.0), sample_seconds: seconds, ..Options::default() };
+    let starts = simulate(supply, bank, load, &options).ok()?.starts;
+    let gaps: Vec<f64> = starts.windows(2).map(|pair| pair[1] - pair[0]).collect();
+    let mut late = gaps.get(gaps.len() / 2..).filter(|late| late.len() > 1)?.to_vec();
+    late.sort_by(f64::total_cmp);
+    Some(late[late.len() / 2])
+}
+
+proptest! {
+    #![proptest_config(cases(40))]
+
+    #[test]
+    fn the_period_of_hunting_is_that_of_the_time_domain(
+        supply in mains(), watts in log_uniform(10.0, 200.0), load in converter(),
+    ) {
+        let bank = Bank::single(Lamp::new(230.0, watts).expect("a lamp"));
+        let Ok(solved) = steady::solve(&supply, &bank, &load) else { return Ok(()) };
+        let Outcome::Hunts { period_seconds: Some(period) } = solved.outcome else { return Ok(()) };
+        let Some(theirs) = simulated(&supply, &bank, &load, (8.0 * period + 1.0).min(30.0)) else { return Ok(()) };
+        let off = (period - theirs).abs();
+        prop_assert!(off <= 1.0 / supply.hertz() + SHARE * theirs, "{period} s, in the time domain {theirs} s");
+    }
+}
+
+#[test]
+fn an_adapter_behind_a_small_lamp_pulses_with_a_known_period_and_none_is_invented() {
+    let bank = Bank::single(Lamp::new(230.0, 25.0).expect("a lamp"));
+    let supply = Supply::new(230.0, 50.0, 0.0).expect("a mains");
+    let adapter = Plate::new(Family::SwitchMode, 230.0, 60.0, None).expect("a plate");
+    let load = adapter.load(Condition::Healthy, 1.0).expect("its own");
+    let Outcome::Hunts { period_seconds: Some(period) } =
+        steady::solve(&supply, &bank, &load).expect("solvable").outcome
+    else {
+        panic!("it hunts, and with a period")
+    };
+    // It can not be shorter than the wait before each start.
+    assert!(period > 0.6 && period < 2.0, "{period}");
+    let theirs = simulated(&supply, &bank, &load, 10.0).expect("it pulses");
+    assert!((period - theirs).abs() < 0.02, "{period} {theirs}");
+    // Behind a lamp that can hardly charge so much, the wait is beyond the search: no number rather than a wrong one.
+    let details = vec![(Detail::MicrofaradsPerWatt, 20.0), (Detail::RestartSeconds, 10.0)];
+    let spec = PlateSpec { watts: Some(300.0), details, ..PlateSpec::new(Family::SwitchMode, 230.0) };
+    let slow =
+        Plate::from_spec(spec).and_then(|plate| plate.load(Condition::Healthy, 1.0)).expect("in range");
+    let outcome = steady::solve(&supply, &bank, &slow).expect("solvable").outcome;
+    assert_eq!(outcome, Outcome::Hunts { period_seconds: None });
+}
