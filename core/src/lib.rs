@@ -39,7 +39,7 @@ pub mod family;
 pub mod filament;
 pub mod fuse;
 pub mod glow;
-mod hunt;
+pub mod hunt;
 pub mod identify;
 pub mod ladder;
 pub mod lamp;

@@ -17,7 +17,6 @@ pub(crate) use sketch::{Sketch, Sketched, Warm, sketch};
 use crate::bank::{Bank, BankPoint, Step, Walk};
 use crate::error::InputError;
 use crate::filament::Filament;
-use crate::hunt;
 use crate::lamp::LampState;
 use crate::load::{Feed, Load, Mode, Near};
 use crate::roots::{self, Root, Tolerance};
@@ -57,12 +56,8 @@ pub struct Equilibrium {
 pub enum Outcome {
     /// It comes to rest at a stable point.
     Settles,
-    /// The load starts, pulls its own input down, stops and starts again.
-    Hunts {
-        /// Time from one start to the next, seconds; `None` where it is too long to be worth a wait (20 s), or where
-        /// ripple keeps it running although the average would not.
-        period_seconds: Option<f64>,
-    },
+    /// The load starts, pulls its own input down, stops and starts again; [`crate::hunt::pulse`] says how.
+    Hunts,
     /// The load's input never reaches the voltage at which it starts.
     DoesNotStart,
 }
@@ -146,7 +141,7 @@ pub fn solve(supply: &Supply, bank: &Bank, load: &Load) -> Result<Steady, Steady
     } else if equilibria.iter().any(|point| point.mode == Mode::Off) {
         Outcome::DoesNotStart
     } else {
-        Outcome::Hunts { period_seconds: hunt::period_seconds(supply, bank, load) }
+        Outcome::Hunts
     };
     Ok(Steady { outcome, equilibria })
 }

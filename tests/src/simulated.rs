@@ -165,7 +165,7 @@ pub fn truth(setup: &Setup, random: &mut Random) -> Option<Truth> {
     let solved = steady::solve(&supply, &bank, &load).ok()?;
     let settled = solved.settled().cloned();
     let ending = match (&solved.outcome, &settled) {
-        (Outcome::Hunts { .. }, _) | (_, None) => Ending::Hunts,
+        (Outcome::Hunts, _) | (_, None) => Ending::Hunts,
         (Outcome::DoesNotStart, _) => Ending::DoesNotStart,
         (_, Some(point)) => Ending::Settles(point.mode),
     };

@@ -85,7 +85,7 @@ proptest! {
         }
         match solved.outcome {
             Outcome::Settles => prop_assert!(solved.settled().is_some()),
-            Outcome::Hunts { period_seconds } => prop_assert!(period_seconds.is_none_or(|seconds| seconds > 0.0)),
+            Outcome::Hunts => prop_assert!(solved.equilibria.iter().all(|point| !point.stable)),
             Outcome::DoesNotStart => prop_assert!(solved.equilibria.iter().all(|point| point.amps == 0.0)),
             _ => {}
         }

@@ -5,6 +5,7 @@ use lampladder_core::bank::Bank;
 use lampladder_core::condition::Condition;
 use lampladder_core::detail::Detail;
 use lampladder_core::family::Family;
+use lampladder_core::hunt;
 use lampladder_core::lamp::Lamp;
 use lampladder_core::load::Load;
 use lampladder_core::plate::{Plate, PlateSpec};
@@ -52,7 +53,10 @@ proptest! {
     ) {
         let bank = Bank::single(Lamp::new(230.0, watts).expect("a lamp"));
         let Ok(solved) = steady::solve(&supply, &bank, &load) else { return Ok(()) };
-        let Outcome::Hunts { period_seconds: Some(period) } = solved.outcome else { return Ok(()) };
+        prop_assume!(solved.outcome == Outcome::Hunts);
+        let Some(pulse) = hunt::pulse(&supply, &bank, &load) else { return Ok(()) };
+        let period = pulse.period_seconds;
+        prop_assert!(pulse.dimmest_kelvin[0] < pulse.brightest_kelvin[0]);
         let Some(theirs) = simulated(&supply, &bank, &load, (8.0 * period + 1.0).min(30.0)) else { return Ok(()) };
         let off = (period - theirs).abs();
         prop_assert!(off <= 1.0 / supply.hertz() + SHARE * theirs, "{period} s, in the time domain {theirs} s");
@@ -65,11 +69,8 @@ fn an_adapter_behind_a_small_lamp_pulses_with_a_known_period_and_none_is_invente
     let supply = Supply::new(230.0, 50.0, 0.0).expect("a mains");
     let adapter = Plate::new(Family::SwitchMode, 230.0, 60.0, None).expect("a plate");
     let load = adapter.load(Condition::Healthy, 1.0).expect("its own");
-    let Outcome::Hunts { period_seconds: Some(period) } =
-        steady::solve(&supply, &bank, &load).expect("solvable").outcome
-    else {
-        panic!("it hunts, and with a period")
-    };
+    assert_eq!(steady::solve(&supply, &bank, &load).expect("solvable").outcome, Outcome::Hunts);
+    let period = hunt::pulse(&supply, &bank, &load).expect("it pulses").period_seconds;
     // It can not be shorter than the wait before each start.
     assert!(period > 0.6 && period < 2.0, "{period}");
     let theirs = simulated(&supply, &bank, &load, 10.0).expect("it pulses");
@@ -79,6 +80,6 @@ fn an_adapter_behind_a_small_lamp_pulses_with_a_known_period_and_none_is_invente
     let spec = PlateSpec { watts: Some(300.0), details, ..PlateSpec::new(Family::SwitchMode, 230.0) };
     let slow =
         Plate::from_spec(spec).and_then(|plate| plate.load(Condition::Healthy, 1.0)).expect("in range");
-    let outcome = steady::solve(&supply, &bank, &slow).expect("solvable").outcome;
-    assert_eq!(outcome, Outcome::Hunts { period_seconds: None });
+    assert_eq!(steady::solve(&supply, &bank, &slow).expect("solvable").outcome, Outcome::Hunts);
+    assert_eq!(hunt::pulse(&supply, &bank, &slow), None);
 }

@@ -68,7 +68,7 @@ pub fn advice(answers: &Answers) -> Advice {
         return advice;
     }
     match answers.outcome(Condition::Healthy) {
-        Some(Outcome::Hunts { period_seconds }) => return Advice::Pulses { seconds: period_seconds },
+        Some(Outcome::Hunts) => return Advice::Pulses,
         Some(Outcome::Settles) => {}
         _ => return Advice::DoesNotStart,
     }

@@ -2,7 +2,7 @@
 
 use lampladder_core::band::Band;
 use lampladder_core::error::{Field, InputError};
-use lampladder_core::expect::{Prospect, Shown};
+use lampladder_core::expect::Shown;
 use lampladder_core::ladder::{
     self, Gain, GoOn, Ladder, LadderError, Level, Limits, LimitsSpec, Missing, Rung, WayForward,
 };
@@ -195,7 +195,7 @@ fn one_rung(rung: &Rung) -> Result<OneRung, Refusal> {
         bank: rung.bank.groups().iter().map(|group| group.iter().map(one_lamp).collect()).collect(),
         short_amps: rung.short_amps,
         reason: rung.reason.name(),
-        healthy: healthy(&rung.healthy)?,
+        healthy: healthy(rung)?,
         go_on: go_on(&rung.signs.go_on)?,
         stop,
         looks_healthy: rung.signs.hidden.iter().map(|fault| fault.name()).collect(),
@@ -217,8 +217,13 @@ fn one_lamp(lamp: &Lamp) -> OneLamp {
     }
 }
 
-fn healthy(prospect: &Prospect) -> Result<Healthy, Refusal> {
-    let (outcome, period_seconds) = parts::outcome(&prospect.outcome)?;
+fn healthy(rung: &Rung) -> Result<Healthy, Refusal> {
+    let prospect = &rung.healthy;
+    let (outcome, _) = parts::outcome(prospect.outcome, || None)?;
+    let period_seconds = match rung.signs.go_on {
+        GoOn::Pulses { period_seconds } => period_seconds,
+        _ => None,
+    };
     let values = |of: fn(&Band) -> f64| {
         prospect.shown.as_ref().map(|Shown { amps, bank_volts, load_volts, .. }| Values {
             amps: of(amps),

@@ -1,5 +1,6 @@
 //! `steady`: every steady point of supply, bank and load, and the outcome.
 
+use lampladder_core::hunt;
 use lampladder_core::lamp::LampState;
 use lampladder_core::steady::{self, Equilibrium, SteadyError};
 use serde::Serialize;
@@ -39,9 +40,9 @@ struct OneLamp {
 pub(crate) fn answer(mut fields: Fields<'_>) -> Result<SteadyAnswer, Refusal> {
     let (supply, bank, load) = (fields.need("supply")?, fields.need("bank")?, fields.need("load")?);
     fields.done()?;
-    let solved = steady::solve(&parts::supply(&supply)?, &parts::bank(&bank)?, &parts::load(&load)?);
-    let solved = solved.map_err(|error| refusal(&error))?;
-    let (outcome, period_seconds) = parts::outcome(&solved.outcome)?;
+    let (supply, bank, load) = (parts::supply(&supply)?, parts::bank(&bank)?, parts::load(&load)?);
+    let solved = steady::solve(&supply, &bank, &load).map_err(|error| refusal(&error))?;
+    let (outcome, period_seconds) = parts::outcome(solved.outcome, || hunt::pulse(&supply, &bank, &load))?;
     Ok(SteadyAnswer { outcome, period_seconds, equilibria: solved.equilibria.iter().map(point).collect() })
 }
 

@@ -4,6 +4,7 @@ use lampladder_core::bank::Bank;
 use lampladder_core::condition::Condition;
 use lampladder_core::error::Field;
 use lampladder_core::family::Family;
+use lampladder_core::hunt::Pulse;
 use lampladder_core::lamp::{Fill, Lamp, LampSpec, Point};
 use lampladder_core::load::{Draw, Impedance, Load, Rectifier, RectifierSpec};
 use lampladder_core::plate::{Plate, PlateSpec};
@@ -192,11 +193,14 @@ pub(crate) fn plate(fields: &mut Fields<'_>) -> Result<Plate, Refusal> {
     Plate::from_spec(spec).map_err(|error| Refusal::inside(fields.path(), &error))
 }
 
-/// The name of an outcome, and its period where it has one.
-pub(crate) fn outcome(outcome: &Outcome) -> Result<(&'static str, Option<f64>), Refusal> {
-    match *outcome {
+/// The name of an outcome, and its period where it has one that `pulse` finds.
+pub(crate) fn outcome(
+    outcome: Outcome,
+    pulse: impl FnOnce() -> Option<Pulse>,
+) -> Result<(&'static str, Option<f64>), Refusal> {
+    match outcome {
         Outcome::Settles => Ok(("settles", None)),
-        Outcome::Hunts { period_seconds } => Ok(("hunts", period_seconds)),
+        Outcome::Hunts => Ok(("hunts", pulse().map(|pulse| pulse.period_seconds))),
         Outcome::DoesNotStart => Ok(("does-not-start", None)),
         other => Err(Refusal::whole_line(format!("the outcome {other:?} has no name here yet"))),
     }

@@ -6,6 +6,7 @@ use crate::band::Band;
 use crate::condition::Condition;
 use crate::expect::{self, Prospect, Shown};
 use crate::glow::{Glow, GlowWord};
+use crate::hunt;
 use crate::setup::Setup;
 use crate::steady::{self, Outcome, SteadyError};
 
@@ -126,7 +127,11 @@ pub(super) fn signs(setup: &Setup, healthy: &Prospect) -> Result<Signs, SteadyEr
     let shown = healthy.shown.as_ref().filter(|_| healthy.outcome == Outcome::Settles);
     let bands = shown.map(|shown| Bands::of(setup, shown));
     let go_on = match (&healthy.outcome, &bands) {
-        (Outcome::Hunts { period_seconds }, _) => GoOn::Pulses { period_seconds: *period_seconds },
+        (Outcome::Hunts, _) => {
+            let load = setup.plate.load(Condition::Healthy, 1.0)?;
+            let pulse = hunt::pulse(&setup.supply, &setup.bank, &load);
+            GoOn::Pulses { period_seconds: pulse.map(|pulse| pulse.period_seconds) }
+        }
         (_, Some(bands)) => GoOn::Between { least: bands.least(), most: bands.most() },
         _ => GoOn::StaysOff,
     };
