@@ -16,10 +16,7 @@ pub enum Advice {
     /// A lamp would burn out in this condition, and then limit nothing, or the wrong thing.
     BurnsOut(Place, Condition),
     /// Healthy equipment would start and stop, over and over.
-    Pulses {
-        /// Time from one start to the next, seconds, where known.
-        seconds: Option<f64>,
-    },
+    Pulses,
     /// Healthy equipment would not start behind these lamps.
     DoesNotStart,
     /// A healthy motor stands still behind these lamps, and heats.

@@ -6,7 +6,7 @@ use yew::{
 
 use crate::bench::{Bench, BenchHandle, Msg, Note, Stage, Tab};
 use crate::browser::window::{Listener, NextFrame};
-use crate::browser::{cautions, fragment, input, storage, theme};
+use crate::browser::{cautions, fragment, input, reckoner, storage, theme};
 use crate::keeper::use_keeper;
 use crate::meter;
 use crate::panels::advice::advice_panel;
@@ -21,6 +21,8 @@ use crate::panels::sheet::Sheet;
 use crate::panels::switch_on::switch_on;
 use crate::panels::voltage_bar::voltage_bar;
 use crate::parts::el::{button, el, several};
+use crate::reckoner::pulses::Wanted;
+use crate::reckoner::{Answer, Ask};
 use lampladder_core::link;
 use lampladder_core::readings::MeterSpec;
 
@@ -79,6 +81,21 @@ pub fn App(props: &AppProps) -> Html {
         use_effect_with((bench.answers.clone(), further), move |(_, further)| {
             let next = further.then(|| NextFrame::new(move || dispatcher.dispatch(Msg::AskFurther)));
             move || drop(next)
+        });
+    }
+    {
+        let dispatcher = bench.dispatcher();
+        use_effect_with((bench.setup.clone(), bench.unpulsed()), move |(setup, conditions)| {
+            if conditions.is_empty() {
+                return;
+            }
+            let wanted = Wanted { setup: link::encode(setup), conditions: conditions.clone() };
+            // Without the reckoner it is said that the lamps pulse, and no more.
+            reckoner::ask(Ask::Pulses(wanted), move |answer| {
+                if let Ok(Answer::Pulse(news)) = answer {
+                    dispatcher.dispatch(Msg::Pulse(*news));
+                }
+            });
         });
     }
     use_effect_with(bench.theme, |light| theme::apply(*light));

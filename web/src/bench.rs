@@ -5,14 +5,17 @@ use std::rc::Rc;
 use lampladder_core::condition::Condition;
 use lampladder_core::error::InputError;
 use lampladder_core::family::{self, Family};
+use lampladder_core::hunt::Pulse;
 use lampladder_core::lamp::Fill;
 use lampladder_core::link::LinkError;
 use lampladder_core::readings::MeterSpec;
 use lampladder_core::setup::Setup;
+use lampladder_core::steady::Outcome;
 use yew::UseReducerHandle;
 
 use crate::answers::Answers;
 use crate::draft::{Draft, Fault, Place, Slot};
+use crate::reckoner::pulses;
 use crate::replay::Wish;
 use crate::seen::{Deed, Seen};
 use crate::words::{Language, Words};
@@ -112,6 +115,8 @@ pub struct Bench {
     pub setup: Rc<Setup>,
     /// The answers to it.
     pub answers: Rc<Answers>,
+    /// How the lamps pulse in conditions in which the equipment hunts, as far as the reckoner has told.
+    pub pulses: Vec<(Condition, Option<Pulse>)>,
     /// What is wrong with what is typed; empty while it is the set-up.
     pub faults: Vec<(Slot, Fault)>,
     /// Whether the person has changed anything since it was opened.
@@ -171,6 +176,8 @@ pub enum Msg {
     AddPoint,
     /// A measured point less.
     RemovePoint(usize),
+    /// The reckoner tells how the lamps pulse.
+    Pulse(pulses::News),
     /// There is a moment to ask about one more condition.
     AskFurther,
     /// Show this condition on the loop.
@@ -215,6 +222,7 @@ impl Bench {
             draft: Draft::of(&setup, language.words().numerals),
             setup: Rc::new(setup),
             answers,
+            pulses: Vec::new(),
             faults: Vec::new(),
             edited: false,
             condition: Condition::Healthy,
@@ -247,6 +255,18 @@ impl Bench {
     /// What stands in a field.
     pub fn text(&self, slot: Slot) -> &str {
         self.seen.text(slot).unwrap_or_else(|| self.draft.text(slot))
+    }
+
+    /// The conditions in which the equipment hunts and nothing is known yet of how the lamps pulse.
+    pub fn unpulsed(&self) -> Vec<Condition> {
+        let known = |condition: &Condition| self.pulses.iter().any(|(other, _)| other == condition);
+        let hunts = |condition: &Condition| self.answers.outcome(*condition) == Some(Outcome::Hunts);
+        self.answers.asked().filter(|condition| hunts(condition) && !known(condition)).collect()
+    }
+
+    /// How the lamps pulse in a condition, where that is known.
+    pub fn pulse(&self, condition: Condition) -> Option<&Pulse> {
+        self.pulses.iter().find(|(other, _)| *other == condition)?.1.as_ref()
     }
 
     /// Whether the result shown is not that of what is typed.

@@ -53,6 +53,7 @@ pub mod browser;
 pub mod charts;
 pub mod describe;
 pub mod draft;
+pub mod flare;
 pub mod format;
 mod keeper;
 pub mod log;

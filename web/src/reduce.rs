@@ -4,7 +4,7 @@ use std::rc::Rc;
 
 use lampladder_core::bank::Bank;
 use lampladder_core::condition::Condition;
-use lampladder_core::link::LinkError;
+use lampladder_core::link::{self, LinkError};
 use lampladder_core::setup::Setup;
 use yew::Reducible;
 
@@ -40,6 +40,11 @@ impl Bench {
             Msg::Choose(place) => {
                 self.lamp = place;
                 self.refused = None;
+            }
+            Msg::Pulse(news) => {
+                if news.setup == link::encode(&self.setup) && self.unpulsed().contains(&news.condition) {
+                    self.pulses.push((news.condition, news.pulse));
+                }
             }
             Msg::AskFurther => {
                 if let Some(condition) = self.answers.unasked(self.setup.plate.family()) {
@@ -77,6 +82,7 @@ impl Bench {
         self.draft = Draft::of(&setup, self.words().numerals);
         self.setup = Rc::new(setup);
         self.answers = Rc::new(answers);
+        self.pulses.clear();
         self.faults.clear();
         self.keep_condition();
         self.seen.reread(&self.setup);
@@ -186,6 +192,7 @@ impl Bench {
                     self.faults.clear();
                     self.setup = Rc::new(setup);
                     self.answers = Rc::new(answers);
+                    self.pulses.clear();
                     self.keep_condition();
                     self.seen.reread(&self.setup);
                 }

@@ -6,6 +6,7 @@ use lampladder_core::detail::Detail;
 use lampladder_core::error::{Field, InputError};
 use lampladder_core::family::Family;
 use lampladder_core::glow::GlowWord;
+use lampladder_core::hunt::Pulse;
 use lampladder_core::lamp::Fill;
 use lampladder_core::link;
 use lampladder_core::quantity::QuantityError;
@@ -14,6 +15,7 @@ use lampladder_core::setup::Setup;
 use lampladder_web::advice::{Advice, Caution, advice, cautions};
 use lampladder_web::bench::{Bench, Msg, Note, Part, Refused, Unsuitable};
 use lampladder_web::draft::{Fault, LampPart, Place, Slot};
+use lampladder_web::reckoner::pulses::News;
 use lampladder_web::seen::Deed;
 
 fn bench() -> Bench {
@@ -275,4 +277,24 @@ fn a_motor_that_stands_or_turns_has_two_ways_to_come_to_rest() {
         bench.answers.stable(Condition::Healthy).len() == 2
     });
     assert!(two.is_some());
+}
+
+#[test]
+fn a_pulse_is_taken_for_the_set_up_that_it_was_worked_out_for() {
+    let hunting = bench().after(Msg::Family(Family::SwitchMode));
+    assert_eq!(hunting.unpulsed(), [Condition::Healthy, Condition::Overloaded]);
+    let pulse = Pulse { period_seconds: 0.8, brightest_kelvin: vec![1900.0], dimmest_kelvin: vec![700.0] };
+    let news = |setup: &Setup| {
+        Msg::Pulse(News {
+            setup: link::encode(setup),
+            condition: Condition::Healthy,
+            pulse: Some(pulse.clone()),
+        })
+    };
+    let told = hunting.clone().after(news(&hunting.setup));
+    assert_eq!(told.pulse(Condition::Healthy), Some(&pulse));
+    assert_eq!(told.unpulsed(), [Condition::Overloaded]);
+    let changed = told.after(typed(Slot::PlateWatts, "40"));
+    assert_eq!(changed.pulse(Condition::Healthy), None);
+    assert_eq!(changed.after(news(&hunting.setup)).pulse(Condition::Healthy), None);
 }

@@ -59,9 +59,9 @@ fn sentence(bench: &Bench) -> (String, String) {
         Advice::BurnsOut(place, condition) => {
             ((words.burns_out)(&describe::lamp(&bench.setup, place, words), condition), String::new())
         }
-        Advice::Pulses { seconds } => {
-            let period = seconds.map(|value| Band { value, low: value * 0.7, high: value * 1.3 });
-            let period = period.map(|band| words.numerals.value(&band, "s"));
+        Advice::Pulses => {
+            let period =
+                bench.pulse(Condition::Healthy).map(|pulse| words.numerals.duration(pulse.period_seconds));
             ((words.pulses)(period.as_deref()), String::new())
         }
         Advice::Stands { glow } => {

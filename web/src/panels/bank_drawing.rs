@@ -3,7 +3,9 @@
 use lampladder_core::lamp::Lamp;
 
 use crate::bench::Bench;
+use crate::browser::window::wants_stillness;
 use crate::draft::Place;
+use crate::flare;
 use crate::parts::el::{El, el};
 use crate::parts::svg::n;
 use crate::parts::well::{Filament, Well, well};
@@ -73,8 +75,12 @@ fn stack(bench: &Bench, column: usize, group: &[Lamp], room: Well) -> El {
 
 fn one(bench: &Bench, place: Place, lamp: &Lamp, at: Well) -> El {
     let shown = bench.answers.shown(bench.condition);
+    let flare = flare::flare(bench, bench.condition, place);
     let filament = match shown.and_then(|shown| shown.lamps.get(place.group)?.get(place.lamp)) {
         Some(lamp) => Filament::Glowing(lamp.glow),
+        None if flare.is_some() => {
+            flare.map_or(Filament::Unknown, |flare| flare::filament(flare, wants_stillness()))
+        }
         None if bench.answers.melting(bench.condition) == Some(place) => Filament::Broken,
         None => Filament::Unknown,
     };

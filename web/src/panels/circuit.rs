@@ -2,11 +2,13 @@
 
 use lampladder_core::bank::Bank;
 use lampladder_core::condition::Condition;
+use lampladder_core::steady::Outcome;
 
 use super::bank_drawing::{TOP, bank_drawing};
 use super::send;
 use crate::bench::{Bench, BenchHandle, Msg, Part};
 use crate::describe;
+use crate::flare;
 use crate::parts::el::{El, button, drawing, el, truth};
 use crate::parts::picture;
 use crate::parts::svg::n;
@@ -86,9 +88,15 @@ fn reading(bench: &Bench) -> El {
             .put("data-low", describe::full(amps.low))
             .put("data-high", describe::full(amps.high))
             .text(words.numerals.value(amps, "A")),
+        None if bench.answers.outcome(bench.condition) == Some(Outcome::Hunts) => number.text(words.pulsing),
         None => number.text(words.none),
     };
-    let range = amps.map(|amps| el("span").text(words.numerals.range(amps, "A")));
+    let range = match amps {
+        Some(amps) => Some(words.numerals.range(amps, "A")),
+        None => flare::brightest(bench, bench.condition)
+            .map(|(glow, seconds)| (words.pulse)(&words.numerals.duration(seconds), glow.word)),
+    };
+    let range = range.map(|range| el("span").text(range));
     let class = if bench.condition == Condition::Healthy { "condition" } else { "condition alarm" };
     el("p")
         .class("reading")

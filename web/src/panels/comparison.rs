@@ -6,7 +6,9 @@ use lampladder_core::steady::Outcome;
 use super::send;
 use crate::answers::{brightest, others};
 use crate::bench::{BenchHandle, Msg};
+use crate::browser::window::wants_stillness;
 use crate::describe::full;
+use crate::flare;
 use crate::parts::el::{El, button, el, truth};
 use crate::parts::well::{Filament, Well, lone};
 
@@ -38,14 +40,18 @@ fn cell(bench: &BenchHandle, condition: Condition) -> El {
     let name = condition.name();
     let shown = bench.answers.shown(condition);
     let lamp = shown.and_then(brightest).map(|(_, lamp)| lamp);
+    let flare = flare::brightest(bench, condition);
     let filament = match lamp {
         Some(lamp) => Filament::Glowing(lamp.glow),
+        None if flare.is_some() => {
+            flare.map_or(Filament::Unknown, |flare| flare::filament(flare, wants_stillness()))
+        }
         None if bench.answers.melting(condition).is_some() => Filament::Broken,
         None => Filament::Unknown,
     };
     let word = match (lamp, bench.answers.outcome(condition)) {
         (Some(lamp), _) => (words.glow)(lamp.glow.word),
-        (None, Some(Outcome::Hunts { .. })) => words.pulsing,
+        (None, Some(Outcome::Hunts)) => words.pulsing,
         (None, _) if filament == Filament::Broken => words.burnt,
         (None, None) => words.coming,
         _ => words.none,
@@ -55,6 +61,11 @@ fn cell(bench: &BenchHandle, condition: Condition) -> El {
         .with(el("strong").text((words.condition)(condition)))
         .with(lone(name, "0 0 96 54", CELL, filament))
         .with(el("span").class("word").text(word));
+    if let Some((glow, seconds)) = flare {
+        let every = (words.every)(&words.numerals.duration(seconds));
+        let figures = el("span").class("figures").with(el("b").text(every));
+        return cell.put("data-period", full(seconds)).set("data-glow", glow.word.name()).with(figures);
+    }
     let (Some(shown), Some(lamp)) = (shown, lamp) else { return cell };
     let figures = el("span")
         .class("figures")

@@ -22,6 +22,13 @@ pub struct Well {
 pub enum Filament {
     /// It glows (or not) like this.
     Glowing(Glow),
+    /// It flares up to this and goes out, over and over.
+    Pulsing {
+        /// At its brightest.
+        glow: Glow,
+        /// From one time to the next, seconds.
+        seconds: f64,
+    },
     /// It has melted.
     Broken,
     /// Nothing is known.
@@ -36,6 +43,11 @@ const COLD: [u8; 3] = [118, 108, 96];
 pub fn well(id: &str, at: Well, filament: Filament) -> El {
     let corner = (at.height * 0.2).min(at.width * 0.2).min(14.0);
     let group = el("g").with(rect(at, corner).class("well"));
+    if let Filament::Pulsing { glow, seconds } = filament {
+        let lit = Filament::Glowing(glow);
+        let light = halo(id, at, lit).into_iter().fold(el("g"), El::with);
+        return coil(group, at, Filament::Unknown).with(coil(light, at, lit).with(pulse(seconds)));
+    }
     let group = halo(id, at, filament).into_iter().fold(group, El::with);
     coil(group, at, filament)
 }
@@ -43,6 +55,16 @@ pub fn well(id: &str, at: Well, filament: Filament) -> El {
 /// A drawing with nothing but a lamp in it.
 pub fn lone(id: &str, view_box: &'static str, at: Well, filament: Filament) -> El {
     super::el::drawing(view_box).with(well(id, at, filament))
+}
+
+/// Light that comes and goes. How it does in between is not computed here: the replay shows that.
+fn pulse(seconds: f64) -> El {
+    el("animate")
+        .set("attributeName", "opacity")
+        .set("values", "0;1;0.5;0;0")
+        .set("keyTimes", "0;0.15;0.35;0.6;1")
+        .put("dur", n(seconds) + "s")
+        .set("repeatCount", "indefinite")
 }
 
 fn rect(at: Well, corner: f64) -> El {

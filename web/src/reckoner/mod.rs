@@ -7,6 +7,7 @@
 //! For each [`Subject`] only the newest question counts: a [`Desk`] drops the work for an older one.
 
 pub mod diagnosis;
+pub mod pulses;
 pub mod runs;
 
 use serde::{Deserialize, Serialize};
@@ -18,6 +19,8 @@ use crate::log;
 pub enum Ask {
     /// The first seconds.
     Replay(runs::Wanted),
+    /// How lamps pulse.
+    Pulses(pulses::Wanted),
     /// What readings mean.
     Diagnosis(diagnosis::Taken),
     /// Something of the stored log: no work, but the reckoner's program has room for what it takes.
@@ -29,6 +32,8 @@ pub enum Ask {
 pub enum Answer {
     /// One run of a replay.
     Replay(Box<runs::News>),
+    /// How the lamps pulse in one condition.
+    Pulse(Box<pulses::News>),
     /// What readings mean.
     Diagnosis(Box<diagnosis::News>),
     /// What has become of the stored log.
@@ -42,6 +47,8 @@ pub enum Answer {
 pub enum Subject {
     /// The first seconds.
     Replay,
+    /// How lamps pulse.
+    Pulses,
     /// What readings mean.
     Diagnosis,
     /// The stored log.
@@ -53,6 +60,7 @@ impl Ask {
     pub const fn subject(&self) -> Subject {
         match self {
             Self::Replay(_) => Subject::Replay,
+            Self::Pulses(_) => Subject::Pulses,
             Self::Diagnosis(_) => Subject::Diagnosis,
             Self::Log(_) => Subject::Log,
         }
@@ -96,6 +104,7 @@ struct Seat<T> {
 #[derive(Debug, Default)]
 pub struct Desk {
     replay: Option<Seat<runs::Runs>>,
+    pulses: Option<Seat<pulses::Pulsing>>,
     diagnosis: Option<Seat<diagnosis::Diagnosing>>,
 }
 
@@ -109,6 +118,9 @@ impl Desk {
                     .map(|task| self.replay = Some(Seat { number, busy: true, task }))
                     .is_ok()
             }
+            Ask::Pulses(wanted) => pulses::Pulsing::new(wanted)
+                .map(|task| self.pulses = Some(Seat { number, busy: true, task }))
+                .is_ok(),
             // That is for whoever has a store.
             Ask::Log(_) => false,
             Ask::Diagnosis(taken) => {
@@ -124,12 +136,16 @@ impl Desk {
     /// Whether there is anything to do.
     pub fn is_busy(&self) -> bool {
         self.replay.as_ref().is_some_and(|seat| seat.busy)
+            || self.pulses.as_ref().is_some_and(|seat| seat.busy)
             || self.diagnosis.as_ref().is_some_and(|seat| seat.busy)
     }
 
-    /// Goes on for a stretch; what there is to tell. A diagnosis is short, so a replay waits for it.
+    /// Goes on for a stretch; what there is to tell. What is short goes first.
     pub fn go_on(&mut self, clock: Clock<'_>) -> Option<(Number, Answer)> {
         if let Some(seat) = self.diagnosis.as_mut().filter(|seat| seat.busy) {
+            return seat.go_on(clock);
+        }
+        if let Some(seat) = self.pulses.as_mut().filter(|seat| seat.busy) {
             return seat.go_on(clock);
         }
         self.replay.as_mut().and_then(|seat| seat.go_on(clock))

@@ -125,6 +125,8 @@ pub(super) static WORDS: Words = Words {
     },
     burnt: "burns out",
     pulsing: "pulses",
+    every: |seconds| format!("every {seconds}"),
+    pulse: |seconds, word| format!("every {seconds}, up to {}", glow(word)),
     life: |least, most| {
         if least == most { String::from("as rated") } else { format!("{least} to {most} times the rated") }
     },

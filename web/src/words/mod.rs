@@ -191,6 +191,10 @@ pub struct Words {
     pub over_rated: fn(&str, Condition, &str, &str) -> String,
     /// It pulses, in a cell.
     pub pulsing: &'static str,
+    /// How often, in a cell.
+    pub every: fn(&str) -> String,
+    /// How often, and how bright at most, on the loop.
+    pub pulse: fn(&str, GlowWord) -> String,
     /// Burnt out, in a cell.
     pub burnt: &'static str,
     /// Life between two ratios to the rated.
