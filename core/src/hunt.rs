@@ -43,6 +43,9 @@ pub struct Pulse {
 impl Pulse {
     /// What the record of a run shows between two times.
     fn between(samples: &[Sample], from: f64, to: f64, period_seconds: f64) -> Self {
+        // Pulses within a mains cycle fall between two samples: a filament hardly follows them, so a few more will do.
+        let spacing = samples.get(1).map_or(0.0, |second| second.seconds);
+        let from = from.min(to - 4.0 * spacing);
         let within = |sample: &&Sample| (from..=to).contains(&sample.seconds);
         let lamps = samples.first().map_or(0, |sample| sample.lamp_kelvin.len());
         let kelvins = |lamp: usize| samples.iter().filter(within).map(move |sample| sample.lamp_kelvin[lamp]);

@@ -56,7 +56,8 @@ proptest! {
         prop_assume!(solved.outcome == Outcome::Hunts);
         let Some(pulse) = hunt::pulse(&supply, &bank, &load) else { return Ok(()) };
         let period = pulse.period_seconds;
-        prop_assert!(pulse.dimmest_kelvin[0] < pulse.brightest_kelvin[0]);
+        let (dim, bright) = (pulse.dimmest_kelvin[0], pulse.brightest_kelvin[0]);
+        prop_assert!(299.0 < dim && dim <= bright && bright < 3600.0, "{pulse:?}");
         let Some(theirs) = simulated(&supply, &bank, &load, (8.0 * period + 1.0).min(30.0)) else { return Ok(()) };
         let off = (period - theirs).abs();
         prop_assert!(off <= 1.0 / supply.hertz() + SHARE * theirs, "{period} s, in the time domain {theirs} s");
