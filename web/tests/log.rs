@@ -40,7 +40,7 @@ async fn script(body: &str) -> JsValue {
 async fn clear() {
     script(
         "await new Promise((done, fail) => { const r = indexedDB.deleteDatabase('lampladder.log'); \
-         r.onsuccess = done; r.onerror = fail; r.onblocked = fail })",
+         r.onsuccess = done; r.onerror = fail })",
     )
     .await;
 }
