@@ -49,7 +49,8 @@ fn main() -> Result<()> {
         let median = report(&format!("{name}, {conditions}, times 6"), first)?;
         report("  one reading more", more)?;
         // More conditions than the budget is for have as much more.
-        if median > BUDGET * (conditions as f64 / 8.0).max(1.0) {
+        let share = f64::from(u32::try_from(conditions)?) / 8.0;
+        if median > BUDGET * share.max(1.0) {
             over.push(name);
         }
     }

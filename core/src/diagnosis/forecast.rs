@@ -42,7 +42,8 @@ pub(crate) struct Cluster {
     /// Standard deviations on those scales of the model and of what it leaves open.
     pub(crate) open: [f64; QUANTITIES],
     pub(crate) mean: [f64; QUANTITIES],
-    pub(crate) covariance: [[f64; QUANTITIES]; QUANTITIES],
+    /// Sums of products of differences from the mean; the lower triangle.
+    moments: [[f64; QUANTITIES]; QUANTITIES],
     ending: Ending,
 }
 
@@ -125,9 +126,6 @@ impl Forecast {
             self.solve_bench(self.done);
             self.done += 1;
         }
-        for cluster in &mut self.clusters {
-            cluster.summarise();
-        }
         self.is_complete()
     }
 
@@ -180,17 +178,19 @@ impl Forecast {
             let (ending, values, open) = bench.expected(&sketched, self.averaging);
             let known = self.clusters.iter_mut().find(|one| one.condition == place && one.ending == ending);
             if let Some(cluster) = known {
-                cluster.members.push(values);
+                cluster.add(values);
             } else {
-                self.clusters.push(Cluster {
+                let mut cluster = Cluster {
                     condition: place,
                     behaviours: behaviours(setup.plate.family(), condition, ending),
-                    members: alloc::vec![values],
+                    members: Vec::new(),
                     open,
                     mean: [0.0; QUANTITIES],
-                    covariance: [[0.0; QUANTITIES]; QUANTITIES],
+                    moments: [[0.0; QUANTITIES]; QUANTITIES],
                     ending,
-                });
+                };
+                cluster.add(values);
+                self.clusters.push(cluster);
             }
         }
     }
@@ -275,31 +275,28 @@ impl Solved<'_> {
 }
 
 impl Cluster {
-    /// Mean and covariance of the members.
-    fn summarise(&mut self) {
-        #[expect(clippy::cast_precision_loss, reason = "at most 65 536 benches")]
-        let count = self.members.len() as f64;
-        let mut mean = [0.0; QUANTITIES];
-        for member in &self.members {
-            for (sum, value) in mean.iter_mut().zip(member) {
-                *sum += value / count;
-            }
-        }
-        let mut covariance = [[0.0; QUANTITIES]; QUANTITIES];
-        for member in &self.members {
-            for row in 0..QUANTITIES {
-                for column in 0..=row {
-                    covariance[row][column] +=
-                        (member[row] - mean[row]) * (member[column] - mean[column]) / count;
-                }
-            }
-        }
+    /// Takes in a bench. Mean and moments follow bench by bench (B. P. Welford, Technometrics 4 (1962) 419), so a forecast in
+    /// slices costs no more than a whole one.
+    fn add(&mut self, values: [f64; QUANTITIES]) {
+        self.members.push(values);
+        let count = self.count();
         for row in 0..QUANTITIES {
-            for column in 0..row {
-                covariance[column][row] = covariance[row][column];
+            let off = values[row] - self.mean[row];
+            self.mean[row] += off / count;
+            // Columns up to here have their new mean already.
+            for column in 0..=row {
+                self.moments[row][column] += off * (values[column] - self.mean[column]);
             }
         }
-        self.mean = mean;
-        self.covariance = covariance;
+    }
+
+    #[expect(clippy::cast_precision_loss, reason = "at most 65 536 benches")]
+    fn count(&self) -> f64 {
+        self.members.len() as f64
+    }
+
+    /// Covariance of two quantities over the members.
+    pub(crate) fn covariance(&self, one: usize, other: usize) -> f64 {
+        self.moments[one.max(other)][one.min(other)] / self.count()
     }
 }

@@ -9,7 +9,7 @@ use serde::{Deserialize, Serialize};
 
 use super::forecast::Forecast;
 use super::scale::{LOOK, reading_deviation, scaled_deviation, unscaled};
-use super::weigh::{Evidence, View, Weighed};
+use super::weigh::{Evidence, Member, View, Weighed};
 use crate::condition::Condition;
 use crate::readings::{Behaviour, Kind, Meter, Readings};
 
@@ -78,6 +78,28 @@ pub struct Next {
 /// Outcomes that are tried of each candidate.
 const OUTCOMES: usize = 32;
 
+/// Benches that stand for all of them while outcomes are tried: enough that a condition of half a per cent has one.
+const STANDING: usize = 384;
+
+/// The benches themselves where they are few; else as many of equal weight, picked at even steps of it.
+fn standing(members: &[Member]) -> Vec<Member> {
+    if members.len() <= STANDING {
+        return members.to_vec();
+    }
+    #[expect(clippy::cast_precision_loss, reason = "a few hundred")]
+    let all = STANDING as f64;
+    let mut found = Vec::with_capacity(STANDING);
+    let mut passed = 0.0;
+    for member in members {
+        passed += member.weight;
+        #[expect(clippy::cast_precision_loss, reason = "a few hundred")]
+        while found.len() < STANDING && (found.len() as f64 + 0.5) < passed * all {
+            found.push(Member { weight: 1.0 / all, ..*member });
+        }
+    }
+    found
+}
+
 /// Every reading that was not taken yet, the most telling first.
 pub(crate) fn candidates(
     forecast: &Forecast,
@@ -86,18 +108,19 @@ pub(crate) fn candidates(
     weighed: &Weighed,
 ) -> Vec<Next> {
     let meter = readings.numbers().next().map_or_else(Meter::usual, |reading| *reading.meter());
+    let members = standing(&weighed.members);
     let mut found = Vec::new();
     for kind in Kind::ALL {
         let known = kind == Kind::SupplyVolts && forecast.supply_is_read;
         if readings.get(kind).is_none() && !known {
             let deviation = |value: f64| reading_deviation(kind, value, &meter, readings.drift());
-            found.push(number(forecast, evidence, weighed, kind.index(), &deviation));
+            found.push(number(forecast, evidence, &members, kind.index(), &deviation));
         }
     }
     if readings.look().is_none() {
         // A word's range and a glance.
         let deviation = |kelvin: f64| scaled_deviation(LOOK, kelvin, 0.1 * kelvin);
-        found.push(number(forecast, evidence, weighed, LOOK, &deviation));
+        found.push(number(forecast, evidence, &members, LOOK, &deviation));
     }
     if readings.behaviour().is_none() {
         found.push(behaviour(forecast, weighed));
@@ -126,7 +149,7 @@ struct Expected {
 fn number(
     forecast: &Forecast,
     evidence: &Evidence,
-    weighed: &Weighed,
+    members: &[Member],
     place: usize,
     deviation: &dyn Fn(f64) -> f64,
 ) -> Next {
@@ -141,8 +164,7 @@ fn number(
             View::new(cluster, &places, &deviations)
         })
         .collect();
-    let expected: Vec<Expected> = weighed
-        .members
+    let expected: Vec<Expected> = members
         .iter()
         .map(|member| {
             let view = &views[member.cluster];
@@ -154,7 +176,11 @@ fn number(
         .collect();
     let mut outcomes = outcomes(&expected);
     outcomes.sort_by(f64::total_cmp);
-    let conditions = weighed.conditions.len();
+    let conditions = forecast.conditions().len();
+    let mut before = alloc::vec![0.0; conditions];
+    for one in &expected {
+        before[one.condition] += one.weight;
+    }
     let mut after = 0.0;
     let mut meanings: Vec<Meaning> = Vec::new();
     #[expect(clippy::cast_precision_loss, reason = "a few dozen")]
@@ -183,7 +209,7 @@ fn number(
         }
     }
     let candidate = Kind::ALL.get(place).map_or(Candidate::Look, |&kind| Candidate::Number(kind));
-    Next { candidate, bits: (entropy(&weighed.conditions) - after).max(0.0), meanings }
+    Next { candidate, bits: (entropy(&before) - after).max(0.0), meanings }
 }
 
 /// Outcomes of equal probability: benches picked at even steps of their weight, each a little off its middle.

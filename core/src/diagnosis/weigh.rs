@@ -78,7 +78,7 @@ impl<'a> View<'a> {
         let mut ln_scale = 0.0;
         for (row, &place) in places.iter().enumerate() {
             for (column, &other) in places.iter().enumerate().take(row + 1) {
-                let mut sum = square * cluster.covariance[place][other];
+                let mut sum = square * cluster.covariance(place, other);
                 if row == column {
                     let (open, read) = (cluster.open[place], deviations[row]);
                     sum += open * open + read * read + LEAST_DEVIATION * LEAST_DEVIATION;
