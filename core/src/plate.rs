@@ -216,6 +216,33 @@ mod tests {
     }
 
     #[test]
+    fn a_contradiction_is_told_with_both_sides_and_the_limit() {
+        use alloc::string::ToString;
+        let told = |spec: PlateSpec| Plate::from_spec(spec).expect_err("a contradiction").to_string();
+        let bare = PlateSpec { watts: Some(45.0), ..PlateSpec::new(Family::Plain, 230.0) };
+        // 45 W at power factor 1 are 0.196 A, 15 % more with rounding.
+        let torn = PlateSpec { amps: Some(2.0), power_factor: Some(1.0), ..bare.clone() };
+        assert_eq!(told(torn), "amps of 2.0 A contradicts watts, which allows at most 0.22499999999999998");
+        let torn = PlateSpec { volt_amps: Some(30.0), ..bare.clone() };
+        assert_eq!(told(torn), "watts of 45.0 W contradicts volt_amps, which allows at most 34.5");
+        for factor in [0.0, -0.5, 1.5] {
+            let torn = PlateSpec { power_factor: Some(factor), ..bare.clone() };
+            assert_eq!(told(torn), alloc::format!("power_factor must be from 0.05 to 1, not {factor:?}"));
+        }
+        let torn = PlateSpec { power_factor: Some(f64::NAN), ..bare };
+        assert_eq!(told(torn), "power_factor must be a finite number");
+        // A converter that would stop at more than it starts at.
+        let details = alloc::vec![(Detail::StartVolts, 100.0), (Detail::StopVolts, 200.0)];
+        let spec = PlateSpec { watts: Some(45.0), details, ..PlateSpec::new(Family::SwitchMode, 230.0) };
+        let plate = Plate::from_spec(spec).expect("each in its own range");
+        let refused = plate.load(Condition::Healthy, 1.0).expect_err("the two together");
+        assert_eq!(
+            refused.to_string(),
+            "stop_volts of 200.0 V contradicts start_volts, which allows at most 100.0"
+        );
+    }
+
+    #[test]
     fn a_heater_has_no_power_factor_but_one() {
         assert!(Plate::new(Family::Heater, 230.0, 1000.0, Some(0.8)).is_err());
         assert!(Plate::new(Family::Heater, 230.0, 1000.0, Some(1.0)).is_ok());

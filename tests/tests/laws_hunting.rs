@@ -33,6 +33,29 @@ fn converter() -> impl Strategy<Value = Load> {
     })
 }
 
+#[test]
+fn a_supply_below_the_start_voltage_starts_behind_no_lamps_at_all() {
+    // The class default starts at 99 V on the reservoir, some 71 V of mains.
+    for family in [Family::SwitchMode, Family::SwitchModeCorrected] {
+        let adapter = Plate::new(family, 230.0, 20.0, None).expect("a plate");
+        let load = adapter.load(Condition::Healthy, 1.0).expect("its own");
+        for watts in [15.0, 200.0, 5000.0] {
+            let bank = Bank::single(Lamp::new(230.0, watts).expect("a lamp"));
+            let outcome = |volts: f64| {
+                let supply = Supply::new(volts, 50.0, 0.0).expect("in range");
+                let solved = steady::solve(&supply, &bank, &load).expect("solvable");
+                let dc_volts = solved.settled().and_then(|point| point.load_dc_volts);
+                (solved.outcome, dc_volts)
+            };
+            let (below, dc_volts) = outcome(65.0);
+            assert_eq!(below, Outcome::DoesNotStart, "{watts} W");
+            // What is told with it: the reservoir's volts, which stay below the start.
+            assert!(dc_volts.is_some_and(|volts| volts > 85.0 && volts < 99.0), "{dc_volts:?}");
+            assert_ne!(outcome(75.0).0, Outcome::DoesNotStart, "{watts} W");
+        }
+    }
+}
+
 /// The middle one of the later half of all pulses, seconds; none where there are fewer than three.
 fn simulated(supply: &Supply, bank: &Bank, load: &Load, seconds: f64) -> Option<f64> {
     let options =

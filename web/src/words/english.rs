@@ -94,7 +94,7 @@ pub(super) static WORDS: Words = Words {
     stands: |glow| format!("Expect {glow}: a healthy motor stands still on this voltage, hums and heats."),
     looks_shorted: "A healthy set looks shorted behind these lamps: they cannot warm its degauss thermistor.",
     larger: "Use larger lamps.",
-    does_not_start: "Healthy equipment does not start behind these lamps. Use larger ones.",
+    does_not_start: "Healthy equipment does not start: the supply stays below its start voltage. Other lamps do not help.",
     hard_to_tell: "Healthy and faulty look alike behind these lamps. Use larger ones, or more in parallel.",
     expect: |glow, amps| format!("Expect {glow}, about {amps}."),
     off_if_brighter: |word| {

@@ -72,8 +72,9 @@ pub(super) fn fault(which: Slot, fault: &Fault) -> String {
         Fault::Number(InputError::Missing { .. }) => {
             format!("{name} is empty. Watts, amps or volt-amps: one of them is needed.")
         }
-        Fault::Number(InputError::Conflict { field, limit, .. }) => {
-            format!("{name} can be at most {} here.", NUMERALS.quantity(*limit, field.unit()))
+        Fault::Number(InputError::Conflict { field, with, limit, .. }) => {
+            let limit = NUMERALS.quantity(*limit, field.unit());
+            format!("{name} can be at most {limit} with the {} given.", with.name().replace('_', " "))
         }
         Fault::NoUnit => format!("{name} has no unit, and that makes it doubtful. Which did you mean?"),
         Fault::Number(InputError::NeedsAlternating { .. }) => String::from(
@@ -97,6 +98,15 @@ fn range(name: &str, unit: &str, low: f64, high: f64) -> String {
 #[cfg(test)]
 mod tests {
     use super::*;
+
+    #[test]
+    fn a_contradiction_names_the_other_number() {
+        use lampladder_core::error::Field;
+        let (field, with) = (Field::Watts, Field::VoltAmps);
+        let fault = Fault::Number(InputError::Conflict { field, value: 45.0, with, limit: 30.0 });
+        let told = super::fault(Slot::PlateWatts, &fault);
+        assert!(told.ends_with("with the volt amps given."), "{told}");
+    }
 
     #[test]
     fn a_number_out_of_range_is_told_with_its_range() {
