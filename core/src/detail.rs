@@ -106,7 +106,7 @@ impl Detail {
 }
 
 /// How a default is known.
-#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum Standing {
     /// Read in a document that quotes the source.

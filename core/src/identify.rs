@@ -7,6 +7,8 @@
 use alloc::vec::Vec;
 use core::fmt;
 
+use serde::{Deserialize, Serialize};
+
 use crate::band::{Band, COVERAGE};
 use crate::calibrate::{COLD_OHMS_DEVIATION, POINT_DEVIATION};
 use crate::error::{Field, InputError, within};
@@ -36,7 +38,7 @@ pub struct Match {
 }
 
 /// Why no rating is named.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum IdentifyError {
     /// A number that has no meaning here.

@@ -29,6 +29,8 @@ pub use pool::MOST_LAMPS;
 pub use refusal::{LadderError, WayForward};
 pub use signs::{GoOn, Level, Signs, Stop};
 
+use serde::{Deserialize, Serialize};
+
 use self::missing::Reached;
 use self::pool::{Candidate, Pool};
 use self::search::{Blocked, Path, Question};
@@ -45,7 +47,7 @@ use crate::stock::Stock;
 use crate::supply::Supply;
 
 /// Why a rung stands where it does.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum Reason {
     /// It passes no more than the equipment stands when shorted.

@@ -2,6 +2,8 @@
 
 use alloc::vec::Vec;
 
+use serde::{Deserialize, Serialize};
+
 use crate::calibrate::{self, Evidence};
 use crate::defaults;
 use crate::error::{Field, InputError, within};
@@ -36,7 +38,7 @@ impl Fill {
 }
 
 /// Volts across a lamp and amperes through it, measured together.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 pub struct Point {
     /// RMS or DC volts.
     pub volts: f64,

@@ -14,6 +14,8 @@ use core::fmt;
 
 pub(crate) use sketch::{Sketch, Sketched, Warm, sketch};
 
+use serde::{Deserialize, Serialize};
+
 use crate::bank::{Bank, BankPoint, Step, Walk};
 use crate::error::InputError;
 use crate::filament::Filament;
@@ -86,7 +88,7 @@ pub(crate) fn settled(equilibria: &[Equilibrium]) -> Option<&Equilibrium> {
 }
 
 /// Why there is no answer.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum SteadyError {
     /// A number that has no meaning here.

@@ -17,6 +17,8 @@ mod warning;
 
 pub use warning::{MOST_BANK_AMPS, Unsuitable, Warning};
 
+use serde::{Deserialize, Serialize};
+
 use crate::condition::Condition;
 use crate::detail::{ClassDefault, Detail};
 use crate::error::InputError;
@@ -24,7 +26,7 @@ use crate::load::Load;
 use crate::plate::Plate;
 
 /// A kind of equipment, by what it does to the circuit.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum Family {
     /// A mains transformer, rectifier and reservoir: most radios and amplifiers.

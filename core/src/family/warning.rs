@@ -1,5 +1,7 @@
 //! Equipment that a series lamp misleads on, and equipment that it must not be used for.
 
+use serde::{Deserialize, Serialize};
+
 use super::Family;
 
 /// What must be said before any number about a family.
@@ -23,7 +25,7 @@ pub enum Warning {
 }
 
 /// Equipment that is refused, by its reason.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum Unsuitable {
     /// Lethal stored energy at kilovolts, whatever limits its input.

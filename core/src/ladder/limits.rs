@@ -1,5 +1,7 @@
 //! What a ladder must keep to: design values, each of which the person can change.
 
+use serde::{Deserialize, Serialize};
+
 use crate::error::{Field, InputError, within};
 use crate::plate::Plate;
 use crate::supply::Supply;
@@ -78,7 +80,7 @@ pub struct Limits {
 }
 
 /// Where the limit of the first rung comes from.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum FirstFrom {
     /// The plate's current, times [`LimitsSpec::first_share`].
@@ -101,7 +103,7 @@ impl FirstFrom {
 }
 
 /// The greatest short-circuit current of a first rung.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 pub struct FirstLimit {
     /// Amperes.
     pub amps: f64,

@@ -1,5 +1,7 @@
 //! Which single lamp would improve a ladder most.
 
+use serde::{Deserialize, Serialize};
+
 use super::limits::Limits;
 use super::pool::Pool;
 use super::search::{Path, Question};
@@ -9,7 +11,7 @@ use crate::stock::Stock;
 use crate::supply::Supply;
 
 /// A printed rating.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 pub struct Rating {
     /// Volts.
     pub volts: f64,
@@ -18,7 +20,7 @@ pub struct Rating {
 }
 
 /// A lamp to look for.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 pub struct Missing {
     /// What should be printed on it.
     pub rating: Rating,
@@ -27,7 +29,7 @@ pub struct Missing {
 }
 
 /// What one lamp more would change.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum Gain {
     /// There would be a ladder at all.

@@ -3,13 +3,15 @@
 use alloc::vec::Vec;
 use core::fmt;
 
+use serde::{Deserialize, Serialize};
+
 use super::missing::{Missing, Rating};
 use crate::error::InputError;
 use crate::family::{Family, Unsuitable};
 use crate::steady::SteadyError;
 
 /// Why there is no ladder.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum LadderError {
     /// No lamp in the stock.

@@ -2,6 +2,8 @@
 
 use alloc::vec::Vec;
 
+use serde::{Deserialize, Serialize};
+
 use crate::band::Band;
 use crate::condition::Condition;
 use crate::expect::{self, Prospect, Shown};
@@ -11,7 +13,7 @@ use crate::setup::Setup;
 use crate::steady::{self, Outcome, SteadyError};
 
 /// One level of everything that can be watched. Volts and amperes RMS, or DC.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 pub struct Level {
     /// Volts across the bank.
     pub bank_volts: f64,
@@ -24,7 +26,7 @@ pub struct Level {
 }
 
 /// What healthy equipment comes to on a rung.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum GoOn {
     /// Steady between two levels: the ends of the healthy 95 % band. Below the first, less flows than it should: a
@@ -45,7 +47,7 @@ pub enum GoOn {
 }
 
 /// From where on a fault shows.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 pub struct Stop {
     /// Steady at this level or beyond it: switch off. Halfway from the most that healthy equipment shows to the least
     /// that `fault` shows; at the former where their bands meet.
@@ -57,7 +59,7 @@ pub struct Stop {
 }
 
 /// The signs of one rung.
-#[derive(Debug, Clone, PartialEq)]
+#[derive(Debug, Clone, PartialEq, Serialize, Deserialize)]
 pub struct Signs {
     /// When to go on to the next rung.
     pub go_on: GoOn,

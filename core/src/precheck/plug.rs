@@ -8,6 +8,8 @@
 
 use alloc::vec::Vec;
 
+use serde::{Deserialize, Serialize};
+
 use crate::detail::{Detail, Standing};
 use crate::error::{Field, InputError, within};
 use crate::family::Family;
@@ -15,7 +17,7 @@ use crate::lamp::Lamp;
 use crate::plate::Plate;
 
 /// What an ohmmeter's current takes its way through.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum Path {
     /// The copper of a transformer's primary.
@@ -40,7 +42,7 @@ pub enum Path {
 }
 
 /// What a resistance means.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash)]
+#[derive(Debug, Clone, Copy, PartialEq, Eq, Hash, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum PlugFinding {
     /// As healthy equipment reads.
@@ -52,7 +54,7 @@ pub enum PlugFinding {
 }
 
 /// A range of readings that means something.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 pub struct PlugRange {
     /// What it means.
     pub finding: PlugFinding,

@@ -7,8 +7,10 @@
 //! For each [`Subject`] only the newest question counts: a [`Desk`] drops the work for an older one.
 
 pub mod diagnosis;
+pub mod ladder;
 pub mod pulses;
 pub mod runs;
+pub mod unknown;
 
 use serde::{Deserialize, Serialize};
 
@@ -25,6 +27,10 @@ pub enum Ask {
     Diagnosis(diagnosis::Taken),
     /// Something of the stored log: no work, but the reckoner's program has room for what it takes.
     Log(log::Order),
+    /// The rungs.
+    Ladder(ladder::Wanted),
+    /// A lamp without a legible rating.
+    Unknown(unknown::Measured),
 }
 
 /// What is answered: once, or piece by piece.
@@ -38,6 +44,10 @@ pub enum Answer {
     Diagnosis(Box<diagnosis::News>),
     /// What has become of the stored log.
     Log(Box<log::News>),
+    /// A piece of the ladder.
+    Ladder(Box<ladder::News>),
+    /// The ratings that fit.
+    Unknown(unknown::Fits),
     /// The question cannot be read: page and reckoner are of different versions.
     Unreadable,
 }
@@ -53,6 +63,10 @@ pub enum Subject {
     Diagnosis,
     /// The stored log.
     Log,
+    /// The ladder.
+    Ladder,
+    /// A lamp without a legible rating.
+    Unknown,
 }
 
 impl Ask {
@@ -63,6 +77,8 @@ impl Ask {
             Self::Pulses(_) => Subject::Pulses,
             Self::Diagnosis(_) => Subject::Diagnosis,
             Self::Log(_) => Subject::Log,
+            Self::Ladder(_) => Subject::Ladder,
+            Self::Unknown(_) => Subject::Unknown,
         }
     }
 }
@@ -106,6 +122,8 @@ pub struct Desk {
     replay: Option<Seat<runs::Runs>>,
     pulses: Option<Seat<pulses::Pulsing>>,
     diagnosis: Option<Seat<diagnosis::Diagnosing>>,
+    ladder: Option<Seat<ladder::Climb>>,
+    unknown: Option<Seat<unknown::Search>>,
 }
 
 impl Desk {
@@ -115,19 +133,26 @@ impl Desk {
             Ask::Replay(wanted) => {
                 let earlier = self.replay.take().map(|seat| seat.task);
                 runs::Runs::new(wanted, earlier)
-                    .map(|task| self.replay = Some(Seat { number, busy: true, task }))
+                    .map(|task| self.replay = Some(Seat::new(number, task)))
                     .is_ok()
             }
-            Ask::Pulses(wanted) => pulses::Pulsing::new(wanted)
-                .map(|task| self.pulses = Some(Seat { number, busy: true, task }))
-                .is_ok(),
+            Ask::Pulses(wanted) => {
+                pulses::Pulsing::new(wanted).map(|task| self.pulses = Some(Seat::new(number, task))).is_ok()
+            }
             // That is for whoever has a store.
             Ask::Log(_) => false,
             Ask::Diagnosis(taken) => {
                 let earlier = self.diagnosis.take().map(|seat| seat.task);
                 diagnosis::Diagnosing::new(taken, earlier)
-                    .map(|task| self.diagnosis = Some(Seat { number, busy: true, task }))
+                    .map(|task| self.diagnosis = Some(Seat::new(number, task)))
                     .is_ok()
+            }
+            Ask::Ladder(wanted) => {
+                ladder::Climb::new(&wanted).map(|task| self.ladder = Some(Seat::new(number, task))).is_ok()
+            }
+            Ask::Unknown(measured) => {
+                self.unknown = Some(Seat::new(number, unknown::Search::new(measured)));
+                true
             }
         };
         if taken { None } else { Some(Answer::Unreadable) }
@@ -135,13 +160,21 @@ impl Desk {
 
     /// Whether there is anything to do.
     pub fn is_busy(&self) -> bool {
-        self.replay.as_ref().is_some_and(|seat| seat.busy)
-            || self.pulses.as_ref().is_some_and(|seat| seat.busy)
+        self.ladder.as_ref().is_some_and(|seat| seat.busy)
+            || self.unknown.as_ref().is_some_and(|seat| seat.busy)
             || self.diagnosis.as_ref().is_some_and(|seat| seat.busy)
+            || self.pulses.as_ref().is_some_and(|seat| seat.busy)
+            || self.replay.as_ref().is_some_and(|seat| seat.busy)
     }
 
     /// Goes on for a stretch; what there is to tell. What is short goes first.
     pub fn go_on(&mut self, clock: Clock<'_>) -> Option<(Number, Answer)> {
+        if let Some(seat) = self.ladder.as_mut().filter(|seat| seat.busy) {
+            return seat.go_on(clock);
+        }
+        if let Some(seat) = self.unknown.as_mut().filter(|seat| seat.busy) {
+            return seat.go_on(clock);
+        }
         if let Some(seat) = self.diagnosis.as_mut().filter(|seat| seat.busy) {
             return seat.go_on(clock);
         }
@@ -153,6 +186,10 @@ impl Desk {
 }
 
 impl<T: Task> Seat<T> {
+    const fn new(number: Number, task: T) -> Self {
+        Self { number, busy: true, task }
+    }
+
     fn go_on(&mut self, clock: Clock<'_>) -> Option<(Number, Answer)> {
         if !self.busy {
             return None;
@@ -195,6 +232,18 @@ mod tests {
             }
         }
         assert_eq!(told, 4);
+    }
+
+    #[test]
+    fn short_work_does_not_wait_for_a_replay() {
+        let setup = lampladder_core::link::encode(&Setup::example().expect("in range"));
+        let stock = lampladder_core::link::encode_stock(&lampladder_core::stock::Stock::default());
+        let mut desk = Desk::default();
+        desk.put(1, replay());
+        desk.put(2, Ask::Ladder(ladder::Wanted { setup, stock }));
+        let first = desk.go_on(&|| 0.0);
+        assert!(matches!(first, Some((2, Answer::Ladder(_)))), "{first:?}");
+        assert!(desk.is_busy());
     }
 
     #[test]
