@@ -1,12 +1,15 @@
 //! The page: its state, what is kept of it, and its frame.
 
 use yew::{
-    Html, Properties, create_portal, function_component, html, use_effect_with, use_mut_ref, use_reducer,
+    Html, Properties, create_portal, function_component, hook, html, use_effect_with, use_mut_ref,
+    use_reducer,
 };
 
 use crate::bench::{Bench, BenchHandle, Msg, Note, Stage, Tab};
-use crate::browser::window::{Listener, NextFrame};
+use crate::browser::window::{EverySecond, Listener, NextFrame, clock};
 use crate::browser::{cautions, fragment, input, reckoner, storage, theme};
+use crate::climb::{Move, equipment};
+use crate::drawer::Shelf;
 use crate::keeper::use_keeper;
 use crate::meter;
 use crate::panels::advice::advice_panel;
@@ -15,6 +18,7 @@ use crate::panels::comparison::comparison;
 use crate::panels::curve::curve;
 use crate::panels::details::details;
 use crate::panels::frame::{CAUTIONS_BUTTON, header, notes, tabs};
+use crate::panels::ladder::ladder;
 use crate::panels::seen::seen;
 use crate::panels::send;
 use crate::panels::sheet::Sheet;
@@ -98,6 +102,7 @@ pub fn App(props: &AppProps) -> Html {
             });
         });
     }
+    use_ladder(&bench);
     use_effect_with(bench.theme, |light| theme::apply(*light));
     {
         let dispatcher = bench.dispatcher();
@@ -131,6 +136,50 @@ pub fn App(props: &AppProps) -> Html {
     several([accept(&bench), page(&bench)])
 }
 
+/// Keeps lamps and position on the phone, asks the reckoner for the rungs, and lets the time go on.
+#[hook]
+fn use_ladder(bench: &BenchHandle) {
+    {
+        let dispatcher = bench.dispatcher();
+        let stock = bench.drawer.edited.then(|| link::encode_stock(&bench.drawer.stock));
+        let climb = bench.climb.edited.then(|| bench.climb.kept(&equipment(&bench.setup)));
+        use_effect_with([(storage::STOCK, stock), (storage::CLIMB, climb)], move |kept| {
+            let keep = |(name, text): &(&str, Option<String>)| {
+                text.as_ref().is_some_and(|text| storage::write(name, text).is_err())
+            };
+            if kept.iter().any(keep) {
+                dispatcher.dispatch(Msg::Tell(Note::NothingKept));
+            }
+        });
+    }
+    {
+        let dispatcher = bench.dispatcher();
+        use_effect_with((bench.wanted(), bench.measured()), move |(wanted, measured)| {
+            if let Some(wanted) = wanted.clone() {
+                let dispatcher = dispatcher.clone();
+                reckoner::ask(Ask::Ladder(wanted), move |answer| {
+                    dispatcher.dispatch(match answer {
+                        Ok(Answer::Ladder(news)) => Move::Learn(news).into(),
+                        _ => Move::Lost.into(),
+                    });
+                });
+            }
+            if let Some(measured) = *measured {
+                reckoner::ask(Ask::Unknown(measured), move |answer| match answer {
+                    Ok(Answer::Unknown(fits)) => dispatcher.dispatch(Shelf::Fits(fits).into()),
+                    _ => dispatcher.dispatch(Move::Lost.into()),
+                });
+            }
+        });
+    }
+    let dispatcher = bench.dispatcher();
+    use_effect_with(bench.climb.off.is_some() && bench.tab == Tab::Ladder, move |counts| {
+        let tick = move || dispatcher.dispatch(Move::Tick(clock()).into());
+        let ticking = counts.then(|| EverySecond::new(tick)).flatten();
+        move || drop(ticking)
+    });
+}
+
 /// The button under the cautions, which stand outside of the program's own element.
 fn accept(bench: &BenchHandle) -> Html {
     let words = bench.words();
@@ -149,6 +198,7 @@ fn page(bench: &BenchHandle) -> Html {
     }
     let (class, panel) = match bench.tab {
         Tab::Expect => ("page on-expect", details(bench)),
+        Tab::Ladder => ("page on-ladder", ladder(bench)),
         Tab::Seen => ("page on-seen", seen(bench)),
         Tab::SwitchOn => ("page on-switch-on", switch_on(bench)),
         Tab::Curve => ("page on-curve", curve(bench)),

@@ -14,7 +14,9 @@ use lampladder_core::steady::Outcome;
 use yew::UseReducerHandle;
 
 use crate::answers::Answers;
+use crate::climb::{Climb, Move};
 use crate::draft::{Draft, Fault, Place, Slot};
+use crate::drawer::{Drawer, Shelf};
 use crate::reckoner::pulses;
 use crate::replay::Wish;
 use crate::seen::{Deed, Seen};
@@ -44,6 +46,8 @@ pub enum Tab {
     Expect,
     /// What lamp and meter show.
     Seen,
+    /// The rungs.
+    Ladder,
     /// The first seconds.
     SwitchOn,
     /// The curves that meet.
@@ -139,6 +143,10 @@ pub struct Bench {
     pub wish: Wish,
     /// What lamp and meter show.
     pub seen: Seen,
+    /// The lamps that are owned.
+    pub drawer: Drawer,
+    /// The position on the ladder.
+    pub climb: Climb,
     /// The light.
     pub theme: Theme,
     /// What is in front.
@@ -196,6 +204,10 @@ pub enum Msg {
     Wish(Wish),
     /// Something is done to what lamp and meter show.
     Seen(Deed),
+    /// Something happens to the drawer of lamps.
+    Drawer(Shelf),
+    /// Something happens on the ladder.
+    Climb(Move),
     /// Change the light.
     Light(Theme),
     /// The cautions are accepted, or closed again.
@@ -234,6 +246,8 @@ impl Bench {
             tab: Tab::Expect,
             wish: Wish::default(),
             seen: Seen::new(MeterSpec::default(), language.words().numerals),
+            drawer: Drawer::default(),
+            climb: Climb::default(),
             theme: Theme::Auto,
             stage: Stage::Unread,
             notes: Vec::new(),
@@ -254,7 +268,28 @@ impl Bench {
 
     /// What stands in a field.
     pub fn text(&self, slot: Slot) -> &str {
-        self.seen.text(slot).unwrap_or_else(|| self.draft.text(slot))
+        match slot {
+            Slot::Entry(entry) => self.climb.text(entry),
+            _ => self.seen.text(slot).unwrap_or_else(|| self.draft.text(slot)),
+        }
+    }
+
+    /// What is wrong with a field, wherever it is: those of the checklist are no part of the set-up.
+    pub fn wrong(&self, slot: Slot) -> Option<Fault> {
+        match slot {
+            Slot::Entry(entry) => self.climb.read(entry).err(),
+            Slot::Lamp(Place::SPARE, _) => self.spare_fault(slot),
+            _ => self.fault(slot).copied(),
+        }
+    }
+
+    /// What is wrong with the lamp that is typed for the drawer; nothing yet where nothing is typed.
+    fn spare_fault(&self, slot: Slot) -> Option<Fault> {
+        if !self.drawer.pressed && self.draft.text(slot).trim().is_empty() {
+            return None;
+        }
+        let faults = self.draft.read_spare().err()?;
+        faults.into_iter().find(|(other, _)| *other == slot).map(|(_, fault)| fault)
     }
 
     /// The conditions in which the equipment hunts and nothing is known yet of how the lamps pulse.

@@ -22,6 +22,11 @@ pub fn supply(setup: &Setup, words: &Words) -> String {
 
 /// The bank as wired.
 pub fn bank(setup: &Setup, words: &Words) -> String {
+    lamps(setup.bank.groups(), words)
+}
+
+/// Lamps as wired, group by group.
+pub fn lamps(groups: &[Vec<Lamp>], words: &Words) -> String {
     let alike = |group: &Vec<Lamp>| {
         let mut all: Vec<Alike> = Vec::new();
         for lamp in group {
@@ -33,7 +38,7 @@ pub fn bank(setup: &Setup, words: &Words) -> String {
         }
         all
     };
-    let groups: Vec<_> = setup.bank.groups().iter().map(alike).collect();
+    let groups: Vec<_> = groups.iter().map(alike).collect();
     (words.bank)(&groups)
 }
 

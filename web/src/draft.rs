@@ -8,6 +8,7 @@ use lampladder_core::quantity::QuantityError;
 use lampladder_core::readings::Kind;
 use lampladder_core::setup::Setup;
 
+use crate::entry::Entry;
 use crate::format::Numerals;
 
 /// Where a lamp stands in the bank.
@@ -17,6 +18,11 @@ pub struct Place {
     pub group: usize,
     /// Which lamp of the group.
     pub lamp: usize,
+}
+
+impl Place {
+    /// The lamp that is typed for the drawer, which stands in no bank.
+    pub const SPARE: Self = Self { group: usize::MAX, lamp: 0 };
 }
 
 /// A typed property of a lamp.
@@ -88,6 +94,8 @@ pub enum Slot {
     Reading(Kind),
     /// A number of the meter itself.
     Meter(MeterPart),
+    /// A number of the ladder's checklist.
+    Entry(Entry),
 }
 
 impl Slot {
@@ -95,6 +103,7 @@ impl Slot {
     pub const fn field(self) -> Field {
         match self {
             Self::SupplyVolts | Self::PlateVolts => Field::Volts,
+            Self::Entry(entry) => entry.field(),
             Self::SupplyHertz => Field::Hertz,
             Self::SupplyOhms => Field::Ohms,
             Self::PlateWatts => Field::Watts,
@@ -174,10 +183,13 @@ pub struct Draft {
     pub plate: [String; 5],
     /// Class defaults that were changed, for whatever family.
     pub details: Vec<(Detail, String)>,
+    /// A lamp for the drawer.
+    pub spare: LampDraft,
 }
 
 impl LampDraft {
-    fn of(lamp: &Lamp, numerals: Numerals) -> Self {
+    /// A lamp, written out.
+    pub fn of(lamp: &Lamp, numerals: Numerals) -> Self {
         let spec = lamp.spec();
         let optional = |value: Option<f64>| value.map_or_else(String::new, |value| numerals.plain(value));
         let points =
@@ -223,10 +235,9 @@ impl Draft {
         let Setup { supply, bank, plate } = setup;
         let optional = |value: Option<f64>| value.map_or_else(String::new, |value| numerals.plain(value));
         let printed = plate.spec();
-        let lamps = |group: &Vec<Lamp>| group.iter().map(|lamp| LampDraft::of(lamp, numerals)).collect();
         Self {
             supply: [supply.volts(), supply.hertz(), supply.ohms()].map(|value| numerals.plain(value)),
-            groups: bank.groups().iter().map(lamps).collect(),
+            groups: Self::written(bank.groups(), numerals),
             family: plate.family(),
             plate: [
                 numerals.plain(printed.volts),
@@ -240,7 +251,14 @@ impl Draft {
                 .iter()
                 .map(|(detail, value)| (*detail, numerals.plain(*value)))
                 .collect(),
+            spare: LampDraft::default(),
         }
+    }
+
+    /// A bank, written out.
+    pub fn written(groups: &[Vec<Lamp>], numerals: Numerals) -> Vec<Vec<LampDraft>> {
+        let lamps = |group: &Vec<Lamp>| group.iter().map(|lamp| LampDraft::of(lamp, numerals)).collect();
+        groups.iter().map(lamps).collect()
     }
 
     /// How many lamps.
@@ -250,10 +268,16 @@ impl Draft {
 
     /// The lamp at a place.
     pub fn lamp(&self, place: Place) -> Option<&LampDraft> {
+        if place == Place::SPARE {
+            return Some(&self.spare);
+        }
         self.groups.get(place.group)?.get(place.lamp)
     }
 
     pub(crate) fn lamp_mut(&mut self, place: Place) -> Option<&mut LampDraft> {
+        if place == Place::SPARE {
+            return Some(&mut self.spare);
+        }
         self.groups.get_mut(place.group)?.get_mut(place.lamp)
     }
 
@@ -273,6 +297,7 @@ impl Draft {
             }
             Slot::Lamp(place, part) => self.lamp(place).map_or("", |lamp| lamp.text(part)),
             Slot::Reading(_) | Slot::Meter(_) => "",
+            Slot::Entry(_) => "",
         }
     }
 
@@ -298,6 +323,7 @@ impl Draft {
             Slot::Detail(detail) => Some(self.detail_mut(detail)),
             Slot::Lamp(place, part) => self.lamp_mut(place).and_then(|lamp| lamp.text_mut(part)),
             Slot::Reading(_) | Slot::Meter(_) => None,
+            Slot::Entry(_) => None,
         };
         if let Some(target) = target {
             *target = text;

@@ -43,6 +43,18 @@
 //! | `weight-healthy` and so on, `weight-rest`, `numbers`, `number-amps` and so on, `next` | with `data-value`, and numbers with `data-low`, `data-high` |
 //! | `keep`, `empty`, `undo`, `log`, `kept`, `kept-readings`, `note-text`, `delete`, `log-trouble`, `log-foreign` | the log |
 //! | `surge`, `moments-table`, `fuse`, `fuse-more`, `fuse-less`, `fuse-table` | the figures, the fuse check |
+//! | `tab-ladder`, `ladder` | with `data-busy` until the rungs are known, `data-complete` once all is, `data-milliseconds` spent on it |
+//! | `ladder-equipment`, `restarted`, `ladder-refused` | the equipment's editor; a note that it began again; why there is no ladder |
+//! | `step-lamps`, `step-checks`, `step-rung-0`, `step-mains`, `step-after` | heads of the steps, with `data-progress` `done`, `now` or `next` |
+//! | `go-on`, `back-0`, `afresh` | from step to step |
+//! | `size-60-more`, `size-60-less`, `size-other-0-more` | lamps that are owned: a size in the shops, a kind of the stock |
+//! | `another-lamp`, `form-another`, `put-lamp`, `drawer-refused` | a lamp by its rating, in `field-spare-lamp-watts` and so on, and `field-count` |
+//! | `measure`, `measure-0`, `form-measure`, `shrinkage` | measuring one of a kind |
+//! | `unknown-lamp`, `form-unknown`, `fit-0`, `no-fit` | a lamp without a legible rating, by `field-unknown-cold-ohms`, `-volts`, `-amps`, `-printed-volts` |
+//! | `missing-lamp`, `falls-short` | the lamp that would help most; the last rung does not run it |
+//! | `looked-over`, `class-I`, `lead-0`, `verdict-plug-ohms`, `over-plug-ohms`, `skipped`, `forbidden` | checks, in `field-protective-ohms`, `field-insulation-ohms`, `field-plug-ohms` |
+//! | `use-bank-0`, `in-loop`, `to-readings` | the rung's lamps into the loop; on to what is seen |
+//! | `measure-first`, `waits`, `power-off`, `countdown`, `stop-counting` | after power, with `field-reservoir-farads`, `field-bleed-ohms`, `field-reservoir-volts`; `countdown` has `data-seconds` |
 //! | `tab-expect`, `tab-curve`, `chart`, `crossings`, `bank-curve` | panels |
 
 pub mod advice;
@@ -51,8 +63,11 @@ pub mod app;
 pub mod bench;
 pub mod browser;
 pub mod charts;
+pub mod climb;
 pub mod describe;
 pub mod draft;
+pub mod drawer;
+pub mod entry;
 pub mod flare;
 pub mod format;
 mod keeper;

@@ -29,6 +29,18 @@ impl Draft {
     }
 }
 
+impl Draft {
+    /// The lamp that was typed for the drawer.
+    ///
+    /// # Errors
+    /// As [`Self::read`].
+    pub fn read_spare(&self) -> Result<Lamp, Vec<(Slot, Fault)>> {
+        let mut reading = Reading { draft: self, faults: Vec::new() };
+        let lamp = reading.lamp(Place::SPARE);
+        lamp.filter(|_| reading.faults.is_empty()).ok_or(reading.faults)
+    }
+}
+
 /// Gathers all faults, so that each shows beside its field at once.
 struct Reading<'a> {
     draft: &'a Draft,

@@ -10,13 +10,22 @@ use yew::Reducible;
 
 use crate::answers::Answers;
 use crate::bench::{Bench, MOST_POINTS, Msg, Note, Part, Stage};
+use crate::climb::Move;
 use crate::draft::{Draft, Fault, LampDraft, Place, Slot};
+use crate::drawer::Form;
 use crate::step;
 
 impl Bench {
     /// The state after a message.
     #[must_use]
-    pub fn after(mut self, msg: Msg) -> Self {
+    pub fn after(self, msg: Msg) -> Self {
+        let (setup, stock) = (Rc::clone(&self.setup), Rc::clone(&self.drawer.stock));
+        let mut next = self.next(msg);
+        next.follow(&setup, &stock);
+        next
+    }
+
+    fn next(mut self, msg: Msg) -> Self {
         match msg {
             Msg::Show(condition) => self.condition = condition,
             Msg::Open(part) => self.turn_to(Some(part)),
@@ -34,6 +43,19 @@ impl Bench {
                 self.seen.set(slot, text);
                 self.seen.reread(&self.setup);
             }
+            Msg::Drawer(shelf) => self.shelve(shelf),
+            Msg::Type(Slot::Entry(entry), text) => {
+                self.climb.type_in(entry, text);
+                self.drawer.fits = None;
+            }
+            // The lamp for the drawer is no part of the set-up.
+            Msg::Type(slot @ Slot::Lamp(Place::SPARE, _), text) => self.draft.set(slot, text),
+            Msg::Fill(_) | Msg::AddPoint | Msg::RemovePoint(_) if self.lamp == Place::SPARE => self.edit(msg),
+            Msg::Climb(Move::Use(rung)) => {
+                self.use_rung(rung);
+                self.reread();
+            }
+            Msg::Climb(step) => self.climb(step),
             Msg::Light(theme) => self.theme = theme,
             Msg::Accept => self.stage = Stage::Bench,
             Msg::Cautions => self.stage = Stage::Reread,
@@ -70,6 +92,11 @@ impl Bench {
 
     fn turn_to(&mut self, part: Option<Part>) {
         self.open = part;
+        // The bank's editor is for lamps of the bank.
+        if part == Some(Part::Bank) && self.lamp == Place::SPARE {
+            self.lamp = Place::default();
+            self.drawer.form = Form::None;
+        }
         self.refused = None;
         self.choosing = false;
     }
@@ -77,9 +104,10 @@ impl Bench {
     fn arrive(mut self, setup: Setup) -> Self {
         let answers = match Answers::of(&setup, self.condition) {
             Ok(answers) => answers,
-            Err(error) => return self.after(Msg::Tell(Note::BadLink(LinkError::Refused(error)))),
+            Err(error) => return self.next(Msg::Tell(Note::BadLink(LinkError::Refused(error)))),
         };
-        self.draft = Draft::of(&setup, self.words().numerals);
+        let spare = core::mem::take(&mut self.draft.spare);
+        self.draft = Draft { spare, ..Draft::of(&setup, self.words().numerals) };
         self.setup = Rc::new(setup);
         self.answers = Rc::new(answers);
         self.pulses.clear();
@@ -87,7 +115,9 @@ impl Bench {
         self.keep_condition();
         self.seen.reread(&self.setup);
         self.edited = false;
-        self.lamp = Place::default();
+        if self.lamp != Place::SPARE {
+            self.lamp = Place::default();
+        }
         self.refused = None;
         self.notes.retain(|note| *note == Note::NothingKept);
         self
@@ -141,7 +171,7 @@ impl Bench {
 
     fn add(&mut self, msg: &Msg) {
         let place = self.lamp;
-        if self.draft.lamp_count() >= Bank::MOST_LAMPS {
+        if self.draft.lamp_count() >= Bank::MOST_LAMPS || place == Place::SPARE {
             return;
         }
         // What was measured belongs to that one lamp; its printed rating is likely shared by its twin.
@@ -164,7 +194,7 @@ impl Bench {
 
     fn remove(&mut self) {
         let Place { group, lamp } = self.lamp;
-        if self.draft.lamp_count() <= 1 || self.draft.lamp(self.lamp).is_none() {
+        if self.draft.lamp_count() <= 1 || self.lamp == Place::SPARE || self.draft.lamp(self.lamp).is_none() {
             return;
         }
         self.draft.groups[group].remove(lamp);

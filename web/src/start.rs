@@ -4,7 +4,9 @@ use lampladder_core::link::{self, LinkError};
 use lampladder_core::setup::Setup;
 
 use crate::bench::{Bench, Note, Stage};
+use crate::browser::window::clock;
 use crate::browser::{fragment, storage, theme};
+use crate::climb::{Climb, equipment};
 use crate::meter;
 use crate::seen::Seen;
 
@@ -19,6 +21,8 @@ pub fn bench() -> Option<Bench> {
     bench.theme = theme::kept();
     let meter = storage::read(storage::METER).and_then(|text| meter::from_kept(&text));
     bench.seen = Seen::new(meter.unwrap_or_default(), bench.words().numerals);
+    remember(&mut bench, storage::read(storage::STOCK).as_deref(), storage::read(storage::CLIMB).as_deref());
+    bench.climb.now = clock();
     if storage::has_for_visit(storage::ACCEPTED) {
         bench.stage = Stage::Bench;
     }
@@ -55,6 +59,18 @@ pub fn opened(address: Option<&str>, kept: Option<&str>) -> Option<Bench> {
     };
     bench.notes = notes;
     Some(bench)
+}
+
+/// Puts the kept lamps and the kept position in; what cannot be read stays where it is until something is changed.
+pub fn remember(bench: &mut Bench, stock: Option<&str>, climb: Option<&str>) {
+    match stock.map(link::decode_stock) {
+        Some(Ok(stock)) => bench.drawer.stock = stock.into(),
+        Some(Err(error)) => bench.notes.push(Note::BadKept(error)),
+        None => {}
+    }
+    if let Some(climb) = climb {
+        bench.climb = Climb::restored(climb, &equipment(&bench.setup));
+    }
 }
 
 #[cfg(test)]

@@ -266,6 +266,46 @@ async fn the_meter_is_kept() {
 }
 
 #[wasm_bindgen_test]
+async fn lamps_are_tapped_into_the_drawer_and_kept_on_the_phone() {
+    let _page = open_bench().await;
+    click("tab-ladder").await;
+    assert!(part("size-60-less").has_attribute("disabled") && part("go-on").has_attribute("disabled"));
+    click("size-60-more").await;
+    click("size-60-more").await;
+    click("size-25-more").await;
+    assert!(text("step-lamps").contains("2\u{a0}× 60"), "{}", text("step-lamps"));
+    let kept = link::decode_stock(&storage::read(storage::STOCK).expect("kept")).expect("a stock");
+    assert_eq!(kept.lamp_count(), 3);
+    click("size-25-less").await;
+    let kept = link::decode_stock(&storage::read(storage::STOCK).expect("kept")).expect("a stock");
+    assert_eq!(kept.lamp_count(), 2);
+    // There is no reckoner beside this page, and that is said.
+    assert!(text("step-rung-0").contains("could not be loaded"), "{}", text("step-rung-0"));
+    click("go-on").await;
+    assert_eq!(part("step-checks").get_attribute("data-progress").as_deref(), Some("now"));
+    assert!(storage::read(storage::CLIMB).is_some_and(|kept| kept.starts_with("1\n")));
+    type_into("field-insulation-ohms", "0.1M").await;
+    assert!(find("forbidden").is_some());
+    type_into("field-insulation-ohms", "50M").await;
+    assert!(find("forbidden").is_none() && find("verdict-insulation-ohms").is_some());
+}
+
+#[wasm_bindgen_test]
+async fn a_bad_count_of_lamps_says_so_beside_its_field() {
+    let _page = open_bench().await;
+    click("tab-ladder").await;
+    click("another-lamp").await;
+    type_into("field-spare-lamp-watts", "52").await;
+    type_into("field-count", "-2").await;
+    assert!(text("error-count").contains("from 0 to 99"), "{}", text("error-count"));
+    click("put-lamp").await;
+    assert!(find("form-another").is_some());
+    type_into("field-count", "2").await;
+    click("put-lamp").await;
+    assert!(find("form-another").is_none() && text("step-lamps").contains("52"));
+}
+
+#[wasm_bindgen_test]
 async fn the_light_changes_and_is_kept() {
     let _page = open_bench().await;
     let light = || part("theme").get_attribute("data-value").expect("a value");

@@ -175,7 +175,7 @@ fn bare(_: &mut Run) -> Result<()> {
 }
 
 fn web(run: &mut Run) -> Result<()> {
-    run.tests(&mut cargo(&["test", "--quiet", "-p", "lampladder-web", "--lib"]))
+    run.tests(&mut cargo(&["test", "--quiet", "-p", "lampladder-web", "--lib", "--test", "*"]))
 }
 
 fn browser(run: &mut Run) -> Result<()> {

@@ -6,6 +6,10 @@ use web_sys::Storage;
 pub const SETUP: &str = "lampladder.setup";
 /// Name of the meter.
 pub const METER: &str = "lampladder.meter";
+/// Name of the kept lamps.
+pub const STOCK: &str = "lampladder.stock";
+/// Name of the kept position on the ladder.
+pub const CLIMB: &str = "lampladder.climb";
 /// Name of the chosen light.
 pub const THEME: &str = "lampladder.theme";
 /// Name of the accepted cautions, for this visit.

@@ -63,6 +63,37 @@ impl Drop for NextFrame {
     }
 }
 
+/// Something to do every second; undone when dropped.
+#[derive(Debug)]
+pub struct EverySecond {
+    number: i32,
+    _closure: Closure<dyn FnMut()>,
+}
+
+impl EverySecond {
+    /// Begins.
+    pub fn new(f: impl FnMut() + 'static) -> Option<Self> {
+        let closure = Closure::<dyn FnMut()>::new(f);
+        let called = closure.as_ref().unchecked_ref();
+        let number =
+            web_sys::window()?.set_interval_with_callback_and_timeout_and_arguments_0(called, 1000).ok()?;
+        Some(Self { number, _closure: closure })
+    }
+}
+
+impl Drop for EverySecond {
+    fn drop(&mut self) {
+        if let Some(window) = web_sys::window() {
+            window.clear_interval_with_handle(self.number);
+        }
+    }
+}
+
+/// Milliseconds since 1970 by the phone's clock, which goes on while it sleeps.
+pub fn clock() -> f64 {
+    js_sys::Date::now()
+}
+
 /// Width of the window, CSS pixels; 360 where it cannot be had.
 pub fn width() -> f64 {
     let width = web_sys::window().and_then(|window| window.inner_width().ok()?.as_f64());

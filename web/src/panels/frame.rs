@@ -41,8 +41,9 @@ pub fn header(bench: &BenchHandle) -> El {
 
 /// The list of panels.
 pub fn tabs(bench: &BenchHandle) -> El {
-    const TABS: [(Tab, &str); 4] = [
+    const TABS: [(Tab, &str); 5] = [
         (Tab::Expect, "tab-expect"),
+        (Tab::Ladder, "tab-ladder"),
         (Tab::Seen, "tab-seen"),
         (Tab::SwitchOn, "tab-switch-on"),
         (Tab::Curve, "tab-curve"),

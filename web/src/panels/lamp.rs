@@ -69,7 +69,7 @@ fn lamp_volts(bench: &BenchHandle) -> Option<El> {
     Some(choices(bench.words().edit.usual_volts, quick(bench, slot, &offered, "lamp-volts")))
 }
 
-fn kinds(bench: &BenchHandle) -> El {
+pub(super) fn kinds(bench: &BenchHandle) -> El {
     let words = bench.words();
     let fill = bench.draft.lamp(bench.lamp).and_then(|lamp| lamp.fill);
     let halogen = fill == Some(Fill::Halogen);
@@ -106,7 +106,7 @@ fn life(bench: &BenchHandle) -> Option<El> {
     )
 }
 
-fn filling(bench: &BenchHandle) -> Option<El> {
+pub(super) fn filling(bench: &BenchHandle) -> Option<El> {
     let words = bench.words();
     let now = bench.draft.lamp(bench.lamp).and_then(|lamp| lamp.fill);
     if now == Some(Fill::Halogen) {
@@ -123,7 +123,7 @@ fn filling(bench: &BenchHandle) -> Option<El> {
     Some(el("div").with(name).with(choices(words.edit.filling, all.map(choice).to_vec())))
 }
 
-fn points(bench: &BenchHandle, known: El) -> El {
+pub(super) fn points(bench: &BenchHandle, known: El) -> El {
     let edit = bench.words().edit;
     let count = bench.draft.lamp(bench.lamp).map_or(0, |lamp| lamp.points.len());
     let point = |index| {

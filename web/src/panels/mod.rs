@@ -4,16 +4,21 @@
 //! effect of its own is one ([`sheet::Sheet`], [`curve::Chart`]).
 
 pub mod advice;
+mod after;
 pub mod bank;
 mod bank_drawing;
+mod checks;
 pub mod circuit;
 pub mod comparison;
 pub mod curve;
 pub mod details;
+mod drawer;
 pub mod equipment;
 pub mod frame;
+pub mod ladder;
 pub mod lamp;
 pub mod points;
+mod rung;
 pub mod seen;
 mod seen_log;
 mod seen_next;

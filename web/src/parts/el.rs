@@ -143,6 +143,14 @@ impl El {
         self
     }
 
+    /// Its name among its neighbours, for lists whose rows come and go: each row stays itself, and what is typed in it
+    /// keeps the keyboard. All of the list must have one.
+    #[inline(never)]
+    pub fn key(mut self, key: String) -> Self {
+        self.0.key = Some(key.into());
+        self
+    }
+
     /// Where the element is to be found once it is on the page.
     #[inline(never)]
     pub fn at(mut self, node: NodeRef) -> Self {

@@ -5,11 +5,15 @@ use yew::{Callback, InputEvent};
 use super::el::{El, button, el, truth};
 use crate::bench::{BenchHandle, Msg};
 use crate::browser::input;
-use crate::draft::{LampPart, MeterPart, Slot};
+use crate::draft::{LampPart, MeterPart, Place, Slot};
 use crate::panels::send;
 
 /// A field's name in addresses of elements; lamp fields exist for the lamp under edit only.
 pub fn slug(slot: Slot) -> String {
+    if let Slot::Lamp(Place::SPARE, part) = slot {
+        // Beside the bank's editor on a wide screen.
+        return format!("spare-{}", slug(Slot::Lamp(Place::default(), part)));
+    }
     let plain = match slot {
         Slot::SupplyVolts => "supply-volts",
         Slot::SupplyHertz => "supply-hertz",
@@ -19,6 +23,7 @@ pub fn slug(slot: Slot) -> String {
         Slot::PlateAmps => "plate-amps",
         Slot::PlateVoltAmps => "plate-volt-amps",
         Slot::PlatePowerFactor => "plate-power-factor",
+        Slot::Entry(entry) => entry.slug(),
         Slot::Detail(detail) => return format!("detail-{}", detail.name().replace('_', "-")),
         Slot::Lamp(_, LampPart::Volts) => "lamp-volts",
         Slot::Lamp(_, LampPart::Watts) => "lamp-watts",
@@ -48,7 +53,7 @@ fn field(bench: &BenchHandle, slot: Slot, steps: bool, hint: String) -> El {
     let words = bench.words();
     let slug = slug(slot);
     let (id, error_id) = (format!("in-{slug}"), format!("err-{slug}"));
-    let fault = bench.fault(slot);
+    let fault = bench.wrong(slot);
     let label = el("label").put("for", id.clone()).text((words.slot)(slot));
     let label = if hint.is_empty() { label } else { label.with(el("small").text(hint)) };
     let stepper = |up: bool, sign: &'static str, name: &'static str| {
@@ -68,7 +73,7 @@ fn field(bench: &BenchHandle, slot: Slot, steps: bool, hint: String) -> El {
             .put("id", error_id)
             .set("role", "alert")
             .put("data-testid", format!("error-{slug}"))
-            .text((words.fault)(slot, fault))
+            .text((words.fault)(slot, &fault))
     });
     let entry = el("div").class("entry").maybe(stepper(false, "−", "less")).with(typed);
     el("div").class("field").with(label).with(entry.maybe(stepper(true, "+", "more"))).maybe(error)
@@ -81,7 +86,7 @@ fn entry(bench: &BenchHandle, slot: Slot, slug: &str, id: String, error_id: &str
             dispatcher.dispatch(Msg::Type(slot, text));
         }
     });
-    let wrong = bench.fault(slot).is_some();
+    let wrong = bench.wrong(slot).is_some();
     let entry = el("input")
         .put("id", id)
         .set("type", "text")

@@ -2,6 +2,7 @@
 
 mod conditions;
 mod faults;
+mod ladder;
 mod replay;
 mod seen;
 
@@ -33,6 +34,7 @@ pub(super) static WORDS: Words = Words {
     },
     tab: |tab| match tab {
         Tab::Expect => "Expect",
+        Tab::Ladder => "Ladder",
         Tab::Seen => "Seen",
         Tab::SwitchOn => "Switch-on",
         Tab::Curve => "Curve",
@@ -143,6 +145,7 @@ pub(super) static WORDS: Words = Words {
     table: &TABLE,
     replay: &replay::REPLAY,
     seen: &seen::SEEN,
+    ladder: &ladder::LADDER,
     slot: faults::slot,
     fault: faults::fault,
     step: |which, up| format!("{}: {}", faults::slot(which), if up { "more" } else { "less" }),

@@ -4,6 +4,7 @@
 //! The cautions stand in static/index.html, since they must show without the program.
 
 mod english;
+pub mod ladder;
 pub mod replay;
 pub mod seen;
 
@@ -217,6 +218,8 @@ pub struct Words {
     pub replay: &'static replay::ReplayWords,
     /// Texts of the panel of readings.
     pub seen: &'static seen::SeenWords,
+    /// Texts of the ladder panel.
+    pub ladder: &'static ladder::LadderWords,
     /// Name of a field.
     pub slot: fn(Slot) -> &'static str,
     /// What is wrong with a field.

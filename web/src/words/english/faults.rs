@@ -19,6 +19,7 @@ pub(super) fn slot(slot: Slot) -> &'static str {
         Slot::PlateVoltAmps => "Plate volt-amps",
         Slot::PlatePowerFactor => "Power factor",
         Slot::Detail(which) => detail(which),
+        Slot::Entry(entry) => super::ladder::entry(entry),
         Slot::Lamp(_, part) => match part {
             LampPart::Volts => "Lamp volts",
             LampPart::Watts => "Lamp watts",
@@ -69,6 +70,7 @@ pub(super) fn fault(which: Slot, fault: &Fault) -> String {
         Fault::Number(
             InputError::OutOfRange { low, high, .. } | InputError::DetailOutOfRange { low, high, .. },
         ) => range(name, which.unit(), *low, *high),
+        Fault::Number(InputError::NotWhole { .. }) => format!("{name} is a whole number, such as 2."),
         Fault::Number(InputError::Missing { .. }) => {
             format!("{name} is empty. Watts, amps or volt-amps: one of them is needed.")
         }
