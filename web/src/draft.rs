@@ -296,8 +296,7 @@ impl Draft {
                 self.details.iter().find(|(known, _)| *known == detail).map_or("", |(_, text)| text)
             }
             Slot::Lamp(place, part) => self.lamp(place).map_or("", |lamp| lamp.text(part)),
-            Slot::Reading(_) | Slot::Meter(_) => "",
-            Slot::Entry(_) => "",
+            Slot::Reading(_) | Slot::Meter(_) | Slot::Entry(_) => "",
         }
     }
 
@@ -322,8 +321,7 @@ impl Draft {
             Slot::PlatePowerFactor => Some(&mut self.plate[4]),
             Slot::Detail(detail) => Some(self.detail_mut(detail)),
             Slot::Lamp(place, part) => self.lamp_mut(place).and_then(|lamp| lamp.text_mut(part)),
-            Slot::Reading(_) | Slot::Meter(_) => None,
-            Slot::Entry(_) => None,
+            Slot::Reading(_) | Slot::Meter(_) | Slot::Entry(_) => None,
         };
         if let Some(target) = target {
             *target = text;

@@ -130,7 +130,7 @@ fn other(bench: &BenchHandle, kind: usize, owned: &Owned) -> El {
 
 fn counted(bench: &BenchHandle, name: &str, slug: &str, count: u8, [more, less]: [Shelf; 2]) -> El {
     let texts = bench.words().ladder;
-    let text = if count == 0 { name.to_owned() } else { format!("{count}\u{a0}×\u{a0}{name}") };
+    let text = if count == 0 { name.to_owned() } else { format!("{count}×\u{a0}{name}") };
     let class = if count == 0 { "size" } else { "size is-owned" };
     let minus = button("stepper", format!("size-{slug}-less"), send(bench, less.into()))
         .put("aria-label", (texts.one)(name, false))

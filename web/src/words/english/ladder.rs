@@ -292,8 +292,8 @@ pub(super) static LADDER: LadderWords = LadderWords {
         format!("Not seen on this rung: {}.", names.join(", "))
     },
     use_bank: "Use this bank",
-    in_loop: "In the loop now",
-    to_readings: "Type what you see",
+    in_loop: "In the loop",
+    to_readings: "Type readings",
     falls_short: |share| {
         format!(
             "Your strongest bank leaves it {share} of the supply: enough to find a short, too little to run it."
