@@ -38,6 +38,24 @@ fn described(violation: &Value) -> String {
     format!("  {}: {}\n{}", violation["id"], violation["help"], nodes.join("\n"))
 }
 
+/// Fails unless whatever can be tapped is as big as a thumb needs: 44 pixels each way.
+///
+/// # Errors
+/// What is too small, by the name of the screen.
+pub fn ensure_thumbs(browser: &Browser, screen: &str) -> Result<()> {
+    // A control within a label is as big as the label.
+    let small = browser.script(
+        "const size = (e) => (e.closest('label') || e).getBoundingClientRect(); \
+         return [...document.querySelectorAll('button, a[href], input, select, summary, [role=button], [tabindex=\"0\"]')] \
+           .filter((e) => e.checkVisibility({opacityProperty: true, visibilityProperty: true})) \
+           .filter((e) => e.getBoundingClientRect().width > 0) \
+           .filter((e) => size(e).width < 44 || size(e).height < 44) \
+           .map((e) => e.outerHTML.slice(0, 120) + ' ' + size(e).width + ' x ' + size(e).height)",
+    )?;
+    ensure!(small.as_array().context("a list")?.is_empty(), "too small to tap on {screen}: {small:#}");
+    Ok(())
+}
+
 /// Sizes of the window: a small phone's, and a wide one.
 const SIZES: [(u32, u32); 2] = [(360, 640), (1280, 800)];
 /// Lights.

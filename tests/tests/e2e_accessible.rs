@@ -1,8 +1,8 @@
 //! Every screen in both themes and at two sizes: nothing for the accessibility checker to find, and pictures to look
 //! at when `LAMPLADDER_SHOTS` names a folder.
 
-use anyhow::{Context, Result, ensure};
-use lampladder_tests::accessibility::look;
+use anyhow::Result;
+use lampladder_tests::accessibility::{self, look};
 use lampladder_tests::browser::Browser;
 use lampladder_tests::page::{self, ACCEPT, CAUTIONS, OPEN_CAUTIONS};
 use lampladder_tests::surroundings;
@@ -43,19 +43,7 @@ fn what_can_be_tapped_is_as_big_as_a_thumb_needs() -> Result<()> {
         if let Some(name) = name {
             page::open_field(&browser, name)?;
         }
-        // A control within a label is as big as the label.
-        let small = browser.script(
-            "const size = (e) => (e.closest('label') || e).getBoundingClientRect(); \
-             return [...document.querySelectorAll('button, a[href], input, select, summary, [role=button], [tabindex=\"0\"]')] \
-               .filter((e) => e.checkVisibility({opacityProperty: true, visibilityProperty: true})) \
-               .filter((e) => e.getBoundingClientRect().width > 0) \
-               .filter((e) => size(e).width < 44 || size(e).height < 44) \
-               .map((e) => e.outerHTML.slice(0, 120) + ' ' + size(e).width + ' x ' + size(e).height)",
-        )?;
-        ensure!(
-            small.as_array().context("a list")?.is_empty(),
-            "too small to tap with {name:?} open: {small:#}"
-        );
+        accessibility::ensure_thumbs(&browser, &format!("{name:?} open"))?;
         page::close(&browser)?;
     }
     Ok(())

@@ -329,6 +329,7 @@ fn the_panel_passes_the_accessibility_checker() -> Result<()> {
     browser.tap(&part("keep"))?;
     browser.see(KEPT)?;
     accessibility::look(&browser, "seen-full-page")?;
+    accessibility::ensure_thumbs(&browser, "seen")?;
     for (name, css) in [("look", "look-dark"), ("weights", "next"), ("log", "kept")] {
         let css = part(css);
         for (width, height) in [(360, 640), (1280, 800)] {

@@ -78,7 +78,7 @@ pub(super) fn fault(which: Slot, fault: &Fault) -> String {
             let limit = NUMERALS.quantity(*limit, field.unit());
             format!("{name} can be at most {limit} with the {} given.", with.name().replace('_', " "))
         }
-        Fault::NoUnit => format!("{name} has no unit, and that makes it doubtful. Which did you mean?"),
+        Fault::NoUnit => format!("{name} has no unit. Which did you mean?"),
         Fault::Number(InputError::NeedsAlternating { .. }) => String::from(
             "This equipment needs alternating current; on DC use a heater, or plain with power factor 1.",
         ),
