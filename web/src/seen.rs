@@ -279,7 +279,8 @@ impl Seen {
 
 /// Whether a typed number has no unit and no prefix.
 pub fn is_bare(text: &str) -> bool {
-    text.chars().all(|one| !one.is_alphabetic() && one != 'Ω')
+    // Not by Unicode's tables, which weigh more than this panel.
+    text.chars().all(|one| !one.is_ascii_alphabetic() && !matches!(one, 'Ω' | '\u{2126}' | 'µ' | 'μ'))
 }
 
 /// Whether a number makes more sense a thousand times smaller or larger.

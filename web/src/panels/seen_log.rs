@@ -70,7 +70,7 @@ fn entry(bench: &BenchHandle, record: &Record) -> El {
         })
         .collect();
     seen.extend(record.look.map(|word| (words.glow)(word).to_owned()));
-    seen.extend(record.behaviour.map(|one| (texts.behaves)(one).to_lowercase()));
+    seen.extend(record.behaviour.map(|one| (texts.behaves)(one).to_ascii_lowercase()));
     let verdict = record.verdict.map_or_else(
         || String::from(texts.unjudged),
         |verdict| {

@@ -12,7 +12,7 @@ pub(super) static SEEN: SeenWords = SeenWords {
     title: "What you see",
     working: "Working it out …",
     sentence: |sentence| {
-        let condition = |condition| (WORDS.condition)(condition).to_lowercase();
+        let condition = |condition| (WORDS.condition)(condition).to_ascii_lowercase();
         match sentence {
             Sentence::GoOn(leader, weight) => {
                 ("Go on.", format!("This fits equipment without a fault: {}, {weight}.", condition(*leader)))
