@@ -338,6 +338,17 @@ impl Bench {
         self.rung_groups(rung).is_some_and(|groups| self.setup.bank.groups() == groups)
     }
 
+    /// The rung, from 1, whose bank is the loop's; the one that is climbed, where several are.
+    pub fn rung_in_loop(&self) -> Option<u32> {
+        let count = self.climb.rungs()?.rungs.len();
+        let climbed = match self.climb.at {
+            Stand::Rung(rung) => rung,
+            _ => 0,
+        };
+        let rung = core::iter::once(climbed).chain(0..count).find(|rung| self.is_in_loop(*rung))?;
+        u32::try_from(rung + 1).ok()
+    }
+
     /// After every message: a ladder for other lamps or other equipment is no ladder for these.
     pub(crate) fn follow(&mut self, setup: &Rc<Setup>, stock: &Rc<Stock>) {
         let same_bench = Rc::ptr_eq(setup, &self.setup)

@@ -13,6 +13,7 @@ use crate::bench::{Bench, MOST_POINTS, Msg, Note, Part, Stage};
 use crate::climb::Move;
 use crate::draft::{Draft, Fault, LampDraft, Place, Slot};
 use crate::drawer::Form;
+use crate::seen::Deed;
 use crate::step;
 
 impl Bench {
@@ -36,6 +37,9 @@ impl Bench {
             Msg::Wish(wish) => self.wish = wish,
             Msg::Seen(deed) => {
                 let numerals = self.words().numerals;
+                if let Deed::Keep(..) = deed {
+                    self.seen.rung = self.rung_in_loop();
+                }
                 self.seen.act(deed, &self.setup, numerals);
                 self.seen.reread(&self.setup);
             }

@@ -52,7 +52,7 @@ pub struct Seen {
     pub meter_open: bool,
     /// The readings.
     pub sheet: Sheet,
-    /// The rung that they were taken on.
+    /// The rung, from 1, whose lamps were in the loop when they were last kept.
     pub rung: Option<u32>,
     /// What has been kept.
     pub log: Log,
@@ -76,8 +76,6 @@ pub enum Deed {
     Behave(Behaviour),
     /// All readings go.
     Empty,
-    /// The rung of the ladder.
-    Rung(Option<u32>),
     /// The log is wanted.
     WantLog,
     /// Keep the readings: milliseconds since 1970, what they came to.
@@ -141,7 +139,6 @@ impl Seen {
                 let sheet = core::mem::take(&mut self.sheet);
                 self.remember(Before::Sheet(sheet));
             }
-            Deed::Rung(rung) => self.rung = rung,
             Deed::WantLog => self.log.wanted = true,
             Deed::Keep(id, verdict) => {
                 self.remember(Before::Records(self.log.records.clone()));
@@ -410,7 +407,7 @@ mod tests {
         let mut seen = seen(&[(Kind::BankVolts, "28"), (Kind::Amps, "nonsense")]);
         let setup = setup();
         let act = |seen: &mut Seen, deed| seen.act(deed, &setup, PLAIN);
-        act(&mut seen, Deed::Rung(Some(2)));
+        seen.rung = Some(2);
         act(&mut seen, Deed::Keep(5.0, None));
         let kept = seen.log.records[0].clone();
         assert_eq!((kept.rung, kept.numbers.as_slice()), (Some(2), [(Kind::BankVolts, 28.0)].as_slice()));

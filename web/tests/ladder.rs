@@ -14,6 +14,7 @@ use lampladder_web::draft::{Fault, LampPart, Place, Slot};
 use lampladder_web::drawer::{Form, Shelf};
 use lampladder_web::entry::Entry;
 use lampladder_web::reckoner::{Answer, Ask, Desk};
+use lampladder_web::seen::Deed;
 use lampladder_web::start;
 
 fn bench() -> Bench {
@@ -226,6 +227,12 @@ fn the_checklist_goes_from_the_lamps_to_the_mains_and_the_wait() {
 fn a_rung_s_lamps_go_into_the_loop() {
     let bench = after(stocked(), [Move::Use(0).into()]);
     assert!(bench.is_in_loop(0) && bench.edited && !bench.is_stale());
+    // A reading that is kept then belongs to it; behind other lamps it belongs to none.
+    let kept = bench.clone().after(Msg::Seen(Deed::Keep(1e12, None)));
+    assert_eq!(kept.seen.log.records[0].rung, Some(1));
+    let other = Slot::Lamp(Place::default(), LampPart::Watts);
+    let kept = kept.after(Msg::Type(other, String::from("77"))).after(Msg::Seen(Deed::Keep(2e12, None)));
+    assert_eq!(kept.seen.log.records[0].rung, None);
     assert_eq!(Some(bench.setup.bank.groups()), bench.rung_groups(0).as_deref());
     // The ladder is still the ladder: it does not hang on what stands in the loop.
     assert!(bench.climb.rungs().is_some());
