@@ -302,6 +302,10 @@ fn typing_never_waits_for_a_diagnosis() -> Result<()> {
         "window.longest = 0; new PerformanceObserver((list) => { for (const task of list.getEntries()) \
          window.longest = Math.max(window.longest, task.duration) }).observe({entryTypes: ['longtask']}); return true",
     )?;
+    // The observer sees what is long.
+    browser.script("setTimeout(() => { const t = performance.now(); while (performance.now() - t < 250); }); return true")?;
+    browser.until("return window.longest >= 200")?;
+    browser.script("window.longest = 0; return true")?;
     read(&browser, Kind::SupplyVolts, "231.5")?;
     read(&browser, Kind::BankVolts, "67")?;
     ensure!(browser.value(&page::field("read-supply-volts"))? == "231.5");
@@ -309,8 +313,7 @@ fn typing_never_waits_for_a_diagnosis() -> Result<()> {
     ensure!(number(&browser, "[data-testid=seen]", "data-milliseconds")? > 0.0);
     // A forecast is far longer than this on the machines that test it; on the page there is nothing of it.
     let longest = browser.script("return window.longest")?.as_f64().context("milliseconds")?;
-    let worked = number(&browser, "[data-testid=seen]", "data-milliseconds")?;
-    println!("longest task of the page {longest} ms, in the reckoner {worked} ms");
+    println!("longest task of the page: {longest} ms");
     ensure!(longest < 200.0, "the page was busy for {longest} ms");
     Ok(())
 }
