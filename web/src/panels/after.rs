@@ -36,7 +36,7 @@ pub(super) fn after(bench: &BenchHandle) -> Vec<El> {
     vec![
         el("p").class("error").test("measure-first").text(texts.measure_first),
         el("p").class("hint").text(texts.after_means),
-        typed(Entry::Farads, String::new()),
+        typed(Entry::Farads, texts.farads_hint.to_owned()),
         typed(Entry::BleedOhms, texts.bleed_hint.to_owned()),
         typed(Entry::StartVolts, start),
         place(waits.map(|waits| waited(bench, &waits))),

@@ -201,6 +201,8 @@ pub struct LadderWords {
     pub after_means: &'static str,
     /// Where no volts are typed.
     pub start_hint: fn(&str) -> String,
+    /// How a reservoir is typed.
+    pub farads_hint: &'static str,
     /// Where no bleed is typed.
     pub bleed_hint: &'static str,
     /// Heads of the waits.

@@ -320,6 +320,7 @@ pub(super) static LADDER: LadderWords = LadderWords {
     after_means: "A time says how long to wait at least. The bleed resistor may be broken: only the meter says that the \
                   charge is gone.",
     start_hint: |volts| format!("else {volts}, the crest 10\u{a0}% up"),
+    farads_hint: "such as 100 µF",
     bleed_hint: "if there is one",
     wait_heads: ["Below", "Wait at least", "Asked by"],
     place: |place| match place {
