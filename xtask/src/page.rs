@@ -12,7 +12,7 @@ use crate::{place, run, tools};
 /// Builds the release page and gives its folder.
 pub(crate) fn build() -> Result<PathBuf> {
     let builders = tools::Builders::ensure()?;
-    run::run(builders.trunk()?.args(["build", "--release", "--offline", "--skip-version-check"]))?;
+    run::run(builders.trunk(true)?.args(["build", "--release", "--offline", "--skip-version-check"]))?;
     let dist = place::dist();
     if !dist.join("index.html").is_file() {
         bail!("Trunk ended well, but wrote no {}", dist.join("index.html").display());
@@ -22,7 +22,8 @@ pub(crate) fn build() -> Result<PathBuf> {
 
 /// `cargo xtask trunk …`: Trunk with our tools and compiler, for work on the page (`serve` rebuilds as you save).
 pub(crate) fn trunk(arguments: &[String]) -> Result<()> {
-    let mut command = tools::Builders::ensure()?.trunk()?;
+    let release = arguments.iter().any(|word| word == "--release" || word == "--release=true");
+    let mut command = tools::Builders::ensure()?.trunk(release)?;
     command.args(arguments);
     if arguments.first().is_some_and(|name| ["build", "serve", "watch"].contains(&name.as_str())) {
         command.args(["--offline", "--skip-version-check"]);

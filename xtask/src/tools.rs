@@ -29,11 +29,14 @@ impl Builders {
     }
 
     /// Trunk with its helpers on PATH, told to fetch none of them itself, and this very program for its hook.
-    pub(crate) fn trunk(&self) -> Result<Command> {
+    ///
+    /// A release build gets the small standard library; any other tells what a panic was about.
+    pub(crate) fn trunk(&self, release: bool) -> Result<Command> {
         let route = target::ensure(target::WASM)?;
-        route.fetch(target::WASM)?;
+        let library = if release { route.lightest() } else { target::Library::Usual };
+        route.fetch(target::WASM, library)?;
         let mut command = run::command(&self.trunk);
-        route.apply(&mut command, target::WASM);
+        route.apply(&mut command, target::WASM, library);
         let outer = command
             .get_envs()
             .find_map(|(name, value)| (name == "PATH").then(|| value.map(ToOwned::to_owned)).flatten())
