@@ -333,6 +333,7 @@ impl core::error::Error for InputError {}
 ///
 /// # Errors
 /// [`InputError::NotFinite`] and [`InputError::OutOfRange`].
+#[inline(never)]
 pub fn within(field: Field, value: f64, low: f64, high: f64) -> Result<f64, InputError> {
     if !value.is_finite() {
         return Err(InputError::NotFinite { field });

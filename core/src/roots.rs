@@ -2,6 +2,9 @@
 //!
 //! T. R. Chandrupatla, Advances in Engineering Software 28 (1997) 145: inverse quadratic interpolation where it
 //! is trustworthy, bisection elsewhere, so the bracket halves at worst every other step.
+//!
+//! The functions are called through a pointer: one copy of each search for all of them keeps the page small, and beside
+//! what such a function costs the call is nothing.
 
 /// A root, with what it cost and how good it is.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -40,6 +43,15 @@ const MOST_STEPS: u32 = 120;
 /// or a value is not finite. Never more than 120 evaluations.
 pub fn between(
     mut f: impl FnMut(f64) -> f64,
+    start: Sample,
+    end: Sample,
+    tolerance: Tolerance,
+) -> Option<Root> {
+    between_any(&mut f, start, end, tolerance)
+}
+
+pub(crate) fn between_any(
+    f: &mut dyn FnMut(f64) -> f64,
     start: Sample,
     end: Sample,
     tolerance: Tolerance,
@@ -92,6 +104,15 @@ pub fn between(
 /// one sign over the whole range.
 pub fn decreasing_from(
     mut f: impl FnMut(f64) -> f64,
+    span: (f64, f64),
+    guess: f64,
+    tolerance: Tolerance,
+) -> Option<Root> {
+    decreasing_any(&mut f, span, guess, tolerance)
+}
+
+fn decreasing_any(
+    f: &mut dyn FnMut(f64) -> f64,
     (low, high): (f64, f64),
     guess: f64,
     tolerance: Tolerance,
@@ -115,7 +136,7 @@ pub fn decreasing_from(
             return Some(Root { x: next, residual: value, evaluations });
         }
         if value * here.1 < 0.0 {
-            let root = between(f, here, (next, value), tolerance)?;
+            let root = between_any(f, here, (next, value), tolerance)?;
             return Some(Root { evaluations: evaluations + root.evaluations - 2, ..root });
         }
         here = (next, value);
@@ -129,6 +150,15 @@ pub fn decreasing_from(
 /// depends on its argument. `None` where it has not met `tolerance.residual` after a dozen.
 pub fn fixed_point(
     mut g: impl FnMut(f64) -> f64,
+    span: (f64, f64),
+    guess: f64,
+    tolerance: Tolerance,
+) -> Option<Root> {
+    fixed_any(&mut g, span, guess, tolerance)
+}
+
+fn fixed_any(
+    g: &mut dyn FnMut(f64) -> f64,
     (low, high): (f64, f64),
     guess: f64,
     tolerance: Tolerance,

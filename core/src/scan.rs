@@ -24,7 +24,12 @@ const JUMP: f64 = 1e-6;
 ///
 /// Two roots between neighbouring samples are found where the function has one smooth dip (or hump) there: the dip is
 /// followed by parabolas until it crosses or plainly does not. Values that are not a number are passed over.
-pub(crate) fn all(mut f: impl FnMut(f64) -> f64, (low, high): (f64, f64), samples: u32) -> Vec<Crossing> {
+pub(crate) fn all(mut f: impl FnMut(f64) -> f64, span: (f64, f64), samples: u32) -> Vec<Crossing> {
+    any(&mut f, span, samples)
+}
+
+/// One copy for all functions, as in [`roots`].
+fn any(f: &mut dyn FnMut(f64) -> f64, (low, high): (f64, f64), samples: u32) -> Vec<Crossing> {
     let width = (high - low) / f64::from(samples);
     let mut points: Vec<Sample> = Vec::with_capacity(samples as usize + 3);
     for step in 0..=samples {
@@ -40,7 +45,7 @@ pub(crate) fn all(mut f: impl FnMut(f64) -> f64, (low, high): (f64, f64), sample
         let one_sided = left.1 * sign > 0.0 && right.1 * sign > 0.0;
         if one_sided && here.1 * sign <= left.1 * sign && here.1 * sign <= right.1 * sign {
             let upright = |point: Sample| (point.0, sign * point.1);
-            let (found, cost) = below(|x| sign * f(x), upright(left), upright(here), upright(right));
+            let (found, cost) = below(&mut |x| sign * f(x), upright(left), upright(here), upright(right));
             evaluations += cost;
             if let Some(found) = found {
                 points.insert(index + usize::from(found.0 > here.0), upright(found));
@@ -56,7 +61,7 @@ pub(crate) fn all(mut f: impl FnMut(f64) -> f64, (low, high): (f64, f64), sample
         if end.1 == 0.0 || start.1 * end.1 > 0.0 {
             continue;
         }
-        if let Some(root) = roots::between(&mut f, start, end, Tolerance::FINE) {
+        if let Some(root) = roots::between_any(f, start, end, Tolerance::FINE) {
             evaluations += root.evaluations - 2;
             if root.residual.abs() < JUMP {
                 let falling = end.1 < 0.0;
@@ -76,7 +81,7 @@ pub(crate) fn all(mut f: impl FnMut(f64) -> f64, (low, high): (f64, f64), sample
 /// into the wider side (R. P. Brent, Algorithms for Minimization without Derivatives, 1973, chapter 5). It ends as soon
 /// as a point lies below zero, or as the vertex promises not even a tenth of what is left.
 fn below(
-    mut f: impl FnMut(f64) -> f64,
+    f: &mut dyn FnMut(f64) -> f64,
     mut left: Sample,
     mut here: Sample,
     mut right: Sample,

@@ -42,59 +42,63 @@ const DETAILS: [ClassDefault; 5] = [
 ];
 
 fn build(plate: &Plate, condition: Condition, share: f64) -> Result<Load, InputError> {
-    let parts = |draw_ohms: f64| {
-        let rated_ohms = plate.volts() * plate.volts() / plate.watts();
-        PowerSupplySpec {
-            rated_volts: plate.volts(),
-            magnetising_amps: plate.detail(Detail::MagnetisingShare) * plate.watts() / plate.volts(),
-            core_ohms: rated_ohms / plate.detail(Detail::CoreShare),
-            heater_watts: 0.0,
-            winding_ohms: plate.detail(Detail::WindingShare) * rated_ohms,
-            // Two silicon diodes behind the turns ratio of a low-voltage supply, or one valve of a high-voltage one.
-            diode_volts: 0.01 * plate.volts(),
-            half_wave: false,
-            farads: plate.detail(Detail::ReservoirSeconds) / (2.0 * rated_ohms),
-            draw_ohms,
-        }
+    let rated_ohms = plate.volts() * plate.volts() / plate.watts();
+    let parts = PowerSupplySpec {
+        rated_volts: plate.volts(),
+        magnetising_amps: plate.detail(Detail::MagnetisingShare) * plate.watts() / plate.volts(),
+        core_ohms: rated_ohms / plate.detail(Detail::CoreShare),
+        heater_watts: 0.0,
+        winding_ohms: plate.detail(Detail::WindingShare) * rated_ohms,
+        // Two silicon diodes behind the turns ratio of a low-voltage supply, or one valve of a high-voltage one.
+        diode_volts: 0.01 * plate.volts(),
+        half_wave: false,
+        farads: plate.detail(Detail::ReservoirSeconds) / (2.0 * rated_ohms),
+        draw_ohms: ANY_DRAW_OHMS,
     };
-    faulty(plate, condition, share, parts)
+    faulty(plate, condition, share, &parts)
 }
 
-/// The condition of any set with a rectifier behind windings, whose other numbers `parts` gives.
+/// Stands for the draw until it is known; any draw tells whether the other numbers are in range.
+pub(super) const ANY_DRAW_OHMS: f64 = 1000.0;
+
+/// The condition of any set with a rectifier behind windings, whose numbers other than the draw are in `parts`.
 pub(super) fn faulty(
     plate: &Plate,
     condition: Condition,
     share: f64,
-    parts: impl Fn(f64) -> PowerSupplySpec,
+    parts: &PowerSupplySpec,
 ) -> Result<Load, InputError> {
-    let winding_ohms = parts(1.0).winding_ohms;
-    let supply = |spec| PowerSupply::new(spec).map(|supply| Load::PowerSupply(Box::new(supply)));
-    let drawing = |watts: f64| draw_for(watts, plate.volts(), &parts);
+    let winding_ohms = parts.winding_ohms;
+    let drawing = |watts: f64| draw_for(watts, plate.volts(), parts);
     let healthy = || drawing(share * plate.watts());
-    match condition {
-        Condition::Idle => supply(parts(drawing(share * plate.detail(Detail::IdleShare) * plate.watts())?)),
-        Condition::Overloaded => supply(parts(drawing(OVERLOAD * share * plate.watts())?)),
+    let draw_ohms = match condition {
+        Condition::Idle => drawing(share * plate.detail(Detail::IdleShare) * plate.watts())?,
+        Condition::Overloaded => drawing(OVERLOAD * share * plate.watts())?,
         // As much again as the set should draw.
-        Condition::LeakyReservoir => supply(parts(0.5 * healthy()?)),
+        Condition::LeakyReservoir => 0.5 * healthy()?,
         // Six times: between an overload and a short (design value).
-        Condition::OutputConducting => supply(parts(healthy()? / 6.0)),
+        Condition::OutputConducting => healthy()? / 6.0,
         // What is left of a shorted capacitor and its leads, small against the windings.
-        Condition::ShortedReservoir => supply(parts((0.05 * winding_ohms).max(0.01))),
-        Condition::ShortedDiode => HalfShort::new(winding_ohms).map(Load::HalfShort),
+        Condition::ShortedReservoir => (0.05 * winding_ohms).max(0.01),
+        Condition::ShortedDiode => return HalfShort::new(winding_ohms).map(Load::HalfShort),
         // Leakage reactance about equals winding resistance in a small transformer (design value).
-        Condition::ShortedWinding => Impedance::new(winding_ohms, winding_ohms).map(Load::Impedance),
-        _ => supply(parts(healthy()?)),
-    }
+        Condition::ShortedWinding => {
+            return Impedance::new(winding_ohms, winding_ohms).map(Load::Impedance);
+        }
+        _ => healthy()?,
+    };
+    let supply = PowerSupply::new(PowerSupplySpec { draw_ohms, ..*parts })?;
+    Ok(Load::PowerSupply(Box::new(supply)))
 }
 
 /// The draw with which the whole takes `watts` at `volts`; the lightest or heaviest one where that cannot be met.
-fn draw_for(watts: f64, volts: f64, parts: impl Fn(f64) -> PowerSupplySpec) -> Result<f64, InputError> {
-    // Any draw tells whether the other numbers are in range.
-    PowerSupply::new(parts(1000.0))?;
+fn draw_for(watts: f64, volts: f64, parts: &PowerSupplySpec) -> Result<f64, InputError> {
+    PowerSupply::new(PowerSupplySpec { draw_ohms: ANY_DRAW_OHMS, ..*parts })?;
     let guess = libm::log(1.7 * volts * volts / watts);
     let span = (guess - 6.0, guess + 9.0);
     let excess = |ln_ohms: f64| {
-        let taken = PowerSupply::new(parts(libm::exp(ln_ohms))).map_or(f64::NAN, |set| set.watts_at(volts));
+        let spec = PowerSupplySpec { draw_ohms: libm::exp(ln_ohms), ..*parts };
+        let taken = PowerSupply::new(spec).map_or(f64::NAN, |set| set.watts_at(volts));
         // A smaller draw takes less: rising resistance, falling excess.
         libm::log(taken / watts)
     };

@@ -4,7 +4,7 @@
 //! the mains beside a half-wave rectifier, and the whole chassis is live.
 
 use super::Card;
-use super::transformer_supply::faulty;
+use super::transformer_supply::{ANY_DRAW_OHMS, faulty};
 use crate::condition::Condition;
 use crate::detail::{ClassDefault, Detail, Standing};
 use crate::error::InputError;
@@ -63,37 +63,39 @@ pub(super) static SERIES: Card = Card {
 
 fn with_transformer(plate: &Plate, condition: Condition, share: f64) -> Result<Load, InputError> {
     let rated_ohms = plate.volts() * plate.volts() / plate.watts();
-    faulty(plate, condition, share, |draw_ohms| PowerSupplySpec {
+    let parts = PowerSupplySpec {
         magnetising_amps: plate.detail(Detail::MagnetisingShare) * plate.watts() / plate.volts(),
         core_ohms: rated_ohms / plate.detail(Detail::CoreShare),
         winding_ohms: plate.detail(Detail::WindingShare) * rated_ohms,
         // A valve rectifier drops some 15 V of 250 V.
         diode_volts: 0.06 * plate.volts(),
         half_wave: false,
-        ..common(plate, draw_ohms)
-    })
+        ..common(plate)
+    };
+    faulty(plate, condition, share, &parts)
 }
 
 fn in_series(plate: &Plate, condition: Condition, share: f64) -> Result<Load, InputError> {
     let rated_ohms = plate.volts() * plate.volts() / plate.watts();
-    faulty(plate, condition, share, |draw_ohms| PowerSupplySpec {
+    let parts = PowerSupplySpec {
         magnetising_amps: 0.0,
         core_ohms: 1e9,
         // The surge resistor ahead of the rectifier.
         winding_ohms: plate.detail(Detail::WindingShare) * rated_ohms,
         diode_volts: 0.06 * plate.volts(),
         half_wave: true,
-        ..common(plate, draw_ohms)
-    })
+        ..common(plate)
+    };
+    faulty(plate, condition, share, &parts)
 }
 
-fn common(plate: &Plate, draw_ohms: f64) -> PowerSupplySpec {
+fn common(plate: &Plate) -> PowerSupplySpec {
     let rated_ohms = plate.volts() * plate.volts() / plate.watts();
     PowerSupplySpec {
         rated_volts: plate.volts(),
         heater_watts: plate.detail(Detail::HeaterShare) * plate.watts(),
         farads: plate.detail(Detail::ReservoirSeconds) / (4.0 * rated_ohms),
-        draw_ohms,
+        draw_ohms: ANY_DRAW_OHMS,
         magnetising_amps: 0.0,
         core_ohms: 1e9,
         winding_ohms: 0.0,
