@@ -1,16 +1,16 @@
 //! A set-up as a short text for a URL fragment, and back.
 //!
 //! The first character is the version. Version 1 is followed by base64url (RFC 4648, section 5, unpadded) of a
-//! `postcard` record and one check byte. Decoders are kept for ever: a link once shared stays readable.
+//! record in the `postcard` format and one check byte. Decoders are kept for ever: a link once shared stays readable.
 
 mod decimal;
+mod letters;
+mod record;
 mod v1;
 
 use alloc::string::String;
 use alloc::vec::Vec;
 use core::fmt;
-
-use base64ct::{Base64UrlUnpadded, Encoding};
 
 use crate::error::InputError;
 use crate::setup::Setup;
@@ -91,7 +91,7 @@ pub fn decode_stock(text: &str) -> Result<Stock, LinkError> {
 fn written(version: &str, mut record: Vec<u8>) -> String {
     record.push(check(&record));
     let mut text = String::from(version);
-    text.push_str(&Base64UrlUnpadded::encode_string(&record));
+    letters::write(&mut text, &record);
     text
 }
 
@@ -107,7 +107,7 @@ fn read(text: &str, longest: usize) -> Result<Vec<u8>, LinkError> {
         Some('2'..='9') => return Err(LinkError::Newer),
         Some(_) => return Err(LinkError::Damaged),
     }
-    let mut bytes = Base64UrlUnpadded::decode_vec(characters.as_str()).map_err(|_| LinkError::Damaged)?;
+    let mut bytes = letters::read(characters.as_str()).ok_or(LinkError::Damaged)?;
     let last = bytes.pop().ok_or(LinkError::Damaged)?;
     if check(&bytes) == last { Ok(bytes) } else { Err(LinkError::Damaged) }
 }

@@ -1,9 +1,8 @@
 //! A number as people write it: few digits and a power of ten, two or three bytes in a link.
 
-use serde::{Deserialize, Serialize};
-
 /// A decimal fraction, or the bits of a number that is none with at most 15 digits.
-#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
+#[derive(Debug, Clone, Copy, PartialEq)]
+#[cfg_attr(test, derive(serde::Serialize, serde::Deserialize))]
 pub(super) enum Decimal {
     /// `digits * 10^exponent`.
     Short { digits: i64, exponent: i8 },

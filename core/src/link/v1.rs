@@ -1,59 +1,26 @@
 //! Version 1 of the link: the record as it stands for ever. Do not change the order or types of its fields; write
 //! a version 2 beside it.
+//!
+//! Supply: volts, hertz, ohms. Bank: a list of groups, each a list of lamps. Plate: family, volts; watts, amperes,
+//! volt-amperes and power factor, each optional; a list of details, code and number. Lamp: volts, watts, fill, and, if it
+//! has any of them, extras: lumens, cold ohms, rated kelvin, gas share, each optional, and a list of points.
 
 use alloc::vec::Vec;
 
-use serde::{Deserialize, Serialize};
-
 use super::LinkError;
-use super::decimal::Decimal;
+use super::record::{Reader, Writer};
 use crate::bank::Bank;
 use crate::detail::Detail;
 use crate::family::Family;
 use crate::lamp::{Fill, Lamp, LampSpec, Point};
 use crate::plate::{Plate, PlateSpec};
 use crate::setup::Setup;
-use crate::stock::{Owned, Stock};
+use crate::stock::Stock;
 use crate::supply::Supply;
 
-#[derive(Serialize, Deserialize)]
-struct Record {
-    supply: [Decimal; 3],
-    bank: Vec<Vec<LampRecord>>,
-    plate: PlateRecord,
-}
-
-#[derive(Serialize, Deserialize)]
-struct PlateRecord {
-    family: u8,
-    volts: Decimal,
-    watts: Option<Decimal>,
-    amps: Option<Decimal>,
-    volt_amps: Option<Decimal>,
-    power_factor: Option<Decimal>,
-    details: Vec<(u8, Decimal)>,
-}
-
-#[derive(Serialize, Deserialize)]
-struct LampRecord {
-    volts: Decimal,
-    watts: Decimal,
-    /// Fill code, 0 where not given, and the measured or printed extras, most lamps having none.
-    fill: u8,
-    extras: Option<Extras>,
-}
-
-#[derive(Serialize, Deserialize)]
-struct Extras {
-    lumens: Option<Decimal>,
-    cold_ohms: Option<Decimal>,
-    rated_kelvin: Option<Decimal>,
-    gas_share: Option<Decimal>,
-    points: Vec<(Decimal, Decimal)>,
-}
-
-/// Fill and its code for ever; 0 is "not given".
-const FILLS: [(Fill, u8); 3] = [(Fill::Vacuum, 1), (Fill::Gas, 2), (Fill::Halogen, 3)];
+/// Fill, if it was given, and its code for ever.
+const FILLS: [(Option<Fill>, u8); 4] =
+    [(None, 0), (Some(Fill::Vacuum), 1), (Some(Fill::Gas), 2), (Some(Fill::Halogen), 3)];
 
 /// Family and its code for ever. New families take new numbers.
 const FAMILIES: [(Family, u8); 12] = [
@@ -97,134 +64,147 @@ fn code_of<T: PartialEq>(codes: &[(T, u8)], wanted: &T) -> u8 {
     codes.iter().find(|(known, _)| known == wanted).map_or(0, |&(_, code)| code)
 }
 
-fn known<T: Copy>(codes: &[(T, u8)], code: u8) -> Option<T> {
-    codes.iter().find(|&&(_, known)| known == code).map(|&(value, _)| value)
-}
-
 pub(super) fn encode(setup: &Setup) -> Vec<u8> {
     let Setup { supply, bank, plate } = setup;
-    let record = Record {
-        supply: [supply.volts(), supply.hertz(), supply.ohms()].map(Into::into),
-        bank: bank.groups().iter().map(|group| group.iter().map(lamp_record).collect()).collect(),
-        plate: plate_record(plate.spec()),
-    };
-    // Writing into a growing vector cannot fail; an empty record would be refused by its check byte.
-    postcard::to_allocvec(&record).unwrap_or_default()
+    let mut to = Writer::default();
+    for number in [supply.volts(), supply.hertz(), supply.ohms()] {
+        to.number(number);
+    }
+    to.length(bank.groups().len());
+    for group in bank.groups() {
+        to.length(group.len());
+        for lamp in group {
+            write_lamp(&mut to, lamp.spec());
+        }
+    }
+    write_plate(&mut to, plate.spec());
+    to.finish()
 }
 
 /// The kinds of a stock, each with its count.
 pub(super) fn encode_stock(stock: &Stock) -> Vec<u8> {
-    let owned = |owned: &Owned| (lamp_record(owned.lamp()), owned.count());
-    let record: Vec<(LampRecord, u8)> = stock.kinds().iter().map(owned).collect();
-    // As in `encode`.
-    postcard::to_allocvec(&record).unwrap_or_default()
+    let mut to = Writer::default();
+    to.length(stock.kinds().len());
+    for owned in stock.kinds() {
+        write_lamp(&mut to, owned.lamp().spec());
+        to.byte(owned.count());
+    }
+    to.finish()
 }
 
-fn lamp_record(lamp: &Lamp) -> LampRecord {
-    let LampSpec { volts, watts, fill, lumens, cold_ohms, ref points, rated_kelvin, gas_share } =
-        *lamp.spec();
-    let plain = lumens.is_none()
-        && cold_ohms.is_none()
-        && points.is_empty()
-        && rated_kelvin.is_none()
-        && gas_share.is_none();
-    LampRecord {
-        volts: volts.into(),
-        watts: watts.into(),
-        fill: fill.map_or(0, |fill| code_of(&FILLS, &fill)),
-        extras: (!plain).then(|| Extras {
-            lumens: lumens.map(Into::into),
-            cold_ohms: cold_ohms.map(Into::into),
-            rated_kelvin: rated_kelvin.map(Into::into),
-            gas_share: gas_share.map(Into::into),
-            points: points.iter().map(|point| (point.volts.into(), point.amps.into())).collect(),
-        }),
+fn write_lamp(to: &mut Writer, spec: &LampSpec) {
+    to.number(spec.volts);
+    to.number(spec.watts);
+    to.byte(code_of(&FILLS, &spec.fill));
+    let extras = [spec.lumens, spec.cold_ohms, spec.rated_kelvin, spec.gas_share];
+    let plain = extras.iter().all(Option::is_none) && spec.points.is_empty();
+    to.byte((!plain).into());
+    if plain {
+        return;
+    }
+    for extra in extras {
+        to.optional(extra);
+    }
+    to.length(spec.points.len());
+    for point in &spec.points {
+        to.number(point.volts);
+        to.number(point.amps);
     }
 }
 
-fn plate_record(spec: &PlateSpec) -> PlateRecord {
-    PlateRecord {
-        family: code_of(&FAMILIES, &spec.family),
-        volts: spec.volts.into(),
-        watts: spec.watts.map(Into::into),
-        amps: spec.amps.map(Into::into),
-        volt_amps: spec.volt_amps.map(Into::into),
-        power_factor: spec.power_factor.map(Into::into),
-        details: spec
-            .details
-            .iter()
-            .map(|&(detail, value)| (code_of(&DETAILS, &detail), value.into()))
-            .collect(),
+fn write_plate(to: &mut Writer, spec: &PlateSpec) {
+    to.byte(code_of(&FAMILIES, &spec.family));
+    to.number(spec.volts);
+    for printed in [spec.watts, spec.amps, spec.volt_amps, spec.power_factor] {
+        to.optional(printed);
+    }
+    to.length(spec.details.len());
+    for (detail, value) in &spec.details {
+        to.byte(code_of(&DETAILS, detail));
+        to.number(*value);
     }
 }
 
 pub(super) fn decode(bytes: &[u8]) -> Result<Setup, LinkError> {
-    let (record, rest): (Record, &[u8]) = postcard::take_from_bytes(bytes).map_err(|_| LinkError::Damaged)?;
-    if !rest.is_empty() {
-        return Err(LinkError::Damaged);
+    // All is read before anything is built: a record that is no record is damaged, whatever its numbers are.
+    let mut from = Reader::new(bytes);
+    let Some(([volts, hertz, ohms], groups, plate)) = read(&mut from) else { return Err(from.error()) };
+    let supply = Supply::new(volts, hertz, ohms).map_err(LinkError::Refused)?;
+    let mut built = Vec::new();
+    for group in groups {
+        built.push(
+            group.into_iter().map(Lamp::from_spec).collect::<Result<_, _>>().map_err(LinkError::Refused)?,
+        );
     }
-    let [volts, hertz, ohms] = record.supply;
-    let supply = Supply::new(number(volts)?, number(hertz)?, number(ohms)?).map_err(LinkError::Refused)?;
-    // Refuse a crowded bank before building its lamps.
-    if record.bank.iter().map(Vec::len).sum::<usize>() > Bank::MOST_LAMPS {
-        return Err(LinkError::Damaged);
-    }
-    let mut groups = Vec::new();
-    for group in record.bank {
-        groups.push(group.into_iter().map(lamp_of).collect::<Result<Vec<_>, _>>()?);
-    }
-    let bank = Bank::new(groups).map_err(LinkError::Refused)?;
-    let plate = record.plate;
-    let family = known(&FAMILIES, plate.family).ok_or(LinkError::Newer)?;
-    let mut spec = PlateSpec::new(family, number(plate.volts)?);
-    spec.watts = optional(plate.watts)?;
-    spec.amps = optional(plate.amps)?;
-    spec.volt_amps = optional(plate.volt_amps)?;
-    spec.power_factor = optional(plate.power_factor)?;
-    for (code, value) in plate.details {
-        spec.details.push((known(&DETAILS, code).ok_or(LinkError::Newer)?, number(value)?));
-    }
-    let plate = Plate::from_spec(spec).map_err(LinkError::Refused)?;
+    let bank = Bank::new(built).map_err(LinkError::Refused)?;
+    let plate = Plate::from_spec(plate).map_err(LinkError::Refused)?;
     Ok(Setup { supply, bank, plate })
 }
 
-pub(super) fn decode_stock(bytes: &[u8]) -> Result<Stock, LinkError> {
-    let (record, rest): (Vec<(LampRecord, u8)>, &[u8]) =
-        postcard::take_from_bytes(bytes).map_err(|_| LinkError::Damaged)?;
-    // Refuse a crowd before building its lamps.
-    if !rest.is_empty() || record.len() > Stock::MOST_KINDS {
-        return Err(LinkError::Damaged);
+type Parts = ([f64; 3], Vec<Vec<LampSpec>>, PlateSpec);
+
+fn read(from: &mut Reader<'_>) -> Option<Parts> {
+    let supply = [from.number()?, from.number()?, from.number()?];
+    let mut groups = Vec::new();
+    let mut lamps = 0;
+    for _ in 0..from.length()? {
+        let mut group = Vec::new();
+        for _ in 0..from.length()? {
+            group.push(read_lamp(from)?);
+            lamps += 1;
+        }
+        if lamps > Bank::MOST_LAMPS {
+            return None;
+        }
+        groups.push(group);
     }
+    let plate = read_plate(from)?;
+    from.finish()?;
+    Some((supply, groups, plate))
+}
+
+pub(super) fn decode_stock(bytes: &[u8]) -> Result<Stock, LinkError> {
+    let mut from = Reader::new(bytes);
+    let Some(kinds) = read_stock(&mut from) else { return Err(from.error()) };
     let mut stock = Stock::default();
-    for (lamp, count) in record {
-        stock.add(lamp_of(lamp)?, f64::from(count)).map_err(LinkError::Refused)?;
+    for (spec, count) in kinds {
+        let lamp = Lamp::from_spec(spec).map_err(LinkError::Refused)?;
+        stock.add(lamp, f64::from(count)).map_err(LinkError::Refused)?;
     }
     Ok(stock)
 }
 
-fn lamp_of(lamp: LampRecord) -> Result<Lamp, LinkError> {
-    let fill = match lamp.fill {
-        0 => None,
-        code => Some(known(&FILLS, code).ok_or(LinkError::Newer)?),
-    };
-    let mut spec =
-        LampSpec { volts: number(lamp.volts)?, watts: number(lamp.watts)?, fill, ..LampSpec::default() };
-    if let Some(extras) = lamp.extras {
-        spec.lumens = optional(extras.lumens)?;
-        spec.cold_ohms = optional(extras.cold_ohms)?;
-        spec.rated_kelvin = optional(extras.rated_kelvin)?;
-        spec.gas_share = optional(extras.gas_share)?;
-        for (volts, amps) in extras.points {
-            spec.points.push(Point { volts: number(volts)?, amps: number(amps)? });
+fn read_stock(from: &mut Reader<'_>) -> Option<Vec<(LampSpec, u8)>> {
+    let mut kinds = Vec::new();
+    for _ in 0..from.length()? {
+        kinds.push((read_lamp(from)?, from.byte()?));
+    }
+    from.finish()?;
+    // Refuse a crowd before building its lamps.
+    (kinds.len() <= Stock::MOST_KINDS).then_some(kinds)
+}
+
+fn read_lamp(from: &mut Reader<'_>) -> Option<LampSpec> {
+    let mut spec = LampSpec { volts: from.number()?, watts: from.number()?, ..LampSpec::default() };
+    spec.fill = from.one_of(&FILLS)?;
+    if from.some()? {
+        for place in [&mut spec.lumens, &mut spec.cold_ohms, &mut spec.rated_kelvin, &mut spec.gas_share] {
+            from.optional(place)?;
+        }
+        for _ in 0..from.length()? {
+            spec.points.push(Point { volts: from.number()?, amps: from.number()? });
         }
     }
-    Lamp::from_spec(spec).map_err(LinkError::Refused)
+    Some(spec)
 }
 
-fn number(value: Decimal) -> Result<f64, LinkError> {
-    value.to_f64().ok_or(LinkError::Damaged)
-}
-
-fn optional(value: Option<Decimal>) -> Result<Option<f64>, LinkError> {
-    value.map(number).transpose()
+fn read_plate(from: &mut Reader<'_>) -> Option<PlateSpec> {
+    let mut spec = PlateSpec::new(from.one_of(&FAMILIES)?, from.number()?);
+    for place in [&mut spec.watts, &mut spec.amps, &mut spec.volt_amps, &mut spec.power_factor] {
+        from.optional(place)?;
+    }
+    for _ in 0..from.length()? {
+        spec.details.push((from.one_of(&DETAILS)?, from.number()?));
+    }
+    Some(spec)
 }
