@@ -5,7 +5,7 @@
 
 use serde::{Deserialize, Serialize};
 
-use crate::observer::{COLOUR_MATCHING, FIRST_NANOMETRE, LUMENS_PER_WATT, STEP_NANOMETRES};
+use crate::observer::{FIRST_NANOMETRE, LUMENS_PER_WATT, STEP_NANOMETRES, colour_matching};
 use crate::tungsten::spectral_emissivity;
 
 /// Second radiation constant h c / k, metre kelvin (exact in the SI of 2019, rounded to `f64`).
@@ -125,7 +125,7 @@ pub fn luminous_exitance(kelvin: f64) -> f64 {
 /// The trapezoid rule over 5 nm rows: within 0.1 % of 1 nm rows above 800 K, where the integrand is smooth.
 pub fn tristimulus(kelvin: f64, emissivity: impl Fn(f64) -> f64) -> [f64; 3] {
     let mut sums = [0.0; 3];
-    for (row, matching) in COLOUR_MATCHING.iter().enumerate() {
+    for (row, matching) in colour_matching().enumerate() {
         #[expect(clippy::cast_precision_loss, reason = "a row number below 81")]
         let nanometre = FIRST_NANOMETRE + STEP_NANOMETRES * row as f64;
         let metre = nanometre * 1e-9;

@@ -11,8 +11,42 @@ pub const STEP_NANOMETRES: f64 = 5.0;
 /// Luminous efficacy of light at 540 THz, lumen per watt (defining constant of the SI).
 pub const LUMENS_PER_WATT: f64 = 683.0;
 
+/// Rows of the table.
+const ROWS: usize = 81;
+
 /// Colour-matching functions x, y, z, a row for each wavelength; y is the luminous efficiency V(lambda).
-pub static COLOUR_MATCHING: [[f64; 3]; 81] = [
+///
+/// Kept as whole numbers of the last decimal, which pack to half the size of an `f64` with its digits that look random.
+pub fn colour_matching() -> impl ExactSizeIterator<Item = [f64; 3]> {
+    #[expect(
+        clippy::cast_precision_loss,
+        reason = "below 2^53, so that one division gives the printed number"
+    )]
+    COUNTS.iter().map(|row| row.map(|count| count as f64 / DECIMALS))
+}
+
+/// The last decimal that the table has.
+const DECIMALS: f64 = 1e10;
+
+static COUNTS: [[u64; 3]; ROWS] = counted(&COLOUR_MATCHING);
+
+const fn counted(values: &[[f64; 3]; ROWS]) -> [[u64; 3]; ROWS] {
+    let mut counts = [[0; 3]; ROWS];
+    let mut at = 0;
+    while at < 3 * ROWS {
+        #[expect(
+            clippy::cast_possible_truncation,
+            clippy::cast_sign_loss,
+            reason = "positive, and below 2^53"
+        )]
+        let count = (values[at / 3][at % 3] * DECIMALS + 0.5) as u64;
+        counts[at / 3][at % 3] = count;
+        at += 1;
+    }
+    counts
+}
+
+const COLOUR_MATCHING: [[f64; 3]; ROWS] = [
     [0.001_368, 0.000_039, 0.006_450_001],
     [0.002_236, 0.000_064, 0.010_549_99],
     [0.004_243, 0.00012, 0.020_050_01],
@@ -95,3 +129,13 @@ pub static COLOUR_MATCHING: [[f64; 3]; 81] = [
     [0.000_058_707, 0.000_021_2, 0.0],
     [0.000_041_51, 0.000_014_99, 0.0],
 ];
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn the_rows_are_the_printed_numbers() {
+        assert!(colour_matching().eq(COLOUR_MATCHING));
+    }
+}
