@@ -25,7 +25,7 @@ impl Numerals {
     /// A number with a fixed count of decimals; a negative count rounds to tens, hundreds and so on.
     pub fn fixed(self, value: f64, places: i32) -> String {
         let places = places.clamp(-MOST_PLACES, MOST_PLACES);
-        let scaled = (value * 10f64.powi(places)).round();
+        let scaled = (value * ten(places)).round();
         if !scaled.is_finite() || scaled.abs() >= 1e15 {
             return String::from("?");
         }
@@ -53,7 +53,7 @@ impl Numerals {
     /// A number as a person would type it: the fewest decimals that give it back, or nine.
     pub fn plain(self, value: f64) -> String {
         let exact = |places: &i32| {
-            let scale = 10f64.powi(*places);
+            let scale = ten(*places);
             ((value * scale).round() / scale - value).abs() <= value.abs() * 1e-15
         };
         let places = (0..=MOST_PLACES).find(exact).unwrap_or(MOST_PLACES);
@@ -104,14 +104,14 @@ impl Numerals {
         let (scale, prefix) = prefix(seconds, "s");
         let value = seconds * scale;
         let first = exponent(value);
-        let more = i32::from(value < 3.0 * 10f64.powi(first));
-        let digits = 10f64.powi(more - first);
+        let more = i32::from(value < 3.0 * ten(first));
+        let digits = ten(more - first);
         with_unit(self.plain((value * digits).round() / digits), prefix, "s")
     }
 
     /// A limit, to three digits and no more decimals than it needs.
     pub fn short(self, value: f64) -> String {
-        let rounded = 10f64.powi(2 - exponent(value));
+        let rounded = ten(2 - exponent(value));
         self.plain((value * rounded).round() / rounded)
     }
 
@@ -158,11 +158,26 @@ fn places(band: &Band, scale: f64) -> i32 {
     if half.is_nan() || half <= tiny { three } else { three.min(-exponent(half)) }
 }
 
-/// The power of ten of the first significant digit; 0 for zero.
-fn exponent(value: f64) -> i32 {
-    let log = value.abs().log10().floor();
-    #[expect(clippy::cast_possible_truncation, reason = "a logarithm of a finite number is small")]
-    if log.is_finite() { log as i32 } else { 0 }
+/// The power of ten of the first significant digit, within twenty decades of one; 0 for zero and for no number.
+pub(crate) fn exponent(value: f64) -> i32 {
+    let value = value.abs();
+    let mut exponent = 0;
+    if !value.is_finite() || value == 0.0 {
+        return exponent;
+    }
+    while exponent < 20 && value >= ten(exponent + 1) {
+        exponent += 1;
+    }
+    while exponent > -20 && value < ten(exponent) {
+        exponent -= 1;
+    }
+    exponent
+}
+
+/// A power of ten: a few multiplications in place of 2 KB for any power of anything.
+pub(crate) fn ten(exponent: i32) -> f64 {
+    let power = (0..exponent.unsigned_abs()).fold(1.0, |power, _| power * 10.0);
+    if exponent < 0 { 1.0 / power } else { power }
 }
 
 #[cfg(test)]

@@ -13,6 +13,7 @@ use web_sys::HtmlCanvasElement;
 use super::frame::{Frame, Label};
 use super::ink::Ink;
 use crate::answers::Answers;
+use crate::format::{exponent, ten};
 use crate::words::Words;
 
 /// Points along the bank's curve.
@@ -155,7 +156,7 @@ pub fn draw(canvas: &HtmlCanvasElement, curves: &Curves, ink: &Ink, words: &Word
 /// Round numbers along an axis, about five of them, without zero.
 fn ticks(most: f64) -> Vec<f64> {
     let rough = most / 5.0;
-    let decade = 10f64.powf(rough.log10().floor());
+    let decade = ten(exponent(rough));
     let step = [1.0, 2.0, 5.0, 10.0].map(|times| times * decade).into_iter().find(|step| *step >= rough);
     let step = step.unwrap_or(most);
     (1..=9).map(|count| f64::from(count) * step).take_while(|tick| *tick <= most).collect()

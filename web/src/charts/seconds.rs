@@ -11,6 +11,7 @@ use web_sys::HtmlCanvasElement;
 
 use super::frame::{Frame, Label};
 use super::ink::Ink;
+use crate::format::{exponent, ten};
 use crate::theatre::place;
 use crate::words::Words;
 
@@ -162,7 +163,7 @@ impl Strip<'_> {
 /// Two or three round numbers along an axis.
 fn round_marks(most: f64) -> Vec<f64> {
     let rough = most / 2.5;
-    let decade = 10f64.powf(rough.log10().floor());
+    let decade = ten(exponent(rough));
     let step =
         [1.0, 2.0, 5.0, 10.0].map(|times| times * decade).into_iter().rev().find(|step| *step <= rough);
     let step = step.unwrap_or(most);
