@@ -3,19 +3,30 @@
 //! `html!` lays each element out in place, which came to some 400 bytes of WebAssembly apiece and half of the page's
 //! own code; a call costs a few dozen. The program is loaded over one bar of signal, so the panels are built of these.
 
+use std::rc::Rc;
+
+use indexmap::IndexMap;
 use yew::html::{onclick, oninput};
-use yew::virtual_dom::{AttrValue, VList, VNode, VTag, VText};
+use yew::virtual_dom::{AttrValue, AttributeOrProperty, Attributes, VList, VNode, VTag, VText};
 use yew::{Callback, Html, InputEvent, MouseEvent, NodeRef};
 
 /// An element that is being put together.
 #[derive(Debug)]
 #[must_use]
-pub struct El(Box<VTag>);
+pub struct El(Box<Parts>);
+
+/// The attributes are kept apart until the element is finished: a tag that is given one at a time carries 2 KB that
+/// turn each way of keeping attributes into this one.
+#[derive(Debug)]
+struct Parts {
+    tag: VTag,
+    attributes: IndexMap<AttrValue, AttributeOrProperty>,
+}
 
 /// A new element.
 #[inline(never)]
 pub fn el(tag: &'static str) -> El {
-    El(Box::new(VTag::new(tag)))
+    El(Box::new(Parts { tag: VTag::new(tag), attributes: IndexMap::new() }))
 }
 
 /// A button; it has a name for tests.
@@ -53,9 +64,8 @@ pub fn several(all: impl IntoIterator<Item = Html>) -> Html {
 impl El {
     /// An attribute with a fixed value.
     #[inline(never)]
-    pub fn set(mut self, name: &'static str, value: &'static str) -> Self {
-        self.0.add_attribute(name, value);
-        self
+    pub fn set(self, name: &'static str, value: &'static str) -> Self {
+        self.put_value(name, AttrValue::Static(value))
     }
 
     /// An attribute.
@@ -65,7 +75,7 @@ impl El {
 
     #[inline(never)]
     fn put_value(mut self, name: &'static str, value: AttrValue) -> Self {
-        self.0.add_attribute(name, value);
+        self.0.attributes.insert(AttrValue::Static(name), AttributeOrProperty::Attribute(value));
         self
     }
 
@@ -88,21 +98,21 @@ impl El {
 
     #[inline(never)]
     fn add_text(mut self, text: AttrValue) -> Self {
-        self.0.add_child(VNode::from(VText::new(text)));
+        self.0.tag.add_child(VNode::from(VText::new(text)));
         self
     }
 
     /// An element in it.
     #[inline(never)]
     pub fn with(mut self, child: Self) -> Self {
-        self.0.add_child(child.html());
+        self.0.tag.add_child(child.html());
         self
     }
 
     /// A node in it.
     #[inline(never)]
     pub fn node(mut self, child: Html) -> Self {
-        self.0.add_child(child);
+        self.0.tag.add_child(child);
         self
     }
 
@@ -110,7 +120,7 @@ impl El {
     #[inline(never)]
     pub fn maybe(mut self, child: Option<Self>) -> Self {
         // An empty place keeps its neighbours where they are, so that none of them is drawn anew.
-        self.0.add_child(child.map_or_else(Html::default, Self::html));
+        self.0.tag.add_child(child.map_or_else(Html::default, Self::html));
         self
     }
 
@@ -125,21 +135,21 @@ impl El {
     /// What a click does.
     #[inline(never)]
     pub fn click(mut self, f: Callback<MouseEvent>) -> Self {
-        self.0.add_listener(std::rc::Rc::new(onclick::Wrapper::new(f)));
+        self.0.tag.add_listener(Rc::new(onclick::Wrapper::new(f)));
         self
     }
 
     /// What typing does.
     #[inline(never)]
     pub fn typed(mut self, f: Callback<InputEvent>) -> Self {
-        self.0.add_listener(std::rc::Rc::new(oninput::Wrapper::new(f)));
+        self.0.tag.add_listener(Rc::new(oninput::Wrapper::new(f)));
         self
     }
 
     /// What stands in an input.
     #[inline(never)]
     pub fn value(mut self, text: String) -> Self {
-        self.0.set_value(text);
+        self.0.tag.set_value(text);
         self
     }
 
@@ -147,20 +157,22 @@ impl El {
     /// keeps the keyboard. All of the list must have one.
     #[inline(never)]
     pub fn key(mut self, key: String) -> Self {
-        self.0.key = Some(key.into());
+        self.0.tag.key = Some(key.into());
         self
     }
 
     /// Where the element is to be found once it is on the page.
     #[inline(never)]
     pub fn at(mut self, node: NodeRef) -> Self {
-        self.0.node_ref = node;
+        self.0.tag.node_ref = node;
         self
     }
 
     /// The finished element.
     #[inline(never)]
     pub fn html(self) -> Html {
-        VNode::from(*self.0)
+        let Parts { mut tag, attributes } = *self.0;
+        tag.set_attributes(Attributes::IndexMap(Rc::new(attributes)));
+        VNode::from(tag)
     }
 }
