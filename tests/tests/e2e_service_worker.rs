@@ -29,7 +29,10 @@ fn build(folder: &Path, number: u32) -> Result<()> {
     fs::write(folder.join("index.html"), page)?;
     fs::write(folder.join(format!("part-000000000000000{number}.js")), format!("window.part = {number};\n"))?;
     fs::write(folder.join("plain.txt"), format!("text {number}\n"))?;
-    ensure!(stamp::finish(folder, &worker)? == 4, "page, part, text and the script taken out of the page");
+    ensure!(
+        stamp::finish(folder, &worker, true)? == 4,
+        "page, part, text and the script taken out of the page"
+    );
     Ok(())
 }
 

@@ -2,5 +2,6 @@
 #![forbid(unsafe_code)]
 
 pub mod files;
+pub mod pack;
 pub mod site;
 pub mod stamp;

@@ -1,23 +1,29 @@
-//! What Trunk's output still needs: no inline script, names that change with the contents, and a service worker that
-//! knows its files.
+//! What Trunk's output still needs: no inline script, one style sheet, names that change with the contents, and a
+//! service worker that knows its files.
 
 use std::fs;
 use std::path::Path;
 
 use anyhow::{Context, Result, bail};
 
-use crate::files;
+use crate::{files, pack};
 
-/// Finishes the page in `folder`: `template` is the text of static/sw.js. Gives the number of files that the worker
-/// will keep.
+/// Finishes the page in `folder`: `template` is the text of static/sw.js; `light` is for the release, whose programs and
+/// styles are packed. Gives the number of files that the worker will keep.
 ///
 /// # Errors
 /// When the page or the worker is not as expected, or cannot be read or written.
-pub fn finish(folder: &Path, template: &str) -> Result<usize> {
+pub fn finish(folder: &Path, template: &str, light: bool) -> Result<usize> {
     let index = folder.join("index.html");
-    let html = fs::read_to_string(&index).with_context(|| format!("{} cannot be read", index.display()))?;
+    let mut html =
+        fs::read_to_string(&index).with_context(|| format!("{} cannot be read", index.display()))?;
+    if light {
+        html = join_styles(folder, &html)?;
+        html = pack_page(folder, &html)?;
+        pack_pair(&folder.join("reckoner_bg.wasm"), &folder.join("reckoner.js"))?;
+    }
     let (html, scripts) = externalise(&html)?;
-    let html = rename_reckoner(folder, without_idle_integrity(&html))?;
+    let html = rename_reckoner(folder, html)?;
     for script in &scripts {
         fs::write(folder.join(&script.name), &script.text)?;
     }
@@ -69,22 +75,88 @@ fn externalise(html: &str) -> Result<(String, Vec<Script>)> {
     Ok((out, scripts))
 }
 
-/// Takes the `integrity` of `<link rel="preload" … as="fetch">` away: browsers ignore it there, and warn on every visit.
-fn without_idle_integrity(html: &str) -> String {
+/// Makes one style sheet of all, in their order: each is a request of its own, and they pack better together.
+fn join_styles(folder: &Path, html: &str) -> Result<String> {
     let mut out = String::new();
+    let mut style = String::new();
+    let mut place = None;
     let mut rest = html;
-    while let Some(start) = rest.find("<link ") {
-        let length = rest[start..].find('>').unwrap_or(rest.len() - start);
-        let (before, tag) = (&rest[..start], &rest[start..start + length]);
-        out.push_str(before);
+    while let Some(start) = rest.find("<link rel=\"stylesheet\"") {
+        let length = rest[start..].find('>').context("index.html ends inside a link")? + 1;
+        out.push_str(rest[..start].trim_end());
+        let name = rest[start..start + length]
+            .split_once("href=\"./")
+            .and_then(|(_, after)| after.split('"').next())
+            .context("a style sheet without an address")?;
+        place.get_or_insert(out.len());
+        let file = folder.join(name);
+        style.push_str(
+            &fs::read_to_string(&file).with_context(|| format!("{} cannot be read", file.display()))?,
+        );
+        fs::remove_file(file)?;
         rest = &rest[start + length..];
-        let idle = tag.contains("rel=\"preload\"") && tag.contains("as=\"fetch\"");
-        match tag.split_once(" integrity=\"").filter(|_| idle) {
-            Some((head, tail)) => out.extend([head, tail.split_once('"').map_or("", |(_, after)| after)]),
-            None => out.push_str(tag),
-        }
     }
-    out + rest
+    out.push_str(rest);
+    if let Some(place) = place {
+        let style = squeezed(&style);
+        let name = format!("style-{:016x}.css", hash(style.as_bytes()));
+        fs::write(folder.join(&name), style)?;
+        out.insert_str(place, &format!("\n  <link rel=\"stylesheet\" href=\"./{name}\">"));
+    }
+    Ok(out)
+}
+
+/// A style sheet without its comments and most of its spaces. Ours have neither of these characters inside quotes.
+fn squeezed(style: &str) -> String {
+    let mut plain = String::new();
+    let mut rest = style;
+    while let Some((before, after)) = rest.split_once("/*") {
+        plain.push_str(before);
+        rest = after.split_once("*/").map_or("", |(_, after)| after);
+    }
+    plain.push_str(rest);
+    let mut out = String::new();
+    for word in plain.split_whitespace() {
+        // A space before a colon tells a descendant from a state; no other of these signs needs one.
+        if !(out.is_empty()
+            || out.ends_with(['{', '}', ';', ',', ':'])
+            || word.starts_with(['{', '}', ';', ',']))
+        {
+            out.push(' ');
+        }
+        out.push_str(word);
+    }
+    out.replace(";}", "}")
+}
+
+/// The program and the script that loads it, packed, and named anew by what they are now.
+fn pack_page(folder: &Path, html: &str) -> Result<String> {
+    let Some((_, start)) = html.split_once("module_or_path: './") else { return Ok(html.to_owned()) };
+    let wasm = start.split('\'').next().unwrap_or_default();
+    let script = wasm.replace("_bg.wasm", ".js");
+    pack_pair(&folder.join(wasm), &folder.join(&script))?;
+    let stem = script.rsplit_once('-').map_or("page", |(stem, _)| stem);
+    let mut renamed = Vec::new();
+    for old in [wasm, &script] {
+        let file = folder.join(old);
+        let tail = if old == wasm { "_bg.wasm" } else { ".js" };
+        let new = format!("{stem}-{:016x}{tail}", hash(&fs::read(&file)?));
+        fs::rename(file, folder.join(&new))?;
+        renamed.push((old, new));
+    }
+    Ok(with_names(html, &renamed))
+}
+
+/// Packs a program and its script where they stand, if they are there.
+fn pack_pair(wasm: &Path, script: &Path) -> Result<()> {
+    if !wasm.exists() {
+        return Ok(());
+    }
+    let (packed, text) = pack::pack(&fs::read(wasm)?, &fs::read_to_string(script)?)
+        .with_context(|| format!("{} cannot be packed", wasm.display()))?;
+    fs::write(wasm, packed)?;
+    fs::write(script, text)?;
+    Ok(())
 }
 
 /// The reckoner's files, each after those that it names.
@@ -162,7 +234,7 @@ fn hash(bytes: &[u8]) -> u64 {
 
 #[cfg(test)]
 mod tests {
-    use super::{externalise, hash, rename_reckoner, without_idle_integrity, worker};
+    use super::{externalise, hash, join_styles, rename_reckoner, worker};
 
     #[test]
     fn hash_agrees_with_the_published_test_vectors() {
@@ -221,13 +293,22 @@ mod tests {
     }
 
     #[test]
-    fn integrity_goes_where_browsers_ignore_it_only() {
-        let style = "<link rel=\"stylesheet\" href=\"a.css\" integrity=\"x\">";
-        let wasm =
-            |integrity: &str| format!("<link rel=\"preload\" href=\"a.wasm\"{integrity} as=\"fetch\">");
-        let html = format!("<head>{style}{}</head>", wasm(" integrity=\"sha384-+/=\""));
-        assert_eq!(without_idle_integrity(&html), format!("<head>{style}{}</head>", wasm("")));
-        assert_eq!(without_idle_integrity("<link "), "<link ");
+    fn styles_become_one_and_keep_their_order() {
+        let folder = std::env::temp_dir().join(format!("lampladder-styles-{}", std::process::id()));
+        std::fs::create_dir_all(&folder).expect("a folder");
+        std::fs::write(folder.join("a.css"), "/* one */\n.a > .b,\n.c :hover {\n  margin: 0 auto;\n}\n")
+            .expect("written");
+        std::fs::write(folder.join("b.css"), "@media (width > 40em) {\n  .d::after { content: \"+\"; }\n}\n")
+            .expect("written");
+        let link = |name: &str| format!("\n  <link rel=\"stylesheet\" href=\"./{name}.css\"/>");
+        let html =
+            join_styles(&folder, &format!("<head>{}{}\n</head>", link("a"), link("b"))).expect("joined");
+        let name = html.split("./").nth(1).and_then(|text| text.split('"').next()).expect("a name");
+        assert_eq!(html, format!("<head>\n  <link rel=\"stylesheet\" href=\"./{name}\">\n</head>"));
+        let style = std::fs::read_to_string(folder.join(name)).expect("the style sheet");
+        assert_eq!(style, ".a > .b,.c :hover{margin:0 auto}@media (width > 40em){.d::after{content:\"+\"}}");
+        assert!(!folder.join("a.css").exists() && !folder.join("b.css").exists());
+        std::fs::remove_dir_all(folder).expect("removed");
     }
 
     #[test]
