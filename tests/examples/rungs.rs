@@ -5,7 +5,7 @@
 
 use anyhow::{Result, ensure};
 use lampladder_tests::browser::Browser;
-use lampladder_tests::timing::{THROTTLE, report};
+use lampladder_tests::timing::{THROTTLE, report, while_watching_frames};
 use lampladder_tests::{page, surroundings};
 
 /// Milliseconds for twelve lamps of six ratings, throttled.
@@ -26,18 +26,22 @@ fn main() -> Result<()> {
         tap(watts, "more")?;
     }
     let spent = "document.querySelector('[data-testid=ladder]').dataset.milliseconds";
+    // No two runs take the very same time.
+    let again = |which: &str| -> Result<()> {
+        let before = browser.script(&format!("return {spent}"))?;
+        tap(150, which)?;
+        browser.until(&format!("return {spent} > 0 && {spent} !== {before}"))
+    };
     let mut times = Vec::new();
     for _ in 0..RUNS {
-        // One lamp less, and back: the whole stock is planned anew, and no two runs take the very same time.
-        for which in ["less", "more"] {
-            let before = browser.script(&format!("return {spent}"))?;
-            tap(150, which)?;
-            browser.until(&format!("return {spent} > 0 && {spent} !== {before}"))?;
-        }
+        // One lamp less, and back: the whole stock is planned anew.
+        again("less")?;
+        again("more")?;
         let text = browser.attribute("[data-testid=ladder]", "data-milliseconds")?;
         times.push(text.parse::<f64>()? * f64::from(THROTTLE));
     }
     let median = report("12 lamps, times 6", times)?;
+    while_watching_frames(&browser, || again("less"))?;
     println!("{}", browser.script("return navigator.userAgent")?);
     ensure!(median < BUDGET, "{median:.0} ms is over the budget of {BUDGET} ms");
     Ok(())

@@ -9,7 +9,7 @@ use lampladder_core::link;
 use lampladder_core::plate::Plate;
 use lampladder_core::setup::Setup;
 use lampladder_tests::browser::Browser;
-use lampladder_tests::timing::{THROTTLE, report};
+use lampladder_tests::timing::{THROTTLE, report, while_watching_frames};
 use lampladder_tests::{page, surroundings};
 
 /// Milliseconds for a diagnosis of eight conditions, 256 benches each, throttled.
@@ -54,6 +54,11 @@ fn main() -> Result<()> {
             over.push(name);
         }
     }
+    // A reading of the supply makes every forecast anew.
+    while_watching_frames(&browser, || {
+        browser.fill(&page::field("read-supply-volts"), "231.5")?;
+        browser.see(READY)
+    })?;
     println!("{}", browser.script("return navigator.userAgent")?);
     ensure!(over.is_empty(), "over {BUDGET} ms for eight conditions: {}", over.join(", "));
     Ok(())

@@ -4,7 +4,7 @@
 
 use std::time::Instant;
 
-use anyhow::Result;
+use anyhow::{Result, ensure};
 
 use crate::browser::{Browser, PATIENCE};
 
@@ -111,5 +111,15 @@ pub fn close(browser: &Browser) -> Result<()> {
         browser.tap(DONE)?;
         browser.not_see(DONE)?;
     }
+    Ok(())
+}
+
+/// Fails if the console holds anything: a panic of the program ends there, and so does what the browser refuses.
+///
+/// # Errors
+/// What it holds.
+pub fn no_complaints(browser: &Browser) -> Result<()> {
+    let console = browser.console()?;
+    ensure!(console.is_empty(), "the console holds complaints: {console:?}");
     Ok(())
 }

@@ -32,7 +32,7 @@ fn nonsense_in_a_field_is_answered_beside_it_and_stays_to_be_corrected() -> Resu
         page::close(&browser)?;
         browser.see(AMPS)?;
     }
-    no_complaints(&browser)
+    page::no_complaints(&browser)
 }
 
 #[test]
@@ -52,7 +52,7 @@ fn a_lamp_for_another_voltage_is_cautioned() -> Result<()> {
     browser.picture("burns-out")?;
     let advice = browser.text(page::ADVICE)?;
     ensure!(advice != before && advice.contains("12"), "nobody is told what becomes of the lamp: {advice}");
-    no_complaints(&browser)
+    page::no_complaints(&browser)
 }
 
 #[test]
@@ -73,7 +73,7 @@ fn a_link_that_cannot_be_read_says_so_and_leaves_what_was_there() -> Result<()> 
         let css = page::open_field(&browser, "plate-watts")?;
         ensure!(browser.value(&css)?.starts_with("123"), "a bad link destroyed what was kept");
     }
-    no_complaints(&browser)
+    page::no_complaints(&browser)
 }
 
 #[test]
@@ -102,7 +102,7 @@ fn storage_that_is_full_or_forbidden_only_costs_the_keeping() -> Result<()> {
         page::accept(&browser)?;
         let css = page::open_field(&browser, "plate-watts")?;
         ensure!(browser.value(&css)?.starts_with("77"), "storage {name}: the address lost it");
-        no_complaints(&browser)?;
+        page::no_complaints(&browser)?;
     }
     Ok(())
 }
@@ -124,12 +124,5 @@ fn a_number_is_read_as_people_write_it() -> Result<()> {
         let shown = browser.text(AMPS)?;
         ensure!(shown == expected, "`{same}` gives {shown}, `45` {expected}");
     }
-    no_complaints(&browser)
-}
-
-/// A panic of the program ends in the console, and so does anything the browser refuses.
-fn no_complaints(browser: &Browser) -> Result<()> {
-    let console = browser.console()?;
-    ensure!(console.is_empty(), "the console holds complaints: {console:?}");
-    Ok(())
+    page::no_complaints(&browser)
 }

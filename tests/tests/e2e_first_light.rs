@@ -186,7 +186,5 @@ fn nothing_is_asked_of_any_other_host() -> Result<()> {
     let outside: Vec<_> =
         site.asked().into_iter().filter(|path| !path.starts_with(surroundings::PREFIX)).collect();
     ensure!(outside.is_empty(), "asked above its own path: {outside:?}");
-    let console = browser.console()?;
-    ensure!(console.is_empty(), "the console holds complaints: {console:?}");
-    Ok(())
+    page::no_complaints(&browser)
 }

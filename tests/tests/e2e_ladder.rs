@@ -14,19 +14,14 @@ use lampladder_tests::browser::Browser;
 use lampladder_tests::numbers::ensure_shown;
 use lampladder_tests::page::{self, ACCEPT, AMPS, CAUTIONS, DONE, field, message};
 use lampladder_tests::{accessibility, surroundings};
-use serde_json::json;
 
 const TAB: &str = "[data-testid=tab-ladder]";
 const GO_ON: &str = "[data-testid=go-on]";
 const REFUSED: &str = "[data-testid=ladder-refused]";
 const RUNG: &str = "[data-testid=step-rung-0]";
 
-/// What the issue allows from opening the page to the first rung.
+/// From opening the page to the first rung.
 const MOST_TAPS: usize = 12;
-
-/// Milliseconds that a phone six times as slow as this machine may take for a ladder of twelve lamps.
-const MOST_MILLISECONDS: f64 = 600.0;
-const SLOWER: f64 = 6.0;
 
 fn id(name: &str) -> String {
     format!("[data-testid={name}]")
@@ -144,7 +139,7 @@ fn a_new_user_gets_to_the_first_rung_in_few_taps_and_comes_back_to_it() -> Resul
     plate(&browser, "80")?;
     browser.see(&id("restarted"))?;
     ensure!(browser.attribute(RUNG, "data-progress")? == "now");
-    no_complaints(&browser)
+    page::no_complaints(&browser)
 }
 
 #[test]
@@ -180,7 +175,7 @@ fn what_makes_no_ladder_is_said_with_a_way_forward() -> Result<()> {
     browser.see(REFUSED)?;
     browser.picture("ladder-refused")?;
     ensure!(browser.text(REFUSED)?.len() > said.len() / 2, "{}", browser.text(REFUSED)?);
-    no_complaints(&browser)
+    page::no_complaints(&browser)
 }
 
 #[test]
@@ -236,7 +231,7 @@ fn checks_are_judged_and_the_wait_is_counted() -> Result<()> {
     browser.tap(&id("step-after"))?;
     ensure!(left()? <= first - 2.0 && left()? > first - 60.0, "{} s after {first} s", left()?);
     ensure!(browser.text(&id("measure-first"))?.contains("Measure before touching"));
-    no_complaints(&browser)
+    page::no_complaints(&browser)
 }
 
 #[test]
@@ -276,70 +271,12 @@ fn every_step_passes_the_accessibility_checker_in_both_themes() -> Result<()> {
             browser.tap(&id("unknown-lamp"))?;
         }
     }
-    no_complaints(&browser)
+    page::no_complaints(&browser)
 }
 
 /// Checks and pictures the screen as it stands, in each size and theme, and whether a thumb can hit what is on it.
 fn look(browser: &Browser, screen: &str) -> Result<()> {
     browser.script("document.querySelector('[aria-expanded=true].step-head').scrollIntoView()")?;
     accessibility::look(browser, screen)?;
-    let small = browser.script(
-        "return [...document.querySelectorAll('.ladder button, .ladder input, .ladder summary')] \
-           .filter((e) => e.checkVisibility() && e.getBoundingClientRect().width > 0) \
-           .filter((e) => e.getBoundingClientRect().width < 44 || e.getBoundingClientRect().height < 44) \
-           .map((e) => e.outerHTML.slice(0, 100))",
-    )?;
-    ensure!(small.as_array().context("a list")?.is_empty(), "too small to tap on {screen}: {small:#}");
-    Ok(())
-}
-
-#[test]
-fn twelve_lamps_are_planned_quickly_and_the_page_is_not_held_up() -> Result<()> {
-    let site = surroundings::site()?;
-    let browser = Browser::start()?;
-    page::enter(&browser, &site.url())?;
-    browser.tap(TAB)?;
-    for watts in [15, 25, 40, 60, 75, 100] {
-        browser.tap(&id(&format!("size-{watts}-more")))?;
-        browser.tap(&id(&format!("size-{watts}-more")))?;
-    }
-    let complete =
-        "const l = document.querySelector('[data-testid=ladder]'); return l && l.dataset.complete === 'true'";
-    browser.until(complete)?;
-    // DevTools slows the page's thread down and not the reckoner's, whose own time is told in full: the least of some,
-    // since a busy machine makes the clock run, not the plan.
-    let mut least = f64::INFINITY;
-    for watts in 46..76 {
-        plate(&browser, &watts.to_string())?;
-        browser.until(complete)?;
-        let took: f64 = browser.attribute("[data-testid=ladder]", "data-milliseconds")?.parse()?;
-        ensure!(took > 0.0, "nobody measured");
-        least = least.min(took);
-        if SLOWER * least < MOST_MILLISECONDS {
-            break;
-        }
-    }
-    println!("{least:.1} ms for twelve lamps of six ratings, {:.0} ms six times slower", SLOWER * least);
-    ensure!(SLOWER * least < MOST_MILLISECONDS, "{least} ms, times {SLOWER} over {MOST_MILLISECONDS} ms");
-
-    browser.devtools("Emulation.setCPUThrottlingRate", json!({"rate": SLOWER}))?;
-    browser.script(
-        "window.gap = 0; let last = performance.now(); \
-         const frame = (now) => { window.gap = Math.max(window.gap, now - last); last = now; requestAnimationFrame(frame); }; \
-         requestAnimationFrame((now) => { last = now; requestAnimationFrame(frame); })",
-    )?;
-    browser.tap(&id("size-60-more"))?;
-    browser.until(complete)?;
-    let gap = browser.script("return window.gap")?.as_f64().context("a gap")?;
-    println!("longest time without a frame while a ladder is worked out, six times slower: {gap:.0} ms");
-    // Worked out on the page's own thread, it would have stood still for all of that.
-    ensure!(gap < SLOWER * least, "the page stood still for {gap} ms");
-    no_complaints(&browser)
-}
-
-/// A panic of the program ends in the console, and so does anything the browser refuses.
-fn no_complaints(browser: &Browser) -> Result<()> {
-    let console = browser.console()?;
-    ensure!(console.is_empty(), "the console holds complaints: {console:?}");
-    Ok(())
+    accessibility::ensure_thumbs(browser, screen)
 }

@@ -63,12 +63,6 @@ fn start(url: &str) -> Result<Browser> {
     Ok(browser)
 }
 
-fn no_complaints(browser: &Browser) -> Result<()> {
-    let console = browser.console()?;
-    ensure!(console.is_empty(), "the console holds complaints: {console:?}");
-    Ok(())
-}
-
 #[test]
 fn a_healthy_a_shorted_and_a_hunting_set_get_their_sentences() -> Result<()> {
     let site = surroundings::site()?;
@@ -126,7 +120,7 @@ fn a_healthy_a_shorted_and_a_hunting_set_get_their_sentences() -> Result<()> {
     browser.tap(&part("behaves-pulsing"))?;
     ensure_says(&browser, &["Measure first", "starts again", "larger lamps"])?;
     browser.picture("seen-hunting")?;
-    no_complaints(&browser)
+    page::no_complaints(&browser)
 }
 
 #[test]
@@ -165,7 +159,7 @@ fn a_kept_reading_is_there_after_a_reload_and_each_change_can_be_taken_back() ->
     page::accept(&browser)?;
     browser.tap(TAB)?;
     ensure_says(&browser, &["0.8 % + 3", "averaging"])?;
-    no_complaints(&browser)
+    page::no_complaints(&browser)
 }
 
 /// All records as they are in the database.
@@ -283,39 +277,7 @@ fn bad_readings_are_answered_where_they_stand_and_stay() -> Result<()> {
     browser.see(&message("meter-percent"))?;
     ensure!(browser.value(&page::field("meter-percent"))? == "0");
     browser.fill(&page::field("meter-percent"), "0,5 %")?;
-    no_complaints(&browser)
-}
-
-#[test]
-fn typing_never_waits_for_a_diagnosis() -> Result<()> {
-    let site = surroundings::site()?;
-    let browser = start(&site.url())?;
-    // A heavy one: valves, and a supply that is read anew at each key.
-    browser.tap("[data-testid=tab-expect]")?;
-    browser.tap("[data-testid=edit-equipment]")?;
-    browser.tap(&part("choose-family"))?;
-    browser.tap(&part("family-valve-transformer"))?;
-    page::close(&browser)?;
-    browser.tap(TAB)?;
-    ready(&browser)?;
-    browser.script(
-        "window.longest = 0; new PerformanceObserver((list) => { for (const task of list.getEntries()) \
-         window.longest = Math.max(window.longest, task.duration) }).observe({entryTypes: ['longtask']}); return true",
-    )?;
-    // The observer sees what is long.
-    browser.script("setTimeout(() => { const t = performance.now(); while (performance.now() - t < 250); }); return true")?;
-    browser.until("return window.longest >= 200")?;
-    browser.script("window.longest = 0; return true")?;
-    read(&browser, Kind::SupplyVolts, "231.5")?;
-    read(&browser, Kind::BankVolts, "67")?;
-    ensure!(browser.value(&page::field("read-supply-volts"))? == "231.5");
-    ready(&browser)?;
-    ensure!(number(&browser, "[data-testid=seen]", "data-milliseconds")? > 0.0);
-    // A forecast is far longer than this on the machines that test it; on the page there is nothing of it.
-    let longest = browser.script("return window.longest")?.as_f64().context("milliseconds")?;
-    println!("longest task of the page: {longest} ms");
-    ensure!(longest < 200.0, "the page was busy for {longest} ms");
-    Ok(())
+    page::no_complaints(&browser)
 }
 
 #[test]

@@ -172,7 +172,7 @@ pub(super) static LADDER: LadderWords = LadderWords {
     class_means: |class| match class {
         Class::One => "Class I: a plug with an earth contact.",
         Class::Two => "Class II: a square in a square on the plate, no earth.",
-        Class::Three => "Class III: extra-low voltage from a safe source.",
+        Class::Three => "Class III: extra-low voltage from an isolated source.",
     },
     lead: "Length of its lead",
     lead_name: |metres| format!("to {metres}"),
