@@ -57,7 +57,6 @@ pub struct Forecast {
     supply_deviation: f64,
     averaging: bool,
     sobol: Sobol,
-    benches: u32,
     done: u32,
     /// Benches of each condition that had an answer.
     counts: Vec<u32>,
@@ -67,7 +66,7 @@ pub struct Forecast {
 }
 
 impl Forecast {
-    /// Benches a condition that a forecast holds by default.
+    /// Benches a condition that a forecast holds.
     pub const BENCHES: u32 = 256;
 
     /// Prepares for a bench: `supply` is the reading of the supply, where there is one; `averaging` whether the other
@@ -89,7 +88,6 @@ impl Forecast {
             supply_deviation,
             averaging: response == Response::Averaging,
             sobol: Sobol::new(),
-            benches: Self::BENCHES,
             done: 0,
             counts: alloc::vec![0; conditions],
             warm: alloc::vec![Warm::default(); conditions],
@@ -112,16 +110,10 @@ impl Forecast {
         Ok(forecast)
     }
 
-    /// The same with another number of benches a condition (1 to 65 536).
-    #[must_use]
-    pub fn with_benches(self, benches: u32) -> Self {
-        Self { benches: benches.clamp(1, 65_536), ..self }
-    }
-
     /// Solves up to `benches` more benches, every condition of each; whether all are done. A diagnosis from a forecast
     /// that is not done is coarser.
     pub fn advance(&mut self, benches: u32) -> bool {
-        let end = self.done.saturating_add(benches).min(self.benches);
+        let end = self.done.saturating_add(benches).min(Self::BENCHES);
         while self.done < end {
             self.solve_bench(self.done);
             self.done += 1;
@@ -131,7 +123,7 @@ impl Forecast {
 
     /// Whether every bench is solved.
     pub const fn is_complete(&self) -> bool {
-        self.done >= self.benches
+        self.done >= Self::BENCHES
     }
 
     /// The bench that it is for.
@@ -150,7 +142,7 @@ impl Forecast {
 
     /// Part of a condition's benches that a cluster holds.
     pub(crate) fn share(&self, cluster: &Cluster) -> f64 {
-        #[expect(clippy::cast_precision_loss, reason = "at most 65 536 benches")]
+        #[expect(clippy::cast_precision_loss, reason = "at most 256 benches")]
         let members = cluster.members.len() as f64;
         members / f64::from(self.counts[cluster.condition].max(1))
     }
@@ -290,7 +282,7 @@ impl Cluster {
         }
     }
 
-    #[expect(clippy::cast_precision_loss, reason = "at most 65 536 benches")]
+    #[expect(clippy::cast_precision_loss, reason = "at most 256 benches")]
     fn count(&self) -> f64 {
         self.members.len() as f64
     }
