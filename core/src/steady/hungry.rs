@@ -126,8 +126,13 @@ impl Circuit<'_> {
                     Some(x) => x,
                     None => return Ok(None),
                 },
-                // A tangent on the rising side runs above the curve: the root lies beyond its own.
-                _ => spot.towards(spot.amps * (1.0 - 1.5 * spot.left() / spot.slope).clamp(0.4, 2.5)),
+                // A tangent on the rising side runs above the curve: the root lies beyond its own. On the falling side a
+                // mixed bank may be driven so far beyond its ratings that tangents lead nowhere; a stride too long
+                // only finds the other side.
+                (Some(_), _) => {
+                    spot.towards(spot.amps * (1.0 - 1.5 * spot.left() / spot.slope).clamp(1.0, 2.5))
+                }
+                _ => spot.towards(spot.amps * (1.0 - 1.5 * spot.left() / spot.slope).clamp(0.4, 0.8)),
             };
         }
         Ok(None)
@@ -201,4 +206,33 @@ fn refine(
         }
     }
     None
+}
+
+#[cfg(test)]
+mod tests {
+    use crate::bank::Bank;
+    use crate::lamp::Lamp;
+    use crate::load::{Draw, Load, Rectifier, RectifierSpec};
+    use crate::steady;
+    use crate::supply::Supply;
+    use alloc::vec;
+
+    /// Large lamps before a small one: a guess by the first group drives the last one to a hundred times its rating.
+    #[test]
+    fn a_hump_is_found_behind_a_bank_of_very_different_lamps() {
+        let lamp = |watts| Lamp::new(230.0, watts).expect("in range");
+        let bank = Bank::new(vec![vec![lamp(883.0), lamp(886.0)], vec![lamp(5.0)]]).expect("a bank");
+        let supply = Supply::new(167.0, 0.0, 0.0).expect("in range");
+        let (watts, shunt) = (0.114, 7108.0);
+        let draw = Draw::Watts { watts, start_volts: 1.0, stop_volts: 0.0, restart_seconds: 0.0 };
+        let spec =
+            RectifierSpec { farads: 1e-4, series_ohms: 0.0, diode_volts: 0.0, draw, shunt_ohms: Some(shunt) };
+        let load = Load::Rectifier(Rectifier::new(spec).expect("in range"));
+        let points = steady::equilibria(&supply, &bank, &load).expect("solvable");
+        assert_eq!(points.len(), 2, "{points:?}");
+        for point in points {
+            let taken = point.load_watts - point.load_volts * point.load_volts / shunt;
+            assert!((taken - watts).abs() < 1e-6 * point.load_watts, "{point:?}");
+        }
+    }
 }
