@@ -4,9 +4,12 @@
 //! The cautions stand in static/index.html, since they must show without the program.
 
 mod english;
+pub mod fill;
 pub mod ladder;
 pub mod replay;
 pub mod seen;
+
+pub use fill::fill;
 
 use lampladder_core::condition::Condition;
 use lampladder_core::family::{self, Family, Warning};
