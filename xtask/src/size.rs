@@ -14,6 +14,8 @@ const FIRST_LOAD: usize = 150_000;
 /// Gzipped bytes of what is fetched after the first answer, while a person reads: what it came to when it was written
 /// down, and 5 %.
 const AFTERWARDS: usize = 143_700;
+/// Gzipped bytes of the icons for a home screen: no first answer waits for them.
+const ICONS: usize = 32_000;
 
 pub(crate) fn size(arguments: &[String]) -> Result<()> {
     if !arguments.is_empty() {
@@ -34,10 +36,12 @@ pub(crate) fn report(folder: &Path) -> Result<usize> {
         let bytes = fs::read(path)?;
         all.push((name, bytes.len(), site::compress(&bytes)?.len()));
     }
+    let (icons, all): (Vec<_>, Vec<_>) = all.into_iter().partition(|(name, ..)| name.starts_with("icons/"));
     let (later, first): (Vec<_>, Vec<_>) =
         all.into_iter().partition(|(name, ..)| name.starts_with("reckoner-"));
     Ok(table("the first load", &first, FIRST_LOAD)
-        + table("fetched after the first answer", &later, AFTERWARDS))
+        + table("fetched after the first answer", &later, AFTERWARDS)
+        + table("icons for a home screen", &icons, ICONS))
 }
 
 fn table(what: &str, files: &[(String, usize, usize)], budget: usize) -> usize {
