@@ -55,10 +55,22 @@ impl Browser {
     /// # Errors
     /// When the browser or its driver cannot be found or started.
     pub fn start() -> Result<Self> {
+        Self::start_with(Vec::new())
+    }
+
+    /// The same, with whatever is not for this machine sent to a proxy.
+    ///
+    /// # Errors
+    /// As [`Browser::start`].
+    pub fn start_behind(proxy: &str) -> Result<Self> {
+        Self::start_with(vec![format!("--proxy-server={}", proxy.trim_end_matches(surroundings::PREFIX))])
+    }
+
+    fn start_with(mut flags: Vec<String>) -> Result<Self> {
         let (chromium, driver) = surroundings::browser()?;
         let driver = Driver::start(&driver)?;
         let profile = Folder::new("profile")?;
-        let mut flags: Vec<String> = FLAGS.iter().map(ToString::to_string).collect();
+        flags.extend(FLAGS.map(ToOwned::to_owned));
         flags.push(format!("--user-data-dir={}", profile.path().display()));
         let capabilities = json!({
             "goog:chromeOptions": {"binary": chromium, "args": flags},

@@ -7,6 +7,7 @@
 
 pub mod accessibility;
 pub mod browser;
+pub mod contrast;
 pub mod devtools;
 mod driver;
 pub mod folder;
@@ -20,3 +21,4 @@ pub mod reliability;
 pub mod simulated;
 pub mod surroundings;
 pub mod timing;
+pub mod walk;

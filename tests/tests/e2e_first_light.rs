@@ -161,30 +161,3 @@ fn the_main_answer_needs_no_scrolling_on_a_small_phone() -> Result<()> {
     ensure!(wide == false, "the page is wider than the phone");
     Ok(())
 }
-
-#[test]
-fn nothing_is_asked_of_any_other_host() -> Result<()> {
-    let site = surroundings::site()?;
-    let browser = Browser::start()?;
-    page::enter(&browser, &site.url())?;
-    browser.until_offline_ready()?;
-    type_in(&browser, &setup(100.0, 80.0)?)?;
-    browser.reload()?;
-    page::accept(&browser)?;
-    let requests = browser.requests()?;
-    ensure!(
-        requests.iter().any(|url| url.contains("_bg.wasm")),
-        "the log of requests is blind: {requests:?}"
-    );
-    let own = site.url();
-    let foreign: Vec<_> = requests
-        .iter()
-        // Chromium's own first tab (chrome:) and data: addresses leave no machine.
-        .filter(|url| (url.starts_with("http") || url.starts_with("ws")) && !url.starts_with(&own))
-        .collect();
-    ensure!(foreign.is_empty(), "asked elsewhere: {foreign:?}");
-    let outside: Vec<_> =
-        site.asked().into_iter().filter(|path| !path.starts_with(surroundings::PREFIX)).collect();
-    ensure!(outside.is_empty(), "asked above its own path: {outside:?}");
-    page::no_complaints(&browser)
-}
