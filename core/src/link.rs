@@ -1,23 +1,41 @@
-//! A set-up as a short text for a URL fragment, and back.
+//! A set-up as a short text for a URL fragment, and back; and with it what else one colleague hands on to another.
 //!
-//! The first character is the version. Version 1 is followed by base64url (RFC 4648, section 5, unpadded) of a
-//! record in the `postcard` format and one check byte. Decoders are kept for ever: a link once shared stays readable.
+//! The first character is the version. Versions 1 and 2 are followed by base64url (RFC 4648, section 5, unpadded) of a
+//! record and one check byte, version 3 by the record and check byte of version 2 in digits. Version 1 holds a set-up, in
+//! the `postcard` format; version 2 is shorter, and may hold the lamps that there are, the position on the ladder and
+//! kept readings as well. Decoders are kept for ever: a link once shared stays readable.
 
 mod decimal;
 mod letters;
+mod numerals;
+mod parts;
 mod record;
 mod v1;
+mod v2;
 
 use alloc::string::String;
 use alloc::vec::Vec;
 use core::fmt;
 
 use crate::error::InputError;
+use crate::hand_on::HandedOn;
 use crate::setup::Setup;
 use crate::stock::Stock;
 
 /// Longest text that is looked at: the fullest bench, eight lamps with 64 measured points each, takes 16,000.
 pub const LONGEST: usize = 20_000;
+
+/// The same with everything that may be handed on: the fullest bench and stock, and some thousand kept readings.
+pub const LONGEST_HANDED_ON: usize = 120_000;
+
+/// How a link that is handed on is spelt.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Spelling {
+    /// Letters and digits: the shortest text.
+    Letters,
+    /// Digits only: the smallest code for a camera.
+    Digits,
+}
 
 /// Why a text is no set-up.
 #[derive(Debug, Clone, Copy, PartialEq)]
@@ -56,12 +74,53 @@ pub fn encode(setup: &Setup) -> String {
     written("1", v1::encode(setup))
 }
 
-/// The set-up in a text, with or without the leading `#`.
+/// The set-up in a text, with or without the leading `#`; what else it may hold is only looked over.
 ///
 /// # Errors
 /// Anything but a whole link of a known version with numbers in range; never a panic, whatever the text.
 pub fn decode(text: &str) -> Result<Setup, LinkError> {
-    v1::decode(&read(text.trim().trim_start_matches('#'), LONGEST)?)
+    let (version, bytes) = read(bare(text), LONGEST)?;
+    if version == '1' { v1::decode(&bytes) } else { v2::decode(&bytes).map(|(setup, _)| setup) }
+}
+
+/// All that is handed on as a text of URL-safe characters, to stand behind `#`.
+///
+/// The same gives the same text, and [`decode_all`] gives the very same back.
+///
+/// # Errors
+/// [`LinkError::TooLong`]: more readings than a link carries.
+pub fn encode_all(handed: &HandedOn, spelling: Spelling) -> Result<String, LinkError> {
+    let mut record = v2::encode(handed);
+    record.push(check(&record));
+    let mut text = String::new();
+    match spelling {
+        Spelling::Letters => {
+            text.push('2');
+            letters::write(&mut text, &record);
+        }
+        Spelling::Digits => {
+            text.push('3');
+            numerals::write(&mut text, &record);
+        }
+    }
+    if text.len() > LONGEST_HANDED_ON { Err(LinkError::TooLong) } else { Ok(text) }
+}
+
+/// All that a text holds, with or without the leading `#`.
+///
+/// # Errors
+/// As [`decode`], for the parts behind the set-up too.
+pub fn decode_all(text: &str) -> Result<HandedOn, LinkError> {
+    let (version, bytes) = read(bare(text), LONGEST)?;
+    if version == '1' {
+        return v1::decode(&bytes).map(HandedOn::only);
+    }
+    let (setup, parts) = v2::decode(&bytes)?;
+    parts::decode(setup, parts)
+}
+
+fn bare(text: &str) -> &str {
+    text.trim().trim_start_matches('#')
 }
 
 /// What a text of a stock begins with, so that nobody takes it for a set-up.
@@ -83,8 +142,12 @@ pub fn decode_stock(text: &str) -> Result<Stock, LinkError> {
     if text.is_empty() {
         return Err(LinkError::Empty);
     }
+    let text = text.strip_prefix(STOCK).ok_or(LinkError::Damaged)?;
+    if text.starts_with(|version| matches!(version, '2'..='9')) {
+        return Err(LinkError::Newer);
+    }
     // Twelve kinds of 64 points each are half as long again as the fullest bench.
-    v1::decode_stock(&read(text.strip_prefix(STOCK).ok_or(LinkError::Damaged)?, 2 * LONGEST)?)
+    v1::decode_stock(&read(text, 2 * LONGEST)?.1)
 }
 
 /// A version, and a record with its check byte.
@@ -95,21 +158,23 @@ fn written(version: &str, mut record: Vec<u8>) -> String {
     text
 }
 
-/// The record in a text of version 1.
-fn read(text: &str, longest: usize) -> Result<Vec<u8>, LinkError> {
+/// Version and record of a text; `longest` is for version 1.
+fn read(text: &str, longest: usize) -> Result<(char, Vec<u8>), LinkError> {
+    let mut characters = text.chars();
+    let version = characters.next().ok_or(LinkError::Empty)?;
+    let longest = match version {
+        '1' => longest,
+        '2' | '3' => LONGEST_HANDED_ON,
+        '4'..='9' => return Err(LinkError::Newer),
+        _ => return Err(LinkError::Damaged),
+    };
     if text.len() > longest {
         return Err(LinkError::TooLong);
     }
-    let mut characters = text.chars();
-    match characters.next() {
-        None => return Err(LinkError::Empty),
-        Some('1') => {}
-        Some('2'..='9') => return Err(LinkError::Newer),
-        Some(_) => return Err(LinkError::Damaged),
-    }
-    let mut bytes = letters::read(characters.as_str()).ok_or(LinkError::Damaged)?;
+    let read = if version == '3' { numerals::read } else { letters::read };
+    let mut bytes = read(characters.as_str()).ok_or(LinkError::Damaged)?;
     let last = bytes.pop().ok_or(LinkError::Damaged)?;
-    if check(&bytes) == last { Ok(bytes) } else { Err(LinkError::Damaged) }
+    if check(&bytes) == last { Ok((version, bytes)) } else { Err(LinkError::Damaged) }
 }
 
 /// CRC-8 with the polynomial x^8 + x^2 + x + 1 (ITU-T I.432.1): finds every single changed character and all but
@@ -159,7 +224,9 @@ mod tests {
             assert!(decode(&text[..cut]).is_err(), "cut at {cut}");
         }
         assert_eq!(decode(""), Err(LinkError::Empty));
-        assert_eq!(decode("2abc"), Err(LinkError::Newer));
+        assert_eq!(decode("4abc"), Err(LinkError::Newer));
+        assert_eq!(decode("2abc"), Err(LinkError::Damaged));
+        assert_eq!(decode("3123"), Err(LinkError::Damaged));
         assert_eq!(decode("caution"), Err(LinkError::Damaged));
         assert_eq!(decode(&"1".repeat(LONGEST + 1)), Err(LinkError::TooLong));
     }

@@ -7,10 +7,19 @@
 use lampladder_core::bank::Bank;
 use lampladder_core::condition::Condition;
 use lampladder_core::detail::Detail;
+use lampladder_core::diagnosis::Advice;
+use lampladder_core::error::Field;
 use lampladder_core::family::Family;
-use lampladder_core::lamp::{Fill, Lamp, LampSpec};
+use lampladder_core::glow::GlowWord;
+use lampladder_core::hand_on::{HandedOn, Position, PositionSpec, Step};
+use lampladder_core::kept::{Kept, KeptSpec, Verdict};
+use lampladder_core::lamp::{Fill, Lamp, LampSpec, Point};
 use lampladder_core::load::{Draw, Impedance, InductionMotor, Load, Rectifier, RectifierSpec};
 use lampladder_core::plate::{Plate, PlateSpec};
+use lampladder_core::precheck::Class;
+use lampladder_core::readings::{Behaviour, Kind, MeterSpec, Response};
+use lampladder_core::setup::Setup;
+use lampladder_core::stock::Stock;
 use lampladder_core::supply::Supply;
 use proptest::prelude::*;
 use proptest::test_runner::Config;
@@ -153,4 +162,135 @@ pub fn load() -> impl Strategy<Value = Load> {
         4 => rectifier().prop_map(Load::Rectifier),
         6 => equipment().prop_map(|(_, _, load)| load),
     ]
+}
+
+/// A lamp with everything on it that a person can enter.
+pub fn described_lamp() -> impl Strategy<Value = Lamp> {
+    let extras = (
+        prop::option::of(0.5..20.0),
+        prop::option::of(8.0..16.0),
+        prop::collection::vec((0.01..1.2, -0.1..0.1), 0..4),
+    );
+    (any_lamp(), extras).prop_map(|(lamp, (lumens_per_watt, hot_over_cold, points))| {
+        let (volts, watts) = (lamp.rated_volts(), lamp.rated_watts());
+        let point = |(share, off): (f64, f64)| {
+            let state = lamp.at_volts(share * volts);
+            Point { volts: state.volts, amps: state.amps * (1.0 + off) }
+        };
+        let spec = LampSpec {
+            lumens: lumens_per_watt.map(|value| value * watts),
+            cold_ohms: hot_over_cold.map(|ratio| volts * volts / watts / ratio),
+            points: points.into_iter().map(point).collect(),
+            ..lamp.spec().clone()
+        };
+        // An extreme lamp can take a point out of its own range; then it goes without.
+        Lamp::from_spec(spec).unwrap_or(lamp)
+    })
+}
+
+/// Any bench.
+pub fn setup() -> impl Strategy<Value = Setup> {
+    (supply(), bank(described_lamp()), equipment(), prop::option::of(log_uniform(0.5, 1.0))).prop_map(
+        |(supply, bank, (plate, ..), power_factor)| {
+            let spec = PlateSpec { power_factor, ..plate.spec().clone() };
+            let plate = Plate::from_spec(spec).unwrap_or(plate);
+            Setup { supply, bank, plate }
+        },
+    )
+}
+
+/// Any lamps that a person owns.
+pub fn stock() -> impl Strategy<Value = Stock> {
+    prop::collection::vec((described_lamp(), 1..=99_u8), 0..=Stock::MOST_KINDS).prop_map(|lamps| {
+        let mut stock = Stock::default();
+        for (lamp, count) in lamps {
+            // Two alike can come to more than a hundred: then there are the first of them.
+            let _ = stock.add(lamp, count.into());
+        }
+        stock
+    })
+}
+
+/// Any position on the ladder.
+pub fn position() -> impl Strategy<Value = Position> {
+    let step = prop_oneof![
+        Just(Step::Lamps),
+        Just(Step::Checks),
+        any::<u8>().prop_map(Step::Rung),
+        Just(Step::Mains),
+        Just(Step::After)
+    ];
+    let check = |(_, low, high, over_range): (Field, f64, f64, bool)| {
+        let number = log_uniform(low.max(1e-3), high);
+        let over = if over_range { f64::INFINITY } else { high };
+        prop::option::of(prop_oneof![3 => number, 1 => Just(low), 1 => Just(over)])
+    };
+    let [a, b, c, d, e, f] = Position::CHECKS.map(check);
+    let class = prop::sample::select(&Class::ALL[..]);
+    (step, class, 0.0..100.0, any::<bool>(), (a, b, c, d, e, f)).prop_map(
+        |(step, class, lead_metres, looked_over, (a, b, c, d, e, f))| {
+            let checks = [a, b, c, d, e, f];
+            Position::from_spec(PositionSpec { step, class, lead_metres, looked_over, checks })
+                .expect("in range")
+        },
+    )
+}
+
+/// Any reading that a person keeps, on this bench or on another.
+pub fn kept(bench: Setup) -> impl Strategy<Value = Kept> {
+    let other_bank =
+        (Just(bench.clone()), bank(described_lamp())).prop_map(|(bench, bank)| Setup { bank, ..bench });
+    let bench = prop_oneof![4 => Just(bench), 2 => other_bank, 1 => setup()];
+    let number =
+        |kind: Kind| prop::option::of(prop_oneof![0.0..kind.most(), (0..9999_u16).prop_map(f64::from)]);
+    let numbers = Kind::ALL.map(|kind| number(kind).boxed());
+    let meter = prop_oneof![
+        Just(MeterSpec::default()),
+        (0.1..3.0, 0..9_u8, prop::sample::select(&[2000.0, 6000.0][..]), any::<bool>()).prop_map(
+            |(percent, digits, counts, averaging)| {
+                let response = if averaging { Response::Averaging } else { Response::TrueRms };
+                MeterSpec { percent, digits: digits.into(), counts, response }
+            }
+        )
+    ];
+    let verdict = (
+        prop::sample::select(&[Advice::GoOn, Advice::Stop, Advice::MeasureFirst][..]),
+        prop::sample::select(&Condition::ALL[..]),
+        0.0..=1.0,
+    );
+    let verdict =
+        prop::option::of(verdict.prop_map(|(advice, leader, weight)| Verdict { advice, leader, weight }));
+    let look = prop::option::of(prop::sample::select(&GlowWord::ALL[..]));
+    let behaviour = prop::option::of(prop::sample::select(&Behaviour::ALL[..]));
+    let rest = (meter, numbers, look, behaviour, verdict, ".{0,30}");
+    (bench, 0..8_640_000_000_000_000_u64, prop::option::of(1..=99_u32), rest).prop_map(
+        |(setup, milliseconds, rung, (meter, numbers, look, behaviour, verdict, note))| {
+            #[expect(clippy::cast_precision_loss, reason = "below 2^53")]
+            let milliseconds = milliseconds as f64;
+            // A whole number above what the kind allows is none of its readings.
+            let numbers =
+                core::array::from_fn(|at| numbers[at].filter(|value| *value <= Kind::ALL[at].most()));
+            Kept::from_spec(KeptSpec {
+                milliseconds,
+                setup,
+                rung,
+                meter,
+                numbers,
+                look,
+                behaviour,
+                verdict,
+                note,
+            })
+            .expect("in range")
+        },
+    )
+}
+
+/// Anything that one colleague hands on to another.
+pub fn handed_on() -> impl Strategy<Value = HandedOn> {
+    setup().prop_flat_map(|setup| {
+        let log = prop::collection::vec(kept(setup.clone()), 0..4);
+        (Just(setup), prop::option::of(stock()), prop::option::of(position()), log)
+            .prop_map(|(setup, stock, position, log)| HandedOn { setup, stock, position, log })
+    })
 }

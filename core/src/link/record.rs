@@ -9,6 +9,11 @@ use alloc::vec::Vec;
 use super::LinkError;
 use super::decimal::Decimal;
 
+/// What stands for the power 10^0 in a packed number; one less for each power below.
+const PACKED_ZERO: i8 = 18;
+/// What stands before the eight bytes of a packed number that is no short decimal.
+const PACKED_BITS: u8 = 37;
+
 /// A record that is being written.
 #[derive(Debug, Default)]
 pub(super) struct Writer(Vec<u8>);
@@ -40,8 +45,7 @@ impl Writer {
         match Decimal::from(value) {
             Decimal::Short { digits, exponent } => {
                 self.byte(0);
-                // Signs alternate, so that small numbers are short on both sides of zero.
-                self.whole(((digits << 1) ^ (digits >> 63)).cast_unsigned());
+                self.signed(digits);
                 self.byte(exponent.cast_unsigned());
             }
             Decimal::Bits(bits) => {
@@ -49,6 +53,38 @@ impl Writer {
                 self.whole(bits);
             }
         }
+    }
+
+    /// A number as version 2 writes it: one byte for the power of ten and for what is no short decimal.
+    pub(super) fn packed(&mut self, value: f64) {
+        match Decimal::from(value) {
+            Decimal::Short { digits, exponent } => {
+                self.byte(exponent.wrapping_add(PACKED_ZERO).cast_unsigned());
+                self.signed(digits);
+            }
+            Decimal::Bits(bits) => {
+                self.byte(PACKED_BITS);
+                self.bytes(&bits.to_le_bytes());
+            }
+        }
+    }
+
+    /// Numbers of which some may be missing: one byte, a bit for each that is there, then these, packed.
+    pub(super) fn optionals(&mut self, values: &[Option<f64>]) {
+        let bit = |(place, value): (usize, &Option<f64>)| u8::from(value.is_some()) << place;
+        self.byte(values.iter().enumerate().map(bit).fold(0, |all, bit| all | bit));
+        for value in values.iter().flatten() {
+            self.packed(*value);
+        }
+    }
+
+    pub(super) fn bytes(&mut self, bytes: &[u8]) {
+        self.0.extend_from_slice(bytes);
+    }
+
+    /// Signs alternate, so that small numbers are short on both sides of zero.
+    fn signed(&mut self, digits: i64) {
+        self.whole(((digits << 1) ^ (digits >> 63)).cast_unsigned());
     }
 
     pub(super) fn optional(&mut self, value: Option<f64>) {
@@ -119,14 +155,67 @@ impl<'a> Reader<'a> {
     pub(super) fn number(&mut self) -> Option<f64> {
         let decimal = match self.byte()? {
             0 => {
-                let zigzag = self.whole()?;
-                let digits = (zigzag >> 1).cast_signed() ^ -(zigzag & 1).cast_signed();
+                let digits = self.signed()?;
                 Decimal::Short { digits, exponent: self.byte()?.cast_signed() }
             }
             1 => Decimal::Bits(self.whole()?),
             _ => return None,
         };
         decimal.to_f64()
+    }
+
+    fn signed(&mut self) -> Option<i64> {
+        let zigzag = self.whole()?;
+        Some((zigzag >> 1).cast_signed() ^ -(zigzag & 1).cast_signed())
+    }
+
+    /// A number as version 2 writes it.
+    #[inline(never)]
+    pub(super) fn packed(&mut self) -> Option<f64> {
+        let head = self.byte()?;
+        let decimal = match head {
+            0..PACKED_BITS => {
+                Decimal::Short { digits: self.signed()?, exponent: head.cast_signed() - PACKED_ZERO }
+            }
+            PACKED_BITS => {
+                let bytes = self.bytes(8)?.try_into().ok()?;
+                Decimal::Bits(u64::from_le_bytes(bytes))
+            }
+            _ => return None,
+        };
+        decimal.to_f64()
+    }
+
+    /// Numbers of which some may be missing. A bit for one more was written by a newer version.
+    pub(super) fn optionals<const N: usize>(&mut self, places: [&mut Option<f64>; N]) -> Option<()> {
+        let there = self.byte()?;
+        if u32::from(there) >> N != 0 {
+            return self.meets_newer();
+        }
+        for (bit, place) in places.into_iter().enumerate() {
+            if there >> bit & 1 != 0 {
+                *place = Some(self.packed()?);
+            }
+        }
+        Some(())
+    }
+
+    /// So many bytes as they are.
+    pub(super) fn bytes(&mut self, count: usize) -> Option<&'a [u8]> {
+        let (bytes, rest) = self.left.split_at_checked(count)?;
+        self.left = rest;
+        Some(bytes)
+    }
+
+    /// Something stands here that only a newer version writes.
+    pub(super) const fn meets_newer<T>(&mut self) -> Option<T> {
+        self.newer = true;
+        None
+    }
+
+    /// Whether nothing is left.
+    pub(super) const fn is_done(&self) -> bool {
+        self.left.is_empty()
     }
 
     /// Whether something optional follows.

@@ -1,5 +1,5 @@
-//! Version 1 of the link: the record as it stands for ever. Do not change the order or types of its fields; write
-//! a version 2 beside it.
+//! Version 1 of the link: the record as it stands for ever. Do not change the order or types of its fields; version 2
+//! stands beside it.
 //!
 //! Supply: volts, hertz, ohms. Bank: a list of groups, each a list of lamps. Plate: family, volts; watts, amperes,
 //! volt-amperes and power factor, each optional; a list of details, code and number. Lamp: volts, watts, fill, and, if it
@@ -19,11 +19,11 @@ use crate::stock::Stock;
 use crate::supply::Supply;
 
 /// Fill, if it was given, and its code for ever.
-const FILLS: [(Option<Fill>, u8); 4] =
+pub(super) const FILLS: [(Option<Fill>, u8); 4] =
     [(None, 0), (Some(Fill::Vacuum), 1), (Some(Fill::Gas), 2), (Some(Fill::Halogen), 3)];
 
 /// Family and its code for ever. New families take new numbers.
-const FAMILIES: [(Family, u8); 12] = [
+pub(super) const FAMILIES: [(Family, u8); 12] = [
     (Family::Heater, 1),
     (Family::TransformerSupply, 2),
     (Family::Plain, 3),
@@ -39,7 +39,7 @@ const FAMILIES: [(Family, u8); 12] = [
 ];
 
 /// Detail and its code for ever. New details take new numbers.
-const DETAILS: [(Detail, u8); 18] = [
+pub(super) const DETAILS: [(Detail, u8); 18] = [
     (Detail::MagnetisingShare, 1),
     (Detail::CoreShare, 2),
     (Detail::WindingShare, 3),
@@ -60,7 +60,7 @@ const DETAILS: [(Detail, u8); 18] = [
     (Detail::RestartSeconds, 18),
 ];
 
-fn code_of<T: PartialEq>(codes: &[(T, u8)], wanted: &T) -> u8 {
+pub(super) fn code_of<T: PartialEq>(codes: &[(T, u8)], wanted: &T) -> u8 {
     codes.iter().find(|(known, _)| known == wanted).map_or(0, |&(_, code)| code)
 }
 
@@ -126,46 +126,71 @@ fn write_plate(to: &mut Writer, spec: &PlateSpec) {
 }
 
 pub(super) fn decode(bytes: &[u8]) -> Result<Setup, LinkError> {
-    // All is read before anything is built: a record that is no record is damaged, whatever its numbers are.
     let mut from = Reader::new(bytes);
-    let Some(([volts, hertz, ohms], groups, plate)) = read(&mut from) else { return Err(from.error()) };
+    let Some(parts) = read(&mut from) else { return Err(from.error()) };
+    build(parts)
+}
+
+/// The set-up of what was read. All is read before anything is built: a record that is no record is damaged, whatever its
+/// numbers are.
+pub(super) fn build(([volts, hertz, ohms], groups, plate): Parts) -> Result<Setup, LinkError> {
     let supply = Supply::new(volts, hertz, ohms).map_err(LinkError::Refused)?;
+    let bank = build_bank(groups)?;
+    let plate = Plate::from_spec(plate).map_err(LinkError::Refused)?;
+    Ok(Setup { supply, bank, plate })
+}
+
+pub(super) fn build_bank(groups: Groups) -> Result<Bank, LinkError> {
     let mut built = Vec::new();
     for group in groups {
         built.push(
             group.into_iter().map(Lamp::from_spec).collect::<Result<_, _>>().map_err(LinkError::Refused)?,
         );
     }
-    let bank = Bank::new(built).map_err(LinkError::Refused)?;
-    let plate = Plate::from_spec(plate).map_err(LinkError::Refused)?;
-    Ok(Setup { supply, bank, plate })
+    Bank::new(built).map_err(LinkError::Refused)
 }
 
-type Parts = ([f64; 3], Vec<Vec<LampSpec>>, PlateSpec);
+/// The lamps of a bank that was read.
+pub(super) type Groups = Vec<Vec<LampSpec>>;
+/// Supply, bank and plate that were read.
+pub(super) type Parts = ([f64; 3], Groups, PlateSpec);
 
 fn read(from: &mut Reader<'_>) -> Option<Parts> {
     let supply = [from.number()?, from.number()?, from.number()?];
-    let mut groups = Vec::new();
-    let mut lamps = 0;
-    for _ in 0..from.length()? {
-        let mut group = Vec::new();
-        for _ in 0..from.length()? {
-            group.push(read_lamp(from)?);
-            lamps += 1;
-        }
-        if lamps > Bank::MOST_LAMPS {
-            return None;
-        }
-        groups.push(group);
-    }
+    let groups = read_groups(from, &mut read_lamp)?;
     let plate = read_plate(from)?;
     from.finish()?;
     Some((supply, groups, plate))
 }
 
+pub(super) fn read_groups(
+    from: &mut Reader<'_>,
+    lamp: &mut dyn FnMut(&mut Reader<'_>) -> Option<LampSpec>,
+) -> Option<Groups> {
+    let mut groups = Vec::new();
+    let mut lamps = 0;
+    for _ in 0..from.length()? {
+        let mut group = Vec::new();
+        for _ in 0..from.length()? {
+            group.push(lamp(from)?);
+            lamps += 1;
+            // Refuse a crowd before it takes room.
+            if lamps > Bank::MOST_LAMPS {
+                return None;
+            }
+        }
+        groups.push(group);
+    }
+    Some(groups)
+}
+
 pub(super) fn decode_stock(bytes: &[u8]) -> Result<Stock, LinkError> {
     let mut from = Reader::new(bytes);
     let Some(kinds) = read_stock(&mut from) else { return Err(from.error()) };
+    build_stock(kinds)
+}
+
+pub(super) fn build_stock(kinds: Kinds) -> Result<Stock, LinkError> {
     let mut stock = Stock::default();
     for (spec, count) in kinds {
         let lamp = Lamp::from_spec(spec).map_err(LinkError::Refused)?;
@@ -174,7 +199,10 @@ pub(super) fn decode_stock(bytes: &[u8]) -> Result<Stock, LinkError> {
     Ok(stock)
 }
 
-fn read_stock(from: &mut Reader<'_>) -> Option<Vec<(LampSpec, u8)>> {
+/// The lamps of a stock that was read, each with its count.
+pub(super) type Kinds = Vec<(LampSpec, u8)>;
+
+fn read_stock(from: &mut Reader<'_>) -> Option<Kinds> {
     let mut kinds = Vec::new();
     for _ in 0..from.length()? {
         kinds.push((read_lamp(from)?, from.byte()?));
