@@ -20,7 +20,7 @@ use crate::drawer::{Drawer, Shelf};
 use crate::reckoner::pulses;
 use crate::replay::Wish;
 use crate::seen::{Deed, Seen};
-use crate::words::{Language, Words};
+use crate::words::Words;
 
 /// The state with its dispatcher, as components have it.
 pub type BenchHandle = UseReducerHandle<Bench>;
@@ -153,8 +153,8 @@ pub struct Bench {
     pub stage: Stage,
     /// What is to be told, newest last.
     pub notes: Vec<Note>,
-    /// The language.
-    pub language: Language,
+    /// The texts, in the language that is read.
+    pub words: &'static Words,
 }
 
 impl PartialEq for Bench {
@@ -231,15 +231,14 @@ pub enum Msg {
 }
 
 impl Bench {
-    /// A bench with this set-up.
+    /// A bench with this set-up, in these words.
     ///
     /// # Errors
     /// A set-up whose parts do not go together, such as a transformer on direct current.
-    pub fn with(setup: Setup) -> Result<Self, InputError> {
-        let language = Language::default();
+    pub fn with(setup: Setup, words: &'static Words) -> Result<Self, InputError> {
         let answers = Rc::new(Answers::of(&setup, Condition::Healthy)?);
         Ok(Self {
-            draft: Draft::of(&setup, language.words().numerals),
+            draft: Draft::of(&setup, words.numerals),
             setup: Rc::new(setup),
             answers,
             pulses: Vec::new(),
@@ -253,19 +252,19 @@ impl Bench {
             refused: None,
             tab: Tab::Expect,
             wish: Wish::default(),
-            seen: Seen::new(MeterSpec::default(), language.words().numerals),
+            seen: Seen::new(MeterSpec::default(), words.numerals),
             drawer: Drawer::default(),
             climb: Climb::default(),
             theme: Theme::Auto,
             stage: Stage::Unread,
             notes: Vec::new(),
-            language,
+            words,
         })
     }
 
-    /// The words of the chosen language.
-    pub fn words(&self) -> &'static Words {
-        self.language.words()
+    /// The texts, in the language that is read.
+    pub const fn words(&self) -> &'static Words {
+        self.words
     }
 
     /// What is wrong with a field.

@@ -39,7 +39,7 @@ pub fn lamps(groups: &[Vec<Lamp>], words: &Words) -> String {
         all
     };
     let groups: Vec<_> = groups.iter().map(alike).collect();
-    (words.bank)(&groups)
+    words.bank(&groups)
 }
 
 /// How large the equipment is, in the one number that it goes by.
@@ -56,7 +56,7 @@ pub fn size(setup: &Setup, words: &Words) -> String {
 /// The bank on a small label.
 pub fn short_bank(setup: &Setup, words: &Words) -> String {
     let text = bank(setup, words);
-    if text.chars().count() > LABEL { (words.lamps)(setup.bank.lamp_count()) } else { text }
+    if text.chars().count() > LABEL { words.lamps(setup.bank.lamp_count()) } else { text }
 }
 
 /// Most characters that a label on the loop holds in one line.
@@ -69,7 +69,7 @@ pub fn lamp(setup: &Setup, place: Place, words: &Words) -> String {
         let volts = words.numerals.quantity(lamp.rated_volts(), "V");
         format!("{volts} {}", words.numerals.quantity(lamp.rated_watts(), "W"))
     });
-    (words.lamp)(place, setup.bank.lamp_count() == 1, &rating)
+    words.lamp(place, setup.bank.lamp_count() == 1, &rating)
 }
 
 /// What the results take for granted.
@@ -84,7 +84,7 @@ pub fn assumed(setup: &Setup, words: &Words) -> Assumed {
     Assumed {
         supply: supply(setup, words),
         bank: bank(setup, words),
-        family: (words.family)(family).noun,
+        family: words.family(family).noun,
         plate_volts: numerals.quantity(plate.volts(), "V"),
         size: size(setup, words),
         shares: format!("{}\u{2013}{}", numerals.fixed(least * 100.0, 0), numerals.percent(most)),
@@ -95,11 +95,13 @@ pub fn assumed(setup: &Setup, words: &Words) -> Assumed {
 
 /// A lamp's life as a range of ratios, in a sentence or in a table.
 pub fn life((least, most): (f64, f64), words: &Words, short: bool) -> String {
-    let (between, over) =
-        if short { (words.short_life, words.short_life_over) } else { (words.life, words.life_over) };
     let least = words.numerals.ratio(least);
     // Core cuts the ratio at a thousand.
-    if most >= 1000.0 { over(&least) } else { between(&least, &words.numerals.ratio(most)) }
+    if most >= 1000.0 {
+        words.life_over(&least, short)
+    } else {
+        words.life(&least, &words.numerals.ratio(most), short)
+    }
 }
 
 /// A number in full, for whoever reads the page by program.

@@ -92,7 +92,7 @@ use browser::{cautions, theme, worker};
 /// Starts the page. Without the elements of static/index.html there is nothing to start.
 pub fn start() {
     let Some(root) = cautions::element(cautions::APP) else { return };
-    let Some(bench) = start::bench() else { return };
+    let Some(bench) = start::bench(words::english()) else { return };
     theme::apply(bench.theme);
     cautions::started();
     yew::Renderer::<App>::with_root_and_props(root, AppProps { bench }).render();

@@ -9,6 +9,7 @@ use crate::browser::{fragment, storage, theme};
 use crate::climb::{Climb, equipment};
 use crate::meter;
 use crate::seen::Seen;
+use crate::words::Words;
 
 /// The set-up that was kept on this phone, if there is one that can be read.
 pub fn kept() -> Option<Setup> {
@@ -16,8 +17,8 @@ pub fn kept() -> Option<Setup> {
 }
 
 /// The first state.
-pub fn bench() -> Option<Bench> {
-    let mut bench = opened(fragment::read().as_deref(), storage::read(storage::SETUP).as_deref())?;
+pub fn bench(words: &'static Words) -> Option<Bench> {
+    let mut bench = opened(words, fragment::read().as_deref(), storage::read(storage::SETUP).as_deref())?;
     bench.theme = theme::kept();
     let meter = storage::read(storage::METER).and_then(|text| meter::from_kept(&text));
     bench.seen = Seen::new(meter.unwrap_or_default(), bench.words().numerals);
@@ -30,10 +31,10 @@ pub fn bench() -> Option<Bench> {
 }
 
 /// The state for an address and a kept text; bad ones fall back with a note and stay where they are.
-pub fn opened(address: Option<&str>, kept: Option<&str>) -> Option<Bench> {
+pub fn opened(words: &'static Words, address: Option<&str>, kept: Option<&str>) -> Option<Bench> {
     let open = |text: &str| {
         let setup = link::decode(text)?;
-        Bench::with(setup).map_err(LinkError::Refused)
+        Bench::with(setup, words).map_err(LinkError::Refused)
     };
     let mut notes = Vec::new();
     let from_link =
@@ -55,7 +56,7 @@ pub fn opened(address: Option<&str>, kept: Option<&str>) -> Option<Bench> {
     }
     let mut bench = match from_link.or(from_kept) {
         Some(bench) => bench,
-        None => Bench::with(Setup::example().ok()?).ok()?,
+        None => Bench::with(Setup::example().ok()?, words).ok()?,
     };
     bench.notes = notes;
     Some(bench)
@@ -76,6 +77,7 @@ pub fn remember(bench: &mut Bench, stock: Option<&str>, climb: Option<&str>) {
 #[cfg(test)]
 mod tests {
     use super::*;
+    use crate::words::english;
 
     fn link_of(volts: f64) -> String {
         let mut setup = Setup::example().expect("in range");
@@ -90,7 +92,7 @@ mod tests {
     #[test]
     fn the_address_comes_before_what_was_kept_and_that_before_the_example() {
         let (first, second) = (link_of(120.0), link_of(110.0));
-        let opened = |address, kept| opened(address, kept).expect("opens");
+        let opened = |address, kept| opened(english(), address, kept).expect("opens");
         let both = opened(Some(&first), Some(&second));
         assert_eq!((volts(&both), both.notes.as_slice()), (120.0, [Note::FromLink].as_slice()));
         assert!(opened(Some(&first), Some(&first)).notes.is_empty());
@@ -105,9 +107,9 @@ mod tests {
         for (bad, error) in
             [("9zzz", LinkError::Newer), ("junk", LinkError::Damaged), ("1", LinkError::Damaged)]
         {
-            let bench = opened(Some(bad), Some(&good)).expect("opens");
+            let bench = opened(english(), Some(bad), Some(&good)).expect("opens");
             assert_eq!((volts(&bench), bench.notes.as_slice()), (110.0, [Note::BadLink(error)].as_slice()));
-            let bench = opened(None, Some(bad)).expect("opens");
+            let bench = opened(english(), None, Some(bad)).expect("opens");
             assert_eq!((volts(&bench), bench.notes.as_slice()), (230.0, [Note::BadKept(error)].as_slice()));
         }
     }
@@ -116,7 +118,7 @@ mod tests {
     fn a_link_whose_parts_do_not_go_together_is_refused() {
         let mut setup = Setup::example().expect("in range");
         setup.supply = lampladder_core::supply::Supply::new(110.0, 0.0, 0.0).expect("in range");
-        let bench = opened(Some(&link::encode(&setup)), None).expect("opens");
+        let bench = opened(english(), Some(&link::encode(&setup)), None).expect("opens");
         assert!(matches!(bench.notes[..], [Note::BadLink(LinkError::Refused(_))]));
     }
 }

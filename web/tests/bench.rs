@@ -17,9 +17,10 @@ use lampladder_web::bench::{Bench, Msg, Note, Part, Refused, Unsuitable};
 use lampladder_web::draft::{Fault, LampPart, Place, Slot};
 use lampladder_web::reckoner::pulses::News;
 use lampladder_web::seen::Deed;
+use lampladder_web::words::english;
 
 fn bench() -> Bench {
-    Bench::with(Setup::example().expect("in range")).expect("goes together")
+    Bench::with(Setup::example().expect("in range"), english()).expect("goes together")
 }
 
 fn typed(slot: Slot, text: &str) -> Msg {
@@ -207,7 +208,7 @@ fn every_family_answers_and_comes_back_from_its_text() {
     for family in Family::ALL {
         let after = bench().after(Msg::Family(family));
         assert!(!after.is_stale(), "{family:?}: {:?}", after.faults);
-        let again = Bench::with((*after.setup).clone()).expect("goes together");
+        let again = Bench::with((*after.setup).clone(), english()).expect("goes together");
         assert_eq!(again.draft.read().as_ref(), Ok(&*after.setup), "{family:?}");
     }
 }

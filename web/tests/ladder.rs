@@ -16,9 +16,10 @@ use lampladder_web::entry::Entry;
 use lampladder_web::reckoner::{Answer, Ask, Desk};
 use lampladder_web::seen::Deed;
 use lampladder_web::start;
+use lampladder_web::words::english;
 
 fn bench() -> Bench {
-    let bench = Bench::with(Setup::example().expect("in range")).expect("goes together");
+    let bench = Bench::with(Setup::example().expect("in range"), english()).expect("goes together");
     Bench { stage: Stage::Bench, tab: Tab::Ladder, ..bench }
 }
 
@@ -120,7 +121,7 @@ fn a_typed_lamp_goes_in_and_a_bad_count_says_so_beside_its_field() {
     assert!(bench.drawer.stock.is_empty());
     let wrong = bench.wrong(Slot::Entry(Entry::Count));
     assert!(matches!(wrong, Some(Fault::Number(InputError::OutOfRange { field: Field::Count, .. }))));
-    let said = (bench.words().fault)(Slot::Entry(Entry::Count), &wrong.expect("wrong"));
+    let said = bench.words().fault(Slot::Entry(Entry::Count), &wrong.expect("wrong"));
     assert!(said.contains("How many") && said.contains("99"), "{said}");
     // What was typed is still there.
     assert_eq!(bench.text(Slot::Lamp(Place::SPARE, LampPart::Watts)), "52 W");

@@ -7,6 +7,7 @@ use lampladder_core::supply::Supply;
 use lampladder_web::app::{App, AppProps};
 use lampladder_web::bench::{Bench, Stage, Theme};
 use lampladder_web::browser::{fragment, storage, theme};
+use lampladder_web::words::english;
 use wasm_bindgen::JsCast;
 use wasm_bindgen_futures::JsFuture;
 use wasm_bindgen_test::{wasm_bindgen_test, wasm_bindgen_test_configure};
@@ -51,7 +52,7 @@ async fn open(bench: Bench) -> Page {
 }
 
 async fn open_bench() -> Page {
-    let bench = Bench::with(Setup::example().expect("in range")).expect("goes together");
+    let bench = Bench::with(Setup::example().expect("in range"), english()).expect("goes together");
     open(Bench { stage: Stage::Bench, ..bench }).await
 }
 
@@ -101,7 +102,7 @@ fn amps() -> f64 {
 
 #[wasm_bindgen_test]
 async fn nothing_shows_before_the_cautions_are_accepted() {
-    let bench = Bench::with(Setup::example().expect("in range")).expect("goes together");
+    let bench = Bench::with(Setup::example().expect("in range"), english()).expect("goes together");
     let _page = open(bench).await;
     let stage = || document().document_element().and_then(|root| root.get_attribute("data-stage"));
     assert!(find("result-amps").is_none());

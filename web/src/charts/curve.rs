@@ -148,7 +148,7 @@ pub fn draw(canvas: &HtmlCanvasElement, curves: &Curves, ink: &Ink, words: &Word
         // Right of a mark lies the open wedge between the two curves; at the edge, the one above the bank's.
         let (align, beside) =
             if at.0 > curves.volts * 0.6 { ("right", (-8.0, -14.0)) } else { ("left", (12.0, 0.0)) };
-        frame.write((words.condition)(*condition), *at, beside, Label { align, pixels: 13.0, ..label });
+        frame.write(words.condition(*condition), *at, beside, Label { align, pixels: 13.0, ..label });
     }
     area.present()
 }

@@ -30,7 +30,7 @@ pub(super) fn after(bench: &BenchHandle) -> Vec<El> {
     let typed = |entry, hint: String| field::plain(bench, Slot::Entry(entry), hint);
     // Rounded up to tens of volts: it is the most that there can be.
     let most = (Discharge::most_volts(&bench.setup.supply) / 10.0).ceil() * 10.0;
-    let start = (texts.start_hint)(&words.numerals.quantity(most, "V"));
+    let start = texts.start_hint(&words.numerals.quantity(most, "V"));
     let waits = reservoir(bench).map(|reservoir| reservoir.after_power());
     let afresh = button("offer", "afresh", send(bench, Move::Afresh.into())).text(texts.afresh);
     vec![
@@ -62,11 +62,11 @@ fn waited(bench: &BenchHandle, after: &AfterPower) -> El {
             Wait::Seconds { slowest, .. } => duration(*slowest, words),
             Wait::Unknown => texts.wait_unknown.to_owned(),
         };
-        let asked = (texts.quoted)(limit.standard, limit.standing);
+        let asked = texts.quoted(limit.standard, limit.standing);
         el("tr")
             .with(
                 row_head(words.numerals.quantity(limit.volts, "V"))
-                    .with(el("small").text((texts.place)(limit.place))),
+                    .with(el("small").text(texts.place(limit.place))),
             )
             .with(whole(wait))
             .with(el("td").text(asked))
@@ -92,7 +92,7 @@ fn countdown(bench: &BenchHandle, after: &AfterPower) -> Option<El> {
     };
     let left = slowest - (bench.climb.now - off).max(0.0) / 1000.0;
     let text =
-        if left > 0.0 { (texts.counting)(&duration(left, words), &volts) } else { (texts.counted)(&volts) };
+        if left > 0.0 { texts.counting(&duration(left, words), &volts) } else { texts.counted(&volts) };
     Some(
         el("div")
             .class("count")

@@ -55,7 +55,7 @@ fn lamp_button(bench: &BenchHandle, place: Place, lamp: &LampDraft) -> El {
     let watts = lamp.watts.trim().trim_end_matches(['W', 'w']).trim_end();
     let rating = format!("{watts}\u{a0}W{mark}");
     let name = format!("lamp-{}-{}", place.group, place.lamp);
-    let heard = (words.lamp)(place, false, &rating);
+    let heard = words.lamp(place, false, &rating);
     button(class, name.clone(), send(bench, Msg::Choose(place)))
         .set("aria-pressed", truth(bench.lamp == place))
         .put("aria-label", heard)

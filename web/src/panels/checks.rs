@@ -39,7 +39,7 @@ pub(super) fn all_done(bench: &Bench) -> bool {
 /// The checks in a few words.
 pub(super) fn checks_short(bench: &Bench) -> String {
     let (done, all) = counted(bench);
-    (bench.words().ladder.checks_done)(done, all)
+    bench.words().ladder.checks_done(done, all)
 }
 
 fn limit(bench: &Bench, entry: Entry) -> Option<Limit> {
@@ -82,14 +82,14 @@ pub(super) fn checks(bench: &BenchHandle) -> Vec<El> {
         .with(el("i").set("aria-hidden", "true").text(if climb.looked { "✓" } else { "" }))
         .with(el("span").text(texts.looked));
     let class = |class: Class| Choice {
-        text: (texts.class_name)(class).to_owned(),
+        text: texts.class_name(class).to_owned(),
         chosen: class == climb.class,
-        testid: format!("class-{}", (texts.class_name)(class)),
+        testid: format!("class-{}", texts.class_name(class)),
         click: send(bench, Move::Class(class).into()),
     };
     let classes = choices(texts.class, Class::ALL.map(class).to_vec());
     let lead = |(index, metres): (usize, &f64)| Choice {
-        text: (texts.lead_name)(&words.numerals.quantity(*metres, "m")),
+        text: texts.lead_name(&words.numerals.quantity(*metres, "m")),
         chosen: index == climb.lead,
         testid: format!("lead-{index}"),
         click: send(bench, Move::Lead(index).into()),
@@ -105,11 +105,11 @@ pub(super) fn checks(bench: &BenchHandle) -> Vec<El> {
         .chain(
             wanted(bench)
                 .filter(|entry| climb.number(*entry).is_none())
-                .map(|entry| (words.slot)(Slot::Entry(entry))),
+                .map(|entry| words.slot(Slot::Entry(entry))),
         )
         .collect();
     let skipped = (!skipped.is_empty() && climb.at <= Stand::Checks)
-        .then(|| el("p").class("told").test("skipped").text((texts.skipped)(&skipped.join(", "))));
+        .then(|| el("p").class("told").test("skipped").text(texts.skipped(&skipped.join(", "))));
     let forbidden = forbids(bench);
     let alarm =
         forbidden.then(|| el("p").class("error").set("role", "alert").test("forbidden").text(texts.forbids));
@@ -123,7 +123,7 @@ pub(super) fn checks(bench: &BenchHandle) -> Vec<El> {
         looked,
         el("h3").text(texts.class),
         classes,
-        el("p").class("hint").text((texts.class_means)(climb.class)),
+        el("p").class("hint").text(texts.class_means(climb.class)),
         place(leads),
         place(protective),
         limited(bench, Entry::InsulationOhms),
@@ -149,16 +149,16 @@ fn limited(bench: &BenchHandle, entry: Entry) -> El {
     let words = bench.words();
     let texts = words.ladder;
     let Some(limit) = limit(bench, entry) else { return el("div") };
-    let hint = (texts.limit)(limit.sense == Sense::AtLeast, &ohms(limit.value, words.numerals));
+    let hint = texts.limit(limit.sense == Sense::AtLeast, &ohms(limit.value, words.numerals));
     let verdict = verdict(bench, entry).map(|verdict| {
         let within = verdict == Verdict::Within;
-        said(entry, within, (texts.verdict)(within))
+        said(entry, within, texts.verdict(within))
     });
     el("div")
         .class("check")
         .with(typed(bench, entry, hint))
         .with(place(verdict))
-        .with(el("p").class("hint").text((texts.quoted)(limit.citation, limit.standing)))
+        .with(el("p").class("hint").text(texts.quoted(limit.citation, limit.standing)))
 }
 
 /// What a reading comes to; the one that forbids is an alarm.
@@ -188,19 +188,15 @@ fn across_plug(bench: &BenchHandle) -> El {
     let healthy = bench.climb.known.plug.map(|[healthy, ..]| healthy);
     let hint = healthy.map_or_else(String::new, |range| {
         let low = ohms(range.low_ohms, words.numerals);
-        let high = if range.high_ohms.is_finite() {
-            format!("\u{2013}{}", ohms(range.high_ohms, words.numerals))
-        } else {
-            texts.and_up.to_owned()
-        };
-        (texts.plug_expect)(&low, &high, range.path)
+        let high = range.high_ohms.is_finite().then(|| ohms(range.high_ohms, words.numerals));
+        texts.plug_expect(&low, high.as_deref(), range.path)
     });
     let verdict = plug(bench).map(|reading| {
         let healthy = reading.findings.first() == Some(&PlugFinding::Healthy);
         let text = if reading.findings.is_empty() {
-            (texts.plug_between)(reading.below_healthy).to_owned()
+            texts.plug_between(reading.below_healthy).to_owned()
         } else {
-            (texts.plug_found)(&reading.findings)
+            texts.plug_found(&reading.findings)
         };
         said(Entry::PlugOhms, healthy, text)
     });
@@ -209,6 +205,6 @@ fn across_plug(bench: &BenchHandle) -> El {
             .class("hint")
             .text(texts.plug_how)
             .text(" ")
-            .text(healthy.map_or("", |range| (texts.plug_from)(range.standing))),
+            .text(healthy.map_or("", |range| texts.plug_source(range.standing))),
     )
 }

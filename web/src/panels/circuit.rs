@@ -48,10 +48,10 @@ pub fn circuit(bench: &BenchHandle) -> El {
     let bank = describe::bank(&bench.setup, words);
     let size = describe::size(&bench.setup, words);
     let volts = words.numerals.quantity(bench.setup.supply.volts(), "V");
-    let family = (words.family)(bench.setup.plate.family()).name;
+    let family = words.family(bench.setup.plate.family()).name;
     let part = |part: Part, class: &'static str, testid: &'static str, shown: String, heard: &str| {
         button(class, testid, send(bench, Msg::Open(part)))
-            .put("aria-label", (words.change)(part, heard))
+            .put("aria-label", words.change(part, heard))
             .set("aria-expanded", truth(bench.open == Some(part)))
             .with(el("span").class("tag").text(shown))
     };
@@ -63,7 +63,7 @@ pub fn circuit(bench: &BenchHandle) -> El {
     let short_bank = describe::short_bank(&bench.setup, words);
     el("section")
         .class(plan.class)
-        .put("aria-label", (words.circuit)(&supply, &bank, &size))
+        .put("aria-label", words.circuit(&supply, &bank, &size))
         .with(picture)
         .with(part(Part::Supply, "part part-supply", "edit-supply", volts, &supply))
         .with(part(Part::Bank, "part part-bank", "edit-bank", short_bank, &bank))
@@ -94,7 +94,7 @@ fn reading(bench: &Bench) -> El {
     let range = match amps {
         Some(amps) => Some(words.numerals.range(amps, "A")),
         None => flare::brightest(bench, bench.condition)
-            .map(|(glow, seconds)| (words.pulse)(&words.numerals.duration(seconds), glow.word)),
+            .map(|(glow, seconds)| words.pulse(&words.numerals.duration(seconds), glow.word)),
     };
     let range = range.map(|range| el("span").text(range));
     let class = if bench.condition == Condition::Healthy { "condition" } else { "condition alarm" };
@@ -102,7 +102,7 @@ fn reading(bench: &Bench) -> El {
         .class("reading")
         .with(number)
         .maybe(range)
-        .with(el("span").class(class).text((words.if_condition)(bench.condition)))
+        .with(el("span").class(class).text(words.if_condition(bench.condition)))
         .maybe(bench.is_stale().then(|| el("span").class("stale-mark").test("stale").text(words.stale_mark)))
 }
 

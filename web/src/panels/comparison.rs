@@ -50,7 +50,7 @@ fn cell(bench: &BenchHandle, condition: Condition) -> El {
         None => Filament::Unknown,
     };
     let word = match (lamp, bench.answers.outcome(condition)) {
-        (Some(lamp), _) => (words.glow)(lamp.glow.word),
+        (Some(lamp), _) => words.glow(lamp.glow.word),
         (None, Some(Outcome::Hunts)) => words.pulsing,
         (None, _) if filament == Filament::Broken => words.burnt,
         (None, None) => words.coming,
@@ -58,11 +58,11 @@ fn cell(bench: &BenchHandle, condition: Condition) -> El {
     };
     let cell = button("cell", format!("cell-{name}"), send(bench, Msg::Show(condition)))
         .set("aria-pressed", truth(bench.condition == condition))
-        .with(el("strong").text((words.condition)(condition)))
+        .with(el("strong").text(words.condition(condition)))
         .with(lone(name, "0 0 96 54", CELL, filament))
         .with(el("span").class("word").text(word));
     if let Some((glow, seconds)) = flare {
-        let every = (words.every)(&words.numerals.duration(seconds));
+        let every = words.every(&words.numerals.duration(seconds));
         let figures = el("span").class("figures").with(el("b").text(every));
         return cell.put("data-period", full(seconds)).set("data-glow", glow.word.name()).with(figures);
     }

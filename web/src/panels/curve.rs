@@ -16,7 +16,7 @@ use crate::charts::curve::{Curves, draw};
 use crate::charts::ink::Ink;
 use crate::parts::el::{El, el};
 use crate::parts::table::{banded, row_head, table};
-use crate::words::Language;
+use crate::words::Words;
 
 /// Rows of the bank's own table.
 const ROWS: u8 = 8;
@@ -25,7 +25,7 @@ const ROWS: u8 = 8;
 pub fn curve(bench: &Bench) -> El {
     let heads = bench.words().table;
     let chart = html! {
-        <Chart setup={bench.setup.clone()} answers={bench.answers.clone()} theme={bench.theme} language={bench.language} />
+        <Chart setup={bench.setup.clone()} answers={bench.answers.clone()} theme={bench.theme} words={bench.words} />
     };
     el("section")
         .class("curve")
@@ -45,7 +45,7 @@ fn crossings(bench: &Bench) -> El {
     let rows = bench.answers.all().iter().map(|(condition, _)| {
         let shown = bench.answers.shown(*condition);
         el("tr")
-            .with(row_head((words.condition)(*condition)))
+            .with(row_head(words.condition(*condition)))
             .with(banded(shown.map(|shown| &shown.bank_volts), "V", words))
             .with(banded(shown.map(|shown| &shown.amps), "A", words))
             .with(banded(shown.map(|shown| &shown.load_volts), "V", words))
@@ -79,14 +79,14 @@ pub struct ChartProps {
     /// In which light.
     pub theme: Theme,
     /// In which language.
-    pub language: Language,
+    pub words: &'static Words,
 }
 
 /// The chart: drawn in an effect, on a canvas as fine as the screen.
 #[function_component]
 pub fn Chart(props: &ChartProps) -> Html {
     let canvas = use_node_ref();
-    let words = props.language.words();
+    let words = props.words;
     let curves =
         use_memo((props.setup.clone(), props.answers.clone()), |(setup, answers)| Curves::of(setup, answers));
     let size = use_state_eq(width);
@@ -99,12 +99,12 @@ pub fn Chart(props: &ChartProps) -> Html {
     }
     {
         let canvas = canvas.clone();
-        let drawn = (curves, props.theme, props.language, *size, Ink::now());
-        use_effect_with(drawn, move |(curves, _, language, _, _)| {
+        let drawn = (curves, props.theme, words, *size, Ink::now());
+        use_effect_with(drawn, move |(curves, _, words, _, _)| {
             if let Some(canvas) = canvas.cast() {
                 // A chart that cannot be drawn leaves the tables, which say the same. The colours are read here, after
                 // the light of the page has been set.
-                let _ = draw(&canvas, curves, &Ink::now(), language.words());
+                let _ = draw(&canvas, curves, &Ink::now(), words);
             }
         });
     }

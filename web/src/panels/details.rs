@@ -22,7 +22,7 @@ pub fn details(bench: &BenchHandle) -> El {
         lamp_heads.push(heads.lamp);
     }
     lamp_heads.extend([heads.volts, heads.glow, heads.kelvin, heads.short_life]);
-    let lines = (words.assumptions)(&describe::assumed(&bench.setup, words)).into_iter();
+    let lines = words.assumptions(&describe::assumed(&bench.setup, words)).into_iter();
     let lines = lines.chain([words.band_note.to_owned(), words.life_source.to_owned()]);
     el("section")
         .class("details")
@@ -46,9 +46,9 @@ pub fn details(bench: &BenchHandle) -> El {
 fn row(bench: &Bench, condition: Condition) -> El {
     let words = bench.words();
     let shown = bench.answers.shown(condition);
-    let means = (words.condition_means)(condition, &words.numerals.plain(OVERLOAD));
+    let means = words.condition_means(condition, &words.numerals.plain(OVERLOAD));
     el("tr")
-        .with(row_head((words.condition)(condition)).with(el("small").text(means)))
+        .with(row_head(words.condition(condition)).with(el("small").text(means)))
         .with(banded(shown.map(|shown| &shown.amps), "A", words))
         .with(banded(shown.map(|shown| &shown.bank_volts), "V", words))
         .with(banded(shown.map(|shown| &shown.load_volts), "V", words))
@@ -60,9 +60,9 @@ fn lamp_rows(bench: &Bench, condition: Condition, several: bool) -> Vec<El> {
     let Some(shown) = bench.answers.shown(condition) else { return Vec::new() };
     let row = |place: Place, lamp: &LampShown| {
         let named = several.then(|| el("td").text(describe::lamp(&bench.setup, place, words)));
-        let glow = (words.glow_range)(lamp.dimmest.word, lamp.brightest.word);
+        let glow = words.glow_range(lamp.dimmest.word, lamp.brightest.word);
         el("tr")
-            .with(row_head((words.condition)(condition)))
+            .with(row_head(words.condition(condition)))
             .maybe(named)
             .with(whole(words.numerals.fixed(lamp.state.volts, 0) + "\u{a0}V"))
             .with(el("td").text(glow))

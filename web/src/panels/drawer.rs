@@ -36,7 +36,7 @@ fn lamp_name(bench: &Bench, lamp: &Lamp) -> String {
     } else {
         rating(bench, volts, watts)
     };
-    if is_measured(lamp) { (words.ladder.measured_lamp)(&text) } else { text }
+    if is_measured(lamp) { words.ladder.measured_lamp(&text) } else { text }
 }
 
 fn is_measured(lamp: &Lamp) -> bool {
@@ -59,7 +59,7 @@ pub(super) fn drawer(bench: &BenchHandle) -> Vec<El> {
     let texts = words.ladder;
     let drawer = &bench.drawer;
     let volts = usual_volts(&bench.setup);
-    let hint = (texts.tap_sizes)(&words.numerals.quantity(volts, "V"));
+    let hint = texts.tap_sizes(&words.numerals.quantity(volts, "V"));
     let sizes = el("div")
         .class("sizes")
         .each(STOCK_WATTS.map(|watts| size(bench, watts, drawer.count(volts, watts))));
@@ -71,7 +71,7 @@ pub(super) fn drawer(bench: &BenchHandle) -> Vec<El> {
         let name = lamp_name(bench, owned.lamp());
         button("choice", format!("measure-{kind}"), send(bench, Shelf::Form(Form::Measure(kind)).into()))
             .set("aria-pressed", truth(drawer.form == Form::Measure(kind)))
-            .put("aria-label", (texts.measure_one)(&name))
+            .put("aria-label", texts.measure_one(&name))
             .text(name)
     });
     let measurable = more(texts.measure).test("measure").with(el("div").class("choices").each(measurable));
@@ -88,7 +88,7 @@ pub(super) fn drawer(bench: &BenchHandle) -> Vec<El> {
     };
     let missing = bench.climb.known.missing.flatten().map(|missing| {
         let lamp = rating(bench, missing.rating.volts, missing.rating.watts);
-        el("p").class("hint").test("missing-lamp").text((texts.missing)(&lamp, &(texts.gain)(&missing.gain)))
+        el("p").class("hint").test("missing-lamp").text(texts.missing(&lamp, &missing.gain))
     });
     let stocked = !drawer.stock.is_empty();
     vec![
@@ -105,7 +105,7 @@ pub(super) fn drawer(bench: &BenchHandle) -> Vec<El> {
             texts.unknown,
         )),
         place(stocked.then_some(measurable)),
-        place(drawer.refused.map(|error| message("drawer-refused", (texts.put_refused)(&error)))),
+        place(drawer.refused.map(|error| message("drawer-refused", texts.put_refused(&error).to_owned()))),
         place(form),
     ]
 }
@@ -133,11 +133,11 @@ fn counted(bench: &BenchHandle, name: &str, slug: &str, count: u8, [more, less]:
     let text = if count == 0 { name.to_owned() } else { format!("{count}×\u{a0}{name}") };
     let class = if count == 0 { "size" } else { "size is-owned" };
     let minus = button("stepper", format!("size-{slug}-less"), send(bench, less.into()))
-        .put("aria-label", (texts.one)(name, false))
+        .put("aria-label", texts.one(name, false))
         .with(sign(MINUS));
     let minus = if count == 0 { minus.set("disabled", "disabled") } else { minus };
     let plus = button("size-more", format!("size-{slug}-more"), send(bench, more.into()))
-        .put("aria-label", (texts.one)(&text, true))
+        .put("aria-label", texts.one(&text, true))
         .with(el("b").text(text))
         .with(sign(PLUS));
     el("div").class(class).with(minus).with(plus)
@@ -161,7 +161,7 @@ fn put(bench: &BenchHandle, text: &'static str) -> El {
 fn another(bench: &BenchHandle) -> El {
     let words = bench.words();
     let refused = match bench.refused {
-        Some(Refused::Lamp(kind)) => Some(refusal((words.refusal)(kind))),
+        Some(Refused::Lamp(kind)) => Some(refusal(words.refusal(kind))),
         _ => None,
     };
     let pair = el("div")
@@ -172,7 +172,7 @@ fn another(bench: &BenchHandle) -> El {
         .class("form")
         .test("form-another")
         .with(pair)
-        .with(field::plain(bench, Slot::Entry(Entry::Count), (words.edit.default_hint)("1")))
+        .with(field::plain(bench, Slot::Entry(Entry::Count), words.edit.default_hint("1")))
         .with(kinds(bench))
         .with(place(refused))
         .with(more(words.edit.lamp_more).maybe(filling(bench)).with(known(bench)))
@@ -186,7 +186,7 @@ fn measure(bench: &BenchHandle, kind: usize) -> El {
     el("div")
         .class("form")
         .test("form-measure")
-        .with(el("h3").text((texts.measuring)(&name.unwrap_or_default())))
+        .with(el("h3").text(texts.measuring(&name.unwrap_or_default())))
         .with(el("p").class("hint").text(texts.measure_how))
         .with(known(bench))
         .with(place(shrinkage(bench)))
@@ -222,11 +222,11 @@ fn unknown(bench: &BenchHandle) -> El {
     let typed = |entry| field::plain(bench, Slot::Entry(entry), "");
     let found = match &bench.drawer.fits {
         None => bench.measured().map(|_| el("p").class("hint").text(texts.comparing)),
-        Some(Err(error)) => Some(message("no-fit", (texts.no_fit)(error).to_owned())),
+        Some(Err(error)) => Some(message("no-fit", texts.no_fit(error).to_owned())),
         Some(Ok(fits)) => {
             Some(el("div").class("choices").each(fits.iter().enumerate().map(|(index, fit)| {
                 let text =
-                    (texts.fit)(&rating(bench, fit.volts, fit.watts), &words.numerals.percent(fit.weight));
+                    texts.fit(&rating(bench, fit.volts, fit.watts), &words.numerals.percent(fit.weight));
                 button("choice", format!("fit-{index}"), send(bench, Shelf::Take(index).into())).text(text)
             })))
         }

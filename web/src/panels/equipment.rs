@@ -22,7 +22,7 @@ const UNSUITABLE: [(Unsuitable, &str); 3] = [
 pub fn equipment_editor(bench: &BenchHandle) -> Vec<El> {
     let words = bench.words();
     let family = bench.draft.family;
-    let names = (words.family)(family);
+    let names = words.family(family);
     let now = button("family-now", "choose-family", send(bench, Msg::ChooseFamily))
         .set("aria-expanded", truth(bench.choosing))
         .with(family_picture(family))
@@ -35,7 +35,7 @@ pub fn equipment_editor(bench: &BenchHandle) -> Vec<El> {
         all.push(choices(words.edit.not_for, refusals(bench)));
     }
     let refused = match bench.refused {
-        Some(Refused::Equipment(kind)) => Some(refusal((words.refuse_equipment)(kind))),
+        Some(Refused::Equipment(kind)) => Some(refusal(words.refuse_equipment(kind))),
         _ => None,
     };
     all.push(place(refused));
@@ -46,7 +46,7 @@ pub fn equipment_editor(bench: &BenchHandle) -> Vec<El> {
         all.push(field::stepped(bench, Slot::PlateVolts));
     }
     all.push(rest_of_plate(bench));
-    let warning = |warning| el("li").text((words.warning)(warning));
+    let warning = |warning| el("li").text(words.warning(warning));
     all.push(el("ul").class("warnings").each(family.warnings().iter().copied().map(warning)));
     all
 }
@@ -61,7 +61,7 @@ fn families(bench: &BenchHandle) -> El {
         button("family", format!("family-{}", family.name()), send(bench, Msg::Family(family)))
             .set("aria-pressed", truth(family == bench.draft.family))
             .with(family_picture(family))
-            .with(el("b").text((words.family)(family).name))
+            .with(el("b").text(words.family(family).name))
     };
     let all = el("div").class("families").set("role", "group").set("aria-label", words.edit.what);
     all.each(Family::ALL.map(one))
@@ -69,7 +69,7 @@ fn families(bench: &BenchHandle) -> El {
 
 fn refusals(bench: &BenchHandle) -> Vec<Choice> {
     let choice = |(kind, testid): (Unsuitable, &str)| Choice {
-        text: (bench.words().unsuitable_equipment)(kind).to_owned(),
+        text: bench.words().unsuitable_equipment(kind).to_owned(),
         chosen: false,
         testid: testid.to_owned(),
         click: send(bench, Msg::Refuse(Refused::Equipment(kind))),
@@ -85,7 +85,7 @@ fn rest_of_plate(bench: &BenchHandle) -> El {
     let rest = if family == Family::Measured {
         rest.with(field::plain(bench, Slot::PlateVolts, ""))
     } else {
-        let usual = (words.edit.power_factor_hint)(&words.numerals.plain(family.usual_power_factor()));
+        let usual = words.edit.power_factor_hint(&words.numerals.plain(family.usual_power_factor()));
         rest.with(field::plain(bench, Slot::PlateAmps, words.edit.optional))
             .with(field::plain(bench, Slot::PlateVoltAmps, words.edit.optional))
             .with(field::plain(bench, Slot::PlatePowerFactor, usual))
@@ -93,6 +93,6 @@ fn rest_of_plate(bench: &BenchHandle) -> El {
     let details = family.details().iter().filter(|default| default.detail != Detail::MeasuredOhms);
     rest.each(details.map(|default| {
         let value = words.numerals.quantity(default.value, default.detail.unit());
-        field::plain(bench, Slot::Detail(default.detail), (words.edit.default_hint)(&value))
+        field::plain(bench, Slot::Detail(default.detail), words.edit.default_hint(&value))
     }))
 }

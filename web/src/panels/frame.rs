@@ -18,7 +18,7 @@ pub fn header(bench: &BenchHandle) -> El {
         Theme::Paper => Theme::Dusk,
         Theme::Dusk => Theme::Auto,
     };
-    let light = (words.theme)(bench.theme);
+    let light = words.theme(bench.theme);
     let wordmark = el("span").text("lamp").with(el("i").text("ladder"));
     el("header")
         .class("top")
@@ -50,7 +50,7 @@ pub fn tabs(bench: &BenchHandle) -> El {
     ];
     let words = bench.words();
     el("nav").class("tabs").set("aria-label", words.panels).each(TABS.map(|(tab, testid)| {
-        let tab_button = button("tab", testid, send(bench, Msg::Go(tab))).text((words.tab)(tab));
+        let tab_button = button("tab", testid, send(bench, Msg::Go(tab))).text(words.tab(tab));
         if tab == bench.tab { tab_button.set("aria-current", "page") } else { tab_button }
     }))
 }
@@ -68,7 +68,7 @@ pub fn notes(bench: &BenchHandle) -> El {
         el("p")
             .class("note")
             .test("note")
-            .with(el("span").text((words.note)(*note)))
+            .with(el("span").text(words.note(*note)))
             .maybe(use_kept)
             .with(close)
     };

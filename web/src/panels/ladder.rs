@@ -23,19 +23,19 @@ pub fn ladder(bench: &BenchHandle) -> El {
     let texts = words.ladder;
     let (setup, climb) = (&bench.setup, &bench.climb);
     let family = setup.plate.family();
-    let what = (texts.for_what)(
+    let what = texts.for_what(
         &describe::size(setup, words),
-        (words.family)(family).noun,
+        words.family(family).noun,
         &describe::supply(setup, words),
     );
     let change = button("change", "ladder-equipment", send(bench, Msg::Open(Part::Equipment)))
-        .put("aria-label", (words.change)(Part::Equipment, &what))
+        .put("aria-label", words.change(Part::Equipment, &what))
         .text(words.edit.change);
-    let stale = bench.is_stale().then(|| note("stale", (words.stale)(&wrong_fields(bench))));
+    let stale = bench.is_stale().then(|| note("stale", words.stale(&wrong_fields(bench))));
     let restarted = climb.restarted.then(|| note("restarted", texts.restarted.to_owned()));
-    let warning = |warning| el("li").text((words.warning)(warning));
+    let warning = |warning| el("li").text(words.warning(warning));
     let spec = *Limits::default().spec();
-    let keeps = (texts.keeps)(
+    let keeps = texts.keeps(
         &words.numerals.quantity(spec.holder_watts, "W"),
         &words.numerals.percent(spec.supply_rise),
         &words.numerals.plain(spec.growth),
@@ -54,7 +54,7 @@ pub fn ladder(bench: &BenchHandle) -> El {
         .with(el("ul").class("warnings").each(family.warnings().iter().copied().map(warning)))
         .with(el("ol").class("steps").each(steps(bench)))
         .with(el("p").class("hint").text(keeps))
-        .with(el("p").class("hint").text((words.assumes)(&describe::assumed(setup, words))))
+        .with(el("p").class("hint").text(words.assumes(&describe::assumed(setup, words))))
 }
 
 fn note(testid: &'static str, text: String) -> El {
@@ -85,7 +85,7 @@ fn none_short(bench: &Bench) -> String {
     let words = bench.words();
     match bench.climb.refused() {
         _ if bench.climb.known.lost => words.reckoner_lost.to_owned(),
-        Some(error) => (words.ladder.refused)(error),
+        Some(error) => words.ladder.refused(error),
         None => words.ladder.working.to_owned(),
     }
 }
@@ -97,7 +97,7 @@ pub(super) fn name(bench: &Bench, stand: Stand) -> String {
         Stand::Lamps => texts.lamps.to_owned(),
         Stand::Checks => texts.checks.to_owned(),
         Stand::Rung(index) => match bench.climb.rungs() {
-            Some(plan) => (texts.rung)(index + 1, plan.rungs.len()),
+            Some(plan) => texts.rung(index + 1, plan.rungs.len()),
             None => texts.rungs.to_owned(),
         },
         Stand::Mains => texts.mains.to_owned(),
@@ -129,7 +129,7 @@ fn step(bench: &BenchHandle, stand: Stand, short: String, body: impl FnOnce(&Ben
         .set("data-progress", slug_of(progress))
         .with(el("span").class("step-mark").with(sign(mark)))
         .with(title)
-        .with(el("i").text((texts.progress)(progress)));
+        .with(el("i").text(texts.progress(progress)));
     let row = el("li").class(class).key(slug).with(head);
     if open { row.with(el("div").class("step-body").each(body(bench))) } else { row }
 }
@@ -149,7 +149,7 @@ pub(super) fn go_on(bench: &BenchHandle, stand: Stand, ready: bool) -> Option<El
         return None;
     }
     let next = bench.climb.next(stand)?;
-    let text = (bench.words().ladder.go_on)(&name(bench, next));
+    let text = bench.words().ladder.go_on(&name(bench, next));
     let go_on = button("go-on", "go-on", send(bench, Move::GoOn.into())).text(text);
     Some(if ready { go_on } else { go_on.set("disabled", "disabled") })
 }
@@ -169,7 +169,7 @@ pub(super) fn refused(bench: &Bench) -> Option<El> {
         _ => String::new(),
     };
     let ways = error.ways();
-    let way = |way: &WayForward| el("li").text((texts.way)(way, &lamp(way)));
+    let way = |way: &WayForward| el("li").text(texts.way(way, &lamp(way)));
     // What is not owned yet is no error.
     let class = if matches!(error, LadderError::EmptyStock { .. }) { "told" } else { "error" };
     Some(
@@ -177,7 +177,7 @@ pub(super) fn refused(bench: &Bench) -> Option<El> {
             .class(class)
             .set("role", "status")
             .test("ladder-refused")
-            .with(el("p").text((texts.refused)(error)))
+            .with(el("p").text(texts.refused(error)))
             .with(el("ul").each(ways.iter().map(way))),
     )
 }

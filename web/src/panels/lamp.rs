@@ -34,7 +34,7 @@ pub fn lamp_editor(bench: &BenchHandle) -> Vec<El> {
     all.push(el("h3").text(words.edit.kind));
     all.push(kinds(bench));
     let refused = match bench.refused {
-        Some(Refused::Lamp(kind)) => Some(refusal((words.refusal)(kind))),
+        Some(Refused::Lamp(kind)) => Some(refusal(words.refusal(kind))),
         _ => None,
     };
     all.push(place(refused));
@@ -81,10 +81,10 @@ pub(super) fn kinds(bench: &BenchHandle) -> El {
     };
     let mut all = vec![
         choice(words.edit.ordinary, !halogen, "kind-ordinary", Msg::Fill(None)),
-        choice((words.fill)(Some(Fill::Halogen)), halogen, "kind-halogen", Msg::Fill(Some(Fill::Halogen))),
+        choice(words.fill(Some(Fill::Halogen)), halogen, "kind-halogen", Msg::Fill(Some(Fill::Halogen))),
     ];
     all.extend(UNSUITABLE.map(|(kind, testid)| {
-        choice((words.unsuitable)(kind), false, testid, Msg::Refuse(Refused::Lamp(kind)))
+        choice(words.unsuitable(kind), false, testid, Msg::Refuse(Refused::Lamp(kind)))
     }));
     choices(words.edit.kind, all)
 }
@@ -100,7 +100,7 @@ fn life(bench: &BenchHandle) -> Option<El> {
             .test("lamp-life")
             .text(words.table.life)
             .text(" ")
-            .text((words.if_condition)(bench.condition))
+            .text(words.if_condition(bench.condition))
             .text(": ")
             .with(el("b").text(describe::life(lamp.life, words, false))),
     )
@@ -113,7 +113,7 @@ pub(super) fn filling(bench: &BenchHandle) -> Option<El> {
         return None;
     }
     let choice = |(fill, testid): (Option<Fill>, &str)| Choice {
-        text: (words.fill)(fill).to_owned(),
+        text: words.fill(fill).to_owned(),
         chosen: now == fill,
         testid: testid.to_owned(),
         click: send(bench, Msg::Fill(fill)),
@@ -129,7 +129,7 @@ pub(super) fn points(bench: &BenchHandle, known: El) -> El {
     let point = |index| {
         let typed = |part| field::plain(bench, Slot::Lamp(bench.lamp, part), "");
         let remove = button("close", format!("remove-point-{index}"), send(bench, Msg::RemovePoint(index)))
-            .put("aria-label", (edit.remove_point)(index + 1))
+            .put("aria-label", edit.remove_point(index + 1))
             .text("×");
         el("div")
             .class("pair point")

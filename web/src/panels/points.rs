@@ -7,6 +7,7 @@ use crate::bench::Bench;
 use crate::describe::full;
 use crate::parts::el::{El, el};
 use crate::parts::well::{Filament, Well, lone};
+use crate::words::fill;
 
 const WELL: Well = Well { x: 0.0, y: 0.0, width: 96.0, height: 54.0 };
 
@@ -17,22 +18,22 @@ pub fn points(bench: &Bench) -> Option<El> {
     if stable.len() < 2 {
         return None;
     }
-    let condition = (words.if_condition)(bench.condition);
+    let condition = words.if_condition(bench.condition);
     let ways = stable.into_iter().enumerate().map(|(index, point)| way(bench, index, point));
     let list = el("ul").class("ways").each(ways);
-    Some(el("section").test("ways").with(el("h2").text((words.ways)(condition))).with(list))
+    Some(el("section").test("ways").with(el("h2").text(words.ways(condition))).with(list))
 }
 
 fn way(bench: &Bench, index: usize, point: &Equilibrium) -> El {
     let words = bench.words();
-    let mode = (words.mode)(point.mode);
+    let mode = words.mode(point.mode);
     let glow = brightest(bench, point);
     let filament = glow.map_or(Filament::Unknown, Filament::Glowing);
-    let glow = glow.map_or(words.none, |glow| (words.glow)(glow.word));
+    let glow = glow.map_or(words.none, |glow| words.glow(glow.word));
     let volts = words.numerals.about(point.bank_volts, "V");
     let amps = words.numerals.about(point.amps, "A");
-    let text =
-        el("p").with(el("b").text(mode.name)).text(format!(": {glow}, {volts}, {amps}. ")).text(mode.decides);
+    let figures = fill(words.way, &[glow, &volts, &amps]);
+    let text = el("p").with(el("b").text(mode.name)).text(figures).text(" ").text(mode.decides);
     el("li")
         .test(point.mode.name())
         .put("data-amps", full(point.amps))

@@ -25,7 +25,7 @@ fn expected(rung: &Rung, words: &Words) -> Option<Expected> {
     let shown = rung.shown.as_ref()?;
     let GoOn::Between { least, most } = rung.signs.go_on else { return None };
     Some(Expected {
-        glow: (words.glow_range)(least.glow, most.glow),
+        glow: words.glow_range(least.glow, most.glow),
         amps: words.numerals.range(&shown.amps, "A"),
         bank_volts: words.numerals.range(&shown.bank_volts, "V"),
         load_volts: words.numerals.range(&shown.load_volts, "V"),
@@ -40,7 +40,7 @@ pub(super) fn rung_short(bench: &Bench, index: usize) -> String {
     };
     let bank = describe::lamps(&groups, words);
     match expected(rung, words) {
-        Some(expected) => format!("{bank}: {}", (words.ladder.expected_short)(&expected)),
+        Some(expected) => words.ladder.expected_short(&bank, &expected),
         None => bank,
     }
 }
@@ -68,21 +68,22 @@ pub(super) fn rung(bench: &BenchHandle, index: usize) -> Vec<El> {
     };
     let line =
         |head: &'static str, text: String| el("div").with(el("dt").text(head)).with(el("dd").text(text));
-    let healthy = expected(rung, words).map(|expected| line(texts.if_healthy, (texts.expected)(&expected)));
+    let healthy = expected(rung, words).map(|expected| line(texts.if_healthy, texts.expected(&expected)));
     let short = words.numerals.about(rung.short_amps, "A");
     let signs = &rung.signs;
-    let stop = (texts.stop_if)(signs.stop.as_ref(), &levels(&signs.go_on, signs.stop.as_ref(), words));
-    let hidden =
-        (!signs.hidden.is_empty()).then(|| el("p").class("hint").text((texts.hidden)(&signs.hidden)));
+    let fault = signs.stop.as_ref().map_or("", |stop| words.if_condition(stop.fault));
+    let stop = texts.stop_if(signs.stop.as_ref(), &levels(&signs.go_on, signs.stop.as_ref(), words), fault);
+    let names: Vec<&str> = signs.hidden.iter().map(|fault| words.condition(*fault)).collect();
+    let hidden = (!names.is_empty()).then(|| el("p").class("hint").text(texts.hidden(&names)));
     let lines = el("dl")
         .class("signs")
         .maybe(healthy)
-        .with(line(texts.go_on_when, (texts.go_on_if)(&signs.go_on)).class("sign-go"))
+        .with(line(texts.go_on_when, texts.go_on_if(&signs.go_on)).class("sign-go"))
         .with(line(texts.stop_when, stop).class("sign-stop"));
     let last = bench.climb.rungs().is_some_and(|plan| index + 1 == plan.rungs.len());
     let falls_short = bench.climb.rungs().and_then(|plan| plan.falls_short).filter(|_| last);
     let falls_short = falls_short.map(|share| {
-        el("p").class("told").test("falls-short").text((texts.falls_short)(&words.numerals.percent(share)))
+        el("p").class("told").test("falls-short").text(texts.falls_short(&words.numerals.percent(share)))
     });
     let used = if bench.is_in_loop(index) {
         el("div")
@@ -102,7 +103,7 @@ pub(super) fn rung(bench: &BenchHandle, index: usize) -> Vec<El> {
         drawn.alone(),
         used,
         lines,
-        el("p").class("why").text((texts.why)(&rung.reason, &short)),
+        el("p").class("why").text(texts.why(&rung.reason, &short)),
         place(hidden),
         place(falls_short),
         place(go_on(bench, Stand::Rung(index), true)),
@@ -116,14 +117,14 @@ fn levels(go_on: &GoOn, stop: Option<&Stop>, words: &Words) -> Vec<String> {
     let Some(from) = stop.map(|stop| stop.from) else { return Vec::new() };
     let amps = words.numerals.about(from.amps, "A");
     let volts = words.numerals.about(from.bank_volts, "V");
-    let mut all = vec![(words.ladder.across_lamps)(&volts)];
+    let mut all = vec![words.ladder.across_lamps(&volts)];
     let most = if let GoOn::Between { most, .. } = go_on { Some(most) } else { None };
     // What healthy equipment may show as well is no sign.
     if most.is_none_or(|most| words.numerals.about(most.amps, "A") != amps) {
         all.push(amps);
     }
     if most.is_none_or(|most| from.glow > most.glow) {
-        all.push((words.glow)(from.glow).to_owned());
+        all.push(words.glow(from.glow).to_owned());
     }
     all
 }
@@ -134,6 +135,6 @@ pub(super) fn mains(bench: &BenchHandle) -> Vec<El> {
     let last = bench.climb.rungs().and_then(|plan| plan.rungs.last());
     let last = last.map_or_else(|| words.none.to_owned(), |rung| words.numerals.about(rung.short_amps, "A"));
     let rated = words.numerals.about(bench.setup.plate.rated_amps(), "A");
-    let means = (words.ladder.mains_means)(&rated, &last);
+    let means = words.ladder.mains_means(&rated, &last);
     vec![el("p").class("told").text(means), place(go_on(bench, Stand::Mains, true))]
 }

@@ -121,7 +121,7 @@ fn answer(bench: &Bench, heard: Option<&Heard>, busy: bool) -> [El; 2] {
     let words = bench.words();
     let texts = words.seen;
     let line = el("p").set("aria-live", "polite").test("verdict").set("data-old", truth(busy));
-    let stale = bench.is_stale().then(|| el("p").class("stale").text((words.stale)(&wrong_fields(bench))));
+    let stale = bench.is_stale().then(|| el("p").class("stale").text(words.stale(&wrong_fields(bench))));
     let left_out = (!bench.seen.faults.is_empty()).then(|| left_out(bench));
     let because = el("div").class("because").test("because").maybe(stale).maybe(left_out);
     let Some(heard) = heard else { return [line.class("verdict").text(texts.working), because] };
@@ -129,7 +129,7 @@ fn answer(bench: &Bench, heard: Option<&Heard>, busy: bool) -> [El; 2] {
         return [line.class("verdict").text(words.reckoner_lost), because];
     };
     let sentence = sentence(bench, outcome, &heard.taken);
-    let (deed, why) = (texts.sentence)(&sentence);
+    let (deed, why) = texts.sentence(&sentence, words);
     let (class, mark) = match sentence {
         Sentence::GoOn(..) => ("verdict is-on", "go-on"),
         Sentence::Stop(..) | Sentence::NothingToCompare => ("verdict is-off", "stop"),
@@ -147,7 +147,7 @@ fn answer(bench: &Bench, heard: Option<&Heard>, busy: bool) -> [El; 2] {
         _ => &[],
     };
     let clash = |one: &Contradiction| {
-        el("p").class("clash").test("clash").text((texts.clash)(&clash(bench, one, &heard.taken)))
+        el("p").class("clash").test("clash").text(texts.clash(&clash(bench, one, &heard.taken)))
     };
     let because = because
         .each(clashes.iter().map(clash))
@@ -158,17 +158,17 @@ fn answer(bench: &Bench, heard: Option<&Heard>, busy: bool) -> [El; 2] {
 
 fn left_out(bench: &Bench) -> El {
     let words = bench.words();
-    let names: Vec<&str> = bench.seen.faults.iter().map(|(slot, _)| (words.slot)(*slot)).collect();
-    el("p").class("left-out").test("left-out").text((words.seen.left_out)(&names.join(", ")))
+    let names: Vec<&str> = bench.seen.faults.iter().map(|(slot, _)| words.slot(*slot)).collect();
+    el("p").class("left-out").test("left-out").text(words.seen.left_out(&names.join(", ")))
 }
 
 fn assumes(bench: &Bench) -> El {
     let words = bench.words();
     let spec = &bench.seen.spec;
     let plain = |value| words.numerals.plain(value);
-    let meter = (words.seen.meter_line)(&plain(spec.percent), &plain(spec.digits), &plain(spec.counts));
-    let bench_line = (words.assumes)(&describe::assumed(&bench.setup, words));
-    let meter_line = (words.seen.assumes)(&meter, spec.response == Response::Averaging);
+    let meter = words.seen.meter_line(&plain(spec.percent), &plain(spec.digits), &plain(spec.counts));
+    let bench_line = words.assumes(&describe::assumed(&bench.setup, words));
+    let meter_line = words.seen.assumes(&meter, spec.response == Response::Averaging);
     el("p").class("assumes").text(bench_line).text(" ").text(meter_line)
 }
 
@@ -260,13 +260,13 @@ fn weights(bench: &Bench, diagnosis: &Diagnosis) -> El {
             .put("data-testid", format!("weight-{testid}"))
             .put("data-value", full(weight))
             .with(el("b").text(name))
-            .with(el("span").text((texts.weight)(weight)))
+            .with(el("span").text(texts.weight(weight)))
             .with(el("i").text(share(bench, weight)))
             .with(bar)
     };
     let heavy = diagnosis.ranking.iter().filter(|one| one.weight >= LIGHT);
     let light: f64 = diagnosis.ranking.iter().filter(|one| one.weight < LIGHT).map(|one| one.weight).sum();
-    let rows = heavy.map(|one| row((words.condition)(one.condition), one.condition.name(), one.weight));
+    let rows = heavy.map(|one| row(words.condition(one.condition), one.condition.name(), one.weight));
     el("div")
         .with(el("h2").text(texts.weights))
         .with(
@@ -297,7 +297,7 @@ fn figures(bench: &Bench, numbers: &[(Quantity, Band)]) -> El {
             .put("data-value", full(band.value))
             .put("data-low", full(band.low))
             .put("data-high", full(band.high))
-            .with(row_head((texts.quantity)(*quantity)))
+            .with(row_head(texts.quantity(*quantity)))
             .with(whole(words.numerals.value(band, unit)))
             .with(whole(words.numerals.range(band, unit)))
     });

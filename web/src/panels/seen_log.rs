@@ -9,10 +9,10 @@ use super::send;
 use crate::bench::{BenchHandle, Msg};
 use crate::browser::{clock, input};
 use crate::describe;
+use crate::draft::Slot;
 use crate::log::Record;
 use crate::parts::el::{El, button, el};
 use crate::seen::Deed;
-use crate::words::seen::Sentence;
 
 /// What to do with the readings; `heard` is what they came to, if that is known.
 pub(super) fn deeds(bench: &BenchHandle, heard: Option<&Heard>) -> El {
@@ -32,9 +32,9 @@ pub(super) fn deeds(bench: &BenchHandle, heard: Option<&Heard>) -> El {
         .then(|| button("offer", "undo", send(bench, Msg::Seen(Deed::Undo))).text(texts.undo));
     let empty = button("offer", "empty", send(bench, Msg::Seen(Deed::Empty))).text(texts.clear);
     let empty = if bench.seen.is_empty() { empty.set("disabled", "") } else { empty };
-    let kept = (!log.records.is_empty()).then(|| el("p").class("hint").text((texts.kept)(log.records.len())));
+    let kept = (!log.records.is_empty()).then(|| el("p").class("hint").text(texts.kept(log.records.len())));
     let trouble =
-        log.trouble.map(|trouble| el("p").class("error").test("log-trouble").text((texts.trouble)(trouble)));
+        log.trouble.map(|trouble| el("p").class("error").test("log-trouble").text(texts.trouble(trouble)));
     let status = el("div").set("role", "status").maybe(kept).maybe(trouble);
     el("div").with(el("div").class("deeds").with(keep).with(empty).maybe(undo)).with(status)
 }
@@ -43,8 +43,8 @@ pub(super) fn deeds(bench: &BenchHandle, heard: Option<&Heard>) -> El {
 pub(super) fn log(bench: &BenchHandle) -> El {
     let texts = bench.words().seen;
     let log = &bench.seen.log;
-    let foreign = (log.foreign > 0)
-        .then(|| el("p").class("hint").test("log-foreign").text((texts.foreign)(log.foreign)));
+    let foreign =
+        (log.foreign > 0).then(|| el("p").class("hint").test("log-foreign").text(texts.foreign(log.foreign)));
     let empty = log.records.is_empty().then(|| el("p").class("hint").text(texts.log_empty));
     el("div")
         .class("log")
@@ -61,31 +61,34 @@ fn entry(bench: &BenchHandle, record: &Record) -> El {
     let time = clock::local(id);
     let bank = link::decode(&record.setup).map(|setup| describe::bank(&setup, words)).unwrap_or_default();
     let mut place = vec![bank];
-    place.extend(record.rung.map(texts.rung));
+    place.extend(record.rung.map(|rung| texts.rung(rung)));
     let mut seen: Vec<String> = record
         .numbers
         .iter()
         .map(|(kind, value)| {
-            format!("{} {}", (texts.kind)(*kind), words.numerals.short_quantity(*value, kind.field().unit()))
+            format!(
+                "{} {}",
+                words.slot(Slot::Reading(*kind)),
+                words.numerals.short_quantity(*value, kind.field().unit())
+            )
         })
         .collect();
-    seen.extend(record.look.map(|word| (words.glow)(word).to_owned()));
-    seen.extend(record.behaviour.map(|one| (texts.behaves)(one).to_ascii_lowercase()));
+    seen.extend(record.look.map(|word| words.glow(word).to_owned()));
+    seen.extend(record.behaviour.map(|one| texts.behaved(one).to_owned()));
     let verdict = record.verdict.map_or_else(
         || String::from(texts.unjudged),
         |verdict| {
             let weight = share(bench, verdict.weight);
-            let sentence = match verdict.advice {
-                Advice::GoOn => Sentence::GoOn(verdict.leader, String::new()),
-                Advice::Stop => Sentence::Stop(verdict.leader, String::new()),
-                _ => Sentence::Nothing,
+            let deed = match verdict.advice {
+                Advice::GoOn => texts.go_on,
+                Advice::Stop => texts.stop,
+                _ => texts.measure_first,
             };
-            let (deed, _) = (texts.sentence)(&sentence);
-            format!("{deed} {}", (texts.leads)(verdict.leader, &weight))
+            format!("{deed} {}", texts.leads(words.condition(verdict.leader), &weight))
         },
     );
     let delete = button("close", "delete", send(bench, Msg::Seen(Deed::Delete(id))))
-        .put("aria-label", (texts.delete)(&time))
+        .put("aria-label", texts.delete(&time))
         .text("×");
     let name = format!("note-{}", words.numerals.plain(id));
     let dispatcher = bench.dispatcher();

@@ -22,41 +22,42 @@ fn worthwhile(diagnosis: &Diagnosis) -> impl Iterator<Item = &Next> {
 pub(super) fn next_line(bench: &Bench, diagnosis: &Diagnosis) -> Option<El> {
     let texts = bench.words().seen;
     let first = worthwhile(diagnosis).next()?;
-    let name = (texts.candidate)(first.candidate);
-    Some(el("p").class("next-line").test("next-line").text((texts.next_line)(name)))
+    let name = texts.candidate(first.candidate);
+    Some(el("p").class("next-line").test("next-line").text(texts.next_line(name)))
 }
 
 /// The next reading with its outcomes.
 pub(super) fn next(bench: &Bench, diagnosis: &Diagnosis) -> El {
-    let texts = bench.words().seen;
+    let words = bench.words();
+    let texts = words.seen;
     let body = el("div").test("next").with(el("h2").text(texts.next));
     let mut all = worthwhile(diagnosis);
     let Some(first) = all.next() else { return body.with(el("p").class("hint").text(texts.nothing_next)) };
-    let others: Vec<&str> = all.map(|next| (texts.candidate)(next.candidate)).collect();
+    let others: Vec<&str> = all.map(|next| texts.candidate(next.candidate)).collect();
     let rows = first.meanings.iter().map(|meaning| {
         let outcomes = outcomes(bench, first.candidate, meaning.outcome);
         el("tr")
-            .with(row_head((texts.outcomes)(&outcomes)))
-            .with(el("td").text((texts.leads)(meaning.leader, &share(bench, meaning.weight))))
+            .with(row_head(texts.outcomes(&outcomes)))
+            .with(el("td").text(texts.leads(words.condition(meaning.leader), &share(bench, meaning.weight))))
     });
     let name = el("p")
         .class("next-name")
         .set("data-next", first.candidate.name())
-        .with(el("b").text((texts.candidate)(first.candidate)));
+        .with(el("b").text(texts.candidate(first.candidate)));
     let otherwise =
-        (!others.is_empty()).then(|| el("p").class("hint").text((texts.otherwise)(&others.join(", "))));
+        (!others.is_empty()).then(|| el("p").class("hint").text(texts.otherwise(&others.join(", "))));
     body.with(name).with(table(&[texts.if_it, texts.then], rows.collect())).maybe(otherwise)
 }
 
 fn outcomes(bench: &Bench, candidate: Candidate, seen: Seen) -> Outcomes {
     let (low, high) = match seen {
         Seen::Between { low, high } => (low, high),
-        Seen::Behaves(behaviour) => return Outcomes::Is((bench.words().seen.behaves)(behaviour)),
+        Seen::Behaves(behaviour) => return Outcomes::Is(bench.words().seen.behaves(behaviour)),
         _ => return Outcomes::Any,
     };
     let text = |value: f64| match candidate {
         Candidate::Number(kind) => border(bench, value, kind.field().unit()),
-        _ => (bench.words().glow)(glow(bench, value)).to_owned(),
+        _ => bench.words().glow(glow(bench, value)).to_owned(),
     };
     match (low > 0.0, high.is_finite()) {
         (false, false) => Outcomes::Any,

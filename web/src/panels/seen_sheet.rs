@@ -44,9 +44,9 @@ fn reading(bench: &BenchHandle, kind: Kind, doubted: bool) -> El {
             testid: format!("meaning-{index}"),
             click: send(bench, Msg::Type(slot, meaning)),
         });
-        choices((bench.words().slot)(slot), all.collect())
+        choices(bench.words().slot(slot), all.collect())
     });
-    el("div").with(field::plain(bench, slot, (bench.words().seen.how)(kind))).with(place(question))
+    el("div").with(field::plain(bench, slot, bench.words().seen.how(kind))).with(place(question))
 }
 
 /// Lamps from dark to more than full, as this one would look.
@@ -67,14 +67,14 @@ fn looks(bench: &BenchHandle) -> El {
             button("look", format!("look-{name}"), send(bench, Msg::Seen(Deed::Look(word))))
                 .set("aria-pressed", truth(bench.seen.sheet.look == Some(word)))
                 .with(drawn)
-                .with(el("span").text((words.glow)(word))),
+                .with(el("span").text(words.glow(word))),
         )
     }))
 }
 
 fn behaviours(bench: &BenchHandle) -> Vec<Choice> {
     let choice = |one: Behaviour| Choice {
-        text: (bench.words().seen.behaves)(one).to_owned(),
+        text: bench.words().seen.behaves(one).to_owned(),
         chosen: bench.seen.sheet.behaviour == Some(one),
         testid: format!("behaves-{}", one.name()),
         click: send(bench, Msg::Seen(Deed::Behave(one))),
@@ -89,7 +89,7 @@ fn meter(bench: &BenchHandle) -> El {
     let spec = bench.seen.spec;
     let line = |percent: f64, digits: f64, counts: f64| {
         let plain = |value| words.numerals.plain(value);
-        (texts.meter_line)(&plain(percent), &plain(digits), &plain(counts))
+        texts.meter_line(&plain(percent), &plain(digits), &plain(counts))
     };
     let open = bench.seen.meter_open;
     let head = button("disclose", "meter", send(bench, Msg::Seen(Deed::ShowMeter)))
@@ -110,7 +110,7 @@ fn meter(bench: &BenchHandle) -> El {
         }
     });
     let responses = [Response::TrueRms, Response::Averaging].map(|response| Choice {
-        text: (texts.averaging)(response == Response::Averaging).to_owned(),
+        text: texts.averaging(response == Response::Averaging).to_owned(),
         chosen: spec.response == response,
         testid: String::from(if response == Response::Averaging { "averaging" } else { "true-rms" }),
         click: send(bench, Msg::Seen(Deed::Response(response))),

@@ -36,7 +36,7 @@ pub fn Sheet(props: &SheetProps) -> Html {
     }
     let Some(part) = bench.open else { return Html::default() };
     let words = bench.words();
-    let title = el("h2").set("id", "sheet-title").set("tabindex", "-1").text((words.part)(part));
+    let title = el("h2").set("id", "sheet-title").set("tabindex", "-1").text(words.part(part));
     let done = button("done", "done", send(bench, Msg::Close)).text(words.done);
     let body = el("div").class("sheet-body").each(match part {
         Part::Supply => supply_editor(bench),
@@ -65,7 +65,7 @@ fn answer(bench: &BenchHandle) -> El {
     let (class, remark) = if bench.is_stale() {
         ("answer is-stale", words.stale_mark)
     } else {
-        ("answer", (words.if_condition)(bench.condition))
+        ("answer", words.if_condition(bench.condition))
     };
     el("p")
         .class(class)

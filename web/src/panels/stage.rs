@@ -84,15 +84,15 @@ fn figure(bench: &Bench, scene: &Scene, index: usize, seconds: f64) -> El {
             let amps = words.numerals.about(sample.amps_rms, "A");
             let volts = words.numerals.about(sample.load_volts_rms, "V");
             (
-                (words.glow)(glow),
-                (words.replay.figures)(&amps, &volts),
+                words.glow(glow),
+                words.replay.figures(&amps, &volts),
                 Some((glow.name(), kelvin, sample.amps_rms)),
             )
         }
         Err(SwitchOnError::FilamentMelts { .. }) => (words.burnt, String::from(words.none), None),
         Ok(None) | Err(_) => (words.none, String::from(words.none), None),
     };
-    let name = el("strong").with(el("i").class(SWATCHES[index])).text((words.condition)(scene.condition));
+    let name = el("strong").with(el("i").class(SWATCHES[index])).text(words.condition(scene.condition));
     let figure = el("div")
         .class("scene")
         .test(NAMES[index])

@@ -58,6 +58,6 @@ fn follow(bench: &BenchHandle) -> Option<El> {
     let worth_it = lamps_differ || differs(bench.draft.text(Slot::PlateVolts));
     (worth_it && bench.fault(Slot::SupplyVolts).is_none()).then(|| {
         button("offer", "follow-supply", send(bench, Msg::FollowSupply))
-            .text((words.edit.follow)(&words.numerals.quantity(volts, "V")))
+            .text(words.edit.follow(&words.numerals.quantity(volts, "V")))
     })
 }

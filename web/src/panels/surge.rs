@@ -41,7 +41,7 @@ fn figures(bench: &Bench, show: &Show) -> El {
         row(texts.heat, &|scene| scene.whole().map(heat)),
         row(texts.settles, &|scene| {
             let settled = scene.whole()?.settle_seconds.map(|seconds| numerals.duration(seconds));
-            Some(settled.unwrap_or_else(|| (texts.unsettled)(&numerals.quantity(show.ask.seconds, "s"))))
+            Some(settled.unwrap_or_else(|| texts.unsettled(&numerals.quantity(show.ask.seconds, "s"))))
         }),
     ];
     if show.scenes.iter().any(|scene| scene.whole().is_some_and(|run| run.pulse_seconds().is_some())) {
@@ -58,18 +58,18 @@ fn figures(bench: &Bench, show: &Show) -> El {
         let ratio = straight(scene)?.peak_amps / scene.whole()?.peak_amps;
         // Without any current there is nothing to compare.
         ratio.is_finite().then(|| {
-            if ratio < 1.05 { String::from(texts.same) } else { (texts.times_less)(&numerals.ratio(ratio)) }
+            if ratio < 1.05 { String::from(texts.same) } else { texts.times_less(&numerals.ratio(ratio)) }
         })
     }));
     let ohms = if show.ask.setup.supply.ohms() > 0.0 { show.ask.setup.supply.ohms() } else { MAINS_OHMS };
     el("div")
         .with(el("h2").text(texts.surge))
         .with(table(&heads(bench, show, ""), rows).test("surge"))
-        .with(el("p").class("hint").text((texts.straight_means)(&numerals.short_quantity(ohms, "Ω"))))
+        .with(el("p").class("hint").text(texts.straight_means(&numerals.short_quantity(ohms, "Ω"))))
 }
 
 fn heads(bench: &Bench, show: &Show, first: &'static str) -> [&'static str; 3] {
-    let name = |scene: &Scene| (bench.words().condition)(scene.condition);
+    let name = |scene: &Scene| bench.words().condition(scene.condition);
     [first, name(&show.scenes[0]), name(&show.scenes[1])]
 }
 
@@ -90,8 +90,8 @@ fn moments(bench: &Bench, show: &Show) -> El {
             let amps = words.numerals.about(sample.amps_rms, "A");
             let volts = words.numerals.about(sample.load_volts_rms, "V");
             el("td")
-                .with(el("b").text((words.glow)(glow.word)))
-                .with(el("small").text((texts.figures)(&amps, &volts)))
+                .with(el("b").text(words.glow(glow.word)))
+                .with(el("small").text(texts.figures(&amps, &volts)))
         };
         let head = row_head(words.numerals.duration(seconds));
         el("tr").with(head).each(show.scenes.iter().map(cell))
@@ -135,16 +135,16 @@ fn fuse(bench: &BenchHandle, show: &Show) -> El {
         return section;
     }
     let standards = Standard::ALL.map(|standard| Choice {
-        text: (texts.standard)(standard).to_owned(),
+        text: texts.standard(standard).to_owned(),
         chosen: standard == now.standard,
-        testid: format!("fuse-{}", (texts.standard)(standard)),
+        testid: format!("fuse-{}", texts.standard(standard)),
         click: wish(bench, Wish { standard, rated_amps: fitting(standard, now.rated_amps), ..now }),
     });
     let step = |up: bool| {
         let testid = if up { "fuse-more" } else { "fuse-less" };
         let rated_amps = next(now.standard, now.rated_amps, up);
         button("stepper", testid, wish(bench, Wish { rated_amps, ..now }))
-            .set("aria-label", (texts.rated_step)(up))
+            .set("aria-label", texts.rated_step(up))
             .text(if up { "+" } else { "−" })
     };
     let rated = el("p")
@@ -155,7 +155,7 @@ fn fuse(bench: &BenchHandle, show: &Show) -> El {
         .with(step(true));
     section
         .with(choices(texts.standards, standards.to_vec()))
-        .with(el("p").class("hint").text((texts.standard_means)(now.standard)))
+        .with(el("p").class("hint").text(texts.standard_means(now.standard)))
         .with(rated)
         .each(verdicts(bench, show))
 }
@@ -164,7 +164,7 @@ fn verdicts(bench: &Bench, show: &Show) -> Vec<El> {
     let texts = bench.words().replay;
     let Ok(fuse) = Fuse::new(bench.wish.standard, bench.wish.rated_amps) else { return Vec::new() };
     let judged = |run: Option<&SwitchOn>| run.map(|run| fuse.judge(run));
-    let verdict = |judged: Option<Judgement>| Some((texts.verdict)(judged?.verdict).to_owned());
+    let verdict = |judged: Option<Judgement>| Some(texts.verdict(judged?.verdict).to_owned());
     let rows = vec![
         cells(bench, show, texts.behind, |scene| verdict(judged(scene.whole()))),
         cells(bench, show, texts.straight, |scene| verdict(judged(straight(scene)))),
@@ -173,7 +173,7 @@ fn verdicts(bench: &Bench, show: &Show) -> Vec<El> {
     let status = status.unwrap_or(lampladder_core::fuse::Status::Memory);
     vec![
         table(&heads(bench, show, ""), rows).test("fuse-table"),
-        el("p").class("hint").text((texts.fuse_note)(status)),
+        el("p").class("hint").text(texts.fuse_note(status)),
     ]
 }
 

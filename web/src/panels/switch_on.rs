@@ -101,13 +101,13 @@ pub fn Replay(props: &ReplayProps) -> Html {
     let canvas = use_node_ref();
     {
         let (canvas, theatre) = (canvas.clone(), Rc::clone(&theatre));
-        let drawn = (theatre.borrow().version, bench.theme, bench.language, *size, Ink::now());
-        use_effect_with(drawn, move |(_, _, language, _, _)| {
+        let drawn = (theatre.borrow().version, bench.theme, bench.words, *size, Ink::now());
+        use_effect_with(drawn, move |(_, _, words, _, _)| {
             let theatre = theatre.borrow();
             let (Some(canvas), Some(show)) = (canvas.cast(), theatre.show()) else { return };
             let runs = show.scenes.each_ref().map(Scene::run);
             // A chart that cannot be drawn leaves the tables, which say the same.
-            let _ = draw(&canvas, runs, show.ask.seconds, &Ink::now(), language.words());
+            let _ = draw(&canvas, runs, show.ask.seconds, &Ink::now(), words);
         });
     }
     view(bench, &hand, &canvas)
@@ -152,7 +152,7 @@ fn view(bench: &BenchHandle, hand: &Hand, canvas: &yew::NodeRef) -> Html {
 fn watch(bench: &Bench, theatre: &Theatre) -> El {
     let words = bench.words();
     let texts = words.replay;
-    let stale = bench.is_stale().then(|| el("p").class("stale").text((words.stale)(&wrong_fields(bench))));
+    let stale = bench.is_stale().then(|| el("p").class("stale").text(words.stale(&wrong_fields(bench))));
     let lines = theatre.show().and_then(|show| told(bench, &show.scenes));
     let waiting = if theatre.is_lost() { words.reckoner_lost } else { texts.working };
     let body = lines.unwrap_or_else(|| vec![el("p").text(waiting)]);
@@ -160,7 +160,7 @@ fn watch(bench: &Bench, theatre: &Theatre) -> El {
     let played = Played {
         supply: describe::supply(setup, words),
         size: describe::size(setup, words),
-        family: (words.family)(setup.plate.family()).noun,
+        family: words.family(setup.plate.family()).noun,
         closing: (!setup.supply.is_direct()).then_some(bench.wish.closing),
     };
     el("div")
@@ -169,7 +169,7 @@ fn watch(bench: &Bench, theatre: &Theatre) -> El {
         .test("story")
         .maybe(stale)
         .each(body)
-        .with(el("p").class("assumes").text((texts.assumes)(&played)))
+        .with(el("p").class("assumes").text(texts.assumes(&played)))
 }
 
 /// The stories, once both are known to their end.
@@ -180,7 +180,7 @@ fn told(bench: &Bench, scenes: &[Scene; 2]) -> Option<Vec<El>> {
     let mut lines = Vec::new();
     let mut stories: [Option<Told>; 2] = [None, None];
     for (index, scene) in scenes.iter().enumerate() {
-        let name = el("b").text((words.condition)(scene.condition));
+        let name = el("b").text(words.condition(scene.condition));
         if !scene.behind.as_ref()?.complete {
             return None;
         }
@@ -189,14 +189,13 @@ fn told(bench: &Bench, scenes: &[Scene; 2]) -> Option<Vec<El>> {
                 SwitchOnError::FilamentMelts { group, lamp, .. } => Place { group, lamp },
                 _ => Place::default(),
             };
-            let text = (texts.stopped)(&error, &describe::lamp(&bench.setup, place, words));
-            lines.push(el("p").class("caution").with(name).text(": ").text(text).text("."));
+            let text = texts.stopped(&error, &describe::lamp(&bench.setup, place, words));
+            lines.push(el("p").class("caution").with(name).text(words.told(&text)));
             continue;
         }
         let told = tell(scene.run()?, &lamps)?;
         stories[index] = Some(told);
-        let cause = told.cause.map_or_else(String::new, |cause| format!(": {}", (texts.cause)(cause)));
-        lines.push(el("p").with(name).text(": ").text((texts.story)(&told.story)).text(cause).text("."));
+        lines.push(el("p").with(name).text(words.told(&texts.told(&told, words))));
     }
     if let [Some(one), Some(other)] = stories
         && alike(&one.story, &other.story)
@@ -217,7 +216,7 @@ fn conditions(bench: &BenchHandle) -> El {
     let rest = family.iter().copied().filter(|condition| !feared.contains(condition));
     let all = first.chain(rest);
     let choice = |condition: Condition| Choice {
-        text: (words.condition)(condition).to_owned(),
+        text: words.condition(condition).to_owned(),
         chosen: condition == now,
         testid: format!("beside-{}", condition.name()),
         click: wish(bench, Wish { fault: Some(condition), ..bench.wish }),
@@ -245,7 +244,7 @@ fn options(bench: &BenchHandle) -> El {
         click: wish(bench, Wish { seconds: Some(span), ..now }),
     };
     let closing = |closing: Closing| Choice {
-        text: (texts.closing)(closing).to_owned(),
+        text: texts.closing(closing).to_owned(),
         chosen: closing == now.closing,
         testid: String::from(match closing {
             Closing::Crest => "closing-crest",

@@ -18,12 +18,11 @@ pub fn voltage_bar(bench: &BenchHandle) -> Option<El> {
     let overlaps = lamp + load > OVERLAP;
     let bank_text = words.numerals.value(&shown.bank_volts, "V");
     let load_text = words.numerals.value(&shown.load_volts, "V");
-    let why = if overlaps { words.overlap } else { words.adds_up };
-    let explanation = why(&bank_text, &load_text, &words.numerals.quantity(supply, "V"));
+    let explanation = words.split(overlaps, &bank_text, &load_text, &words.numerals.quantity(supply, "V"));
     let several = bench.setup.bank.lamp_count() > 1;
     let names = el("span")
         .class("split-names")
-        .with(el("span").text((words.across_bank)(several)).text(" ").with(el("b").text(bank_text)))
+        .with(el("span").text(words.across_bank(several)).text(" ").with(el("b").text(bank_text)))
         .maybe(overlaps.then(|| el("i").class("split-why").text(words.why)))
         .with(
             el("span")

@@ -54,12 +54,12 @@ fn field(bench: &BenchHandle, slot: Slot, steps: bool, hint: String) -> El {
     let slug = slug(slot);
     let (id, error_id) = (format!("in-{slug}"), format!("err-{slug}"));
     let fault = bench.wrong(slot);
-    let label = el("label").put("for", id.clone()).text((words.slot)(slot));
+    let label = el("label").put("for", id.clone()).text(words.slot(slot));
     let label = if hint.is_empty() { label } else { label.with(el("small").text(hint)) };
     let stepper = |up: bool, sign: &'static str, name: &'static str| {
         steps.then(|| {
             button("stepper", format!("step-{slug}-{name}"), send(bench, Msg::Step(slot, up)))
-                .put("aria-label", (words.step)(slot, up))
+                .put("aria-label", words.step(slot, up))
                 .text(sign)
         })
     };
@@ -73,7 +73,7 @@ fn field(bench: &BenchHandle, slot: Slot, steps: bool, hint: String) -> El {
             .put("id", error_id)
             .set("role", "alert")
             .put("data-testid", format!("error-{slug}"))
-            .text((words.fault)(slot, &fault))
+            .text(words.fault(slot, &fault))
     });
     let entry = el("div").class("entry").maybe(stepper(false, "−", "less")).with(typed);
     el("div").class("field").with(label).with(entry.maybe(stepper(true, "+", "more"))).maybe(error)

@@ -1,15 +1,29 @@
-//! Every text that a person sees or hears, by language. A language is one [`Words`]: leave a text out and it does
-//! not compile.
+//! Every text that a person sees or hears, by language.
+//!
+//! A language is a catalogue, web/words/*.txt, which the page fetches as data: texts in four languages would not fit in
+//! the program, and one of them is read at a time. [`Words`] is a catalogue that has been read. A text without a choice
+//! in it is a field, a few of a kind are an array, and a method picks and fills where more is needed: what is said when
+//! is decided here, once for all languages. Where a language would bend a word to fit it into a sentence, it has a key
+//! of its own for that form.
+//!
+//! To add a text: a field in one of the `catalogue!` lists, a line at the same place in each catalogue.
 //!
 //! The cautions stand in static/index.html, since they must show without the program.
 
-mod english;
+pub mod catalogue;
+mod faults;
 pub mod fill;
 pub mod ladder;
+mod load;
+pub mod page;
+mod reader;
 pub mod replay;
 pub mod seen;
 
 pub use fill::fill;
+pub use load::{english, keys, read};
+pub use page::Words;
+pub use reader::{Malformed, Plural};
 
 use lampladder_core::condition::Condition;
 use lampladder_core::family::{self, Family, Warning};
@@ -19,28 +33,7 @@ use lampladder_core::link::LinkError;
 use lampladder_core::load::Mode;
 
 use crate::bench::{Note, Part, Tab, Theme, Unsuitable};
-use crate::draft::{Fault, Place, Slot};
-use crate::format::Numerals;
-
-/// The languages of the page.
-#[derive(Debug, Clone, Copy, PartialEq, Eq, Default)]
-pub enum Language {
-    /// English.
-    #[default]
-    English,
-}
-
-impl Language {
-    /// All of them.
-    pub const ALL: [Self; 1] = [Self::English];
-
-    /// The texts.
-    pub const fn words(self) -> &'static Words {
-        match self {
-            Self::English => &english::WORDS,
-        }
-    }
-}
+use crate::draft::{Place, Slot};
 
 /// A kind of equipment in words.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -92,267 +85,335 @@ pub struct Alike {
     pub watts: String,
 }
 
-/// All texts of one language.
-#[derive(Debug)]
-pub struct Words {
-    /// Tag of the language (BCP 47).
-    pub tag: &'static str,
-    /// How numbers are written.
-    pub numerals: Numerals,
-    /// The line that never leaves.
-    pub reminder: &'static str,
-    /// The button to the cautions.
-    pub cautions: &'static str,
-    /// Accepts the cautions.
-    pub accept: &'static str,
-    /// Back from the cautions.
-    pub back: &'static str,
-    /// Closes an editor.
-    pub done: &'static str,
-    /// Closes a note.
-    pub dismiss: &'static str,
+/// One text of an enumeration. The keys stand in the order of the variants, which the tests hold.
+fn pick(all: &[&'static str], at: usize) -> &'static str {
+    all.get(at).copied().unwrap_or_default()
+}
+
+impl Words {
     /// Name of a light.
-    pub theme: fn(Theme) -> &'static str,
+    pub fn theme(&self, theme: Theme) -> &'static str {
+        pick(&self.theme, theme as usize)
+    }
+
     /// Name of a panel.
-    pub tab: fn(Tab) -> &'static str,
-    /// Name of the panels' list.
-    pub panels: &'static str,
+    pub fn tab(&self, tab: Tab) -> &'static str {
+        pick(&self.tab, tab as usize)
+    }
+
     /// Name of a part of the loop.
-    pub part: fn(Part) -> &'static str,
-    /// What a part's button does, for those who hear it.
-    pub change: fn(Part, &str) -> String,
-    /// The circuit in one sentence, for those who hear it.
-    pub circuit: fn(&str, &str, &str) -> String,
+    pub fn part(&self, part: Part) -> &'static str {
+        pick(&self.part, part as usize)
+    }
+
+    /// What a part's button does, for those who hear it; what the part is now.
+    pub fn change(&self, part: Part, now: &str) -> String {
+        fill(pick(&self.change, part as usize), &[now])
+    }
+
+    /// The circuit in one sentence, for those who hear it: supply, lamps, size of the equipment.
+    pub fn circuit(&self, supply: &str, bank: &str, size: &str) -> String {
+        fill(self.circuit, &[supply, bank, size])
+    }
+
     /// Name of a condition.
-    pub condition: fn(Condition) -> &'static str,
+    pub fn condition(&self, condition: Condition) -> &'static str {
+        pick(&self.condition, condition as usize)
+    }
+
     /// "if healthy".
-    pub if_condition: fn(Condition) -> &'static str,
-    /// Asks for one of the conditions.
-    pub conditions: &'static str,
-    /// Heading of the conditions that are not compared at a glance.
-    pub other_conditions: &'static str,
-    /// In a cell whose answer is on its way.
-    pub coming: &'static str,
+    pub fn if_condition(&self, condition: Condition) -> &'static str {
+        pick(&self.if_condition, condition as usize)
+    }
+
+    /// A condition's name in the middle of a sentence.
+    pub fn said(&self, condition: Condition) -> &'static str {
+        pick(&self.said, condition as usize)
+    }
+
+    /// What a condition means; times overloaded.
+    pub fn condition_means(&self, condition: Condition, overload: &str) -> String {
+        fill(pick(&self.means, condition as usize), &[overload])
+    }
+
+    /// "with the equipment shorted".
+    fn when(&self, condition: Condition) -> &'static str {
+        let at = match condition {
+            Condition::Healthy => 0,
+            Condition::Overloaded => 1,
+            Condition::Shorted => 2,
+            Condition::Stalled => 3,
+            _ => 4,
+        };
+        pick(&self.when, at)
+    }
+
     /// The circuit can come to rest in several ways, "if healthy".
-    pub ways: fn(&str) -> String,
+    pub fn ways(&self, if_condition: &str) -> String {
+        fill(self.ways, &[if_condition])
+    }
+
     /// One of these ways.
-    pub mode: fn(Mode) -> ModeWords,
-    /// What a condition means.
-    pub condition_means: fn(Condition, &str) -> String,
+    pub fn mode(&self, mode: Mode) -> ModeWords {
+        let at = mode as usize;
+        ModeWords { name: pick(&self.mode, at), decides: pick(&self.mode_decides, at) }
+    }
+
     /// Name of a glow.
-    pub glow: fn(GlowWord) -> &'static str,
+    pub fn glow(&self, word: GlowWord) -> &'static str {
+        pick(&self.glow, word as usize)
+    }
+
     /// From one glow to another.
-    pub glow_range: fn(GlowWord, GlowWord) -> String,
-    /// Where there is no number.
-    pub none: &'static str,
-    /// What takes longer to work out cannot be had.
-    pub reckoner_lost: &'static str,
+    pub fn glow_range(&self, from: GlowWord, to: GlowWord) -> String {
+        if from == to {
+            return self.glow(from).to_owned();
+        }
+        fill(self.glow_range, &[self.glow(from), self.glow(to)])
+    }
+
     /// A bank in a few words.
-    pub bank: fn(&[Vec<Alike>]) -> String,
-    /// Direct current.
-    pub direct: &'static str,
-    /// Volts across the lamps, on the bar.
-    pub across_bank: fn(bool) -> &'static str,
-    /// Volts across the equipment, on the bar.
-    pub across_load: &'static str,
-    /// Why the two voltages add to more than the supply: bank, load and supply volts.
-    pub overlap: fn(&str, &str, &str) -> String,
-    /// What the bar shows where they do add up.
-    pub adds_up: fn(&str, &str, &str) -> String,
-    /// Asks why.
-    pub why: &'static str,
-    /// The result is not that of what is typed.
-    pub stale: fn(&str) -> String,
-    /// Short mark of the same.
-    pub stale_mark: &'static str,
-    /// A lamp burns out: its name, condition.
-    pub burns_out: fn(&str, Condition) -> String,
-    /// The equipment starts and stops.
-    pub pulses: fn(Option<&str>) -> String,
-    /// A motor stands: the glow.
-    pub stands: fn(&str) -> String,
-    /// A picture-tube set looks shorted.
-    pub looks_shorted: &'static str,
-    /// Larger lamps help.
-    pub larger: &'static str,
-    /// The equipment does not start.
-    pub does_not_start: &'static str,
-    /// Healthy and faulty look alike.
-    pub hard_to_tell: &'static str,
-    /// Glow and current to expect.
-    pub expect: fn(&str, &str) -> String,
-    /// A glow that means off.
-    pub off_if_brighter: fn(GlowWord) -> String,
-    /// A current that means off.
-    pub off_if_more: fn(&str) -> String,
-    /// What was taken for granted, short.
-    pub assumes: fn(&Assumed) -> String,
-    /// What was taken for granted, at length.
-    pub assumptions: fn(&Assumed) -> Vec<String>,
-    /// A lamp's name: which one, what is printed on it.
-    pub lamp: fn(Place, bool, &str) -> String,
-    /// A lamp runs over its rated volts: its name, condition, per cent of the rating, life there.
-    pub over_rated: fn(&str, Condition, &str, &str) -> String,
-    /// It pulses, in a cell.
-    pub pulsing: &'static str,
-    /// How often, in a cell.
-    pub every: fn(&str) -> String,
-    /// How often, and how bright at most, on the loop.
-    pub pulse: fn(&str, GlowWord) -> String,
-    /// Burnt out, in a cell.
-    pub burnt: &'static str,
-    /// Life between two ratios to the rated.
-    pub life: fn(&str, &str) -> String,
-    /// The same for a table.
-    pub short_life: fn(&str, &str) -> String,
-    /// Life longer than a ratio.
-    pub life_over: fn(&str) -> String,
-    /// The same for a table.
-    pub short_life_over: fn(&str) -> String,
+    pub fn bank(&self, groups: &[Vec<Alike>]) -> String {
+        let count = |group: &Vec<Alike>| group.iter().map(|alike| alike.count).sum::<usize>();
+        let bare = |group: &Vec<Alike>| {
+            let texts: Vec<String> = group
+                .iter()
+                .map(|alike| match alike.count {
+                    1 => alike.watts.clone(),
+                    count => count.to_string() + " × " + &alike.watts,
+                })
+                .collect();
+            texts.join(" + ") + "\u{a0}W"
+        };
+        let parts = |group: &Vec<Alike>| {
+            let text = bare(group);
+            if count(group) > 1 { fill(self.bank_parallel, &[&text]) } else { text }
+        };
+        match groups {
+            [one] if count(one) == 1 => fill(self.bank_one, &[&bare(one)]),
+            [first, rest @ ..] if !rest.is_empty() && rest.iter().all(|group| group == first) => {
+                let inner = parts(first);
+                let inner = if count(first) > 1 { String::from("(") + &inner + ")" } else { inner };
+                fill(self.bank_series, &[&(groups.len().to_string() + " × " + &inner)])
+            }
+            [first, rest @ ..] => {
+                rest.iter().fold(parts(first), |all, group| fill(self.bank_then, &[&all, &parts(group)]))
+            }
+            [] => String::new(),
+        }
+    }
+
     /// Many lamps, shorter than by their sizes.
-    pub lamps: fn(usize) -> String,
-    /// Where the life figures come from.
-    pub life_source: &'static str,
-    /// What a band is.
-    pub band_note: &'static str,
-    /// Names of the columns and headings of the tables.
-    pub table: &'static TableWords,
-    /// Texts of the switch-on panel.
-    pub replay: &'static replay::ReplayWords,
-    /// Texts of the panel of readings.
-    pub seen: &'static seen::SeenWords,
-    /// Texts of the ladder panel.
-    pub ladder: &'static ladder::LadderWords,
-    /// Name of a field.
-    pub slot: fn(Slot) -> &'static str,
-    /// What is wrong with a field.
-    pub fault: fn(Slot, &Fault) -> String,
+    pub fn lamps(&self, count: usize) -> String {
+        self.count(self.lamps, count)
+    }
+
+    /// So many of something.
+    fn count(&self, text: &'static str, count: usize) -> String {
+        fill(self.plural.of(text, count), &[&count.to_string()])
+    }
+
+    /// Volts across the lamps, on the bar.
+    pub const fn across_bank(&self, several: bool) -> &'static str {
+        if several { self.across_several } else { self.across_one }
+    }
+
+    /// Why the voltages of bank and load add to more than the supply's, or that they do not.
+    pub fn split(&self, overlaps: bool, bank: &str, load: &str, supply: &str) -> String {
+        fill(if overlaps { self.overlap } else { self.adds_up }, &[bank, load, supply])
+    }
+
+    /// The result is not that of what is typed: names of the fields.
+    pub fn stale(&self, names: &str) -> String {
+        fill(self.stale, &[names])
+    }
+
+    /// A lamp burns out: its name, condition.
+    pub fn burns_out(&self, lamp: &str, condition: Condition) -> String {
+        fill(self.burns_out, &[lamp, self.when(condition)])
+    }
+
+    /// The equipment starts and stops; how often, where that is known.
+    pub fn pulses(&self, every: Option<&str>) -> String {
+        every.map_or_else(|| self.pulses.to_owned(), |every| fill(self.pulses_every, &[every]))
+    }
+
+    /// A motor stands: the glow.
+    pub fn stands(&self, glow: &str) -> String {
+        fill(self.stands, &[glow])
+    }
+
+    /// Glow and current to expect.
+    pub fn expect(&self, glow: &str, amps: &str) -> String {
+        fill(self.expect, &[glow, amps])
+    }
+
+    /// A glow that means off.
+    pub fn off_if_brighter(&self, word: GlowWord) -> String {
+        if word >= GlowWord::Full {
+            return self.off_if_full.to_owned();
+        }
+        fill(self.off_if_brighter, &[self.glow(word)])
+    }
+
+    /// A current that means off.
+    pub fn off_if_more(&self, amps: &str) -> String {
+        fill(self.off_if_more, &[amps])
+    }
+
+    /// What was taken for granted, short.
+    pub fn assumes(&self, assumed: &Assumed) -> String {
+        fill(self.assumes, &[&assumed.supply, &assumed.size, assumed.family, &assumed.shares])
+    }
+
+    /// What was taken for granted, at length.
+    pub fn assumptions(&self, assumed: &Assumed) -> Vec<String> {
+        let Assumed { family, size, plate_volts, shares, overload, .. } = assumed;
+        let mut all = vec![
+            fill(self.assumed_supply, &[&assumed.supply]),
+            fill(self.assumed_bank, &[&assumed.bank]),
+            fill(self.assumed_equipment, &[family, size, plate_volts, shares, overload]),
+        ];
+        if let Some((power_factor, printed)) = &assumed.power_factor {
+            let text = if *printed { self.power_factor_printed } else { self.power_factor_usual };
+            all.push(fill(text, &[power_factor]));
+        }
+        all.push(self.assumed_settled.to_owned());
+        all
+    }
+
+    /// A lamp's name: which one, whether it is alone, what is printed on it.
+    pub fn lamp(&self, place: Place, alone: bool, rating: &str) -> String {
+        if alone {
+            return fill(self.lamp_only, &[rating]);
+        }
+        fill(self.lamp_at, &[&(place.group + 1).to_string(), &(place.lamp + 1).to_string(), rating])
+    }
+
+    /// A lamp runs over its rated volts: its name, condition, per cent of the rating, life there.
+    pub fn over_rated(&self, lamp: &str, condition: Condition, percent: &str, life: &str) -> String {
+        fill(self.over_rated, &[lamp, percent, self.when(condition), life])
+    }
+
+    /// How often, in a cell.
+    pub fn every(&self, seconds: &str) -> String {
+        fill(self.every, &[seconds])
+    }
+
+    /// How often, and how bright at most, on the loop.
+    pub fn pulse(&self, seconds: &str, word: GlowWord) -> String {
+        fill(self.pulse, &[seconds, self.glow(word)])
+    }
+
+    /// Life between two ratios to the rated, in a sentence or in a table.
+    pub fn life(&self, least: &str, most: &str, short: bool) -> String {
+        let text = match (short, least == most) {
+            (false, false) => self.life,
+            (false, true) => self.life_rated,
+            (true, false) => self.short_life,
+            (true, true) => self.short_life_rated,
+        };
+        fill(text, &[least, most])
+    }
+
+    /// Life longer than a ratio, the same two ways.
+    pub fn life_over(&self, least: &str, short: bool) -> String {
+        fill(if short { self.short_life_over } else { self.life_over }, &[least])
+    }
+
+    /// What is said after a name in bold.
+    pub fn told(&self, what: &str) -> String {
+        fill(self.told, &[what])
+    }
+
     /// Steppers.
-    pub step: fn(Slot, bool) -> String,
+    pub fn step(&self, which: Slot, up: bool) -> String {
+        fill(if up { self.step_more } else { self.step_less }, &[self.slot(which)])
+    }
+
     /// A kind of equipment.
-    pub family: fn(Family) -> FamilyWords,
-    /// Texts of the editors.
-    pub edit: &'static EditWords,
+    pub fn family(&self, kind: Family) -> FamilyWords {
+        let at = kind as usize;
+        FamilyWords {
+            name: pick(&self.family, at),
+            noun: pick(&self.family_noun, at),
+            examples: pick(&self.examples, at),
+        }
+    }
+
     /// Name of a fill.
-    pub fill: fn(Option<Fill>) -> &'static str,
+    pub fn fill(&self, fill: Option<Fill>) -> &'static str {
+        pick(&self.fill, fill.map_or(0, |fill| fill as usize + 1))
+    }
+
     /// Name of an unsuitable lamp.
-    pub unsuitable: fn(Unsuitable) -> &'static str,
+    pub fn unsuitable(&self, kind: Unsuitable) -> &'static str {
+        pick(&self.unsuitable, kind as usize)
+    }
+
     /// Why it is of no use.
-    pub refusal: fn(Unsuitable) -> &'static str,
+    pub fn refusal(&self, kind: Unsuitable) -> &'static str {
+        pick(&self.refusal, kind as usize)
+    }
+
     /// What must be said first about a family.
-    pub warning: fn(Warning) -> &'static str,
+    pub fn warning(&self, warning: Warning) -> &'static str {
+        pick(&self.warning, warning as usize)
+    }
+
     /// Equipment that this must not be used for.
-    pub unsuitable_equipment: fn(family::Unsuitable) -> &'static str,
+    pub fn unsuitable_equipment(&self, kind: family::Unsuitable) -> &'static str {
+        pick(&self.unsuitable_equipment, kind as usize)
+    }
+
     /// Why.
-    pub refuse_equipment: fn(family::Unsuitable) -> &'static str,
+    pub fn refuse_equipment(&self, kind: family::Unsuitable) -> &'static str {
+        pick(&self.refuse_equipment, kind as usize)
+    }
+
     /// A note.
-    pub note: fn(Note) -> &'static str,
+    pub const fn note(&self, note: Note) -> &'static str {
+        match note {
+            Note::BadLink(error) => self.link(&error),
+            Note::BadKept(_) => self.bad_kept,
+            Note::NothingKept => self.nothing_kept,
+            Note::FromLink => self.from_link,
+        }
+    }
+
     /// What is wrong with a link.
-    pub link: fn(&LinkError) -> &'static str,
-    /// Takes the kept set-up instead of the link's.
-    pub use_kept: &'static str,
-    /// Shown where a person may look for more.
-    pub more: &'static str,
+    pub const fn link(&self, error: &LinkError) -> &'static str {
+        let [empty, too_long, newer, damaged, refused] = self.link;
+        match error {
+            LinkError::Empty => empty,
+            LinkError::TooLong => too_long,
+            LinkError::Newer => newer,
+            LinkError::Refused(_) => refused,
+            _ => damaged,
+        }
+    }
 }
 
-/// Texts of the editors.
-#[derive(Debug)]
-pub struct EditWords {
-    /// Usual voltages.
-    pub usual_volts: &'static str,
-    /// Usual frequencies.
-    pub usual_hertz: &'static str,
-    /// Lamps and plate take the supply's volts.
-    pub follow: fn(&str) -> String,
-    /// The lamps as wired.
-    pub as_wired: &'static str,
-    /// Kind of lamp.
-    pub kind: &'static str,
-    /// An ordinary lamp.
-    pub ordinary: &'static str,
-    /// Stock sizes.
-    pub sizes: &'static str,
-    /// One more beside it.
-    pub add_parallel: &'static str,
-    /// One more after it.
-    pub add_series: &'static str,
-    /// Take it out.
-    pub remove: &'static str,
-    /// The bank is full.
-    pub full: &'static str,
-    /// What may be known beyond the rating.
-    pub lamp_more: &'static str,
-    /// Filling.
-    pub filling: &'static str,
-    /// Measured points.
-    pub points: &'static str,
-    /// One point more.
-    pub add_point: &'static str,
-    /// A point goes.
-    pub remove_point: fn(usize) -> String,
-    /// What the equipment is.
-    pub what: &'static str,
-    /// Another kind.
-    pub change: &'static str,
-    /// What this must not be used for.
-    pub not_for: &'static str,
-    /// The rest of the plate.
-    pub plate_more: &'static str,
-    /// What stands where nothing is typed.
-    pub default_hint: fn(&str) -> String,
-    /// Where no power factor is printed.
-    pub power_factor_hint: fn(&str) -> String,
-    /// Why the source resistance matters.
-    pub ohms_hint: &'static str,
-    /// An empty field means "not known".
-    pub optional: &'static str,
-}
+#[cfg(test)]
+mod tests {
+    use super::*;
 
-/// Names of columns and headings.
-#[derive(Debug)]
-pub struct TableWords {
-    /// Heading of the details.
-    pub details: &'static str,
-    /// Condition.
-    pub condition: &'static str,
-    /// Lamp.
-    pub lamp: &'static str,
-    /// Across the lamps.
-    pub bank_volts: &'static str,
-    /// The same for a narrow column.
-    pub short_bank_volts: &'static str,
-    /// Volts.
-    pub volts: &'static str,
-    /// Current.
-    pub amps: &'static str,
-    /// Its 95 % band.
-    pub band: &'static str,
-    /// Across the equipment.
-    pub load_volts: &'static str,
-    /// The same for a narrow column.
-    pub short_load_volts: &'static str,
-    /// Power into the equipment.
-    pub load_watts: &'static str,
-    /// Glow.
-    pub glow: &'static str,
-    /// Filament temperature.
-    pub kelvin: &'static str,
-    /// Lamp life.
-    pub life: &'static str,
-    /// The same for a column.
-    pub short_life: &'static str,
-    /// Heading of the assumptions.
-    pub assumed: &'static str,
-    /// Heading of the curve.
-    pub curve: &'static str,
-    /// What the curve shows.
-    pub curve_means: &'static str,
-    /// Where the curves meet.
-    pub meet: &'static str,
-    /// The bank's own curve.
-    pub bank_curve: &'static str,
-    /// Every lamp in every condition.
-    pub every_lamp: &'static str,
-    /// The chart, for those who hear it.
-    pub chart: &'static str,
+    fn alike(count: usize, watts: &str) -> Alike {
+        Alike { count, watts: watts.to_owned() }
+    }
+
+    #[test]
+    fn banks_are_told_as_wired() {
+        let cases = [
+            (vec![vec![alike(1, "60")]], "60\u{a0}W lamp"),
+            (vec![vec![alike(2, "60")]], "2 × 60\u{a0}W parallel"),
+            (vec![vec![alike(1, "60"), alike(1, "25")]], "60 + 25\u{a0}W parallel"),
+            (vec![vec![alike(1, "60")], vec![alike(1, "60")]], "2 × 60\u{a0}W series"),
+            (vec![vec![alike(2, "60")], vec![alike(2, "60")]], "2 × (2 × 60\u{a0}W parallel) series"),
+            (vec![vec![alike(2, "60")], vec![alike(1, "100")]], "2 × 60\u{a0}W parallel, then 100\u{a0}W"),
+        ];
+        for (groups, text) in cases {
+            assert_eq!(english().bank(&groups), text);
+        }
+    }
 }
