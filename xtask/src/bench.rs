@@ -3,11 +3,12 @@
 use anyhow::{Result, bail};
 
 use crate::checks::browser_tests;
-use crate::{oracle, page, place, run};
+use crate::{oracle, page, place, run, tools};
 
 /// The benches that are none of cargo's: they time the page.
-const OF_THE_PAGE: [(&str, &str); 4] = [
+const OF_THE_PAGE: [(&str, &str); 5] = [
     ("typing", "typing to new result, in Chromium with the CPU throttled 6 times"),
+    ("lighthouse", "Lighthouse's judgement, and a second visit without a network, times 6"),
     ("seen", "a diagnosis, in a worker of Chromium, times 6"),
     ("rungs", "a ladder from twelve lamps, in a worker of Chromium, times 6"),
     ("replay", "the first seconds worked out and replayed, in Chromium with the CPU throttled 6 times"),
@@ -43,6 +44,11 @@ pub(crate) fn bench(arguments: &[String]) -> Result<()> {
         };
         let mut command = run::command("cargo");
         browser_tests(&mut command, folder)?;
+        if name == "lighthouse" {
+            command
+                .env("LAMPLADDER_LIGHTHOUSE", tools::lighthouse()?)
+                .env("CHROME_PATH", tools::Browser::ensure()?.chromium);
+        }
         run::run(command.args(["run", "--quiet", "-p", "lampladder-tests", "--example", name]))?;
     }
     Ok(())

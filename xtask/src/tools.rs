@@ -11,6 +11,8 @@ use crate::{place, run, target};
 const TRUNK: &str = "0.21.14";
 const BINARYEN: &str = "132.0.0";
 const AXE: &str = "4.14.1";
+/// Version 13 wants a newer Node.js than Debian has.
+const LIGHTHOUSE: &str = "12.8.2";
 
 /// What builds the page: the folders to put first on PATH.
 pub(crate) struct Builders {
@@ -151,6 +153,11 @@ fn wasm_opt() -> Result<PathBuf> {
 /// The accessibility checker that the end-to-end tests put into the page.
 pub(crate) fn axe() -> Result<PathBuf> {
     Ok(npm_package("axe-core", AXE)?.join("axe.min.js"))
+}
+
+/// Lighthouse's own program, for `node`.
+pub(crate) fn lighthouse() -> Result<PathBuf> {
+    Ok(npm_package("lighthouse", LIGHTHOUSE)?.join("cli").join("index.js"))
 }
 
 /// A browser and its driver.
