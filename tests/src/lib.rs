@@ -13,6 +13,7 @@ mod driver;
 pub mod folder;
 pub mod golden;
 pub mod lamps;
+pub mod large;
 pub mod numbers;
 pub mod page;
 pub mod random;
