@@ -12,6 +12,7 @@ pub mod devtools;
 mod driver;
 pub mod folder;
 pub mod golden;
+pub mod keyboard;
 pub mod lamps;
 pub mod large;
 pub mod numbers;

@@ -1,7 +1,7 @@
 //! Editors as dialogs: over the page on a phone, beside it on a wide screen.
 
 use web_sys::wasm_bindgen::JsCast;
-use web_sys::{Element, HtmlDialogElement};
+use web_sys::{Document, Element, HtmlDialogElement, HtmlElement};
 
 use super::window::Listener;
 
@@ -13,19 +13,26 @@ const WIDE: f64 = 860.0;
 pub struct Opened {
     dialog: HtmlDialogElement,
     listener: Option<Listener>,
+    /// What had the keyboard before.
+    before: Option<HtmlElement>,
+}
+
+fn document() -> Option<Document> {
+    web_sys::window()?.document()
 }
 
 impl Opened {
     /// Opens it.
     pub fn new(element: &Element, closed: impl Fn() + 'static) -> Option<Self> {
         let dialog: HtmlDialogElement = element.clone().dyn_into().ok()?;
+        let before = document()?.active_element().and_then(|element| element.dyn_into().ok());
         if super::window::width() < WIDE {
             dialog.show_modal().ok()?;
         } else {
             dialog.show();
         }
         let listener = Listener::new(dialog.clone().into(), "close", move |_| closed());
-        Some(Self { dialog, listener })
+        Some(Self { dialog, listener, before })
     }
 }
 
@@ -35,6 +42,13 @@ impl Drop for Opened {
         drop(self.listener.take());
         if self.dialog.open() {
             self.dialog.close();
+        }
+        // The dialog has left the document by now, and the keyboard with it; unless the person has gone elsewhere.
+        let nowhere = document()
+            .and_then(|document| document.active_element())
+            .is_none_or(|now| now.tag_name() == "BODY");
+        if let Some(before) = self.before.take().filter(|_| nowhere) {
+            let _ = before.focus();
         }
     }
 }
