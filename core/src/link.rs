@@ -17,6 +17,8 @@ use alloc::string::String;
 use alloc::vec::Vec;
 use core::fmt;
 
+use serde::{Deserialize, Serialize};
+
 use crate::error::InputError;
 use crate::hand_on::HandedOn;
 use crate::setup::Setup;
@@ -38,7 +40,7 @@ pub enum Spelling {
 }
 
 /// Why a text is no set-up.
-#[derive(Debug, Clone, Copy, PartialEq)]
+#[derive(Debug, Clone, Copy, PartialEq, Serialize, Deserialize)]
 #[non_exhaustive]
 pub enum LinkError {
     /// Nothing there.

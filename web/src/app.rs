@@ -12,6 +12,7 @@ use crate::climb::{Move, equipment};
 use crate::drawer::Shelf;
 use crate::keeper::use_keeper;
 use crate::meter;
+use crate::opening::use_opening;
 use crate::panels::advice::advice_panel;
 use crate::panels::circuit::circuit;
 use crate::panels::comparison::comparison;
@@ -47,11 +48,12 @@ pub fn App(props: &AppProps) -> Html {
         let dispatcher = bench.dispatcher();
         // Typing changes the set-up many times a second: the address follows once a frame.
         use_effect_with(
-            (bench.setup.clone(), bench.edited, bench.notes.clone()),
-            move |(setup, edited, notes)| {
+            (bench.setup.clone(), bench.edited, bench.notes.clone(), bench.link.clone()),
+            move |(setup, edited, notes, link)| {
                 let (setup, edited) = (setup.clone(), *edited);
-                // A bad link stays in the address until something is changed.
-                let held = !edited && notes.iter().any(|note| matches!(note, Note::BadLink(_)));
+                // A bad link stays in the address until something is changed, and so does one that holds more.
+                let bad = notes.iter().any(|note| matches!(note, Note::BadLink(_)));
+                let held = !edited && (bad || link.is_some());
                 *kept_frame.borrow_mut() = NextFrame::new(move || {
                     let text = link::encode(&setup);
                     if !held && fragment::read().as_deref() != Some(text.as_str()) {
@@ -68,11 +70,9 @@ pub fn App(props: &AppProps) -> Html {
         let dispatcher = bench.dispatcher();
         use_effect_with((), move |()| {
             let listener = Listener::on_window("hashchange", move |_| {
-                let Some(text) = fragment::read() else { return };
-                dispatcher.dispatch(match link::decode(&text) {
-                    Ok(setup) => Msg::Arrive(setup),
-                    Err(error) => Msg::Tell(Note::BadLink(error)),
-                });
+                if let Some(text) = fragment::read() {
+                    dispatcher.dispatch(Msg::Link(text));
+                }
             });
             move || drop(listener)
         });
@@ -119,6 +119,7 @@ pub fn App(props: &AppProps) -> Html {
         });
     }
     use_keeper(&bench);
+    use_opening(&bench);
     let before = use_mut_ref(|| None::<Stage>);
     use_effect_with(bench.stage, move |stage| {
         cautions::show(*stage != Stage::Bench);

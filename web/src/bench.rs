@@ -17,6 +17,8 @@ use crate::answers::Answers;
 use crate::climb::{Climb, Move};
 use crate::draft::{Draft, Fault, Place, Slot};
 use crate::drawer::{Drawer, Shelf};
+use crate::opening::Mine;
+use crate::reckoner::links::Opened;
 use crate::reckoner::pulses;
 use crate::replay::Wish;
 use crate::seen::{Deed, Seen};
@@ -108,6 +110,12 @@ pub enum Note {
     NothingKept,
     /// A link was opened while another set-up is kept on this phone.
     FromLink,
+    /// Lamps and position on the ladder are those of a link.
+    LadderFromLink,
+    /// So many readings of a link are new here, and so many were here already.
+    ReadingsFromLink(usize, usize),
+    /// What a link holds beside its set-up could not be read.
+    LinkHalfRead,
 }
 
 /// The state.
@@ -155,6 +163,8 @@ pub struct Bench {
     pub notes: Vec<Note>,
     /// The texts, in the language that is read.
     pub words: &'static Words,
+    /// The link that was opened, where it may hold more than a set-up, until something is changed.
+    pub link: Option<Rc<str>>,
 }
 
 impl PartialEq for Bench {
@@ -222,8 +232,12 @@ pub enum Msg {
     Accept,
     /// Show the cautions.
     Cautions,
-    /// A set-up came from outside: the address changed, or the kept one is wanted back.
-    Arrive(Setup),
+    /// The address changed to this.
+    Link(String),
+    /// This is what the link holds beside its set-up.
+    Opened(Box<Opened>),
+    /// What is kept on this phone is wanted back.
+    Reclaim(Box<Mine>),
     /// Tell this.
     Tell(Note),
     /// It has been read.
@@ -259,6 +273,7 @@ impl Bench {
             stage: Stage::Unread,
             notes: Vec::new(),
             words,
+            link: None,
         })
     }
 

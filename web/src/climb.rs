@@ -53,7 +53,7 @@ pub struct Climb {
     pub restarted: bool,
     /// Whether the person has changed anything since it was opened.
     pub edited: bool,
-    texts: [String; Entry::ALL.len()],
+    pub(crate) texts: [String; Entry::ALL.len()],
     /// What the reckoner has told.
     pub known: Known,
 }
@@ -132,6 +132,11 @@ impl Climb {
     pub(crate) fn type_in(&mut self, entry: Entry, text: String) {
         self.texts[entry as usize] = text;
         self.edited = true;
+    }
+
+    /// Writes into a field what nobody typed here.
+    pub(crate) fn set(&mut self, entry: Entry, text: &str) {
+        text.clone_into(&mut self.texts[entry as usize]);
     }
 
     /// The number in a field, if one is typed.
@@ -312,7 +317,9 @@ impl Bench {
                 if let (Stand::Rung(rung), Ok(plan)) = (climb.at, &plan)
                     && rung >= plan.rungs.len()
                 {
-                    climb.stand(Stand::Rung(0));
+                    // Nobody has changed anything: what is kept stays as it is.
+                    climb.at = Stand::Rung(0);
+                    climb.open = Some(climb.at);
                 }
                 climb.known.plan = Some(Rc::new(plan));
                 climb.known.plug = plug;

@@ -73,6 +73,7 @@ pub mod format;
 mod keeper;
 pub mod log;
 pub mod meter;
+pub mod opening;
 pub mod panels;
 pub mod parts;
 mod reading;

@@ -104,6 +104,30 @@ pub struct Log {
     pub stored: Option<Records>,
     /// Why it is not stored.
     pub trouble: Option<Trouble>,
+    /// Readings from elsewhere, which wait until it is known what the store holds.
+    pub coming: Vec<Record>,
+    /// Whether they come from a link.
+    pub from_link: bool,
+    /// What became of the last that came.
+    pub adopted: Option<Adopted>,
+}
+
+/// What became of readings from elsewhere.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub struct Adopted {
+    /// How many are new here.
+    pub added: usize,
+    /// How many were here already.
+    pub known: usize,
+}
+
+impl Record {
+    /// Whether it is the very same reading, whatever was written beside it and whatever it came to.
+    pub fn is_same_reading(&self, other: &Self) -> bool {
+        (&self.setup, self.rung, self.meter, &self.numbers)
+            == (&other.setup, other.rung, other.meter, &other.numbers)
+            && (self.look, self.behaviour) == (other.look, other.behaviour)
+    }
 }
 
 impl Log {
@@ -121,6 +145,46 @@ impl Log {
         records.insert(at, record);
     }
 
+    /// Takes in readings from elsewhere, as soon as it is known what there is. One that is here already is left as it is,
+    /// and a different one of the same number moves on to the next: nothing that was here is lost.
+    pub fn adopt(&mut self, records: Vec<Record>, from_link: bool) {
+        self.wanted = true;
+        self.from_link = from_link;
+        self.adopted = None;
+        self.coming.extend(records);
+        self.settle();
+    }
+
+    /// Goes on with what waits, if it is known what there is.
+    fn settle(&mut self) {
+        if self.stored.is_none() && self.trouble.is_none() {
+            return;
+        }
+        for mut record in core::mem::take(&mut self.coming) {
+            let adopted = self.adopted.get_or_insert(Adopted { added: 0, known: 0 });
+            loop {
+                match self.records.iter().find(|other| other.id == record.id) {
+                    Some(other) if other.is_same_reading(&record) => {
+                        adopted.known += 1;
+                        break;
+                    }
+                    Some(_) => record.id += 1.0,
+                    None => {
+                        adopted.added += 1;
+                        self.insert(Rc::new(record));
+                        break;
+                    }
+                }
+            }
+        }
+    }
+
+    /// The store does not take the last change.
+    pub fn fail(&mut self, trouble: Trouble) {
+        self.trouble = Some(trouble);
+        self.settle();
+    }
+
     /// Takes in what is stored; what has been kept here meanwhile stays.
     pub fn learn(&mut self, stored: Vec<Record>, foreign: usize) {
         self.foreign = foreign;
@@ -132,6 +196,7 @@ impl Log {
             }
         }
         self.stored = Some(Rc::new(stored));
+        self.settle();
     }
 
     /// Writes beside a record.
@@ -155,10 +220,10 @@ pub fn changes(from: &Records, to: &Records) -> Vec<Change> {
 }
 
 #[cfg(test)]
-mod tests {
+pub(crate) mod tests {
     use super::*;
 
-    fn record(id: f64) -> Record {
+    pub(crate) fn record(id: f64) -> Record {
         Record {
             version: VERSION,
             id,
@@ -196,6 +261,27 @@ mod tests {
         assert!(changes(&stored, &log.records).is_empty());
         log.delete(3.0);
         assert_eq!(changes(&stored, &log.records), [Change::Delete(3.0)]);
+    }
+
+    #[test]
+    fn readings_from_elsewhere_wait_for_the_store_and_none_is_lost_or_doubled() {
+        let mut log = Log::default();
+        let other = |id: f64, volts: f64| Record { numbers: vec![(Kind::BankVolts, volts)], ..record(id) };
+        log.adopt(vec![record(5.0), other(7.0, 99.0), other(9.0, 1.0)], false);
+        assert!(log.wanted && log.records.is_empty() && log.adopted.is_none());
+        let noted = Record { note: String::from("mine"), ..record(5.0) };
+        log.learn(vec![noted.clone(), record(7.0)], 0);
+        assert_eq!(log.adopted, Some(Adopted { added: 2, known: 1 }));
+        assert_eq!(ids(&log), [9.0, 8.0, 7.0, 5.0]);
+        assert_eq!(*log.records[3], noted);
+        // The same once more, where its number has moved on.
+        log.adopt(vec![other(7.0, 99.0)], false);
+        assert_eq!((log.adopted, log.records.len()), (Some(Adopted { added: 0, known: 1 }), 4));
+        // A phone that stores nothing shows them all the same.
+        let mut log = Log::default();
+        log.adopt(vec![record(5.0)], true);
+        log.fail(Trouble::Forbidden);
+        assert_eq!(ids(&log), [5.0]);
     }
 
     #[test]

@@ -21,8 +21,20 @@ impl Bench {
     #[must_use]
     pub fn after(self, msg: Msg) -> Self {
         let (setup, stock) = (Rc::clone(&self.setup), Rc::clone(&self.drawer.stock));
-        let mut next = self.next(msg);
+        let opens = matches!(msg, Msg::Link(_));
+        let mut next = match msg {
+            // Lamps, equipment and the position that belongs to them come together.
+            Msg::Opened(opened) => return self.take_over(*opened),
+            Msg::Reclaim(mine) => return self.reclaim(*mine),
+            msg => self.next(msg),
+        };
         next.follow(&setup, &stock);
+        if opens {
+            // A climb that begins again for the equipment of a link takes no place on the phone.
+            next.climb.edited = false;
+            next.drawer.edited = false;
+        }
+        next.make_own();
         next
     }
 
@@ -42,6 +54,7 @@ impl Bench {
                 }
                 self.seen.act(deed, &self.setup, numerals);
                 self.seen.reread(&self.setup);
+                self.tell_of_readings();
             }
             Msg::Type(slot, text) if self.seen.text(slot).is_some() => {
                 self.seen.set(slot, text);
@@ -79,12 +92,8 @@ impl Bench {
                 }
             }
             Msg::Refuse(kind) => self.refused = Some(kind),
-            Msg::Arrive(setup) => return self.arrive(setup),
-            Msg::Tell(note) => {
-                if !self.notes.contains(&note) {
-                    self.notes.push(note);
-                }
-            }
+            Msg::Link(text) => return self.open_link(&text),
+            Msg::Tell(note) => self.tell(note),
             Msg::Dismiss(note) => self.notes.retain(|other| *other != note),
             edit => {
                 self.edit(edit);
@@ -105,10 +114,19 @@ impl Bench {
         self.choosing = false;
     }
 
-    fn arrive(mut self, setup: Setup) -> Self {
+    pub(crate) fn tell(&mut self, note: Note) {
+        if !self.notes.contains(&note) {
+            self.notes.push(note);
+        }
+    }
+
+    pub(crate) fn arrive(mut self, setup: Setup) -> Self {
         let answers = match Answers::of(&setup, self.condition) {
             Ok(answers) => answers,
-            Err(error) => return self.next(Msg::Tell(Note::BadLink(LinkError::Refused(error)))),
+            Err(error) => {
+                self.tell(Note::BadLink(LinkError::Refused(error)));
+                return self;
+            }
         };
         let spare = core::mem::take(&mut self.draft.spare);
         self.draft = Draft { spare, ..Draft::of(&setup, self.words().numerals) };

@@ -92,6 +92,8 @@ pub enum Deed {
     Stored(Records),
     /// It does not take the last change.
     Trouble(Trouble),
+    /// Readings come from elsewhere: from a link, or from a file.
+    Adopt(Vec<Record>, bool),
 }
 
 impl Seen {
@@ -169,7 +171,12 @@ impl Seen {
                 self.log.stored = Some(records);
                 self.log.trouble = None;
             }
-            Deed::Trouble(trouble) => self.log.trouble = Some(trouble),
+            Deed::Trouble(trouble) => self.log.fail(trouble),
+            Deed::Adopt(records, from_link) => {
+                // Going back to before they came would delete them.
+                self.before.retain(|before| matches!(before, Before::Sheet(_)));
+                self.log.adopt(records, from_link);
+            }
         }
     }
 

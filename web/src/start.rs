@@ -8,12 +8,17 @@ use crate::browser::window::clock;
 use crate::browser::{fragment, storage, theme};
 use crate::climb::{Climb, equipment};
 use crate::meter;
+use crate::opening::{Mine, may_hold_more};
 use crate::seen::Seen;
 use crate::words::Words;
 
-/// The set-up that was kept on this phone, if there is one that can be read.
-pub fn kept() -> Option<Setup> {
-    link::decode(&storage::read(storage::SETUP)?).ok()
+/// What is kept on this phone, as far as it can be read.
+pub fn mine() -> Mine {
+    Mine {
+        setup: storage::read(storage::SETUP).and_then(|text| link::decode(&text).ok()),
+        stock: storage::read(storage::STOCK).and_then(|text| link::decode_stock(&text).ok()),
+        climb: storage::read(storage::CLIMB),
+    }
 }
 
 /// The first state.
@@ -58,6 +63,10 @@ pub fn opened(words: &'static Words, address: Option<&str>, kept: Option<&str>) 
         Some(bench) => bench,
         None => Bench::with(Setup::example().ok()?, words).ok()?,
     };
+    // Until something is changed the address stays: what is behind the set-up is nowhere else.
+    let is_open =
+        |text: &&str| may_hold_more(text) && !notes.iter().any(|note| matches!(note, Note::BadLink(_)));
+    bench.link = address.filter(is_open).map(Into::into);
     bench.notes = notes;
     Some(bench)
 }

@@ -234,7 +234,7 @@ fn a_family_without_the_condition_on_the_loop_shows_healthy() {
 fn what_arrives_replaces_what_was_typed_and_clears_old_notes() {
     let edited =
         after([typed(Slot::SupplyVolts, "x"), Msg::Tell(Note::FromLink), Msg::Tell(Note::NothingKept)]);
-    let arrived = edited.after(Msg::Arrive(Setup::example().expect("in range")));
+    let arrived = edited.after(Msg::Link(link::encode(&Setup::example().expect("in range"))));
     assert_eq!((arrived.is_stale(), arrived.edited), (false, false));
     assert_eq!(arrived.notes, [Note::NothingKept]);
 }

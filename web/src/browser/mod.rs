@@ -10,6 +10,7 @@ pub mod fragment;
 pub mod frames;
 pub mod input;
 pub mod log;
+pub mod readings;
 pub mod reckoner;
 pub mod storage;
 pub mod theme;

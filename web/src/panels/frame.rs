@@ -3,9 +3,11 @@
 use super::send;
 use crate::bench::{BenchHandle, Msg, Note, Tab, Theme};
 use crate::browser::theme;
+use crate::opening::Mine;
 use crate::parts::el::{El, button, el};
 use crate::parts::picture;
 use crate::start;
+use crate::words::fill;
 
 /// Id of the button that brings the cautions back.
 pub const CAUTIONS_BUTTON: &str = "open-cautions";
@@ -59,18 +61,21 @@ pub fn tabs(bench: &BenchHandle) -> El {
 pub fn notes(bench: &BenchHandle) -> El {
     let words = bench.words();
     let note = |note: &Note| {
-        let kept = if *note == Note::FromLink { start::kept() } else { None };
-        let use_kept =
-            kept.map(|kept| button("use", "use-kept", send(bench, Msg::Arrive(kept))).text(words.use_kept));
+        let own = matches!(note, Note::FromLink | Note::LadderFromLink).then(start::mine);
+        let own = own.filter(|own| *own != Mine::default());
+        let use_kept = own.map(|own| {
+            button("use", "use-kept", send(bench, Msg::Reclaim(Box::new(own)))).text(words.use_kept)
+        });
+        let text = match note {
+            Note::ReadingsFromLink(added, known) => {
+                fill(words.note(*note), &[&added.to_string(), &known.to_string()])
+            }
+            _ => words.note(*note).to_owned(),
+        };
         let close = button("close", "dismiss", send(bench, Msg::Dismiss(*note)))
             .set("aria-label", words.dismiss)
             .text("×");
-        el("p")
-            .class("note")
-            .test("note")
-            .with(el("span").text(words.note(*note)))
-            .maybe(use_kept)
-            .with(close)
+        el("p").class("note").test("note").with(el("span").text(text)).maybe(use_kept).with(close)
     };
     el("div").class("notes").set("role", "status").each(bench.notes.iter().map(note))
 }

@@ -8,6 +8,7 @@
 
 pub mod diagnosis;
 pub mod ladder;
+pub mod links;
 pub mod pulses;
 pub mod runs;
 pub mod unknown;
@@ -31,6 +32,8 @@ pub enum Ask {
     Ladder(ladder::Wanted),
     /// A lamp without a legible rating.
     Unknown(unknown::Measured),
+    /// Handing on.
+    Links(links::Wanted),
 }
 
 /// What is answered: once, or piece by piece.
@@ -48,6 +51,8 @@ pub enum Answer {
     Ladder(Box<ladder::News>),
     /// The ratings that fit.
     Unknown(unknown::Fits),
+    /// What is handed on, or was.
+    Links(Box<links::News>),
     /// The question cannot be read: page and reckoner are of different versions.
     Unreadable,
 }
@@ -67,6 +72,12 @@ pub enum Subject {
     Ladder,
     /// A lamp without a legible rating.
     Unknown,
+    /// The link of the bench.
+    Link,
+    /// What a link holds.
+    Opening,
+    /// Readings in files.
+    Files,
 }
 
 impl Ask {
@@ -79,6 +90,9 @@ impl Ask {
             Self::Log(_) => Subject::Log,
             Self::Ladder(_) => Subject::Ladder,
             Self::Unknown(_) => Subject::Unknown,
+            Self::Links(links::Wanted::Link(_)) => Subject::Link,
+            Self::Links(links::Wanted::Open(..)) => Subject::Opening,
+            Self::Links(_) => Subject::Files,
         }
     }
 }
@@ -130,6 +144,11 @@ impl Desk {
     /// Takes a question; an answer where there is one at once.
     pub fn put(&mut self, number: Number, ask: Ask) -> Option<Answer> {
         let taken = match ask {
+            Ask::Links(wanted) => {
+                return Some(
+                    links::answer(&wanted).map_or(Answer::Unreadable, |news| Answer::Links(Box::new(news))),
+                );
+            }
             Ask::Replay(wanted) => {
                 let earlier = self.replay.take().map(|seat| seat.task);
                 runs::Runs::new(wanted, earlier)

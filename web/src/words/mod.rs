@@ -378,6 +378,9 @@ impl Words {
             Note::BadKept(_) => self.bad_kept,
             Note::NothingKept => self.nothing_kept,
             Note::FromLink => self.from_link,
+            Note::LadderFromLink => self.ladder_from_link,
+            Note::ReadingsFromLink(..) => self.readings_from_link,
+            Note::LinkHalfRead => self.link_half_read,
         }
     }
 

@@ -87,7 +87,7 @@ catalogue! {
         fill [usual, vacuum, gas, halogen],
         unsuitable [led, compact_fluorescent, carbon_filament],
         refusal [led, compact_fluorescent, carbon_filament],
-        bad_kept, nothing_kept, from_link,
+        bad_kept, nothing_kept, from_link, ladder_from_link, readings_from_link, link_half_read,
         link [empty, too_long, newer, damaged, refused],
         reckoner_lost, use_kept, more,
     }

@@ -8,8 +8,9 @@ use wasm_bindgen::closure::Closure;
 use wasm_bindgen_futures::spawn_local;
 use web_sys::{DedicatedWorkerGlobalScope, MessageEvent};
 
-use crate::browser::log;
+use crate::browser::{log, readings};
 use crate::log::Order;
+use crate::reckoner::links::Wanted;
 use crate::reckoner::{Answer, Ask, Desk, Number};
 
 /// Milliseconds of work between two looks at the messages: a newer question does not wait longer.
@@ -45,6 +46,10 @@ pub fn start() {
                     spawn_local(keep(number, order));
                     None
                 }
+                Some(Ask::Links(Wanted::File(all))) => Some(
+                    readings::written(&all).map_or(Answer::Unreadable, |news| Answer::Links(Box::new(news))),
+                ),
+                Some(Ask::Links(Wanted::Read(text))) => Some(Answer::Links(Box::new(readings::read(&text)))),
                 Some(ask) => place.desk.put(number, ask),
             };
             place.wake();
