@@ -1,5 +1,7 @@
 //! The QR code of a link: bytes for the address, digits for what stands behind its `#`.
 
+use std::fmt::Write;
+
 use qrcodegen::{QrCode, QrCodeEcc, QrSegment, Version};
 use serde::{Deserialize, Serialize};
 
@@ -40,7 +42,7 @@ fn path(code: &QrCode) -> String {
         while x < code.size() {
             let dark = (x..code.size()).take_while(|&x| code.get_module(x, y)).count();
             if dark > 0 {
-                path += &format!("M{} {}h{dark}v1h-{dark}z", x + QUIET, y + QUIET);
+                let _ = write!(path, "M{} {}h{dark}v1h-{dark}z", x + QUIET, y + QUIET);
             }
             x += i32::try_from(dark).unwrap_or(0) + 1;
         }
