@@ -7,7 +7,7 @@ use yew::{
 
 use crate::bench::{Bench, BenchHandle, Msg, Note, Stage, Tab};
 use crate::browser::window::{EverySecond, Listener, NextFrame, clock};
-use crate::browser::{cautions, fragment, input, reckoner, storage, theme};
+use crate::browser::{cautions, fragment, input, language, reckoner, storage, theme};
 use crate::climb::{Move, equipment};
 use crate::drawer::Shelf;
 use crate::keeper::use_keeper;
@@ -103,6 +103,7 @@ pub fn App(props: &AppProps) -> Html {
         });
     }
     use_ladder(&bench);
+    use_language(&bench);
     use_effect_with(bench.theme, |light| theme::apply(*light));
     {
         let dispatcher = bench.dispatcher();
@@ -127,7 +128,7 @@ pub fn App(props: &AppProps) -> Html {
             // The page has just been opened: the keyboard is where the browser has put it.
             _ if before.replace(Some(*stage)).is_none() => {}
             Stage::Unread => {}
-            Stage::Reread => input::focus(cautions::TITLE),
+            Stage::Reread => input::focus(&cautions::title()),
             Stage::Bench => {
                 storage::keep_for_visit(storage::ACCEPTED);
                 input::focus(CAUTIONS_BUTTON);
@@ -135,6 +136,27 @@ pub fn App(props: &AppProps) -> Html {
         }
     });
     several([accept(&bench), page(&bench)])
+}
+
+/// Fetches the texts of another language as soon as it is chosen.
+#[hook]
+fn use_language(bench: &BenchHandle) {
+    use_effect_with(bench.words, |words| language::name_window(words.title));
+    let (dispatcher, words) = (bench.dispatcher(), bench.words);
+    use_effect_with((), move |()| {
+        let follow = move || {
+            let dispatcher = dispatcher.clone();
+            language::speak(move |words| {
+                dispatcher.dispatch(words.map_or(Msg::Tell(Note::Wordless), Msg::Speak));
+            });
+        };
+        // It may have been chosen while the program was starting.
+        if language::is_other_than(words.tag) {
+            follow();
+        }
+        let listener = language::listen(follow);
+        move || drop(listener)
+    });
 }
 
 /// Keeps lamps and position on the phone, asks the reckoner for the rungs, and lets the time go on.
@@ -217,6 +239,8 @@ fn page(bench: &BenchHandle) -> Html {
         .with(el("div").class("panel").with(panel));
     el("div")
         .class(class)
+        // The document's language is the one that is asked for, which may be on its way.
+        .set("lang", bench.words.tag)
         .with(header(bench))
         .with(el("main").class("bench").with(answer_side).with(panel_side))
         .with(tabs(bench))

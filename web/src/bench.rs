@@ -116,6 +116,8 @@ pub enum Note {
     ReadingsFromLink(usize, usize),
     /// What a link holds beside its set-up could not be read.
     LinkHalfRead,
+    /// The texts of the chosen language cannot be fetched.
+    Wordless,
 }
 
 /// The state.
@@ -228,6 +230,8 @@ pub enum Msg {
     Climb(Move),
     /// Change the light.
     Light(Theme),
+    /// Go on in other words.
+    Speak(&'static Words),
     /// The cautions are accepted, or closed again.
     Accept,
     /// Show the cautions.

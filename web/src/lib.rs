@@ -9,7 +9,7 @@
 //! | name | what |
 //! |---|---|
 //! | `cautions`, `accept` | the cautions (in static/index.html) and the button under them |
-//! | `open-cautions`, `reminder`, `theme` | header; `theme` has `data-value` `auto`, `paper` or `dusk` |
+//! | `open-cautions`, `reminder`, `theme`, `language` | header; `theme` has `data-value` `auto`, `paper` or `dusk` |
 //! | `edit-supply`, `edit-bank`, `edit-equipment` | the parts of the loop |
 //! | `result-amps` | the current; `data-value`, `data-low`, `data-high` hold it in full |
 //! | `stale` | there while the result is not that of what is typed |
@@ -88,12 +88,21 @@ pub mod theatre;
 pub mod words;
 
 use app::{App, AppProps};
-use browser::{cautions, theme, worker};
+use browser::{cautions, language, theme, worker};
+use words::Words;
 
-/// Starts the page. Without the elements of static/index.html there is nothing to start.
+/// Starts the page, as soon as its texts are there; without them the cautions stand alone and say so.
 pub fn start() {
+    language::speak(|words| match words {
+        Some(words) => begin(words),
+        None => cautions::lost(),
+    });
+}
+
+/// Without the elements of static/index.html there is nothing to start.
+fn begin(words: &'static Words) {
     let Some(root) = cautions::element(cautions::APP) else { return };
-    let Some(bench) = start::bench(words::english()) else { return };
+    let Some(bench) = start::bench(words) else { return };
     theme::apply(bench.theme);
     cautions::started();
     yew::Renderer::<App>::with_root_and_props(root, AppProps { bench }).render();

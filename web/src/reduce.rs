@@ -13,8 +13,10 @@ use crate::bench::{Bench, MOST_POINTS, Msg, Note, Part, Stage};
 use crate::climb::Move;
 use crate::draft::{Draft, Fault, LampDraft, Place, Slot};
 use crate::drawer::Form;
+use crate::meter::written;
 use crate::seen::Deed;
 use crate::step;
+use crate::words::Words;
 
 impl Bench {
     /// The state after a message.
@@ -74,6 +76,7 @@ impl Bench {
             }
             Msg::Climb(step) => self.climb(step),
             Msg::Light(theme) => self.theme = theme,
+            Msg::Speak(words) => self.speak(words),
             Msg::Accept => self.stage = Stage::Bench,
             Msg::Cautions => self.stage = Stage::Reread,
             Msg::Choose(place) => {
@@ -118,6 +121,21 @@ impl Bench {
         if !self.notes.contains(&note) {
             self.notes.push(note);
         }
+    }
+
+    /// Goes on in other words. What a person has typed stays letter for letter, with whatever decimal mark; what nobody
+    /// has typed is written anew.
+    fn speak(&mut self, words: &'static Words) {
+        self.notes.retain(|note| *note != Note::Wordless);
+        let [old, new] = [self.words, words]
+            .map(|words| Draft { spare: self.draft.spare.clone(), ..Draft::of(&self.setup, words.numerals) });
+        if self.draft == old {
+            self.draft = new;
+        }
+        if self.seen.meter == written(&self.seen.spec, self.words.numerals) {
+            self.seen.meter = written(&self.seen.spec, words.numerals);
+        }
+        self.words = words;
     }
 
     pub(crate) fn arrive(mut self, setup: Setup) -> Self {

@@ -43,7 +43,7 @@ async fn open(bench: Bench) -> Page {
         place
     });
     place.set_inner_html(
-        "<main id=cautions><h1 id=cautions-title tabindex=-1>c</h1><div id=cautions-foot></div></main><div id=app></div><style>canvas { width: 300px; height: 290px } :root { --ink: #101010; --dim: #404040; --line: #808080; --brass: #8a5a00; --panel: #ffffff }</style>",
+        "<main id=cautions><h1 id=cautions-title- tabindex=-1>c</h1><div id=cautions-foot></div></main><div id=app></div><style>canvas { width: 300px; height: 290px } :root { --ink: #101010; --dim: #404040; --line: #808080; --brass: #8a5a00; --panel: #ffffff }</style>",
     );
     let root = document().get_element_by_id("app").expect("just made");
     let app = yew::Renderer::<App>::with_root_and_props(root, AppProps { bench }).render();

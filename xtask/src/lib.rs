@@ -5,3 +5,4 @@ pub mod files;
 pub mod pack;
 pub mod site;
 pub mod stamp;
+pub mod words;

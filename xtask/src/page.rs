@@ -5,7 +5,7 @@ use std::path::{Path, PathBuf};
 
 use anyhow::{Context, Result, bail};
 
-use xtask::{files, stamp};
+use xtask::{files, stamp, words};
 
 use crate::{place, run, tools};
 
@@ -92,6 +92,7 @@ pub(crate) fn stamp(arguments: &[String]) -> Result<()> {
         fs::read_to_string(place::root().join("static/sw.js")).context("static/sw.js cannot be read")?;
     // A folder named by hand is a release that was built elsewhere.
     let light = place::set("TRUNK_PROFILE").is_none_or(|profile| profile == "release");
+    words::publish(Path::new(&folder), &place::root().join("web/words"))?;
     let count = stamp::finish(Path::new(&folder), &template, light)?;
     println!("  stamped the service worker with {count} files");
     Ok(())

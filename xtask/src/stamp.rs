@@ -226,7 +226,7 @@ fn worker(template: &str, contents: &[(String, Vec<u8>)]) -> Result<String> {
 }
 
 /// FNV-1a, 64 bits: tells versions apart; it is no protection against anybody.
-fn hash(bytes: &[u8]) -> u64 {
+pub(crate) fn hash(bytes: &[u8]) -> u64 {
     bytes
         .iter()
         .fold(0xcbf2_9ce4_8422_2325, |state, byte| (state ^ u64::from(*byte)).wrapping_mul(0x100_0000_01b3))

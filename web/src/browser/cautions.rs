@@ -1,6 +1,7 @@
 //! The cautions of static/index.html: they stand in front until accepted, and come back on request.
 //!
-//! The document's `data-stage` says which of the two is shown; the style sheets hide the other.
+//! The document's `data-stage` says which of the two is shown; the style sheets hide the other, and every language but
+//! the document's.
 
 use web_sys::{Document, Element};
 
@@ -8,8 +9,6 @@ use web_sys::{Document, Element};
 pub const APP: &str = "app";
 /// The element for the button under the cautions.
 pub const FOOT: &str = "cautions-foot";
-/// The heading of the cautions.
-pub const TITLE: &str = "cautions-title";
 /// The line that says that the program is starting.
 const STARTING: &str = "starting";
 
@@ -20,6 +19,18 @@ fn document() -> Option<Document> {
 /// An element of static/index.html.
 pub fn element(id: &str) -> Option<Element> {
     document()?.get_element_by_id(id)
+}
+
+/// Id of the heading of the cautions, in the language that is read.
+pub fn title() -> String {
+    String::from("cautions-title-") + &super::language::tag()
+}
+
+/// Says that the program cannot start.
+pub fn lost() {
+    if let Some(line) = element(STARTING) {
+        line.set_class_name("starting is-lost");
+    }
 }
 
 /// Takes away the line that says that the program is starting.

@@ -8,14 +8,13 @@ pub fn since_1970() -> f64 {
     Date::now()
 }
 
-/// A time as this phone's owner writes it.
-pub fn local(milliseconds: f64) -> String {
-    let locale = web_sys::window().and_then(|window| window.navigator().language());
+/// A time as it is written in a language.
+pub fn local(milliseconds: f64, tag: &str) -> String {
     let options = Object::new();
     for name in ["dateStyle", "timeStyle"] {
         // Without them it is only longer.
         let _ = Reflect::set(&options, &name.into(), &"short".into());
     }
     let date = Date::new(&JsValue::from_f64(milliseconds));
-    date.to_locale_string(locale.as_deref().unwrap_or("en"), &options).into()
+    date.to_locale_string(tag, &options).into()
 }

@@ -9,6 +9,7 @@ pub mod dialog;
 pub mod fragment;
 pub mod frames;
 pub mod input;
+pub mod language;
 pub mod log;
 pub mod readings;
 pub mod reckoner;

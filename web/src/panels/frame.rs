@@ -4,10 +4,10 @@ use super::send;
 use crate::bench::{BenchHandle, Msg, Note, Tab, Theme};
 use crate::browser::theme;
 use crate::opening::Mine;
-use crate::parts::el::{El, button, el};
+use crate::parts::el::{El, button, el, truth};
 use crate::parts::picture;
 use crate::start;
-use crate::words::fill;
+use crate::words::{LANGUAGES, fill};
 
 /// Id of the button that brings the cautions back.
 pub const CAUTIONS_BUTTON: &str = "open-cautions";
@@ -32,6 +32,7 @@ pub fn header(bench: &BenchHandle) -> El {
                 .set("title", light)
                 .with(picture::light(bench.theme)),
         )
+        .with(language(bench))
         .with(
             button("warn", "open-cautions", send(bench, Msg::Cautions))
                 .set("id", CAUTIONS_BUTTON)
@@ -39,6 +40,24 @@ pub fn header(bench: &BenchHandle) -> El {
                 .text(words.cautions),
         )
         .with(el("p").class("reminder").test("reminder").text(words.reminder))
+}
+
+/// The languages, each by its own name. What a choice does is static/language.js's business, which hears of it.
+fn language(bench: &BenchHandle) -> El {
+    let words = bench.words();
+    let name = String::from(words.choose_language) + " " + words.tag;
+    let option = |(tag, name): (&'static str, &'static str)| {
+        let option = el("option").set("value", tag).set("lang", tag).text(name);
+        if tag == words.tag { option.set("selected", "") } else { option }
+    };
+    let list = el("select")
+        .test("language")
+        .put("aria-label", name)
+        .each(LANGUAGES.into_iter().zip(words.language).map(option));
+    // A new list after a choice that came to nothing: the browser would go on showing that.
+    let failed = bench.notes.contains(&Note::Wordless);
+    let list = el("span").with(list.key(String::from(words.tag) + truth(failed)));
+    el("span").class("round language").with(el("span").set("aria-hidden", "true").text(words.tag)).with(list)
 }
 
 /// The list of panels.

@@ -58,7 +58,7 @@ fn entry(bench: &BenchHandle, record: &Record) -> El {
     let words = bench.words();
     let texts = words.seen;
     let id = record.id;
-    let time = clock::local(id);
+    let time = clock::local(id, words.tag);
     let bank = link::decode(&record.setup).map(|setup| describe::bank(&setup, words)).unwrap_or_default();
     let mut place = vec![bank];
     place.extend(record.rung.map(|rung| texts.rung(rung)));

@@ -20,6 +20,9 @@ mod reader;
 pub mod replay;
 pub mod seen;
 
+/// The languages, in the order of their names in the catalogues.
+pub const LANGUAGES: [&str; 4] = ["en", "de", "fr", "es"];
+
 pub use fill::fill;
 pub use load::{english, keys, read};
 pub use page::Words;
@@ -381,6 +384,7 @@ impl Words {
             Note::LadderFromLink => self.ladder_from_link,
             Note::ReadingsFromLink(..) => self.readings_from_link,
             Note::LinkHalfRead => self.link_half_read,
+            Note::Wordless => self.reckoner_lost,
         }
     }
 
