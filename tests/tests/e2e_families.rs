@@ -3,6 +3,7 @@
 use anyhow::{Context, Result, ensure};
 use lampladder_core::expect::prospect;
 use lampladder_core::family::Family;
+use lampladder_core::link;
 use lampladder_core::plate::Plate;
 use lampladder_core::setup::Setup;
 use lampladder_core::steady::Outcome;
@@ -98,4 +99,25 @@ fn two_ways_to_come_to_rest_are_both_shown() -> Result<()> {
         }
     }
     anyhow::bail!("no lamp leaves a choice")
+}
+
+#[test]
+fn a_first_answer_waits_for_nothing_that_is_fetched_after_it() -> Result<()> {
+    let site = surroundings::site()?;
+    let browser = Browser::start()?;
+    let example = Setup::example()?;
+    for family in Family::ALL {
+        let plate = Plate::new(family, example.plate.volts(), example.plate.watts(), None);
+        let Ok(plate) = plate else { continue };
+        let link = link::encode(&Setup { plate, ..example.clone() });
+        // Another address alone would not start the program anew.
+        browser.open("about:blank")?;
+        browser.open(&format!("{}#{link}", site.url()))?;
+        page::accept(&browser)?;
+        let html = "document.documentElement.dataset";
+        browser.until(&format!("return {html}.rest === 'whole'"))?;
+        let waits = browser.script(&format!("return {html}.restWaits ?? 0"))?;
+        ensure!(waits == 0, "{family:?}: a mark in web/rest.txt is one too many");
+    }
+    Ok(())
 }

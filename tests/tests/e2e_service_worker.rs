@@ -17,7 +17,7 @@ use xtask::stamp;
 /// Writes version `number` of a page of four files, as a build would leave it.
 fn build(folder: &Path, number: u32) -> Result<()> {
     let root = Path::new(env!("CARGO_MANIFEST_DIR")).parent().context("tests lies in the workspace")?;
-    let worker = fs::read_to_string(root.join("static/sw.js"))?;
+    let sources = stamp::Sources::of(root)?;
     for old in fs::read_dir(folder)? {
         fs::remove_file(old?.path())?;
     }
@@ -30,7 +30,7 @@ fn build(folder: &Path, number: u32) -> Result<()> {
     fs::write(folder.join(format!("part-000000000000000{number}.js")), format!("window.part = {number};\n"))?;
     fs::write(folder.join("plain.txt"), format!("text {number}\n"))?;
     ensure!(
-        stamp::finish(folder, &worker, true)? == 4,
+        stamp::finish(folder, &sources, true)? == 4,
         "page, part, text and the script taken out of the page"
     );
     Ok(())

@@ -2,34 +2,22 @@
 
 use yew::{
     Html, Properties, create_portal, function_component, hook, html, use_effect_with, use_mut_ref,
-    use_reducer,
+    use_reducer, use_state,
 };
 
 use crate::bench::{Bench, BenchHandle, Msg, Note, Stage, Tab};
-use crate::browser::window::{EverySecond, Listener, NextFrame, clock};
-use crate::browser::{cautions, fragment, input, language, reckoner, storage, theme};
-use crate::climb::{Move, equipment};
-use crate::drawer::Shelf;
-use crate::keeper::use_keeper;
-use crate::meter;
-use crate::opening::use_opening;
+use crate::browser::rest::{self, Arrival};
+use crate::browser::window::{Listener, NextFrame};
+use crate::browser::{cautions, fragment, input, language, storage, theme};
 use crate::panels::advice::advice_panel;
 use crate::panels::circuit::circuit;
 use crate::panels::comparison::comparison;
-use crate::panels::curve::curve;
-use crate::panels::details::details;
 use crate::panels::frame::{CAUTIONS_BUTTON, header, notes, tabs};
-use crate::panels::ladder::ladder;
-use crate::panels::seen::seen;
 use crate::panels::send;
-use crate::panels::sheet::Sheet;
-use crate::panels::switch_on::switch_on;
 use crate::panels::voltage_bar::voltage_bar;
 use crate::parts::el::{button, el, several};
-use crate::reckoner::pulses::Wanted;
-use crate::reckoner::{Answer, Ask};
+use crate::rest::Rest;
 use lampladder_core::link;
-use lampladder_core::readings::MeterSpec;
 
 /// What the page starts with.
 #[derive(Debug, Clone, PartialEq, Properties)]
@@ -77,50 +65,26 @@ pub fn App(props: &AppProps) -> Html {
             move || drop(listener)
         });
     }
-    {
-        let dispatcher = bench.dispatcher();
-        let family = bench.setup.plate.family();
-        let further = bench.tab == Tab::Expect && bench.answers.unasked(family).is_some();
-        // One condition a frame: a key that is pressed meanwhile is not kept waiting for the rest.
-        use_effect_with((bench.answers.clone(), further), move |(_, further)| {
-            let next = further.then(|| NextFrame::new(move || dispatcher.dispatch(Msg::AskFurther)));
-            move || drop(next)
-        });
-    }
-    {
-        let dispatcher = bench.dispatcher();
-        use_effect_with((bench.setup.clone(), bench.unpulsed()), move |(setup, conditions)| {
-            if conditions.is_empty() {
-                return;
-            }
-            let wanted = Wanted { setup: link::encode(setup), conditions: conditions.clone() };
-            // Without the reckoner it is said that the lamps pulse, and no more.
-            reckoner::ask(Ask::Pulses(wanted), move |answer| {
-                if let Ok(Answer::Pulse(news)) = answer {
-                    dispatcher.dispatch(Msg::Pulse(*news));
-                }
-            });
-        });
-    }
-    use_ladder(&bench);
     use_language(&bench);
     use_effect_with(bench.theme, |light| theme::apply(*light));
+    let arrival = use_state(rest::arrival);
     {
-        let dispatcher = bench.dispatcher();
-        use_effect_with(bench.seen.spec, move |spec| {
-            let kept = storage::read(storage::METER);
-            let text = meter::kept(spec);
-            // The usual meter needs no keeping, unless it takes the place of another.
-            if kept.as_ref() == Some(&text) || (kept.is_none() && *spec == MeterSpec::default()) {
-                return;
-            }
-            if storage::write(storage::METER, &text).is_err() {
-                dispatcher.dispatch(Msg::Tell(Note::NothingKept));
+        let arrival = arrival.clone();
+        use_effect_with((), move |()| {
+            // It may have come between the first look and this one.
+            arrival.set(rest::arrival());
+            let listener = Listener::on_window(rest::EVENT, move |_| arrival.set(rest::arrival()));
+            move || drop(listener)
+        });
+    }
+    {
+        let wanted = *arrival == Arrival::Lost && (bench.tab != Tab::Expect || bench.open.is_some());
+        use_effect_with(wanted, |wanted| {
+            if *wanted {
+                rest::ask_again();
             }
         });
     }
-    use_keeper(&bench);
-    use_opening(&bench);
     let before = use_mut_ref(|| None::<Stage>);
     use_effect_with(bench.stage, move |stage| {
         cautions::show(*stage != Stage::Bench);
@@ -135,7 +99,7 @@ pub fn App(props: &AppProps) -> Html {
             }
         }
     });
-    several([accept(&bench), page(&bench)])
+    several([accept(&bench), page(&bench, *arrival)])
 }
 
 /// Fetches the texts of another language as soon as it is chosen.
@@ -159,50 +123,6 @@ fn use_language(bench: &BenchHandle) {
     });
 }
 
-/// Keeps lamps and position on the phone, asks the reckoner for the rungs, and lets the time go on.
-#[hook]
-fn use_ladder(bench: &BenchHandle) {
-    {
-        let dispatcher = bench.dispatcher();
-        let stock = bench.drawer.edited.then(|| link::encode_stock(&bench.drawer.stock));
-        let climb = bench.climb.edited.then(|| bench.climb.kept(&equipment(&bench.setup)));
-        use_effect_with([(storage::STOCK, stock), (storage::CLIMB, climb)], move |kept| {
-            let keep = |(name, text): &(&str, Option<String>)| {
-                text.as_ref().is_some_and(|text| storage::write(name, text).is_err())
-            };
-            if kept.iter().any(keep) {
-                dispatcher.dispatch(Msg::Tell(Note::NothingKept));
-            }
-        });
-    }
-    {
-        let dispatcher = bench.dispatcher();
-        use_effect_with((bench.wanted(), bench.measured()), move |(wanted, measured)| {
-            if let Some(wanted) = wanted.clone() {
-                let dispatcher = dispatcher.clone();
-                reckoner::ask(Ask::Ladder(wanted), move |answer| {
-                    dispatcher.dispatch(match answer {
-                        Ok(Answer::Ladder(news)) => Move::Learn(news).into(),
-                        _ => Move::Lost.into(),
-                    });
-                });
-            }
-            if let Some(measured) = *measured {
-                reckoner::ask(Ask::Unknown(measured), move |answer| match answer {
-                    Ok(Answer::Unknown(fits)) => dispatcher.dispatch(Shelf::Fits(fits).into()),
-                    _ => dispatcher.dispatch(Move::Lost.into()),
-                });
-            }
-        });
-    }
-    let dispatcher = bench.dispatcher();
-    use_effect_with(bench.climb.off.is_some() && bench.tab == Tab::Ladder, move |counts| {
-        let tick = move || dispatcher.dispatch(Move::Tick(clock()).into());
-        let ticking = counts.then(|| EverySecond::new(tick)).flatten();
-        move || drop(ticking)
-    });
-}
-
 /// The button under the cautions, which stand outside of the program's own element.
 fn accept(bench: &BenchHandle) -> Html {
     let words = bench.words();
@@ -214,17 +134,17 @@ fn accept(bench: &BenchHandle) -> Html {
     create_portal(button(class, "accept", send(bench, Msg::Accept)).text(text).html(), foot)
 }
 
-fn page(bench: &BenchHandle) -> Html {
+fn page(bench: &BenchHandle, arrival: Arrival) -> Html {
     // Nothing but the cautions before they are accepted.
     if bench.stage == Stage::Unread {
         return Html::default();
     }
-    let (class, panel) = match bench.tab {
-        Tab::Expect => ("page on-expect", details(bench)),
-        Tab::Ladder => ("page on-ladder", ladder(bench)),
-        Tab::Seen => ("page on-seen", seen(bench)),
-        Tab::SwitchOn => ("page on-switch-on", switch_on(bench)),
-        Tab::Curve => ("page on-curve", curve(bench)),
+    let class = match bench.tab {
+        Tab::Expect => "page on-expect",
+        Tab::Ladder => "page on-ladder",
+        Tab::Seen => "page on-seen",
+        Tab::SwitchOn => "page on-switch-on",
+        Tab::Curve => "page on-curve",
     };
     let result = el("div")
         .class(if bench.is_stale() { "result is-stale" } else { "result" })
@@ -233,10 +153,11 @@ fn page(bench: &BenchHandle) -> Html {
         .with(comparison(bench));
     let answer_side =
         el("div").class("answer-side").with(notes(bench)).with(result).with(advice_panel(bench));
-    let panel_side = el("div")
-        .class("panel-side")
-        .node(html! { <Sheet bench={bench.clone()} /> })
-        .with(el("div").class("panel").with(panel));
+    let panel_side = el("div").class("panel-side").node(match arrival {
+        Arrival::Whole => html! { <Rest bench={bench.clone()} /> },
+        Arrival::Coming => told(bench.words().coming),
+        Arrival::Lost => told(bench.words().reckoner_lost),
+    });
     el("div")
         .class(class)
         // The document's language is the one that is asked for, which may be on its way.
@@ -245,4 +166,8 @@ fn page(bench: &BenchHandle) -> Html {
         .with(el("main").class("bench").with(answer_side).with(panel_side))
         .with(tabs(bench))
         .html()
+}
+
+fn told(text: &'static str) -> Html {
+    el("p").class("panel told").set("role", "status").text(text).html()
 }

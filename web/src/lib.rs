@@ -80,6 +80,7 @@ mod reading;
 pub mod reckoner;
 mod reduce;
 pub mod replay;
+pub mod rest;
 pub mod seen;
 pub mod start;
 pub mod step;

@@ -4,5 +4,6 @@
 pub mod files;
 pub mod pack;
 pub mod site;
+pub mod split;
 pub mod stamp;
 pub mod words;

@@ -25,13 +25,25 @@ const MODULE: &str = "b";
 pub fn pack(wasm: &[u8], script: &str) -> Result<(Vec<u8>, String)> {
     let border = Border::of(wasm)?;
     let names = border.names(script)?;
-    let order = similar(&bodies(wasm)?);
-    let plain = rewrite(wasm, &names, None)?;
-    let ordered = rewrite(wasm, &names, Some(&order))?;
-    // The order is a guess at what gzip likes.
-    let smaller = if packed(&ordered)? < packed(&plain)? { ordered } else { plain };
+    let smaller = smaller(wasm, MODULE, &names)?;
     let script = script.replace(&format!("\"{}\"", border.module), &format!("\"{MODULE}\""));
     Ok((smaller, renamed(&unindented(&script), &names)))
+}
+
+/// Rewrites a file that no script loads by itself: its border stays as it is.
+///
+/// # Errors
+/// When the file cannot be read.
+pub fn pack_alone(wasm: &[u8]) -> Result<Vec<u8>> {
+    smaller(wasm, &Border::of(wasm)?.module, &Names::new())
+}
+
+fn smaller(wasm: &[u8], module: &str, names: &Names) -> Result<Vec<u8>> {
+    let order = similar(&bodies(wasm)?);
+    let plain = rewrite(wasm, module, names, None)?;
+    let ordered = rewrite(wasm, module, names, Some(&order))?;
+    // The order is a guess at what gzip likes.
+    Ok(if packed(&ordered)? < packed(&plain)? { ordered } else { plain })
 }
 
 /// A script without the spaces at the beginning of its lines, empty lines and whole lines of comment. wasm-bindgen
@@ -182,7 +194,7 @@ fn similar(bodies: &[&[u8]]) -> Vec<usize> {
     order
 }
 
-fn rewrite(wasm: &[u8], names: &Names, order: Option<&[usize]>) -> Result<Vec<u8>> {
+fn rewrite(wasm: &[u8], module: &str, names: &Names, order: Option<&[usize]>) -> Result<Vec<u8>> {
     let mut imported = 0;
     for payload in Parser::new(0).parse_all(wasm) {
         if let Payload::ImportSection(section) = payload? {
@@ -197,14 +209,15 @@ fn rewrite(wasm: &[u8], names: &Names, order: Option<&[usize]>) -> Result<Vec<u8
     for (place, &old) in order.iter().enumerate() {
         places[old] = u32::try_from(place)?;
     }
-    let mut module = Module::new();
-    Rewriter { names, imported, order, places }
-        .parse_core_module(&mut module, Parser::new(0), wasm)
+    let mut out = Module::new();
+    Rewriter { module, names, imported, order, places }
+        .parse_core_module(&mut out, Parser::new(0), wasm)
         .map_err(|stop| anyhow!("the program cannot be rewritten: {stop}"))?;
-    Ok(module.finish())
+    Ok(out.finish())
 }
 
 struct Rewriter<'a> {
+    module: &'a str,
     names: &'a Names,
     imported: u32,
     /// Old numbers in their new order, imported functions left out.
@@ -233,7 +246,7 @@ impl Reencode for Rewriter<'_> {
         for import in imports {
             let (_, import) = import?;
             let kind = self.entity_type(import.ty)?;
-            section.import(MODULE, self.name(import.name), kind);
+            section.import(self.module, self.name(import.name), kind);
         }
         Ok(())
     }
@@ -323,7 +336,7 @@ mod tests {
             ("b", vec!["$b".to_owned()], vec!["memory".to_owned(), "$c".to_owned()])
         );
         let names = Names::new();
-        let turned = rewrite(&wasm, &names, Some(&[2, 0, 1])).expect("a program");
+        let turned = rewrite(&wasm, MODULE, &names, Some(&[2, 0, 1])).expect("a program");
         // The caller is the last now, and calls the second of the three, behind one import.
         assert_eq!(calls(&turned)[2], b"\0\x10\x02\x10\0\x6a\x0b");
         assert_eq!(calls(&turned)[0], calls(&wasm)[2]);

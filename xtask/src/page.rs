@@ -88,12 +88,11 @@ pub(crate) fn stamp(arguments: &[String]) -> Result<()> {
         [folder] => folder.clone(),
         _ => bail!("usage: xtask stamp [DIR]"),
     };
-    let template =
-        fs::read_to_string(place::root().join("static/sw.js")).context("static/sw.js cannot be read")?;
+    let sources = stamp::Sources::of(&place::root())?;
     // A folder named by hand is a release that was built elsewhere.
     let light = place::set("TRUNK_PROFILE").is_none_or(|profile| profile == "release");
     words::publish(Path::new(&folder), &place::root().join("web/words"))?;
-    let count = stamp::finish(Path::new(&folder), &template, light)?;
+    let count = stamp::finish(Path::new(&folder), &sources, light)?;
     println!("  stamped the service worker with {count} files");
     Ok(())
 }

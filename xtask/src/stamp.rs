@@ -6,20 +6,45 @@ use std::path::Path;
 
 use anyhow::{Context, Result, bail};
 
-use crate::{files, pack};
+use crate::{files, pack, split};
 
-/// Finishes the page in `folder`: `template` is the text of static/sw.js; `light` is for the release, whose programs and
-/// styles are packed. Gives the number of files that the worker will keep.
+/// Texts of the project that go into the page.
+#[derive(Debug)]
+pub struct Sources {
+    worker: String,
+    rest: String,
+    marks: String,
+}
+
+impl Sources {
+    /// As they stand in the project that lies in `root`.
+    ///
+    /// # Errors
+    /// When one cannot be read.
+    pub fn of(root: &Path) -> Result<Self> {
+        let read = |name: &str| {
+            fs::read_to_string(root.join(name)).with_context(|| format!("{name} cannot be read"))
+        };
+        Ok(Self {
+            worker: read("static/sw.js")?,
+            rest: read("static/rest.js")?,
+            marks: read("web/rest.txt")?,
+        })
+    }
+}
+
+/// Finishes the page in `folder`; `light` is for the release, whose program is cut in two, and whose programs and styles
+/// are packed. Gives the number of files that the worker will keep.
 ///
 /// # Errors
 /// When the page or the worker is not as expected, or cannot be read or written.
-pub fn finish(folder: &Path, template: &str, light: bool) -> Result<usize> {
+pub fn finish(folder: &Path, sources: &Sources, light: bool) -> Result<usize> {
     let index = folder.join("index.html");
     let mut html =
         fs::read_to_string(&index).with_context(|| format!("{} cannot be read", index.display()))?;
     if light {
         html = join_styles(folder, &html)?;
-        html = pack_page(folder, &html)?;
+        html = pack_page(folder, &html, sources)?;
         pack_pair(&folder.join("reckoner_bg.wasm"), &folder.join("reckoner.js"))?;
     }
     let (html, scripts) = externalise(&html)?;
@@ -35,7 +60,7 @@ pub fn finish(folder: &Path, template: &str, light: bool) -> Result<usize> {
             contents.push((name, fs::read(path)?));
         }
     }
-    fs::write(folder.join("sw.js"), worker(template, &contents)?)?;
+    fs::write(folder.join("sw.js"), worker(&sources.worker, &contents)?)?;
     Ok(contents.len())
 }
 
@@ -129,11 +154,12 @@ fn squeezed(style: &str) -> String {
     out.replace(";}", "}")
 }
 
-/// The program and the script that loads it, packed, and named anew by what they are now.
-fn pack_page(folder: &Path, html: &str) -> Result<String> {
+/// The program and the script that loads it, cut, packed, and named anew by what they are now.
+fn pack_page(folder: &Path, html: &str, sources: &Sources) -> Result<String> {
     let Some((_, start)) = html.split_once("module_or_path: './") else { return Ok(html.to_owned()) };
     let wasm = start.split('\'').next().unwrap_or_default();
     let script = wasm.replace("_bg.wasm", ".js");
+    cut(folder, wasm, &script, sources)?;
     pack_pair(&folder.join(wasm), &folder.join(&script))?;
     let stem = script.rsplit_once('-').map_or("page", |(stem, _)| stem);
     let mut renamed = Vec::new();
@@ -145,6 +171,28 @@ fn pack_page(folder: &Path, html: &str) -> Result<String> {
         renamed.push((old, new));
     }
     Ok(with_names(html, &renamed))
+}
+
+/// What wasm-bindgen writes at the head of a program's imports.
+const IMPORTS: &str = "const import0 = {";
+
+/// Cuts the program in two, and lets the script fetch the second part.
+fn cut(folder: &Path, wasm: &str, script: &str, sources: &Sources) -> Result<()> {
+    let (wasm, script) = (folder.join(wasm), folder.join(script));
+    let Some(parts) = split::split(&fs::read(&wasm)?, &split::Marks::of(&sources.marks))? else {
+        bail!("nothing in {} bears a mark of web/rest.txt: has it no names?", wasm.display());
+    };
+    let rest = pack::pack_alone(&parts.rest)?;
+    let name = format!("rest-{:016x}.wasm", hash(&rest));
+    let text = fs::read_to_string(&script)?;
+    if text.matches(IMPORTS).count() != 1 {
+        bail!("{} does not look like wasm-bindgen's", script.display());
+    }
+    let text = text.replace(IMPORTS, &format!("{IMPORTS}\n{}: () => waitForRest(),", split::WAIT));
+    fs::write(wasm, parts.first)?;
+    fs::write(folder.join(&name), rest)?;
+    fs::write(script, text + &sources.rest.replace("rest.wasm", &name))?;
+    Ok(())
 }
 
 /// Packs a program and its script where they stand, if they are there.

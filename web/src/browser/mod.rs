@@ -13,6 +13,7 @@ pub mod language;
 pub mod log;
 pub mod readings;
 pub mod reckoner;
+pub mod rest;
 pub mod storage;
 pub mod theme;
 pub mod window;
