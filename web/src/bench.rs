@@ -232,6 +232,8 @@ pub enum Msg {
     Light(Theme),
     /// Go on in other words.
     Speak(&'static Words),
+    /// The texts of the panels have come: draw them.
+    Completed,
     /// The cautions are accepted, or closed again.
     Accept,
     /// Show the cautions.

@@ -77,6 +77,7 @@ impl Bench {
             Msg::Climb(step) => self.climb(step),
             Msg::Light(theme) => self.theme = theme,
             Msg::Speak(words) => self.speak(words),
+            Msg::Completed => self.notes.retain(|note| *note != Note::Wordless),
             Msg::Accept => self.stage = Stage::Bench,
             Msg::Cautions => self.stage = Stage::Reread,
             Msg::Choose(place) => {

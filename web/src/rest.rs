@@ -7,7 +7,7 @@ use yew::{Html, Properties, function_component, hook, html, use_effect_with};
 
 use crate::bench::{BenchHandle, Msg, Note, Tab};
 use crate::browser::window::{EverySecond, NextFrame, clock};
-use crate::browser::{reckoner, storage};
+use crate::browser::{language, reckoner, storage};
 use crate::climb::{Move, equipment};
 use crate::drawer::Shelf;
 use crate::keeper::use_keeper;
@@ -41,6 +41,10 @@ pub fn Rest(props: &RestProps) -> Html {
     use_meter(bench);
     use_keeper(bench);
     use_opening(bench);
+    use_texts(bench);
+    if !bench.words.is_whole() {
+        return el("p").class("panel told").set("role", "status").text(bench.words.coming).html();
+    }
     let panel = match bench.tab {
         Tab::Expect => details(bench),
         Tab::Ladder => ladder(bench),
@@ -54,6 +58,21 @@ pub fn Rest(props: &RestProps) -> Html {
             { el("div").class("panel").with(panel).html() }
         </>
     }
+}
+
+/// Completes the texts of a language, since the panels have more to say than the first screen.
+#[hook]
+fn use_texts(bench: &BenchHandle) {
+    let dispatcher = bench.dispatcher();
+    // Another look for them with every panel that is turned to.
+    use_effect_with((bench.words, bench.tab), move |(words, _)| {
+        let words = *words;
+        if !words.is_whole() {
+            language::complete(words, move |whole| {
+                dispatcher.dispatch(if whole { Msg::Completed } else { Msg::Tell(Note::Wordless) });
+            });
+        }
+    });
 }
 
 /// Asks for the conditions that are not compared at a glance, and how lamps pulse.

@@ -15,7 +15,7 @@ const FIRST_LOAD: usize = 150_000;
 /// down, and 5 %.
 const AFTERWARDS: usize = 250_000;
 /// How the names of its files begin.
-const LATER: [&str; 2] = ["reckoner-", "rest-"];
+const LATER: [&str; 3] = ["reckoner-", "rest-", "later-"];
 /// Gzipped bytes of the icons for a home screen: no first answer waits for them.
 const ICONS: usize = 32_000;
 

@@ -36,10 +36,12 @@ pub fn publish(folder: &Path, source: &Path) -> Result<()> {
     ensure!(html.matches(PLACE).count() == 1, "index.html must hold exactly one `{PLACE}`");
     let mut metas = Vec::new();
     for (tag, text) in &all {
-        let texts = texts(&english, text).with_context(|| format!("web/words/{tag}.txt"))?;
-        let name = format!("words-{tag}-{:016x}.txt", stamp::hash(texts.as_bytes()));
-        metas.push(format!("<meta name=\"words-{tag}\" content=\"./{name}\">"));
-        fs::write(folder.join(name), texts)?;
+        let parts = texts(&english, text).with_context(|| format!("web/words/{tag}.txt"))?;
+        for (part, texts) in ["words", "later"].into_iter().zip(parts) {
+            let name = format!("{part}-{tag}-{:016x}.txt", stamp::hash(texts.as_bytes()));
+            metas.push(format!("<meta name=\"{part}-{tag}\" content=\"./{name}\">"));
+            fs::write(folder.join(name), texts)?;
+        }
     }
     html = html.replace(PLACE, &metas.join("\n  "));
     let script = fs::read(folder.join(SCRIPT)).with_context(|| format!("{SCRIPT} is not there"))?;
@@ -49,8 +51,8 @@ pub fn publish(folder: &Path, source: &Path) -> Result<()> {
     Ok(())
 }
 
-/// The texts of a catalogue, if it says what English says.
-fn texts(english: &str, text: &str) -> Result<String> {
+/// The texts of a catalogue, those of the first screen and the later ones, if it says what English says.
+fn texts(english: &str, text: &str) -> Result<[String; 2]> {
     let read = |text| {
         catalogue::entries(text)
             .map_err(|catalogue::Unreadable { line }| anyhow!("line {line} is no `key = text`"))
@@ -64,7 +66,8 @@ fn texts(english: &str, text: &str) -> Result<String> {
         ensure!(places == wanted, "`{key}` has the places {places:?}, English {wanted:?}");
     }
     ensure!(entries.len() == english.len(), "`{}` is not in English", entries[english.len()].0);
-    Ok(catalogue::texts(&entries))
+    let (first, later) = catalogue::parts(&entries);
+    Ok([catalogue::texts(first), catalogue::texts(later)])
 }
 
 #[cfg(test)]
@@ -73,8 +76,10 @@ mod tests {
 
     #[test]
     fn a_catalogue_that_differs_from_english_is_refused() {
+        let english = "a = one {0}\nb = two\nreplay.c = three\n";
+        let german = texts(english, "# eins\na = {0} eins\nb = zwei\nreplay.c = drei\n").expect("the same");
+        assert_eq!(german, ["{0} eins\nzwei", "drei"]);
         let english = "a = one {0}\nb = two\n";
-        assert_eq!(texts(english, "# eins\na = {0} eins\nb = zwei\n").expect("the same"), "{0} eins\nzwei");
         for (bad, word) in [
             ("a = eins {0}\n", "missing"),
             ("b = zwei\na = eins {0}\n", "stands where"),

@@ -44,7 +44,7 @@ pub fn speak(then: impl FnOnce(Option<&'static Words>) + 'static) {
         let known = READ.with_borrow(|read| read.iter().copied().find(|words| words.tag == tag));
         let words = match known {
             Some(words) => Some(words),
-            None => fetch(&tag).await.and_then(|texts| words::read(texts).ok()),
+            None => fetch(&name(FIRST, &tag)).await.and_then(|texts| words::read(texts).ok()),
         };
         if let Some(words) = words.filter(|_| known.is_none()) {
             READ.with_borrow_mut(|read| read.push(words));
@@ -56,9 +56,25 @@ pub fn speak(then: impl FnOnce(Option<&'static Words>) + 'static) {
     });
 }
 
-async fn fetch(tag: &str) -> Option<String> {
+/// Completes the words by the texts of the panels beyond the first screen; tells whether they could be had.
+pub fn complete(words: &'static Words, then: impl FnOnce(bool) + 'static) {
+    spawn_local(async move {
+        let texts = fetch(&name(LATER, words.tag)).await;
+        then(texts.is_some_and(|texts| words.complete(texts).is_ok()));
+    });
+}
+
+/// How the page names the two files of a language.
+const FIRST: &str = "words-";
+const LATER: &str = "later-";
+
+fn name(part: &str, tag: &str) -> String {
+    String::from("meta[name=") + part + tag + "]"
+}
+
+async fn fetch(meta: &str) -> Option<String> {
     let window: Window = web_sys::window()?;
-    let meta = document()?.query_selector(&(String::from("meta[name=words-") + tag + "]")).ok()??;
+    let meta = document()?.query_selector(meta).ok()??;
     let asked = window.fetch_with_str(&meta.get_attribute("content")?);
     let response: Response = JsFuture::from(asked).await.ok()?.dyn_into().ok()?;
     if !response.ok() {

@@ -61,7 +61,7 @@ pub fn draw(
     ink: &Ink,
     words: &Words,
 ) -> Result<(), Failure> {
-    let texts = words.replay;
+    let texts = words.replay();
     let strips: [(&str, Quantity); 2] =
         [(texts.chart_amps, |sample| sample.amps_rms), (texts.chart_volts, |sample| sample.load_volts_rms)];
     let Some((whole, area)) = Frame::within(canvas, HEIGHT, [0.0; 4], (1.0, 1.0)) else { return Ok(()) };

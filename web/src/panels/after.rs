@@ -26,7 +26,7 @@ fn reservoir(bench: &Bench) -> Option<Discharge> {
 /// The wait.
 pub(super) fn after(bench: &BenchHandle) -> Vec<El> {
     let words = bench.words();
-    let texts = words.ladder;
+    let texts = words.ladder();
     let typed = |entry, hint: String| field::plain(bench, Slot::Entry(entry), hint);
     // Rounded up to tens of volts: it is the most that there can be.
     let most = (Discharge::most_volts(&bench.setup.supply) / 10.0).ceil() * 10.0;
@@ -56,7 +56,7 @@ fn duration(seconds: f64, words: &Words) -> String {
 
 fn waited(bench: &BenchHandle, after: &AfterPower) -> El {
     let words = bench.words();
-    let texts = words.ladder;
+    let texts = words.ladder();
     let row = |(limit, wait): &(DischargeLimit, Wait)| {
         let wait = match wait {
             Wait::Seconds { slowest, .. } => duration(*slowest, words),
@@ -80,7 +80,7 @@ fn waited(bench: &BenchHandle, after: &AfterPower) -> El {
 /// Counts down to the lowest of the limits, at the tolerances' worst.
 fn countdown(bench: &BenchHandle, after: &AfterPower) -> Option<El> {
     let words = bench.words();
-    let texts = words.ladder;
+    let texts = words.ladder();
     let lowest = DISCHARGE_LIMITS.iter().map(|limit| limit.volts).fold(f64::MAX, f64::min);
     let (_, wait) = after.waits.iter().find(|(limit, _)| limit.volts == lowest)?;
     let Wait::Seconds { slowest, .. } = *wait else { return None };

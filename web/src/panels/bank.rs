@@ -14,7 +14,7 @@ const SMALL: Well = Well { x: 0.0, y: 0.0, width: 52.0, height: 34.0 };
 
 /// The lamps.
 pub fn bank_editor(bench: &BenchHandle) -> Vec<El> {
-    let edit = bench.words().edit;
+    let edit = &bench.words().edit;
     let count = bench.draft.lamp_count();
     let full = count >= Bank::MOST_LAMPS;
     let chain = el("div").class("chain").set("role", "group").set("aria-label", edit.as_wired).each(

@@ -39,7 +39,7 @@ pub(super) fn all_done(bench: &Bench) -> bool {
 /// The checks in a few words.
 pub(super) fn checks_short(bench: &Bench) -> String {
     let (done, all) = counted(bench);
-    bench.words().ladder.checks_done(done, all)
+    bench.words().ladder().checks_done(done, all)
 }
 
 fn limit(bench: &Bench, entry: Entry) -> Option<Limit> {
@@ -74,7 +74,7 @@ fn plug(bench: &Bench) -> Option<precheck::PlugReading> {
 /// The checks.
 pub(super) fn checks(bench: &BenchHandle) -> Vec<El> {
     let words = bench.words();
-    let texts = words.ladder;
+    let texts = words.ladder();
     let climb = &bench.climb;
     let looked = button("tick", "looked-over", send(bench, Move::Looked.into()))
         .set("role", "checkbox")
@@ -147,7 +147,7 @@ fn ohms(value: f64, numerals: Numerals) -> String {
 /// A reading with its limit and what comes of it.
 fn limited(bench: &BenchHandle, entry: Entry) -> El {
     let words = bench.words();
-    let texts = words.ladder;
+    let texts = words.ladder();
     let Some(limit) = limit(bench, entry) else { return el("div") };
     let hint = texts.limit(limit.sense == Sense::AtLeast, &ohms(limit.value, words.numerals));
     let verdict = verdict(bench, entry).map(|verdict| {
@@ -178,13 +178,13 @@ fn typed(bench: &BenchHandle, entry: Entry, hint: String) -> El {
     }
     let msg = Msg::Type(Slot::Entry(entry), OVER_RANGE.to_owned());
     let over = button("choice", format!("over-{}", entry.slug()), send(bench, msg))
-        .text(bench.words().ladder.over_range);
+        .text(bench.words().ladder().over_range);
     el("div").class("over").with(field).with(over)
 }
 
 fn across_plug(bench: &BenchHandle) -> El {
     let words = bench.words();
-    let texts = words.ladder;
+    let texts = words.ladder();
     let healthy = bench.climb.known.plug.map(|[healthy, ..]| healthy);
     let hint = healthy.map_or_else(String::new, |range| {
         let low = ohms(range.low_ohms, words.numerals);

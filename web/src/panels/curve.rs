@@ -23,7 +23,7 @@ const ROWS: u8 = 8;
 
 /// The panel.
 pub fn curve(bench: &Bench) -> El {
-    let heads = bench.words().table;
+    let heads = &bench.words().table;
     let chart = html! {
         <Chart setup={bench.setup.clone()} answers={bench.answers.clone()} theme={bench.theme} words={bench.words} />
     };
@@ -41,7 +41,7 @@ pub fn curve(bench: &Bench) -> El {
 
 fn crossings(bench: &Bench) -> El {
     let words = bench.words();
-    let heads = words.table;
+    let heads = &words.table;
     let rows = bench.answers.all().iter().map(|(condition, _)| {
         let shown = bench.answers.shown(*condition);
         el("tr")
@@ -56,7 +56,7 @@ fn crossings(bench: &Bench) -> El {
 
 fn bank_table(bench: &Bench) -> El {
     let words = bench.words();
-    let heads = words.table;
+    let heads = &words.table;
     let supply = bench.setup.supply.volts();
     let rows = (1..=ROWS).map(|row| {
         let volts = supply * f64::from(row) / f64::from(ROWS);

@@ -14,7 +14,7 @@ use crate::parts::table::{banded, row_head, table, whole};
 /// The details.
 pub fn details(bench: &BenchHandle) -> El {
     let words = bench.words();
-    let heads = words.table;
+    let heads = &words.table;
     let several = bench.setup.bank.lamp_count() > 1;
     let conditions: Vec<Condition> = bench.answers.asked().collect();
     let mut lamp_heads = vec![heads.condition];

@@ -36,7 +36,7 @@ fn lamp_name(bench: &Bench, lamp: &Lamp) -> String {
     } else {
         rating(bench, volts, watts)
     };
-    if is_measured(lamp) { words.ladder.measured_lamp(&text) } else { text }
+    if is_measured(lamp) { words.ladder().measured_lamp(&text) } else { text }
 }
 
 fn is_measured(lamp: &Lamp) -> bool {
@@ -50,13 +50,13 @@ pub(super) fn drawer_short(bench: &Bench) -> String {
         count => format!("{count}\u{a0}× {}", lamp_name(bench, owned.lamp())),
     };
     let all: Vec<String> = bench.drawer.stock.kinds().iter().map(one).collect();
-    if all.is_empty() { bench.words().ladder.no_lamps.to_owned() } else { all.join(", ") }
+    if all.is_empty() { bench.words().ladder().no_lamps.to_owned() } else { all.join(", ") }
 }
 
 /// The drawer.
 pub(super) fn drawer(bench: &BenchHandle) -> Vec<El> {
     let words = bench.words();
-    let texts = words.ladder;
+    let texts = words.ladder();
     let drawer = &bench.drawer;
     let volts = usual_volts(&bench.setup);
     let hint = texts.tap_sizes(&words.numerals.quantity(volts, "V"));
@@ -129,7 +129,7 @@ fn other(bench: &BenchHandle, kind: usize, owned: &Owned) -> El {
 }
 
 fn counted(bench: &BenchHandle, name: &str, slug: &str, count: u8, [more, less]: [Shelf; 2]) -> El {
-    let texts = bench.words().ladder;
+    let texts = bench.words().ladder();
     let text = if count == 0 { name.to_owned() } else { format!("{count}×\u{a0}{name}") };
     let class = if count == 0 { "size" } else { "size is-owned" };
     let minus = button("stepper", format!("size-{slug}-less"), send(bench, less.into()))
@@ -176,12 +176,12 @@ fn another(bench: &BenchHandle) -> El {
         .with(kinds(bench))
         .with(place(refused))
         .with(more(words.edit.lamp_more).maybe(filling(bench)).with(known(bench)))
-        .with(put(bench, words.ladder.put))
+        .with(put(bench, words.ladder().put))
 }
 
 fn measure(bench: &BenchHandle, kind: usize) -> El {
     let words = bench.words();
-    let texts = words.ladder;
+    let texts = words.ladder();
     let name = bench.drawer.stock.kinds().get(kind).map(|owned| lamp_name(bench, owned.lamp()));
     el("div")
         .class("form")
@@ -196,7 +196,7 @@ fn measure(bench: &BenchHandle, kind: usize) -> El {
 /// How much narrower the typed lamp's band has become.
 fn shrinkage(bench: &Bench) -> Option<El> {
     let words = bench.words();
-    let texts = words.ladder;
+    let texts = words.ladder();
     let lamp = bench.draft.read_spare().ok().filter(is_measured)?;
     // From hardly warm to its rating.
     let rows = [0.1, 0.3, 0.6, 1.0].into_iter().filter_map(|share| {
@@ -218,7 +218,7 @@ fn shrinkage(bench: &Bench) -> Option<El> {
 
 fn unknown(bench: &BenchHandle) -> El {
     let words = bench.words();
-    let texts = words.ladder;
+    let texts = words.ladder();
     let typed = |entry| field::plain(bench, Slot::Entry(entry), "");
     let found = match &bench.drawer.fits {
         None => bench.measured().map(|_| el("p").class("hint").text(texts.comparing)),

@@ -20,7 +20,7 @@ use crate::words::ladder::Progress;
 /// The panel.
 pub fn ladder(bench: &BenchHandle) -> El {
     let words = bench.words();
-    let texts = words.ladder;
+    let texts = words.ladder();
     let (setup, climb) = (&bench.setup, &bench.climb);
     let family = setup.plate.family();
     let what = texts.for_what(
@@ -62,7 +62,7 @@ fn note(testid: &'static str, text: String) -> El {
 }
 
 fn steps(bench: &BenchHandle) -> Vec<El> {
-    let texts = bench.words().ladder;
+    let texts = bench.words().ladder();
     let mut all = vec![
         step(bench, Stand::Lamps, drawer_short(bench), drawer),
         step(bench, Stand::Checks, checks_short(bench), checks),
@@ -85,14 +85,14 @@ fn none_short(bench: &Bench) -> String {
     let words = bench.words();
     match bench.climb.refused() {
         _ if bench.climb.known.lost => words.reckoner_lost.to_owned(),
-        Some(error) => words.ladder.refused(error),
-        None => words.ladder.working.to_owned(),
+        Some(error) => words.ladder().refused(error),
+        None => words.ladder().working.to_owned(),
     }
 }
 
 /// A step's name in sentences.
 pub(super) fn name(bench: &Bench, stand: Stand) -> String {
-    let texts = bench.words().ladder;
+    let texts = bench.words().ladder();
     match stand {
         Stand::Lamps => texts.lamps.to_owned(),
         Stand::Checks => texts.checks.to_owned(),
@@ -106,7 +106,7 @@ pub(super) fn name(bench: &Bench, stand: Stand) -> String {
 }
 
 fn step(bench: &BenchHandle, stand: Stand, short: String, body: impl FnOnce(&BenchHandle) -> Vec<El>) -> El {
-    let texts = bench.words().ladder;
+    let texts = bench.words().ladder();
     let (class, progress, mark) = match stand.cmp(&bench.climb.at) {
         Ordering::Less if stand == Stand::Checks && !all_done(bench) => {
             ("step is-left", Progress::LeftOut, "M12 5 V13 M12 18 V18.5")
@@ -149,14 +149,14 @@ pub(super) fn go_on(bench: &BenchHandle, stand: Stand, ready: bool) -> Option<El
         return None;
     }
     let next = bench.climb.next(stand)?;
-    let text = bench.words().ladder.go_on(&name(bench, next));
+    let text = bench.words().ladder().go_on(&name(bench, next));
     let go_on = button("go-on", "go-on", send(bench, Move::GoOn.into())).text(text);
     Some(if ready { go_on } else { go_on.set("disabled", "disabled") })
 }
 
 /// Why there is no ladder, and the ways forward.
 pub(super) fn refused(bench: &Bench) -> Option<El> {
-    let texts = bench.words().ladder;
+    let texts = bench.words().ladder();
     let error = bench.climb.refused()?;
     let lamp = |way: &WayForward| match way {
         WayForward::AddLamp(lamp) => rating(bench, lamp.volts, lamp.watts),

@@ -124,7 +124,7 @@ pub(super) fn filling(bench: &BenchHandle) -> Option<El> {
 }
 
 pub(super) fn points(bench: &BenchHandle, known: El) -> El {
-    let edit = bench.words().edit;
+    let edit = &bench.words().edit;
     let count = bench.draft.lamp(bench.lamp).map_or(0, |lamp| lamp.points.len());
     let point = |index| {
         let typed = |part| field::plain(bench, Slot::Lamp(bench.lamp, part), "");

@@ -40,7 +40,7 @@ pub(super) fn rung_short(bench: &Bench, index: usize) -> String {
     };
     let bank = describe::lamps(&groups, words);
     match expected(rung, words) {
-        Some(expected) => words.ladder.expected_short(&bank, &expected),
+        Some(expected) => words.ladder().expected_short(&bank, &expected),
         None => bank,
     }
 }
@@ -48,7 +48,7 @@ pub(super) fn rung_short(bench: &Bench, index: usize) -> String {
 /// The rung.
 pub(super) fn rung(bench: &BenchHandle, index: usize) -> Vec<El> {
     let words = bench.words();
-    let texts = words.ladder;
+    let texts = words.ladder();
     let (Some(rung), Some(groups)) = (known(bench, index), bench.rung_groups(index)) else {
         return Vec::new();
     };
@@ -117,7 +117,7 @@ fn levels(go_on: &GoOn, stop: Option<&Stop>, words: &Words) -> Vec<String> {
     let Some(from) = stop.map(|stop| stop.from) else { return Vec::new() };
     let amps = words.numerals.about(from.amps, "A");
     let volts = words.numerals.about(from.bank_volts, "V");
-    let mut all = vec![words.ladder.across_lamps(&volts)];
+    let mut all = vec![words.ladder().across_lamps(&volts)];
     let most = if let GoOn::Between { most, .. } = go_on { Some(most) } else { None };
     // What healthy equipment may show as well is no sign.
     if most.is_none_or(|most| words.numerals.about(most.amps, "A") != amps) {
@@ -135,6 +135,6 @@ pub(super) fn mains(bench: &BenchHandle) -> Vec<El> {
     let last = bench.climb.rungs().and_then(|plan| plan.rungs.last());
     let last = last.map_or_else(|| words.none.to_owned(), |rung| words.numerals.about(rung.short_amps, "A"));
     let rated = words.numerals.about(bench.setup.plate.rated_amps(), "A");
-    let means = words.ladder.mains_means(&rated, &last);
+    let means = words.ladder().mains_means(&rated, &last);
     vec![el("p").class("told").text(means), place(go_on(bench, Stand::Mains, true))]
 }

@@ -28,7 +28,7 @@ use crate::words::seen::{Clash, Sentence};
 pub fn seen(bench: &BenchHandle) -> El {
     el("section")
         .class("seen")
-        .set("aria-label", bench.words().seen.title)
+        .set("aria-label", bench.words().seen().title)
         .node(html! { <Reader bench={bench.clone()} /> })
 }
 
@@ -119,7 +119,7 @@ fn view(bench: &BenchHandle, heard: Option<&Heard>, taken: &Taken) -> Html {
 /// The sentence to act on, and what it rests on.
 fn answer(bench: &Bench, heard: Option<&Heard>, busy: bool) -> [El; 2] {
     let words = bench.words();
-    let texts = words.seen;
+    let texts = words.seen();
     let line = el("p").set("aria-live", "polite").test("verdict").set("data-old", truth(busy));
     let stale = bench.is_stale().then(|| el("p").class("stale").text(words.stale(&wrong_fields(bench))));
     let left_out = (!bench.seen.faults.is_empty()).then(|| left_out(bench));
@@ -159,16 +159,16 @@ fn answer(bench: &Bench, heard: Option<&Heard>, busy: bool) -> [El; 2] {
 fn left_out(bench: &Bench) -> El {
     let words = bench.words();
     let names: Vec<&str> = bench.seen.faults.iter().map(|(slot, _)| words.slot(*slot)).collect();
-    el("p").class("left-out").test("left-out").text(words.seen.left_out(&names.join(", ")))
+    el("p").class("left-out").test("left-out").text(words.seen().left_out(&names.join(", ")))
 }
 
 fn assumes(bench: &Bench) -> El {
     let words = bench.words();
     let spec = &bench.seen.spec;
     let plain = |value| words.numerals.plain(value);
-    let meter = words.seen.meter_line(&plain(spec.percent), &plain(spec.digits), &plain(spec.counts));
+    let meter = words.seen().meter_line(&plain(spec.percent), &plain(spec.digits), &plain(spec.counts));
     let bench_line = words.assumes(&describe::assumed(&bench.setup, words));
-    let meter_line = words.seen.assumes(&meter, spec.response == Response::Averaging);
+    let meter_line = words.seen().assumes(&meter, spec.response == Response::Averaging);
     el("p").class("assumes").text(bench_line).text(" ").text(meter_line)
 }
 
@@ -249,7 +249,7 @@ const LIGHT: f64 = 0.01;
 /// The conditions with their weights: a word, a bar and a number.
 fn weights(bench: &Bench, diagnosis: &Diagnosis) -> El {
     let words = bench.words();
-    let texts = words.seen;
+    let texts = words.seen();
     let row = |name: &'static str, testid: &'static str, weight: f64| {
         let bar = drawing("0 0 100 8")
             .class("bar")
@@ -277,7 +277,7 @@ fn weights(bench: &Bench, diagnosis: &Diagnosis) -> El {
 
 fn figures(bench: &Bench, numbers: &[(Quantity, Band)]) -> El {
     let words = bench.words();
-    let texts = words.seen;
+    let texts = words.seen();
     let body = el("div").with(el("h2").text(texts.numbers));
     if numbers.is_empty() {
         return body.with(el("p").class("hint").text(texts.numbers_need));

@@ -16,7 +16,7 @@ use crate::seen::Deed;
 
 /// What to do with the readings; `heard` is what they came to, if that is known.
 pub(super) fn deeds(bench: &BenchHandle, heard: Option<&Heard>) -> El {
-    let texts = bench.words().seen;
+    let texts = bench.words().seen();
     let log = &bench.seen.log;
     let verdict = heard.and_then(Heard::verdict);
     let keep = {
@@ -41,7 +41,7 @@ pub(super) fn deeds(bench: &BenchHandle, heard: Option<&Heard>) -> El {
 
 /// The list of what has been kept.
 pub(super) fn log(bench: &BenchHandle) -> El {
-    let texts = bench.words().seen;
+    let texts = bench.words().seen();
     let log = &bench.seen.log;
     let foreign =
         (log.foreign > 0).then(|| el("p").class("hint").test("log-foreign").text(texts.foreign(log.foreign)));
@@ -56,7 +56,7 @@ pub(super) fn log(bench: &BenchHandle) -> El {
 
 fn entry(bench: &BenchHandle, record: &Record) -> El {
     let words = bench.words();
-    let texts = words.seen;
+    let texts = words.seen();
     let id = record.id;
     let time = clock::local(id, words.tag);
     let bank = link::decode(&record.setup).map(|setup| describe::bank(&setup, words)).unwrap_or_default();

@@ -20,7 +20,7 @@ fn worthwhile(diagnosis: &Diagnosis) -> impl Iterator<Item = &Next> {
 
 /// The next reading in a line.
 pub(super) fn next_line(bench: &Bench, diagnosis: &Diagnosis) -> Option<El> {
-    let texts = bench.words().seen;
+    let texts = bench.words().seen();
     let first = worthwhile(diagnosis).next()?;
     let name = texts.candidate(first.candidate);
     Some(el("p").class("next-line").test("next-line").text(texts.next_line(name)))
@@ -29,7 +29,7 @@ pub(super) fn next_line(bench: &Bench, diagnosis: &Diagnosis) -> Option<El> {
 /// The next reading with its outcomes.
 pub(super) fn next(bench: &Bench, diagnosis: &Diagnosis) -> El {
     let words = bench.words();
-    let texts = words.seen;
+    let texts = words.seen();
     let body = el("div").test("next").with(el("h2").text(texts.next));
     let mut all = worthwhile(diagnosis);
     let Some(first) = all.next() else { return body.with(el("p").class("hint").text(texts.nothing_next)) };
@@ -52,7 +52,7 @@ pub(super) fn next(bench: &Bench, diagnosis: &Diagnosis) -> El {
 fn outcomes(bench: &Bench, candidate: Candidate, seen: Seen) -> Outcomes {
     let (low, high) = match seen {
         Seen::Between { low, high } => (low, high),
-        Seen::Behaves(behaviour) => return Outcomes::Is(bench.words().seen.behaves(behaviour)),
+        Seen::Behaves(behaviour) => return Outcomes::Is(bench.words().seen().behaves(behaviour)),
         _ => return Outcomes::Any,
     };
     let text = |value: f64| match candidate {

@@ -17,7 +17,7 @@ const LAMP: Well = Well { x: 0.0, y: 0.0, width: 64.0, height: 44.0 };
 
 /// All of it; `doubts` are readings whose unit has to be asked for, `deeds` what can be done with them.
 pub(super) fn sheet(bench: &BenchHandle, doubts: &[Kind], deeds: El) -> Vec<El> {
-    let texts = bench.words().seen;
+    let texts = bench.words().seen();
     let fields = Kind::ALL.map(|kind| reading(bench, kind, doubts.contains(&kind)));
     vec![
         el("h2").text(texts.readings),
@@ -46,14 +46,14 @@ fn reading(bench: &BenchHandle, kind: Kind, doubted: bool) -> El {
         });
         choices(bench.words().slot(slot), all.collect())
     });
-    el("div").with(field::plain(bench, slot, bench.words().seen.how(kind))).with(place(question))
+    el("div").with(field::plain(bench, slot, bench.words().seen().how(kind))).with(place(question))
 }
 
 /// Lamps from dark to more than full, as this one would look.
 fn looks(bench: &BenchHandle) -> El {
     let words = bench.words();
     let lamp = &bench.setup.bank.groups()[0][0];
-    let row = el("div").class("looks").set("role", "group").set("aria-label", words.seen.look);
+    let row = el("div").class("looks").set("role", "group").set("aria-label", words.seen().look);
     row.each(GlowWord::ALL.into_iter().filter_map(|word| {
         let (low, high) = word.kelvins(lamp.rated_kelvin());
         // A lamp that runs cool never gets there.
@@ -74,7 +74,7 @@ fn looks(bench: &BenchHandle) -> El {
 
 fn behaviours(bench: &BenchHandle) -> Vec<Choice> {
     let choice = |one: Behaviour| Choice {
-        text: bench.words().seen.behaves(one).to_owned(),
+        text: bench.words().seen().behaves(one).to_owned(),
         chosen: bench.seen.sheet.behaviour == Some(one),
         testid: format!("behaves-{}", one.name()),
         click: send(bench, Msg::Seen(Deed::Behave(one))),
@@ -85,7 +85,7 @@ fn behaviours(bench: &BenchHandle) -> Vec<Choice> {
 /// The meter: chosen once, then a line.
 fn meter(bench: &BenchHandle) -> El {
     let words = bench.words();
-    let texts = words.seen;
+    let texts = words.seen();
     let spec = bench.seen.spec;
     let line = |percent: f64, digits: f64, counts: f64| {
         let plain = |value| words.numerals.plain(value);

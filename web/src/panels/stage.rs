@@ -85,7 +85,7 @@ fn figure(bench: &Bench, scene: &Scene, index: usize, seconds: f64) -> El {
             let volts = words.numerals.about(sample.load_volts_rms, "V");
             (
                 words.glow(glow),
-                words.replay.figures(&amps, &volts),
+                words.replay().figures(&amps, &volts),
                 Some((glow.name(), kelvin, sample.amps_rms)),
             )
         }
@@ -157,7 +157,7 @@ fn bank(
 /// Play, and the time.
 pub(super) fn controls(bench: &Bench, theatre: &Theatre, hand: &Hand) -> El {
     let words = bench.words();
-    let texts = words.replay;
+    let texts = words.replay();
     let (name, sign) = if theatre.is_playing() {
         (texts.pause, "M7 5 V19 M17 5 V19")
     } else if theatre.is_over() {
@@ -210,7 +210,7 @@ pub(super) fn chart(bench: &Bench, theatre: &Theatre, canvas: &NodeRef) -> El {
     let canvas = el("canvas").at(canvas.clone()).set("role", "img").test("seconds-chart");
     el("div")
         .class("seconds")
-        .with(canvas.set("aria-label", bench.words().replay.chart))
+        .with(canvas.set("aria-label", bench.words().replay().chart))
         .with(drawing("0 0 1000 10").set("preserveAspectRatio", "none").class("now").with(line))
 }
 
@@ -237,7 +237,7 @@ pub(super) fn strip(bench: &Bench, theatre: &Theatre, hand: &Hand) -> Option<El>
         el("div")
             .class("moments")
             .set("role", "group")
-            .set("aria-label", bench.words().replay.moments)
+            .set("aria-label", bench.words().replay().moments)
             .test("moments")
             .each(frames),
     )

@@ -31,7 +31,7 @@ fn straight(scene: &Scene) -> Option<&SwitchOn> {
 
 fn figures(bench: &Bench, show: &Show) -> El {
     let words = bench.words();
-    let (texts, numerals) = (words.replay, words.numerals);
+    let (texts, numerals) = (words.replay(), words.numerals);
     let row = |name, text: &dyn Fn(&Scene) -> Option<String>| cells(bench, show, name, text);
     let heat = |run: &SwitchOn| numerals.about(run.i2t_amp2_seconds, "A²s");
     let last = |scene: &Scene| scene.whole()?.samples.last().cloned();
@@ -76,7 +76,7 @@ fn heads(bench: &Bench, show: &Show, first: &'static str) -> [&'static str; 3] {
 /// What the chart shows, for those who cannot see it.
 fn moments(bench: &Bench, show: &Show) -> El {
     let words = bench.words();
-    let texts = words.replay;
+    let texts = words.replay();
     let lamps = lamps(bench);
     let rows = marks(show.ask.seconds, IN_A_TABLE).into_iter().map(|seconds| {
         let cell = |scene: &Scene| {
@@ -125,7 +125,7 @@ fn fitting(standard: Standard, amps: f64) -> f64 {
 
 fn fuse(bench: &BenchHandle, show: &Show) -> El {
     let words = bench.words();
-    let texts = words.replay;
+    let texts = words.replay();
     let now = bench.wish;
     let head = button("disclose", "fuse", wish(bench, Wish { fuse_open: !now.fuse_open, ..now }))
         .set("aria-expanded", truth(now.fuse_open))
@@ -161,7 +161,7 @@ fn fuse(bench: &BenchHandle, show: &Show) -> El {
 }
 
 fn verdicts(bench: &Bench, show: &Show) -> Vec<El> {
-    let texts = bench.words().replay;
+    let texts = bench.words().replay();
     let Ok(fuse) = Fuse::new(bench.wish.standard, bench.wish.rated_amps) else { return Vec::new() };
     let judged = |run: Option<&SwitchOn>| run.map(|run| fuse.judge(run));
     let verdict = |judged: Option<Judgement>| Some(texts.verdict(judged?.verdict).to_owned());

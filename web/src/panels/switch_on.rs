@@ -33,7 +33,7 @@ use lampladder_core::switch_on::SwitchOnError;
 pub fn switch_on(bench: &BenchHandle) -> El {
     el("section")
         .class("replay")
-        .set("aria-label", bench.words().replay.title)
+        .set("aria-label", bench.words().replay().title)
         .node(html! { <Replay bench={bench.clone()} /> })
 }
 
@@ -142,7 +142,7 @@ fn view(bench: &BenchHandle, hand: &Hand, canvas: &yew::NodeRef) -> Html {
         .maybe(if theatre.autoplay { None } else { strip(bench, &theatre, hand) })
         .with(controls(bench, &theatre, hand))
         .with(chart(bench, &theatre, canvas))
-        .with(el("p").class("hint").text(bench.words().replay.chart_means))
+        .with(el("p").class("hint").text(bench.words().replay().chart_means))
         .with(options(bench))
         .each(show.map(|show| surge::tables(bench, show)).into_iter().flatten())
         .html()
@@ -151,7 +151,7 @@ fn view(bench: &BenchHandle, hand: &Hand, canvas: &yew::NodeRef) -> Html {
 /// What to look for, and what that assumes.
 fn watch(bench: &Bench, theatre: &Theatre) -> El {
     let words = bench.words();
-    let texts = words.replay;
+    let texts = words.replay();
     let stale = bench.is_stale().then(|| el("p").class("stale").text(words.stale(&wrong_fields(bench))));
     let lines = theatre.show().and_then(|show| told(bench, &show.scenes));
     let waiting = if theatre.is_lost() { words.reckoner_lost } else { texts.working };
@@ -175,7 +175,7 @@ fn watch(bench: &Bench, theatre: &Theatre) -> El {
 /// The stories, once both are known to their end.
 fn told(bench: &Bench, scenes: &[Scene; 2]) -> Option<Vec<El>> {
     let words = bench.words();
-    let texts = words.replay;
+    let texts = words.replay();
     let lamps = lamps(bench);
     let mut lines = Vec::new();
     let mut stories: [Option<Told>; 2] = [None, None];
@@ -222,13 +222,13 @@ fn conditions(bench: &BenchHandle) -> El {
         click: wish(bench, Wish { fault: Some(condition), ..bench.wish }),
     };
     let all = all.filter(|condition| *condition != Condition::Healthy).map(choice).collect();
-    el("div").class("one-line").with(choices(words.replay.beside, all))
+    el("div").class("one-line").with(choices(words.replay().beside, all))
 }
 
 /// How it plays, when the switch closes, how long.
 fn options(bench: &BenchHandle) -> El {
     let words = bench.words();
-    let texts = words.replay;
+    let texts = words.replay();
     let now = bench.wish;
     let slow = Choice {
         text: String::from(texts.slow),

@@ -13,7 +13,7 @@ pub struct Unreadable {
 ///
 /// # Errors
 /// [`Unreadable`]: no ` = `, no text, or a space at either end of one, which no editor would show.
-pub fn entries(catalogue: &str) -> Result<Vec<(&str, &str)>, Unreadable> {
+pub fn entries(catalogue: &str) -> Result<Vec<Entry<'_>>, Unreadable> {
     let mut entries = Vec::new();
     for (index, line) in catalogue.lines().enumerate() {
         if line.is_empty() || line.starts_with('#') {
@@ -30,8 +30,20 @@ pub fn entries(catalogue: &str) -> Result<Vec<(&str, &str)>, Unreadable> {
     Ok(entries)
 }
 
+/// How the first key of the later part begins.
+const LATER: &str = "replay.";
+
+/// A key and its text.
+pub type Entry<'a> = (&'a str, &'a str);
+
+/// What the first screen needs, and what is fetched with the panels beyond it.
+pub fn parts<'a, 'b>(entries: &'a [Entry<'b>]) -> (&'a [Entry<'b>], &'a [Entry<'b>]) {
+    let first = entries.iter().position(|(key, _)| key.starts_with(LATER));
+    entries.split_at(first.unwrap_or(entries.len()))
+}
+
 /// The texts alone, as the page reads them.
-pub fn texts(entries: &[(&str, &str)]) -> String {
+pub fn texts(entries: &[Entry<'_>]) -> String {
     entries.iter().map(|(_, text)| *text).collect::<Vec<_>>().join("\n")
 }
 

@@ -1,10 +1,10 @@
 //! Turns a catalogue into words.
 
-use super::Words;
 use super::catalogue;
+use super::page::{Later, Words};
 use super::reader::{Lines, Malformed};
 
-/// Reads a catalogue as it is fetched: the texts alone, a line each.
+/// Reads the first part of a catalogue as it is fetched: the texts alone, a line each. [`Words::complete`] takes the other.
 ///
 /// The words of a language live as long as the page.
 ///
@@ -12,9 +12,10 @@ use super::reader::{Lines, Malformed};
 /// [`Malformed`]: too few texts, too many, or an empty one.
 pub fn read(texts: String) -> Result<&'static Words, Malformed> {
     let mut lines = Lines::of(texts.leak());
-    let words = Words::read(&mut lines);
+    let words = Box::leak(Box::new(const { Words::empty() }));
+    words.read(&mut lines);
     lines.finish()?;
-    Ok(Box::leak(Box::new(words)))
+    Ok(words)
 }
 
 /// English, for tests: nothing of the page calls this, so that no language is part of the program.
@@ -30,6 +31,7 @@ pub fn english() -> &'static Words {
 pub fn keys() -> Vec<&'static str> {
     let mut keys = Vec::new();
     Words::keys(&mut keys);
+    Later::keys(&mut keys);
     keys
 }
 
@@ -38,5 +40,8 @@ fn of(text: &str) -> &'static Words {
     for (index, key) in keys().iter().enumerate() {
         assert_eq!(entries.get(index).map(|(key, _)| key), Some(key), "the {index}. key of the catalogue");
     }
-    read(catalogue::texts(&entries)).expect("as many texts as keys")
+    let (first, later) = catalogue::parts(&entries);
+    let words = read(catalogue::texts(first)).expect("as many texts as keys");
+    words.complete(catalogue::texts(later)).expect("as many texts as keys");
+    words
 }

@@ -2,7 +2,7 @@
 
 use super::fill;
 use super::ladder::LadderWords;
-use super::reader::catalogue;
+use super::reader::{Lines, Malformed, catalogue};
 use super::replay::ReplayWords;
 use super::seen::SeenWords;
 
@@ -96,12 +96,68 @@ catalogue! {
         edit: EditWords,
         /// Names of columns and headings.
         table: TableWords,
+    }
+    later {
+        /// Texts of the panels beyond the first screen, once they have come.
+        later: Later,
+    }
+}
+
+catalogue! {
+    /// The texts of the panels beyond the first screen: a file of its own, fetched with those panels.
+    pub struct Later in "" {}
+    groups {
         /// Texts of the switch-on panel.
         replay: ReplayWords,
         /// Texts of the panel of readings.
         seen: SeenWords,
         /// Texts of the ladder panel.
         ladder: LadderWords,
+    }
+}
+
+impl Words {
+    /// The texts of the panels beyond the first screen; empty texts until they have come.
+    fn later(&self) -> &'static Later {
+        static NONE: Later = Later::empty();
+        self.later.get().copied().unwrap_or(&NONE)
+    }
+
+    /// Texts of the switch-on panel.
+    pub fn replay(&self) -> &'static ReplayWords {
+        &self.later().replay
+    }
+
+    /// Texts of the panel of readings.
+    pub fn seen(&self) -> &'static SeenWords {
+        &self.later().seen
+    }
+
+    /// Texts of the ladder panel.
+    pub fn ladder(&self) -> &'static LadderWords {
+        &self.later().ladder
+    }
+
+    /// Whether the later texts have come.
+    pub fn is_whole(&self) -> bool {
+        self.later.get().is_some()
+    }
+
+    /// Takes the later texts, as they are fetched: a line each.
+    ///
+    /// # Errors
+    /// [`Malformed`]: too few texts, too many, or an empty one.
+    pub fn complete(&self, texts: String) -> Result<(), Malformed> {
+        if self.is_whole() {
+            return Ok(());
+        }
+        let mut lines = Lines::like(self.numerals, self.plural, texts.leak());
+        let later = Box::leak(Box::new(const { Later::empty() }));
+        later.read(&mut lines);
+        lines.finish()?;
+        // Nobody else has been here since the first line.
+        let _ = self.later.set(later);
+        Ok(())
     }
 }
 

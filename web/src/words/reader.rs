@@ -17,6 +17,9 @@ pub struct Plural {
 }
 
 impl Plural {
+    /// Nothing is singular.
+    pub(super) const NONE: Self = Self { singular: "" };
+
     /// The variant of a text for so many: "{0} lamp|{0} lamps".
     pub fn of(self, text: &'static str, count: usize) -> &'static str {
         let count = count.to_string();
@@ -47,33 +50,31 @@ pub(super) struct Lines {
 }
 
 impl Lines {
+    /// Lines whose numbers are written and counted as those of other texts.
+    pub(super) const fn like(numerals: Numerals, plural: Plural, text: &'static str) -> Self {
+        Self { rest: text, taken: 0, bad: None, numerals, plural }
+    }
+
     /// From the first line on. The second and third say how numbers are written, which all groups of texts need.
     pub(super) fn of(text: &'static str) -> Self {
         let mut head = text.split('\n').skip(1);
         let decimal = head.next().and_then(|line| line.chars().next()).unwrap_or('.');
         let singular = head.next().unwrap_or_default();
-        Self { rest: text, taken: 0, bad: None, numerals: Numerals { decimal }, plural: Plural { singular } }
+        Self::like(Numerals { decimal }, Plural { singular }, text)
     }
 
-    /// The next text.
+    /// The next text, and so on, for each place.
     #[inline(never)]
-    pub(super) fn text(&mut self) -> &'static str {
-        let (line, rest) = self.rest.split_once('\n').unwrap_or((self.rest, ""));
-        self.rest = rest;
-        self.taken += 1;
-        if line.is_empty() && self.bad.is_none() {
-            self.bad = Some(self.taken);
+    pub(super) fn fill(&mut self, places: &mut [&'static str]) {
+        for place in places {
+            let (line, rest) = self.rest.split_once('\n').unwrap_or((self.rest, ""));
+            self.rest = rest;
+            self.taken += 1;
+            if line.is_empty() && self.bad.is_none() {
+                self.bad = Some(self.taken);
+            }
+            *place = line;
         }
-        line
-    }
-
-    /// The next few texts.
-    pub(super) fn texts<const N: usize>(&mut self) -> [&'static str; N] {
-        let mut all = [""; N];
-        for text in &mut all {
-            *text = self.text();
-        }
-        all
     }
 
     /// Whether every text was there, and no more.
@@ -91,18 +92,19 @@ impl Lines {
 
 /// A group of texts: a struct whose fields are read from a catalogue in the order in which they stand. A plain field is
 /// one text under the key `prefix` + its name; a field with names in brackets is as many texts, an enumeration, under
-/// `prefix` + its name + `.` + each. What stands after `groups` is read after that. What a text is for, and what fills
-/// its places, is told in web/words/en.txt.
+/// `prefix` + its name + `.` + each. What stands after `groups` is read after that; after `later`, when it has come. What
+/// a text is for, and what fills its places, is told in web/words/en.txt.
 macro_rules! catalogue {
     (
         $(#[$meta:meta])*
         pub struct $name:ident in $prefix:literal {
-            $( $field:ident $( [ $($key:ident),+ $(,)? ] )? , )+
+            $( $field:ident $( [ $($key:ident),+ $(,)? ] )? , )*
         }
         $( groups { $( $(#[$about:meta])* $group:ident : $kind:ty , )+ } )?
+        $( later { $(#[$told:meta])* $later:ident : $part:ty , } )?
     ) => {
         $(#[$meta])*
-        #[derive(Debug)]
+        #[derive(Debug, Clone)]
         pub struct $name {
             /// How numbers are written.
             pub numerals: $crate::format::Numerals,
@@ -111,24 +113,34 @@ macro_rules! catalogue {
             $(
                 #[doc = concat!("`", $prefix, stringify!($field), "` of the catalogues.")]
                 pub $field: $crate::words::reader::kind!($($($key)+)?),
-            )+
-            $($( $(#[$about])* pub $group: &'static $kind, )+)?
+            )*
+            $($( $(#[$about])* pub $group: $kind, )+)?
+            $( $(#[$told])* $later: std::sync::OnceLock<&'static $part>, )?
         }
 
         impl $name {
-            /// Reads it.
-            pub(super) fn read(lines: &mut $crate::words::reader::Lines) -> Self {
+            /// Without a text. Reading fills it place by place, which is a fifth of the code of making it field by field.
+            pub(super) const fn empty() -> Self {
                 Self {
-                    numerals: lines.numerals,
-                    plural: lines.plural,
-                    $( $field: $crate::words::reader::take!(lines $($($key)+)?), )+
-                    $($( $group: Box::leak(Box::new(<$kind>::read(lines))), )+)?
+                numerals: $crate::format::Numerals { decimal: '.' },
+                plural: $crate::words::reader::Plural::NONE,
+                $( $field: $crate::words::reader::empty!($($($key)+)?), )*
+                $($( $group: <$kind>::empty(), )+)?
+                $( $later: std::sync::OnceLock::new(), )?
                 }
+            }
+
+            /// Reads it.
+            pub(super) fn read(&mut self, lines: &mut $crate::words::reader::Lines) {
+                self.numerals = lines.numerals;
+                self.plural = lines.plural;
+                $( lines.fill($crate::words::reader::places!(self $field $($($key)+)?)); )*
+                $($( self.$group.read(lines); )+)?
             }
 
             /// The keys of its texts, in their order.
             pub(super) fn keys(keys: &mut Vec<&'static str>) {
-                $( $crate::words::reader::name!(keys $prefix $field $($($key)+)?); )+
+                $( $crate::words::reader::name!(keys $prefix $field $($($key)+)?); )*
                 $($( <$kind>::keys(keys); )+)?
             }
         }
@@ -140,12 +152,17 @@ macro_rules! kind {
     ($($key:ident)+) => { [&'static str; [$(stringify!($key)),+].len()] };
 }
 
-macro_rules! take {
-    ($lines:ident) => {
-        $lines.text()
+macro_rules! empty {
+    () => { "" };
+    ($($key:ident)+) => { [""; [$(stringify!($key)),+].len()] };
+}
+
+macro_rules! places {
+    ($words:ident $field:ident) => {
+        std::slice::from_mut(&mut $words.$field)
     };
-    ($lines:ident $($key:ident)+) => {
-        $lines.texts()
+    ($words:ident $field:ident $($key:ident)+) => {
+        &mut $words.$field
     };
 }
 
@@ -156,7 +173,7 @@ macro_rules! name {
     };
 }
 
-pub(super) use {catalogue, kind, name, take};
+pub(super) use {catalogue, empty, kind, name, places};
 
 #[cfg(test)]
 mod tests {
@@ -166,7 +183,8 @@ mod tests {
     fn a_bad_catalogue_is_refused_with_its_line() {
         let read = |text: &'static str| {
             let mut lines = Lines::of(text);
-            let texts: [&str; 3] = lines.texts();
+            let mut texts = [""; 3];
+            lines.fill(&mut texts);
             lines.finish().map(|()| texts)
         };
         assert_eq!(read("en\n.\n1"), Ok(["en", ".", "1"]));

@@ -172,7 +172,7 @@ mod tests {
     #[test]
     fn stories_are_told_as_one_would() {
         let words = english();
-        let story = |story: &Story| words.replay.story(story, words);
+        let story = |story: &Story| words.replay().story(story, words);
         let flash =
             Story::Dims { bright: GlowWord::Orange, then: GlowWord::Dark, seconds: 0.23, still: false };
         assert_eq!(story(&flash), "an orange flash of about 0.23\u{a0}s, then dark");
@@ -181,7 +181,7 @@ mod tests {
         let hunting = Story::Pulses { seconds: Some(0.8), bright: GlowWord::Amber };
         assert_eq!(story(&hunting), "pulses about every 0.8\u{a0}s, up to amber");
         let told = Told { story: hunting, cause: Some(Cause::Hunting) };
-        let told = words.replay.told(&told, words);
+        let told = words.replay().told(&told, words);
         assert!(told.ends_with("up to amber: it starts, starves and starts again"), "{told}");
     }
 }

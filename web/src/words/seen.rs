@@ -270,7 +270,7 @@ mod tests {
             (Sentence::NothingToCompare, "Do not switch on"),
         ];
         for (sentence, first) in all {
-            let (deed, why) = english().seen.sentence(&sentence, english());
+            let (deed, why) = english().seen().sentence(&sentence, english());
             assert!(deed.starts_with(first) && why.ends_with('.'), "{deed} {why}");
         }
     }
@@ -286,7 +286,7 @@ mod tests {
             unit: false,
         };
         assert_eq!(
-            english().seen.clash(&clash),
+            english().seen().clash(&clash),
             "60 V across the lamps and 60 V across the equipment make 120 V, short of the supply's 231 V; meter and \
              lamps explain 12 V of that."
         );
