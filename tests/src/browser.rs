@@ -354,6 +354,24 @@ impl Browser {
         )
     }
 
+    /// A picture of the window, as PNG.
+    ///
+    /// # Errors
+    /// When it cannot be taken.
+    pub fn screenshot(&self) -> Result<Vec<u8>> {
+        Ok(self.wait_for(self.client.screenshot())??)
+    }
+
+    /// Gives an input for files the path of one, as if it had been chosen.
+    ///
+    /// # Errors
+    /// When there is no such input.
+    pub fn choose_file(&self, css: &str, path: &std::path::Path) -> Result<()> {
+        let element = self.element(css)?;
+        self.wait_for(element.send_keys(&path.display().to_string()))?
+            .with_context(|| format!("`{css}` takes no file"))
+    }
+
     /// Takes a picture, when `LAMPLADDER_SHOTS` names a folder for them.
     ///
     /// # Errors
@@ -361,8 +379,7 @@ impl Browser {
     pub fn picture(&self, name: &str) -> Result<()> {
         let Some(folder) = surroundings::pictures() else { return Ok(()) };
         std::fs::create_dir_all(&folder)?;
-        let bytes = self.wait_for(self.client.screenshot())??;
-        Ok(std::fs::write(folder.join(format!("{name}.png")), bytes)?)
+        Ok(std::fs::write(folder.join(format!("{name}.png")), self.screenshot()?)?)
     }
 }
 

@@ -145,6 +145,7 @@ fn page(bench: &BenchHandle, arrival: Arrival) -> Html {
         Tab::Seen => "page on-seen",
         Tab::SwitchOn => "page on-switch-on",
         Tab::Curve => "page on-curve",
+        Tab::HandOn => "page on-hand-on",
     };
     let result = el("div")
         .class(if bench.is_stale() { "result is-stale" } else { "result" })

@@ -54,6 +54,8 @@ pub enum Tab {
     SwitchOn,
     /// The curves that meet.
     Curve,
+    /// Link, code, card and files.
+    HandOn,
 }
 
 /// In which light the page is read.

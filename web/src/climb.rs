@@ -260,7 +260,7 @@ pub fn groups(counts: &[Vec<u8>], stock: &Stock) -> Vec<Vec<Lamp>> {
 impl Bench {
     /// The ladder that is wanted; `None` while nobody looks at it.
     pub fn wanted(&self) -> Option<Wanted> {
-        (self.tab == Tab::Ladder && self.stage == Stage::Bench)
+        (matches!(self.tab, Tab::Ladder | Tab::HandOn) && self.stage == Stage::Bench)
             .then(|| Wanted { setup: equipment(&self.setup), stock: link::encode_stock(&self.drawer.stock) })
     }
 

@@ -110,7 +110,8 @@ impl Bench {
     /// The person's own again.
     pub(crate) fn reclaim(self, mine: Mine) -> Self {
         let Mine { setup, stock, climb } = mine;
-        let mut next = match setup {
+        // Who has never changed the set-up has the example.
+        let mut next = match setup.or_else(|| Setup::example().ok()) {
             Some(setup) => self.arrive(setup),
             None => self,
         };

@@ -15,6 +15,7 @@ use crate::meter;
 use crate::opening::use_opening;
 use crate::panels::curve::curve;
 use crate::panels::details::details;
+use crate::panels::hand_on::hand_on;
 use crate::panels::ladder::ladder;
 use crate::panels::seen::seen;
 use crate::panels::sheet::Sheet;
@@ -51,6 +52,7 @@ pub fn Rest(props: &RestProps) -> Html {
         Tab::Seen => seen(bench),
         Tab::SwitchOn => switch_on(bench),
         Tab::Curve => curve(bench),
+        Tab::HandOn => hand_on(bench),
     };
     html! {
         <>

@@ -9,6 +9,12 @@ pub fn read() -> Option<String> {
     if text.is_empty() { None } else { Some(text.to_owned()) }
 }
 
+/// The page's address without it.
+pub fn address() -> String {
+    let address = web_sys::window().and_then(|window| window.location().href().ok()).unwrap_or_default();
+    address.split('#').next().unwrap_or_default().to_owned()
+}
+
 /// Puts a text behind `#`, without a new entry in the history and without a `hashchange`.
 pub fn write(text: &str) {
     let Some(history) = web_sys::window().and_then(|window| window.history().ok()) else { return };

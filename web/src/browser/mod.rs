@@ -6,14 +6,17 @@
 pub mod cautions;
 pub mod clock;
 pub mod dialog;
+pub mod download;
 pub mod fragment;
 pub mod frames;
 pub mod input;
 pub mod language;
 pub mod log;
+pub mod print;
 pub mod readings;
 pub mod reckoner;
 pub mod rest;
+pub mod share;
 pub mod storage;
 pub mod theme;
 pub mod window;

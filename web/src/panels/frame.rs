@@ -70,10 +70,22 @@ pub fn tabs(bench: &BenchHandle) -> El {
         (Tab::Curve, "tab-curve"),
     ];
     let words = bench.words();
-    el("nav").class("tabs").set("aria-label", words.panels).each(TABS.map(|(tab, testid)| {
+    let list = el("nav").class("tabs").set("aria-label", words.panels).each(TABS.map(|(tab, testid)| {
         let tab_button = button("tab", testid, send(bench, Msg::Go(tab))).text(words.tab(tab));
-        if tab == bench.tab { tab_button.set("aria-current", "page") } else { tab_button }
-    }))
+        here(tab_button, tab == bench.tab)
+    }));
+    // Six names do not fit side by side on a small phone: the last one shows where there is room.
+    let name = words.tab(Tab::HandOn);
+    let hand_on = button("tab is-sign", "tab-hand-on", send(bench, Msg::Go(Tab::HandOn)))
+        .set("aria-label", name)
+        .set("title", name)
+        .with(picture::hand_on())
+        .with(el("span").text(name));
+    list.with(here(hand_on, bench.tab == Tab::HandOn))
+}
+
+fn here(tab: El, here: bool) -> El {
+    if here { tab.set("aria-current", "page") } else { tab }
 }
 
 /// What is to be told once: a bad link, nothing kept.

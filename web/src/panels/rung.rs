@@ -21,7 +21,7 @@ fn known(bench: &Bench, index: usize) -> Option<&Rung> {
 }
 
 /// What healthy equipment shows, where it settles.
-fn expected(rung: &Rung, words: &Words) -> Option<Expected> {
+pub(super) fn expected(rung: &Rung, words: &Words) -> Option<Expected> {
     let shown = rung.shown.as_ref()?;
     let GoOn::Between { least, most } = rung.signs.go_on else { return None };
     Some(Expected {

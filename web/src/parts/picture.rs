@@ -88,6 +88,11 @@ pub fn light(theme: Theme) -> El {
     }
 }
 
+/// The sign for handing on: out of the box, to the right.
+pub fn hand_on() -> El {
+    sign("M10 5 H4 V20 H19 V14 M9 15 C9 9 13 7 20 7 M16 3 L20 7 L16 11")
+}
+
 /// The sign of the cautions: a triangle with a flash in it.
 pub fn caution() -> El {
     sign("M12 3 L22 20.5 H2 Z M13 9 l-2.4 4.4 h2.8 L11.4 18")

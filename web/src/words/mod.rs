@@ -13,6 +13,7 @@
 pub mod catalogue;
 mod faults;
 pub mod fill;
+pub mod hand_on;
 pub mod ladder;
 mod load;
 pub mod page;

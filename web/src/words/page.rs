@@ -1,6 +1,7 @@
 //! The texts of the first screen: frame, loop, sentence, details, editors; and all the others in groups of their own.
 
 use super::fill;
+use super::hand_on::HandOnWords;
 use super::ladder::LadderWords;
 use super::reader::{Lines, Malformed, catalogue};
 use super::replay::ReplayWords;
@@ -13,7 +14,7 @@ catalogue! {
         language [en, de, fr, es],
         choose_language, title, reminder, cautions, accept, back, done, dismiss,
         theme [auto, paper, dusk],
-        tab [expect, seen, ladder, switch_on, curve],
+        tab [expect, seen, ladder, switch_on, curve, hand_on],
         panels,
         part [supply, bank, equipment],
         change [supply, bank, equipment],
@@ -113,6 +114,8 @@ catalogue! {
         seen: SeenWords,
         /// Texts of the ladder panel.
         ladder: LadderWords,
+        /// Texts of the panel that hands a bench on.
+        hand_on: HandOnWords,
     }
 }
 
