@@ -8,9 +8,12 @@ use anyhow::{Context, Result, ensure};
 use base64::Engine;
 use base64::engine::general_purpose::STANDARD;
 use lampladder_core::family::Family;
+use lampladder_core::hand_on::HandedOn;
 use lampladder_core::ladder::{self, Limits};
 use lampladder_core::lamp::Lamp;
+use lampladder_core::link::{self, Spelling};
 use lampladder_core::plate::Plate;
+use lampladder_core::setup::Setup;
 use lampladder_core::stock::Stock;
 use lampladder_core::supply::Supply;
 use lampladder_tests::browser::{Browser, PATIENCE};
@@ -139,6 +142,20 @@ fn the_card_is_one_page_with_cautions_set_up_rungs_and_code() -> Result<()> {
         "const c = document.querySelector('[data-testid=card] svg'); return c.getAttribute('viewBox')",
     )?;
     ensure!(covers.is_string(), "there is no code on the card");
+
+    // The longest ladder that hundreds of stocks and kinds of equipment came to: five rungs.
+    let lamps = [15.0, 100.0, 200.0].map(|watts| Lamp::new(230.0, watts).map(|lamp| (lamp, 4.0)));
+    let stock = Stock::new(lamps.into_iter().collect::<Result<Vec<_>, _>>()?)?;
+    let plate = Plate::new(Family::CrtSet, 230.0, 20.0, None)?;
+    let handed = HandedOn { stock: Some(stock), ..HandedOn::only(Setup { plate, ..Setup::example()? }) };
+    browser.open("about:blank")?;
+    browser.open(&format!("{}#{}", site.url(), link::encode_all(&handed, Spelling::Letters)?))?;
+    page::accept(&browser)?;
+    browser.see(page::NOTE)?;
+    browser.tap(TAB)?;
+    browser.until("return document.querySelectorAll('[data-testid=card] tbody tr').length === 6")?;
+    browser.see(&id("code"))?;
+    ensure_one_page(&browser, "card-long")?;
     page::no_complaints(&browser)
 }
 
@@ -152,7 +169,7 @@ fn keep(browser: &Browser, volts: &str, note: &str) -> Result<()> {
     browser.fill(&id("note-text"), note)
 }
 
-/// Taps a button that saves a file, and waits for it.
+/// Taps a button that saves a file, and waits for it: the browser makes an empty one first.
 fn saved(browser: &Browser, folder: &Folder, button: &str, name: &str) -> Result<PathBuf> {
     let path = folder.path().join(name);
     browser.devtools(
@@ -161,7 +178,7 @@ fn saved(browser: &Browser, folder: &Folder, button: &str, name: &str) -> Result
     )?;
     browser.tap(&id(button))?;
     let begun = Instant::now();
-    while !path.exists() {
+    while fs::metadata(&path).map_or(0, |file| file.len()) == 0 {
         ensure!(begun.elapsed() < PATIENCE, "{name} is not saved");
         std::thread::sleep(Duration::from_millis(20));
     }

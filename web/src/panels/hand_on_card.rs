@@ -11,14 +11,10 @@ use crate::entry::Entry;
 use crate::parts::el::{El, el};
 use crate::reckoner::links::Code;
 
-/// From so many rungs on, rows are lower: it stays one page.
-const MANY: usize = 7;
-
 /// The card.
 pub(super) fn card(bench: &BenchHandle, code: Option<&Code>) -> El {
     let words = bench.words();
     let texts = &words.hand_on.card_words;
-    let many = bench.climb.rungs().is_some_and(|plan| plan.rungs.len() >= MANY);
     let cautions = el("ul").each(texts.caution.iter().map(|text| el("li").text(*text)));
     let code = code.map(|code| {
         el("div")
@@ -27,7 +23,7 @@ pub(super) fn card(bench: &BenchHandle, code: Option<&Code>) -> El {
             .with(el("p").text(texts.scan))
     });
     el("div")
-        .class(if many { "card has-many" } else { "card" })
+        .class("card")
         .test("card")
         .with(el("h3").text(texts.title))
         .with(cautions)
