@@ -55,6 +55,11 @@
 //! | `looked-over`, `class-I`, `lead-0`, `verdict-plug-ohms`, `over-plug-ohms`, `skipped`, `forbidden` | checks, in `field-protective-ohms`, `field-insulation-ohms`, `field-plug-ohms` |
 //! | `use-bank-0`, `in-loop`, `to-readings` | the rung's lamps into the loop; on to what is seen |
 //! | `measure-first`, `waits`, `power-off`, `countdown`, `stop-counting` | after power, with `field-reservoir-farads`, `field-bleed-ohms`, `field-reservoir-volts`; `countdown` has `data-seconds` |
+//! | `tab-hand-on`, `hand-on` | link, code, card and files |
+//! | `with-ladder`, `with-log`, `link`, `copy`, `copied`, `share`, `link-too-long`, `hand-on-lost` | what goes along; the link |
+//! | `code`, `code-too-large` | the QR code, with `data-version` |
+//! | `print`, `no-rungs`, `card` | the card, which shows on paper only |
+//! | `save-csv`, `save-json`, `read-json`, `file`, `file-told`, `file-error` | kept readings in files |
 //! | `tab-expect`, `tab-curve`, `chart`, `crossings`, `bank-curve` | panels |
 
 pub mod advice;

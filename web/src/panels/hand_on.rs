@@ -26,7 +26,7 @@ const LONG: usize = 2000;
 pub fn hand_on(bench: &BenchHandle) -> El {
     el("section")
         .class("hand-on")
-        .set("aria-label", bench.words().hand_on.title)
+        .set("aria-label", bench.words().hand_on().title)
         .node(html! { <HandOn bench={bench.clone()} /> })
 }
 
@@ -100,7 +100,7 @@ fn view(
     told: &UseStateHandle<Option<Told>>,
 ) -> Html {
     let words = bench.words();
-    let texts = &words.hand_on;
+    let texts = words.hand_on();
     let tick = |testid: &'static str, text: String, on: bool, then: Along| {
         let along = along.setter();
         button("tick", testid, Callback::from(move |_| along.set(then)))
@@ -147,7 +147,7 @@ fn view(
 
 /// The link with what can be done with it.
 fn link_part(bench: &BenchHandle, link: &Link, copied: &UseStateHandle<Option<bool>>) -> El {
-    let texts = &bench.words().hand_on;
+    let texts = bench.words().hand_on();
     let part = el("div").class("link-part").with(el("label").set("for", LINK).text(texts.link));
     let Some(text) = &link.text else {
         return part.with(el("p").class("error").test("link-too-long").text(texts.too_long));
@@ -181,7 +181,7 @@ fn link_part(bench: &BenchHandle, link: &Link, copied: &UseStateHandle<Option<bo
 
 /// The card's button; the card itself is drawn on paper only.
 fn print_part(bench: &BenchHandle) -> El {
-    let texts = &bench.words().hand_on;
+    let texts = bench.words().hand_on();
     let none =
         bench.climb.rungs().is_none().then(|| el("p").class("told").test("no-rungs").text(texts.no_rungs));
     el("div")

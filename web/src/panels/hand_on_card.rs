@@ -14,12 +14,12 @@ use crate::reckoner::links::Code;
 /// The card.
 pub(super) fn card(bench: &BenchHandle, code: Option<&Code>) -> El {
     let words = bench.words();
-    let texts = &words.hand_on.card_words;
+    let texts = &words.hand_on().card_words;
     let cautions = el("ul").each(texts.caution.iter().map(|text| el("li").text(*text)));
     let code = code.map(|code| {
         el("div")
             .class("card-code")
-            .with(drawn(code, words.hand_on.code_means))
+            .with(drawn(code, words.hand_on().code_means))
             .with(el("p").text(texts.scan))
     });
     el("div")
@@ -40,7 +40,7 @@ fn equipment(bench: &Bench) -> String {
     let family = words.family(setup.plate.family()).name;
     let volts = words.numerals.quantity(setup.plate.volts(), "V");
     let with = [family, &describe::size(setup, words), &volts, &describe::supply(setup, words)];
-    crate::words::fill(words.hand_on.card_words.equipment, &with)
+    crate::words::fill(words.hand_on().card_words.equipment, &with)
 }
 
 /// The checks before power, to be filled in.
@@ -49,7 +49,7 @@ fn boxes(bench: &Bench) -> Vec<El> {
     let protective = (bench.climb.class == Class::One).then_some(Entry::ProtectiveOhms);
     let measured = protective.into_iter().chain([Entry::InsulationOhms, Entry::PlugOhms]);
     let name = |entry: Entry| words.slot(Slot::Entry(entry));
-    let tick = el("span").class("card-tick").text(words.hand_on.card_words.looked);
+    let tick = el("span").class("card-tick").text(words.hand_on().card_words.looked);
     let fields = measured.map(|entry| el("span").class("card-box").text(name(entry)).with(el("i").text("Ω")));
     core::iter::once(tick).chain(fields).collect()
 }
@@ -57,7 +57,7 @@ fn boxes(bench: &Bench) -> Vec<El> {
 /// The rungs with what healthy equipment shows, and the bare mains.
 fn rungs(bench: &Bench) -> El {
     let words = bench.words();
-    let texts = &words.hand_on.card_words;
+    let texts = &words.hand_on().card_words;
     let cell = |text: String| el("td").text(text);
     let empty = || el("td").class("card-empty");
     let head = el("tr").each(texts.head.iter().map(|text| el("th").set("scope", "col").text(*text)));

@@ -6,7 +6,7 @@ use crate::reckoner::links::{Code, Link};
 
 /// The code of a link, or that it would be too large.
 pub(super) fn code(bench: &Bench, link: &Link) -> El {
-    let texts = &bench.words().hand_on;
+    let texts = bench.words().hand_on();
     let part = el("div").class("code-part").with(el("h2").text(texts.code));
     match &link.code {
         Some(code) => {

@@ -30,7 +30,7 @@ pub(super) enum Told {
 
 /// The part of the panel.
 pub(super) fn files(bench: &BenchHandle, told: &UseStateHandle<Option<Told>>) -> El {
-    let texts = &bench.words().hand_on;
+    let texts = bench.words().hand_on();
     let none = bench.seen.log.records.is_empty();
     let save = |testid: &'static str, text: &'static str, kind: Kind| {
         let (bench, told) = (bench.clone(), told.setter());
@@ -69,7 +69,7 @@ pub(super) fn files(bench: &BenchHandle, told: &UseStateHandle<Option<Told>>) ->
 
 fn lines(bench: &Bench, told: Option<&Told>) -> Vec<El> {
     let words = bench.words();
-    let texts = &words.hand_on;
+    let texts = words.hand_on();
     let megabytes = |bytes: f64| words.numerals.fixed(bytes / 1e6, 0);
     let good = |text: String| vec![el("p").class("hint").text(text)];
     let bad = |text: String| vec![el("p").class("error").test("file-error").text(text)];

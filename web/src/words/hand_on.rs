@@ -91,14 +91,14 @@ mod tests {
     fn an_impossible_number_is_told_with_its_range() {
         let words = english();
         let error = InputError::OutOfRange { field: Field::BankVolts, value: 1e300, low: 0.0, high: 1000.0 };
-        let told = words.hand_on.refused(2, 7, &Wrong::Number(error), words);
+        let told = words.hand_on().refused(2, 7, &Wrong::Number(error), words);
         assert!(told.contains('2') && told.contains('7') && told.contains("1000\u{a0}V"), "{told}");
-        let other = words.hand_on.refused(
+        let other = words.hand_on().refused(
             1,
             1,
             &Wrong::Number(InputError::NotFinite { field: Field::Seconds }),
             words,
         );
-        assert!(other.ends_with(words.hand_on.wrong[3]), "{other}");
+        assert!(other.ends_with(words.hand_on().wrong[3]), "{other}");
     }
 }

@@ -126,6 +126,11 @@ impl Words {
         self.later.get().copied().unwrap_or(&NONE)
     }
 
+    /// Texts of the panel that hands a bench on.
+    pub fn hand_on(&self) -> &'static HandOnWords {
+        &self.later().hand_on
+    }
+
     /// Texts of the switch-on panel.
     pub fn replay(&self) -> &'static ReplayWords {
         &self.later().replay
