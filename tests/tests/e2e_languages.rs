@@ -1,0 +1,170 @@
+//! The page in each of its languages, without a network: cautions, every screen, an editor; nothing of the English
+//! left over, nothing wider than a small phone, nothing for the accessibility checker to find.
+
+use std::collections::HashSet;
+
+use anyhow::{Context, Result, ensure};
+use lampladder_tests::accessibility;
+use lampladder_tests::browser::Browser;
+use lampladder_tests::walk::every_screen;
+use lampladder_tests::{page, surroundings};
+use xtask::words::catalogue;
+
+/// The languages beside English.
+const OTHERS: [&str; 3] = ["de", "fr", "es"];
+/// The list of languages in the header.
+const LIST: &str = "[data-testid=language]";
+/// All that can be read on the screen, fields' hints and names for those who hear it among it.
+const READABLE: &str = "return [document.title, document.body.innerText, \
+    ...[...document.querySelectorAll('[aria-label]')].map((e) => e.getAttribute('aria-label'))].join('\\n')";
+
+/// Words that do not fit into a line and go on in the next: by the boxes of each word's letters.
+const BROKEN: &str = "const all = []; \
+    const walk = document.createTreeWalker(document.body, NodeFilter.SHOW_TEXT); \
+    for (let node; (node = walk.nextNode());) { \
+      if (!node.parentElement.checkVisibility()) continue; \
+      for (const word of node.data.matchAll(/[\\p{L}\\p{N}]{2,}/gu)) { \
+        const range = document.createRange(); \
+        range.setStart(node, word.index); range.setEnd(node, word.index + word[0].length); \
+        const tops = new Set([...range.getClientRects()].map((box) => Math.round(box.top))); \
+        if (tops.size > 1) all.push(word[0]); \
+      } \
+    } \
+    return all";
+
+fn catalogue_of(tag: &str) -> Result<Vec<(String, String)>> {
+    let file = std::path::Path::new(env!("CARGO_MANIFEST_DIR")).join(format!("../web/words/{tag}.txt"));
+    let text = std::fs::read_to_string(&file).with_context(|| format!("{}", file.display()))?;
+    let entries = catalogue::entries(&text).map_err(|bad| anyhow::anyhow!("{tag}, line {}", bad.line))?;
+    Ok(entries.into_iter().map(|(key, text)| (key.to_owned(), text.to_owned())).collect())
+}
+
+/// English texts that this language says otherwise: the longest piece between the places of each, if it is long enough
+/// to be told from a number or a name.
+fn english_only(tag: &str) -> Result<Vec<String>> {
+    let others: HashSet<String> = catalogue_of(tag)?.into_iter().map(|(_, text)| text).collect();
+    let pieces =
+        catalogue_of("en")?.into_iter().filter(|(_, text)| !others.contains(text)).filter_map(|(_, text)| {
+            let piece = text.split(['{', '}', '|']).max_by_key(|piece| piece.len())?.trim().to_owned();
+            (piece.len() >= 12 && piece.contains(' ')).then_some(piece)
+        });
+    Ok(pieces.collect())
+}
+
+/// Chooses a language over the cautions, as a person does who cannot read the one that is there.
+fn choose_over_cautions(browser: &Browser, tag: &str) -> Result<()> {
+    browser.tap(&format!("[data-language={tag}]"))?;
+    browser.until(&format!(
+        "return document.documentElement.lang === '{tag}' && \
+         document.querySelector('#cautions-{tag}').getBoundingClientRect().height > 0"
+    ))
+}
+
+fn look(browser: &Browser, tag: &str, screen: &str, english: &[String]) -> Result<()> {
+    let lang = browser.script("return document.documentElement.lang")?;
+    ensure!(lang == tag, "{screen}: the document says {lang}");
+    let read = browser.script(READABLE)?;
+    let read = read.as_str().context("text")?;
+    for text in english {
+        ensure!(!read.contains(text.as_str()), "{tag}, {screen}: still English: {text}");
+    }
+    for place in ["{0}", "{1}", "{2}", "{3}", "{4}"] {
+        ensure!(!read.contains(place), "{tag}, {screen}: a place was left empty:\n{read}");
+    }
+    let widths = browser.script(
+        "const e = document.scrollingElement; return [e.scrollWidth, e.clientWidth, \
+         [...document.querySelectorAll('button, .tab, .choice, .cell > *')].filter((e) => e.scrollWidth > e.clientWidth + 1 \
+           && e.clientWidth > 0 && getComputedStyle(e).display !== 'inline').map((e) => e.innerText)]",
+    )?;
+    ensure!(widths[0].as_f64() <= widths[1].as_f64(), "{tag}, {screen}: wider than the phone: {widths}");
+    ensure!(
+        widths[2].as_array().is_some_and(Vec::is_empty),
+        "{tag}, {screen}: does not fit where it stands: {}",
+        widths[2]
+    );
+    let broken = browser.script(BROKEN)?;
+    ensure!(broken.as_array().is_some_and(Vec::is_empty), "{tag}, {screen}: broken words: {broken}");
+    browser.picture(&format!("{tag}-{screen}"))
+}
+
+fn every_screen_in(tag: &str) -> Result<()> {
+    let mut site = surroundings::site()?;
+    let browser = Browser::start()?;
+    browser.resize(360, 640)?;
+    browser.open(&site.url())?;
+    browser.until_offline_ready()?;
+    site.stop();
+    browser.reload()?;
+    choose_over_cautions(&browser, tag)?;
+    let english = english_only(tag)?;
+    ensure!(english.len() > 300, "only {} texts to look for", english.len());
+    every_screen(&browser, &site.url(), &mut |screen| {
+        look(&browser, tag, screen, &english)?;
+        // High enough that no bar at its edge covers half a button, which axe-core takes for a small one.
+        browser.resize(360, 4000)?;
+        for scheme in ["light", "dark"] {
+            browser.prefer(scheme)?;
+            accessibility::check(&browser, &format!("{tag}, {screen}, {scheme}"))?;
+        }
+        browser.prefer("light")?;
+        browser.resize(360, 640)
+    })?;
+    page::no_complaints(&browser)
+}
+
+#[test]
+fn german_without_a_network() -> Result<()> {
+    every_screen_in("de")
+}
+
+#[test]
+fn french_without_a_network() -> Result<()> {
+    every_screen_in("fr")
+}
+
+#[test]
+fn spanish_without_a_network() -> Result<()> {
+    every_screen_in("es")
+}
+
+#[test]
+fn another_language_takes_effect_at_once_and_loses_nothing_that_was_typed() -> Result<()> {
+    let site = surroundings::site()?;
+    let browser = Browser::start()?;
+    page::enter(&browser, &site.url())?;
+    let reminder = browser.text(page::REMINDER)?;
+    let css = page::open_field(&browser, "lamp-watts")?;
+    browser.fill(&css, "12.5x")?;
+    page::close(&browser)?;
+    let mut seen = HashSet::from([reminder.clone()]);
+    for tag in OTHERS {
+        browser.choose(LIST, tag)?;
+        let expected =
+            catalogue_of(tag)?.into_iter().find(|(key, _)| key == "reminder").context("a reminder")?.1;
+        browser.until(&format!(
+            "return document.querySelector('{}').innerText === {}",
+            page::REMINDER,
+            serde_json::Value::from(expected.as_str())
+        ))?;
+        ensure!(seen.insert(expected), "{tag} reads like another language");
+        ensure!(browser.script("return document.documentElement.lang")? == tag);
+        let css = page::open_field(&browser, "lamp-watts")?;
+        ensure!(browser.value(&css)? == "12.5x", "{tag}: what was typed has gone");
+        page::close(&browser)?;
+    }
+    // It is kept for the next visit, and a mended field is read with either decimal mark.
+    browser.reload()?;
+    page::accept(&browser)?;
+    ensure!(browser.script("return document.documentElement.lang")? == "es");
+    page::fill(&browser, "lamp-watts", "62,5")?;
+    page::close(&browser)?;
+    browser.choose(LIST, "en")?;
+    browser.until(&format!(
+        "return document.querySelector('{}').innerText === {}",
+        page::REMINDER,
+        serde_json::Value::from(reminder)
+    ))?;
+    let css = page::open_field(&browser, "lamp-watts")?;
+    ensure!(browser.value(&css)?.replace(',', ".") == "62.5");
+    Ok(())
+}
