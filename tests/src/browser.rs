@@ -8,6 +8,7 @@ use std::time::{Duration, Instant};
 
 use anyhow::{Context, Result, bail};
 use fantoccini::elements::Element;
+use fantoccini::wd::WindowHandle;
 use fantoccini::{Client, ClientBuilder, Locator};
 use hyper_util::client::legacy::connect::HttpConnector;
 use serde_json::{Value, json};
@@ -120,6 +121,37 @@ impl Browser {
     /// When it does not load.
     pub fn reload(&self) -> Result<()> {
         self.wait_for(self.client.refresh())?.context("the page does not load again")
+    }
+
+    /// Opens another tab of the same profile and goes on there; gives the one that was left.
+    ///
+    /// # Errors
+    /// When the browser opens none.
+    pub fn open_tab(&self) -> Result<WindowHandle> {
+        let left = self.tab()?;
+        let opened = self.wait_for(self.client.new_window(true))??;
+        self.turn_to(opened.handle)?;
+        self.resize(360, 640)?;
+        Ok(left)
+    }
+
+    /// The tab in front.
+    ///
+    /// # Errors
+    /// When the browser is gone.
+    pub fn tab(&self) -> Result<WindowHandle> {
+        Ok(self.wait_for(self.client.window())??)
+    }
+
+    /// Goes on in another tab.
+    ///
+    /// # Errors
+    /// When it is gone.
+    pub fn turn_to(&self, tab: WindowHandle) -> Result<()> {
+        self.wait_for(self.client.switch_to_window(tab))??;
+        // A tab that lies behind another draws no frames.
+        self.devtools("Page.bringToFront", json!({}))?;
+        Ok(())
     }
 
     /// The address in the address bar.

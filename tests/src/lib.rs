@@ -8,6 +8,7 @@
 pub mod accessibility;
 pub mod browser;
 pub mod contrast;
+pub mod copy;
 pub mod devtools;
 mod driver;
 pub mod folder;

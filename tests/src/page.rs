@@ -26,6 +26,8 @@ pub const LAMP_CAUTION: &str = "[data-testid=lamp-caution]";
 pub const ADVICE: &str = "[data-testid=advice]";
 /// The current, in the middle of the loop.
 pub const AMPS: &str = "[data-testid=result-amps]";
+/// The panel that is in front, in the list of panels.
+pub const FRONT: &str = "[data-testid^=tab-][aria-current=page]";
 /// The bar with the voltages across lamps and equipment, in this order.
 pub const VOLTAGES: &str = "[data-testid=voltage-bar]";
 
@@ -60,10 +62,11 @@ pub fn enter(browser: &Browser, url: &str) -> Result<()> {
 /// When no answer comes.
 pub fn accept(browser: &Browser) -> Result<()> {
     let start = Instant::now();
-    while !browser.sees(AMPS)? {
+    // The panel in front may be any: it is the one of the last visit.
+    while !browser.sees(FRONT)? {
         if start.elapsed() > PATIENCE {
             // This says why.
-            return browser.see(AMPS);
+            return browser.see(FRONT);
         }
         // The cautions stand in the HTML; until the program has started, a tap does nothing, and where they have
         // been accepted before, the program takes them away, maybe in the middle of the tap.

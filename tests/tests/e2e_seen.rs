@@ -163,7 +163,7 @@ fn a_kept_reading_is_there_after_a_reload_and_each_change_can_be_taken_back() ->
 }
 
 /// All records as they are in the database.
-const ALL_STORED: &str = "const done = arguments[arguments.length - 1]; const open = indexedDB.open('lampladder.log'); \
+const ALL_STORED: &str = "const done = arguments[arguments.length - 1]; const open = indexedDB.open('lampladder.log ' + new URL('./', location.href).pathname); \
     open.onerror = () => done(null); \
     open.onsuccess = () => { const db = open.result; \
       const all = db.transaction('readings').objectStore('readings').getAll(); \
@@ -189,7 +189,7 @@ fn records_of_a_newer_page_are_left_alone_and_told_of() -> Result<()> {
     read(&browser, Kind::BankVolts, "28")?;
     browser.tap(&part("keep"))?;
     stored(&browser, "", 1)?;
-    let put = "const done = arguments[arguments.length - 1]; const open = indexedDB.open('lampladder.log'); \
+    let put = "const done = arguments[arguments.length - 1]; const open = indexedDB.open('lampladder.log ' + new URL('./', location.href).pathname); \
         open.onsuccess = () => { const db = open.result; const t = db.transaction('readings', 'readwrite'); \
           t.objectStore('readings').put({version: 2, id: 5, wonder: [1, 2]}); \
           t.objectStore('readings').put({version: 1, id: 6, damaged: true}); \

@@ -32,13 +32,14 @@ pub fn App(props: &AppProps) -> Html {
     let first = props.bench.clone();
     let bench: BenchHandle = use_reducer(move || first);
     let kept_frame = use_mut_ref(|| None::<NextFrame>);
+    let kept = use_mut_ref(|| None::<(String, u32)>);
     {
         let dispatcher = bench.dispatcher();
         // Typing changes the set-up many times a second: the address follows once a frame.
         use_effect_with(
-            (bench.setup.clone(), bench.edited, bench.notes.clone(), bench.link.clone()),
-            move |(setup, edited, notes, link)| {
-                let (setup, edited) = (setup.clone(), *edited);
+            (bench.setup.clone(), bench.edited, bench.notes.clone(), bench.link.clone(), bench.emptied),
+            move |(setup, edited, notes, link, emptied)| {
+                let (setup, edited, emptied) = (setup.clone(), *edited, *emptied);
                 // A bad link stays in the address until something is changed, and so does one that holds more.
                 let bad = notes.iter().any(|note| matches!(note, Note::BadLink(_)));
                 let held = !edited && (bad || link.is_some());
@@ -47,9 +48,15 @@ pub fn App(props: &AppProps) -> Html {
                     if !held && fragment::read().as_deref() != Some(text.as_str()) {
                         fragment::write(&text);
                     }
-                    if edited && storage::write(storage::SETUP, &text).is_err() {
+                    // Only what is new here: another window may have kept something since.
+                    let new = edited.then_some((text, emptied));
+                    if *kept.borrow() != new
+                        && let Some((text, _)) = &new
+                        && storage::write(storage::SETUP, text).is_err()
+                    {
                         dispatcher.dispatch(Msg::Tell(Note::NothingKept));
                     }
+                    *kept.borrow_mut() = new;
                 });
             },
         );
@@ -94,7 +101,7 @@ pub fn App(props: &AppProps) -> Html {
             Stage::Unread => {}
             Stage::Reread => input::focus(&cautions::title()),
             Stage::Bench => {
-                storage::keep_for_visit(storage::ACCEPTED);
+                storage::keep_for_visit(storage::ACCEPTED, "1");
                 input::focus(CAUTIONS_BUTTON);
             }
         }

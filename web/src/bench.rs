@@ -120,6 +120,30 @@ pub enum Note {
     LinkHalfRead,
     /// The texts of the chosen language cannot be fetched.
     Wordless,
+    /// A new version of the page is ready.
+    New,
+    /// The browser has emptied the storage.
+    Emptied,
+    /// Another window of the page has changed the set-up or the position on the ladder.
+    Elsewhere,
+}
+
+/// What windows of the page share through the storage.
+#[derive(Debug, Clone, Copy, PartialEq, Eq)]
+pub enum Shared {
+    /// The set-up.
+    Setup,
+    /// The lamps that are owned.
+    Stock,
+    /// The position on the ladder.
+    Climb,
+}
+
+impl Note {
+    /// Whether it stays true whatever is typed.
+    pub const fn lasts(self) -> bool {
+        matches!(self, Self::NothingKept | Self::New | Self::Emptied)
+    }
 }
 
 /// The state.
@@ -165,6 +189,8 @@ pub struct Bench {
     pub stage: Stage,
     /// What is to be told, newest last.
     pub notes: Vec<Note>,
+    /// How many times the browser has emptied the storage: everything is kept again each time.
+    pub emptied: u32,
     /// The texts, in the language that is read.
     pub words: &'static Words,
     /// The link that was opened, where it may hold more than a set-up, until something is changed.
@@ -248,6 +274,12 @@ pub enum Msg {
     Reclaim(Box<Mine>),
     /// Tell this.
     Tell(Note),
+    /// The browser has emptied the storage.
+    Emptied,
+    /// This is what was typed before the page was loaded anew.
+    Restore(String),
+    /// Another window of the page has kept a text under this name.
+    Elsewhere(Shared, String),
     /// It has been read.
     Dismiss(Note),
 }
@@ -280,6 +312,7 @@ impl Bench {
             theme: Theme::Auto,
             stage: Stage::Unread,
             notes: Vec::new(),
+            emptied: 0,
             words,
             link: None,
         })
@@ -325,8 +358,15 @@ impl Bench {
     /// The conditions in which the equipment hunts and nothing is known yet of how the lamps pulse.
     pub fn unpulsed(&self) -> Vec<Condition> {
         let known = |condition: &Condition| self.pulses.iter().any(|(other, _)| other == condition);
+        let mut unknown = self.hunting();
+        unknown.retain(|condition| !known(condition));
+        unknown
+    }
+
+    /// The conditions in which the equipment is known to hunt.
+    pub fn hunting(&self) -> Vec<Condition> {
         let hunts = |condition: &Condition| self.answers.outcome(*condition) == Some(Outcome::Hunts);
-        self.answers.asked().filter(|condition| hunts(condition) && !known(condition)).collect()
+        self.answers.asked().filter(hunts).collect()
     }
 
     /// How the lamps pulse in a condition, where that is known.

@@ -42,6 +42,8 @@ pub struct Drawer {
     pub fits: Option<Fits>,
     /// Whether the person has changed the stock since it was opened.
     pub edited: bool,
+    /// The stock before the last of a kind was taken out that takes more than a tap to put in again.
+    before: Option<Rc<Stock>>,
 }
 
 /// What happens to the drawer.
@@ -55,6 +57,8 @@ pub enum Shelf {
     MoreOf(usize),
     /// One less.
     LessOf(usize),
+    /// The last kind that was taken out comes back.
+    PutBack,
     /// Opens a form, or closes it.
     Form(Form),
     /// Puts the typed lamp in.
@@ -102,6 +106,7 @@ impl Drawer {
             Ok(stock) => {
                 self.refused = None;
                 self.edited = true;
+                self.before = None;
                 self.stock = Rc::new(stock);
             }
             Err(error) => self.refused = Some(error),
@@ -116,7 +121,28 @@ impl Drawer {
     }
 
     fn less(&mut self, kind: usize) {
+        let before = Rc::clone(&self.stock);
         self.change(|other, owned| if other == kind { owned.saturating_sub(1) } else { owned }, None);
+        if self.stock.kinds().len() < before.kinds().len() {
+            self.before = Some(before);
+        }
+    }
+
+    /// The kind that would come back.
+    pub fn gone(&self) -> Option<&Lamp> {
+        let had = self.before.as_ref()?.kinds().iter().map(Owned::lamp);
+        had.into_iter().find(|lamp| self.stock.kinds().iter().all(|owned| owned.lamp() != *lamp))
+    }
+
+    /// Another window of the page has changed the stock. A lamp that is being measured may have moved in it.
+    pub fn share(&mut self, stock: Stock) {
+        if let Form::Measure(kind) = self.form {
+            let measured = self.stock.kinds().get(kind).map(Owned::lamp);
+            let place = stock.kinds().iter().position(|owned| Some(owned.lamp()) == measured);
+            self.form = place.map_or(Form::Another, Form::Measure);
+        }
+        self.before = None;
+        self.stock = Rc::new(stock);
     }
 }
 
@@ -151,6 +177,12 @@ impl Bench {
                 }
             }
             Shelf::LessOf(kind) => self.drawer.less(kind),
+            Shelf::PutBack => {
+                if let Some(before) = self.drawer.before.take() {
+                    self.drawer.stock = before;
+                    self.drawer.edited = true;
+                }
+            }
             Shelf::Form(form) => self.turn_to_form(form),
             Shelf::Put => self.put(),
             Shelf::Fits(fits) => self.drawer.fits = Some(fits),

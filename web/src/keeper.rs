@@ -5,6 +5,7 @@ use std::rc::Rc;
 use yew::{hook, use_effect_with};
 
 use crate::bench::{BenchHandle, Msg};
+use crate::browser::fresh;
 use crate::browser::reckoner::ask;
 use crate::log::{News, Order, changes};
 use crate::reckoner::{Answer, Ask};
@@ -15,11 +16,13 @@ use crate::seen::Deed;
 pub fn use_keeper(bench: &BenchHandle) {
     let log = &bench.seen.log;
     let dispatcher = bench.dispatcher();
-    let state = (log.wanted, log.records.clone(), log.stored.clone());
-    use_effect_with(state, move |(wanted, records, stored)| {
-        let order = match stored {
-            None => Order::List,
-            Some(stored) => Order::Change(changes(stored, records)),
+    let state = (log.wanted, log.records.clone(), log.stored.clone(), log.stale);
+    use_effect_with(state, move |(wanted, records, stored, stale)| {
+        let order = stored.as_ref().map(|stored| Order::Change(changes(stored, records)));
+        let order = match order {
+            // What is changed here goes first: it would be lost in what is stored.
+            Some(Order::Change(changes)) if *stale && changes.is_empty() => Order::List,
+            other => other.unwrap_or(Order::List),
         };
         if !wanted || order == Order::Change(Vec::new()) {
             return;
@@ -29,7 +32,10 @@ pub fn use_keeper(bench: &BenchHandle) {
             let deed = match answer {
                 Ok(Answer::Log(news)) => match *news {
                     News::Listed(all, foreign) => Deed::Learn(all, foreign),
-                    News::Stored => Deed::Stored(Rc::clone(&records)),
+                    News::Stored => {
+                        fresh::say(fresh::KEPT);
+                        Deed::Stored(Rc::clone(&records))
+                    }
                     News::Refused(trouble) => Deed::Trouble(trouble),
                 },
                 _ => Deed::Trouble(crate::log::Trouble::Lost),

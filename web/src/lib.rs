@@ -17,7 +17,7 @@
 //! | `cell-healthy`, `cell-overloaded`, `cell-shorted` | with `data-amps`, `data-bank-volts`, `data-load-volts`, `data-glow` |
 //! | `advice`, `assumes`, `stale-note`, `lamp-caution`, `warning`, `too-powerful` | the sentence to act on and what stands around it |
 //! | `life` | cells of lamp life in the details |
-//! | `note`, `dismiss`, `use-kept` | notes |
+//! | `note`, `dismiss`, `use-kept`, `use-new` | notes; takes over what is kept, a new version |
 //! | `sheet`, `done` | the editor |
 //! | `field-*`, `error-*`, `step-*-more`, `step-*-less` | `supply-volts`, `supply-hertz`, `supply-ohms`, `plate-volts`, `plate-watts`, `plate-amps`, `plate-volt-amps`, `plate-power-factor`, `detail-start-volts` and so on, `lamp-volts`, `lamp-watts`, `lamp-lumens`, `lamp-cold-ohms`, `point-0-volts`, `point-0-amps` |
 //! | `quick-volts-230`, `quick-hertz-50`, `quick-hertz-0`, `follow-supply` | one tap in the supply's editor |
@@ -48,6 +48,7 @@
 //! | `step-lamps`, `step-checks`, `step-rung-0`, `step-mains`, `step-after` | heads of the steps, with `data-progress` `done`, `now` or `next` |
 //! | `go-on`, `back-0`, `afresh` | from step to step |
 //! | `size-60-more`, `size-60-less`, `size-other-0-more` | lamps that are owned: a size in the shops, a kind of the stock |
+//! | `put-back` | puts the last kind in again that was tapped away |
 //! | `another-lamp`, `form-another`, `put-lamp`, `drawer-refused` | a lamp by its rating, in `field-spare-lamp-watts` and so on, and `field-count` |
 //! | `measure`, `measure-0`, `form-measure`, `shrinkage` | measuring one of a kind |
 //! | `unknown-lamp`, `form-unknown`, `fit-0`, `no-fit` | a lamp without a legible rating, by `field-unknown-cold-ohms`, `-volts`, `-amps`, `-printed-volts` |
@@ -69,6 +70,7 @@ pub mod bench;
 pub mod browser;
 pub mod charts;
 pub mod climb;
+mod custody;
 pub mod describe;
 pub mod draft;
 pub mod drawer;
@@ -91,10 +93,11 @@ pub mod start;
 pub mod step;
 pub mod story;
 pub mod theatre;
+pub mod visit;
 pub mod words;
 
 use app::{App, AppProps};
-use browser::{cautions, language, theme, worker};
+use browser::{cautions, fresh, language, theme};
 use words::Words;
 
 /// Starts the page, as soon as its texts are there; without them the cautions stand alone and say so.
@@ -112,5 +115,5 @@ fn begin(words: &'static Words) {
     theme::apply(bench.theme);
     cautions::started();
     yew::Renderer::<App>::with_root_and_props(root, AppProps { bench }).render();
-    worker::register();
+    fresh::say(fresh::STARTED);
 }

@@ -104,6 +104,8 @@ pub struct Log {
     pub stored: Option<Records>,
     /// Why it is not stored.
     pub trouble: Option<Trouble>,
+    /// Whether the store is to be asked again: another window of the page may have changed it.
+    pub stale: bool,
     /// Readings from elsewhere, which wait until it is known what the store holds.
     pub coming: Vec<Record>,
     /// Whether they come from a link.
@@ -131,6 +133,18 @@ impl Record {
 }
 
 impl Log {
+    /// Somebody looks at it again.
+    pub fn look_again(&mut self) {
+        self.stale = self.stored.is_some();
+    }
+
+    /// The store has been emptied: all is to be put in again.
+    pub fn store_again(&mut self) {
+        if self.stored.is_some() {
+            self.stored = Some(Records::default());
+        }
+    }
+
     /// Puts in a record; a number that is taken moves on to the next.
     pub fn add(&mut self, mut record: Record) {
         while self.records.iter().any(|other| other.id == record.id) {
@@ -185,13 +199,22 @@ impl Log {
         self.settle();
     }
 
-    /// Takes in what is stored; what has been kept here meanwhile stays.
+    /// Takes in what is stored; what has been kept, changed or deleted here meanwhile stays so.
     pub fn learn(&mut self, stored: Vec<Record>, foreign: usize) {
         self.foreign = foreign;
         self.trouble = None;
+        self.stale = false;
+        let known = self.stored.take().unwrap_or_default();
         let stored: Vec<Rc<Record>> = stored.into_iter().map(Rc::new).collect();
+        let same = |all: &[Rc<Record>], id: f64| all.iter().position(|other| other.id == id);
+        // What is here as it was stored goes with the store.
+        let untouched = |record: &Rc<Record>| known.contains(record);
+        if self.records.iter().any(|record| untouched(record) && !stored.contains(record)) {
+            Rc::make_mut(&mut self.records).retain(|record| !untouched(record) || stored.contains(record));
+        }
         for record in &stored {
-            if self.records.iter().all(|other| other.id != record.id) {
+            let deleted_here = known.contains(record);
+            if same(&self.records, record.id).is_none() && !deleted_here {
                 self.insert(Rc::clone(record));
             }
         }
@@ -261,6 +284,37 @@ pub(crate) mod tests {
         assert!(changes(&stored, &log.records).is_empty());
         log.delete(3.0);
         assert_eq!(changes(&stored, &log.records), [Change::Delete(3.0)]);
+    }
+
+    #[test]
+    fn what_another_window_has_changed_comes_in_and_what_is_changed_here_stays() {
+        let noted = |id: f64, note: &str| Record { note: note.to_owned(), ..record(id) };
+        let mut log = Log::default();
+        log.learn([1.0, 2.0, 3.0, 4.0, 5.0].map(record).to_vec(), 0);
+        log.note(1.0, String::from("mine"));
+        log.delete(2.0);
+        log.add(record(7.0));
+        log.look_again();
+        assert!(log.stale);
+        // There: 3 is deleted, 4 is written beside, 6 is new.
+        log.learn(vec![record(1.0), record(2.0), noted(4.0, "theirs"), record(5.0), record(6.0)], 0);
+        assert_eq!((ids(&log), log.stale), (vec![7.0, 6.0, 5.0, 4.0, 1.0], false));
+        let notes: Vec<&str> = log.records.iter().map(|record| record.note.as_str()).collect();
+        assert_eq!(notes, ["", "", "", "theirs", "mine"]);
+        let stored = log.stored.clone().expect("known");
+        let left = [Change::Put(record(7.0)), Change::Put(noted(1.0, "mine")), Change::Delete(2.0)];
+        assert_eq!(changes(&stored, &log.records), left);
+    }
+
+    #[test]
+    fn an_emptied_store_gets_everything_again() {
+        let mut log = Log::default();
+        log.store_again();
+        assert!(log.stored.is_none(), "what has not been read cannot be put again");
+        log.learn(vec![record(1.0), record(2.0)], 0);
+        log.store_again();
+        let stored = log.stored.clone().expect("known to be empty");
+        assert_eq!(changes(&stored, &log.records).len(), 2);
     }
 
     #[test]

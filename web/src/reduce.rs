@@ -9,13 +9,14 @@ use lampladder_core::setup::Setup;
 use yew::Reducible;
 
 use crate::answers::Answers;
-use crate::bench::{Bench, MOST_POINTS, Msg, Note, Part, Stage};
-use crate::climb::Move;
+use crate::bench::{Bench, MOST_POINTS, Msg, Note, Part, Shared, Stage};
+use crate::climb::{Move, equipment};
 use crate::draft::{Draft, Fault, LampDraft, Place, Slot};
 use crate::drawer::Form;
 use crate::meter::written;
 use crate::seen::Deed;
 use crate::step;
+use crate::visit;
 use crate::words::Words;
 
 impl Bench {
@@ -47,7 +48,10 @@ impl Bench {
             Msg::Close => self.turn_to(None),
             Msg::ChooseFamily => self.choosing = !self.choosing,
             Msg::Why => self.why = !self.why,
-            Msg::Go(tab) => self.tab = tab,
+            Msg::Go(tab) => {
+                self.tab = tab;
+                self.seen.log.look_again();
+            }
             Msg::Wish(wish) => self.wish = wish,
             Msg::Seen(deed) => {
                 let numerals = self.words().numerals;
@@ -98,6 +102,16 @@ impl Bench {
             Msg::Refuse(kind) => self.refused = Some(kind),
             Msg::Link(text) => return self.open_link(&text),
             Msg::Tell(note) => self.tell(note),
+            Msg::Emptied => {
+                self.emptied += 1;
+                self.edited = true;
+                self.drawer.edited = true;
+                self.climb.edited = true;
+                self.seen.log.store_again();
+                self.tell(Note::Emptied);
+            }
+            Msg::Restore(text) => return visit::restored(self, &text),
+            Msg::Elsewhere(shared, text) => self.hear(shared, &text),
             Msg::Dismiss(note) => self.notes.retain(|other| *other != note),
             edit => {
                 self.edit(edit);
@@ -105,6 +119,24 @@ impl Bench {
             }
         }
         self
+    }
+
+    /// Another window has kept this. Lamps are taken over; a set-up and a position are told of and stay as they are here.
+    fn hear(&mut self, shared: Shared, text: &str) {
+        let same = match shared {
+            Shared::Setup => text == link::encode(&self.setup),
+            Shared::Climb => text == self.climb.kept(&equipment(&self.setup)),
+            Shared::Stock => {
+                if let Ok(stock) = link::decode_stock(text) {
+                    self.drawer.share(stock);
+                }
+                return;
+            }
+        };
+        self.notes.retain(|note| *note != Note::Elsewhere);
+        if !same {
+            self.tell(Note::Elsewhere);
+        }
     }
 
     fn turn_to(&mut self, part: Option<Part>) {
@@ -160,7 +192,7 @@ impl Bench {
             self.lamp = Place::default();
         }
         self.refused = None;
-        self.notes.retain(|note| *note == Note::NothingKept);
+        self.notes.retain(|note| note.lasts());
         self
     }
 
@@ -256,7 +288,7 @@ impl Bench {
     /// Takes what is typed as the set-up if it is one; else keeps the last valid one and says what is wrong.
     fn reread(&mut self) {
         self.edited = true;
-        self.notes.retain(|note| *note == Note::NothingKept);
+        self.notes.retain(|note| note.lasts());
         match self.draft.read() {
             Ok(setup) => match Answers::of(&setup, self.condition) {
                 Ok(answers) => {

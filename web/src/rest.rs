@@ -7,8 +7,9 @@ use yew::{Html, Properties, function_component, hook, html, use_effect_with};
 
 use crate::bench::{BenchHandle, Msg, Note, Tab};
 use crate::browser::window::{EverySecond, NextFrame, clock};
-use crate::browser::{language, reckoner, storage};
+use crate::browser::{fresh, language, reckoner, storage};
 use crate::climb::{Move, equipment};
+use crate::custody::use_custody;
 use crate::drawer::Shelf;
 use crate::keeper::use_keeper;
 use crate::meter;
@@ -41,6 +42,7 @@ pub fn Rest(props: &RestProps) -> Html {
     use_ladder(bench);
     use_meter(bench);
     use_keeper(bench);
+    use_custody(bench);
     use_opening(bench);
     use_texts(bench);
     if !bench.words.is_whole() {
@@ -92,11 +94,13 @@ fn use_answers(bench: &BenchHandle) {
     }
     {
         let dispatcher = bench.dispatcher();
-        use_effect_with((bench.setup.clone(), bench.unpulsed()), move |(setup, conditions)| {
+        let conditions = bench.unpulsed();
+        // Once a set-up, and again when more conditions are known to hunt; an answer is no reason to ask anew.
+        use_effect_with((bench.setup.clone(), bench.hunting()), move |(setup, _)| {
             if conditions.is_empty() {
                 return;
             }
-            let wanted = Wanted { setup: link::encode(setup), conditions: conditions.clone() };
+            let wanted = Wanted { setup: link::encode(setup), conditions };
             // Without the reckoner it is said that the lamps pulse, and no more.
             reckoner::ask(Ask::Pulses(wanted), move |answer| {
                 if let Ok(Answer::Pulse(news)) = answer {
@@ -111,7 +115,7 @@ fn use_answers(bench: &BenchHandle) {
 #[hook]
 fn use_meter(bench: &BenchHandle) {
     let dispatcher = bench.dispatcher();
-    use_effect_with(bench.seen.spec, move |spec| {
+    use_effect_with((bench.seen.spec, bench.emptied), move |(spec, _)| {
         let kept = storage::read(storage::METER);
         let text = meter::kept(spec);
         // The usual meter needs no keeping, unless it takes the place of another.
@@ -131,20 +135,21 @@ fn use_ladder(bench: &BenchHandle) {
         let dispatcher = bench.dispatcher();
         let stock = bench.drawer.edited.then(|| link::encode_stock(&bench.drawer.stock));
         let climb = bench.climb.edited.then(|| bench.climb.kept(&equipment(&bench.setup)));
-        use_effect_with([(storage::STOCK, stock), (storage::CLIMB, climb)], move |kept| {
-            let keep = |(name, text): &(&str, Option<String>)| {
+        use_effect_with((stock, climb, bench.emptied), move |(stock, climb, _)| {
+            let refused = |name: &str, text: &Option<String>| {
                 text.as_ref().is_some_and(|text| storage::write(name, text).is_err())
             };
-            if kept.iter().any(keep) {
+            if refused(storage::STOCK, stock) | refused(storage::CLIMB, climb) {
                 dispatcher.dispatch(Msg::Tell(Note::NothingKept));
+            } else if stock.is_some() {
+                fresh::say(fresh::KEPT);
             }
         });
     }
     {
         let dispatcher = bench.dispatcher();
-        use_effect_with((bench.wanted(), bench.measured()), move |(wanted, measured)| {
+        use_effect_with(bench.wanted(), move |wanted| {
             if let Some(wanted) = wanted.clone() {
-                let dispatcher = dispatcher.clone();
                 reckoner::ask(Ask::Ladder(wanted), move |answer| {
                     dispatcher.dispatch(match answer {
                         Ok(Answer::Ladder(news)) => Move::Learn(news).into(),
@@ -152,6 +157,11 @@ fn use_ladder(bench: &BenchHandle) {
                     });
                 });
             }
+        });
+    }
+    {
+        let dispatcher = bench.dispatcher();
+        use_effect_with(bench.measured(), move |measured| {
             if let Some(measured) = *measured {
                 reckoner::ask(Ask::Unknown(measured), move |answer| match answer {
                     Ok(Answer::Unknown(fits)) => dispatcher.dispatch(Shelf::Fits(fits).into()),

@@ -92,6 +92,8 @@ pub enum Deed {
     Stored(Records),
     /// It does not take the last change.
     Trouble(Trouble),
+    /// Somebody looks at the log again.
+    LookAgain,
     /// Readings come from elsewhere: from a link, or from a file.
     Adopt(Vec<Record>, bool),
 }
@@ -141,6 +143,7 @@ impl Seen {
                 let sheet = core::mem::take(&mut self.sheet);
                 self.remember(Before::Sheet(sheet));
             }
+            Deed::LookAgain => self.log.look_again(),
             Deed::WantLog => self.log.wanted = true,
             Deed::Keep(id, verdict) => {
                 self.remember(Before::Records(self.log.records.clone()));
@@ -163,9 +166,12 @@ impl Seen {
                 None => {}
             },
             Deed::Learn(records, foreign) => {
-                // Going back to before they were known would delete them.
-                self.before.retain(|before| matches!(before, Before::Sheet(_)));
+                let known = Records::clone(&self.log.records);
                 self.log.learn(records, foreign);
+                // Going back to before they were known would delete them.
+                if known != self.log.records {
+                    self.before.retain(|before| matches!(before, Before::Sheet(_)));
+                }
             }
             Deed::Stored(records) => {
                 self.log.stored = Some(records);

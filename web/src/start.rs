@@ -10,6 +10,7 @@ use crate::climb::{Climb, equipment};
 use crate::meter;
 use crate::opening::{Mine, may_hold_more};
 use crate::seen::Seen;
+use crate::visit;
 use crate::words::Words;
 
 /// What is kept on this phone, as far as it can be read.
@@ -29,8 +30,11 @@ pub fn bench(words: &'static Words) -> Option<Bench> {
     bench.seen = Seen::new(meter.unwrap_or_default(), bench.words().numerals);
     remember(&mut bench, storage::read(storage::STOCK).as_deref(), storage::read(storage::CLIMB).as_deref());
     bench.climb.now = clock();
-    if storage::has_for_visit(storage::ACCEPTED) {
+    if storage::read_for_visit(storage::ACCEPTED).is_some() {
         bench.stage = Stage::Bench;
+    }
+    if let Some(text) = storage::read_for_visit(storage::VISIT) {
+        bench.tab = visit::front(&text);
     }
     Some(bench)
 }

@@ -39,7 +39,7 @@ async fn script(body: &str) -> JsValue {
 /// Takes the database away.
 async fn clear() {
     script(
-        "await new Promise((done, fail) => { const r = indexedDB.deleteDatabase('lampladder.log'); \
+        "await new Promise((done, fail) => { const r = indexedDB.deleteDatabase('lampladder.log ' + new URL('./', location.href).pathname); \
          r.onsuccess = done; r.onerror = fail })",
     )
     .await;
@@ -48,7 +48,7 @@ async fn clear() {
 /// Everything in the database, as any program sees it.
 async fn raw() -> Array {
     script(
-        "return await new Promise((done, fail) => { const r = indexedDB.open('lampladder.log'); r.onerror = fail; \
+        "return await new Promise((done, fail) => { const r = indexedDB.open('lampladder.log ' + new URL('./', location.href).pathname); r.onerror = fail; \
          r.onsuccess = () => { const db = r.result; const all = db.transaction('readings').objectStore('readings').getAll(); \
          all.onsuccess = () => { db.close(); done(all.result) } } })",
     )
@@ -93,7 +93,7 @@ async fn the_log_is_stored_changed_and_left_alone_where_it_is_newer() {
 
     // A newer version's record and a damaged one are counted, and survive every change.
     script(
-        "await new Promise((done, fail) => { const r = indexedDB.open('lampladder.log'); r.onerror = fail; \
+        "await new Promise((done, fail) => { const r = indexedDB.open('lampladder.log ' + new URL('./', location.href).pathname); r.onerror = fail; \
          r.onsuccess = () => { const db = r.result; const t = db.transaction('readings', 'readwrite'); \
          t.objectStore('readings').put({version: 2, id: 6, setup: '1abc', wonder: [1]}); \
          t.objectStore('readings').put({version: 1, id: 8}); \

@@ -125,7 +125,9 @@ impl Shared {
     fn find(&self, path: &str, gzip: bool) -> Answer {
         let nothing = || Answer::plain("404 Not Found", "there is no such file");
         let Some(name) = path.strip_prefix(&self.prefix) else { return nothing() };
-        let name = if name.is_empty() { "index.html" } else { name };
+        // A folder is answered by its page, as static hosts do.
+        let page = format!("{name}index.html");
+        let name = if name.is_empty() || name.ends_with('/') { &page } else { name };
         // No name of ours needs escapes or dots beyond its suffix; whatever climbs out of the folder has them.
         let fine =
             |part: &str| !part.is_empty() && !part.starts_with('.') && !part.contains(['\\', '%', ':']);

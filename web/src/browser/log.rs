@@ -3,18 +3,22 @@
 //! The reckoner does this for the page: a worker has the same database, and the page's own program stays smaller by what
 //! it takes. Records of a newer version of the page are neither shown nor touched.
 
+use std::cell::Cell;
+use std::rc::Rc;
+
 use js_sys::{Array, Promise, Reflect};
 use wasm_bindgen::closure::Closure;
 use wasm_bindgen::{JsCast, JsValue};
 use wasm_bindgen_futures::JsFuture;
 use web_sys::{
-    DomException, IdbDatabase, IdbFactory, IdbObjectStoreParameters, IdbOpenDbRequest, IdbRequest,
-    IdbTransaction, IdbTransactionMode,
+    DedicatedWorkerGlobalScope, DomException, IdbDatabase, IdbFactory, IdbObjectStoreParameters,
+    IdbOpenDbRequest, IdbRequest, IdbTransaction, IdbTransactionMode,
 };
 
 use crate::log::{Change, News, Order, Record, Trouble, VERSION};
 
-/// The database.
+/// The database. Databases belong to a whole host: ours has the page's folder in its name, too. What older versions kept
+/// under the bare name is taken over when the new one is made.
 const DATABASE: &str = "lampladder.log";
 /// Its one store.
 const STORE: &str = "readings";
@@ -45,14 +49,51 @@ async fn perform(order: Order) -> Result<News, JsValue> {
 
 /// Opens whatever version is there; makes the store where there is none.
 async fn open() -> Result<IdbDatabase, JsValue> {
-    let factory: IdbFactory = Reflect::get(&js_sys::global(), &"indexedDB".into())?.dyn_into()?;
-    let request = factory.open(DATABASE)?;
-    let made = request.clone();
+    let folder = DedicatedWorkerGlobalScope::from(JsValue::from(js_sys::global())).location().pathname();
+    let folder = folder.rfind('/').map_or("", |end| &folder[..=end]);
+    let (database, is_new) = open_or_make(&format!("{DATABASE} {folder}")).await?;
+    if is_new {
+        // Where this fails there is nothing to take over, or it stays where it is.
+        let _ = take_over(&database).await;
+    }
+    Ok(database)
+}
+
+fn factory() -> Result<IdbFactory, JsValue> {
+    Reflect::get(&js_sys::global(), &"indexedDB".into())?.dyn_into()
+}
+
+/// A database, and whether it has just been made.
+async fn open_or_make(name: &str) -> Result<(IdbDatabase, bool), JsValue> {
+    let request = factory()?.open(name)?;
+    let (made, is_new) = (request.clone(), Rc::new(Cell::new(false)));
+    let told = Rc::clone(&is_new);
     let make = Closure::once_into_js(move || {
+        told.set(true);
         let _ = make(&made);
     });
     request.set_onupgradeneeded(Some(make.unchecked_ref()));
-    done(&request).await?.dyn_into()
+    let database = done(&request).await?.dyn_into()?;
+    Ok((database, is_new.get()))
+}
+
+/// Copies what the database of older versions holds, as it stands: records of a newer version are not lost either.
+async fn take_over(database: &IdbDatabase) -> Result<(), JsValue> {
+    let (old, is_new) = open_or_make(DATABASE).await?;
+    if is_new {
+        // There was none, and there shall be none.
+        old.close();
+        return factory()?.delete_database(DATABASE).map(|_| ());
+    }
+    let all: Array =
+        done(&old.transaction_with_str(STORE)?.object_store(STORE)?.get_all()?).await?.dyn_into()?;
+    old.close();
+    let transaction = database.transaction_with_str_and_mode(STORE, IdbTransactionMode::Readwrite)?;
+    let store = transaction.object_store(STORE)?;
+    for value in all.iter() {
+        store.put(&value)?;
+    }
+    finished(&transaction).await
 }
 
 /// Makes the store. Where that fails, the first transaction will say so.

@@ -100,6 +100,11 @@ pub fn width() -> f64 {
     width.unwrap_or(360.0)
 }
 
+/// Whether the page can be seen, and does not lie behind another one.
+pub fn is_in_front() -> bool {
+    web_sys::window().and_then(|window| window.document()).is_none_or(|document| !document.hidden())
+}
+
 /// Device pixels in a CSS pixel.
 pub fn pixel_ratio() -> f64 {
     web_sys::window().map_or(1.0, |window| window.device_pixel_ratio())

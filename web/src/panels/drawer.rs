@@ -95,6 +95,10 @@ pub(super) fn drawer(bench: &BenchHandle) -> Vec<El> {
         el("p").text(hint),
         sizes,
         others,
+        place(drawer.gone().map(|lamp| {
+            button("offer", "put-back", send(bench, Shelf::PutBack.into()))
+                .text(texts.put_back(&lamp_name(bench, lamp)))
+        })),
         // Above what comes when the reckoner has an answer: nothing pushes it away from under a thumb.
         place(go_on(bench, Stand::Lamps, stocked)),
         place(refused(bench)),

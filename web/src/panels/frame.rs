@@ -1,8 +1,11 @@
 //! What stands around the panels: the header with the reminder that never leaves, the notes, the list of panels.
 
+use yew::Callback;
+
 use super::send;
 use crate::bench::{BenchHandle, Msg, Note, Tab, Theme};
-use crate::browser::theme;
+use crate::browser::{fresh, theme};
+use crate::climb::Stand;
 use crate::opening::Mine;
 use crate::parts::el::{El, button, el, truth};
 use crate::parts::picture;
@@ -92,21 +95,32 @@ fn here(tab: El, here: bool) -> El {
 pub fn notes(bench: &BenchHandle) -> El {
     let words = bench.words();
     let note = |note: &Note| {
-        let own = matches!(note, Note::FromLink | Note::LadderFromLink).then(start::mine);
+        let own = matches!(note, Note::FromLink | Note::LadderFromLink | Note::Elsewhere).then(start::mine);
         let own = own.filter(|own| *own != Mine::default());
         let use_kept = own.map(|own| {
-            button("use", "use-kept", send(bench, Msg::Reclaim(Box::new(own)))).text(words.use_kept)
+            let text = if *note == Note::Elsewhere { words.use_elsewhere } else { words.use_kept };
+            button("use", "use-kept", send(bench, Msg::Reclaim(Box::new(own)))).text(text)
+        });
+        let use_new = (*note == Note::New).then(|| {
+            button("use", "use-new", Callback::from(|_| fresh::say(fresh::USE_NEW))).text(words.use_new)
         });
         let text = match note {
             Note::ReadingsFromLink(added, known) => {
                 fill(words.note(*note), &[&added.to_string(), &known.to_string()])
             }
+            Note::New if bench.climb.at > Stand::Lamps => words.new_on_ladder.to_owned(),
             _ => words.note(*note).to_owned(),
         };
         let close = button("close", "dismiss", send(bench, Msg::Dismiss(*note)))
             .set("aria-label", words.dismiss)
             .text("×");
-        el("p").class("note").test("note").with(el("span").text(text)).maybe(use_kept).with(close)
+        el("p")
+            .class("note")
+            .test("note")
+            .with(el("span").text(text))
+            .maybe(use_kept)
+            .maybe(use_new)
+            .with(close)
     };
     el("div").class("notes").set("role", "status").each(bench.notes.iter().map(note))
 }

@@ -41,7 +41,7 @@ catalogue! {
         title, for_what,
         progress [done, left_out, now, next],
         working, restarted, go_on, back_here, afresh, lamps, no_lamps, tap_sizes, one_more, one_less,
-        measured_lamp, another, unknown, measure, measure_one, measuring, measure_how, put, put_measured,
+        measured_lamp, put_back, another, unknown, measure, measure_one, measuring, measure_how, put, put_measured,
         put_twelve, put_many, put_unlike, shrinks,
         shrink_heads [volts, printed, measured, narrower],
         unknown_how, comparing,
@@ -101,6 +101,11 @@ impl LadderWords {
     /// What to do with the sizes: their volts.
     pub fn tap_sizes(&self, volts: &str) -> String {
         fill(self.tap_sizes, &[volts])
+    }
+
+    /// Takes back that the last of a lamp was taken out.
+    pub fn put_back(&self, lamp: &str) -> String {
+        fill(self.put_back, &[lamp])
     }
 
     /// One more or less of a lamp.

@@ -386,6 +386,9 @@ impl Words {
             Note::ReadingsFromLink(..) => self.readings_from_link,
             Note::LinkHalfRead => self.link_half_read,
             Note::Wordless => self.reckoner_lost,
+            Note::New => self.new,
+            Note::Emptied => self.emptied,
+            Note::Elsewhere => self.elsewhere,
         }
     }
 

@@ -88,7 +88,8 @@ catalogue! {
         fill [usual, vacuum, gas, halogen],
         unsuitable [led, compact_fluorescent, carbon_filament],
         refusal [led, compact_fluorescent, carbon_filament],
-        bad_kept, nothing_kept, from_link, ladder_from_link, readings_from_link, link_half_read,
+        bad_kept, nothing_kept, from_link, ladder_from_link, readings_from_link, link_half_read, new,
+        new_on_ladder, use_new, emptied, elsewhere, use_elsewhere,
         link [empty, too_long, newer, damaged, refused],
         reckoner_lost, use_kept, more,
     }
