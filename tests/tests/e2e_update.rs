@@ -77,7 +77,7 @@ fn a_new_version_waits_until_it_is_wanted_and_everything_is_still_there() -> Res
     page::accept(&browser)?;
     ensure!(browser.script("return sessionStorage.loads")? == "1", "loaded more than once");
     ensure!(!browser.sees(USE)?, "the new version is offered once more");
-    ensure!(browser.sees(&field("read-bank-volts"))?, "another panel is in front");
+    browser.see(&field("read-bank-volts")).context("another panel is in front")?;
     ensure!(browser.value(&field("read-bank-volts"))? == "67,5");
     ensure!(browser.attribute(&id("look-orange"), "aria-pressed")? == "true");
     browser.tap(&id("tab-ladder"))?;
