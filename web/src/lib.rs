@@ -72,6 +72,7 @@ pub mod charts;
 pub mod climb;
 mod custody;
 pub mod describe;
+pub mod doubt;
 pub mod draft;
 pub mod drawer;
 pub mod entry;

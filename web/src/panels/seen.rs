@@ -15,13 +15,14 @@ use super::seen_sheet::sheet;
 use crate::bench::{Bench, BenchHandle, Msg};
 use crate::browser::reckoner::{self, Lost};
 use crate::describe::{self, full};
+use crate::doubt::is_bare;
 use crate::log::Verdict;
 use crate::parts::el::{El, drawing, el, truth};
 use crate::parts::svg::n;
 use crate::parts::table::{row_head, table, whole};
 use crate::reckoner::diagnosis::{News, Outcome, Quantity, Taken};
 use crate::reckoner::{Answer, Ask, Subject};
-use crate::seen::{Deed, is_bare};
+use crate::seen::Deed;
 use crate::words::seen::{Clash, Sentence};
 
 /// The panel.

@@ -5,13 +5,14 @@ use lampladder_core::readings::{Behaviour, Kind, MeterSpec, Response};
 
 use super::send;
 use crate::bench::{BenchHandle, Msg};
+use crate::doubt::meanings;
 use crate::draft::{Fault, MeterPart, Slot};
 use crate::meter::METERS;
 use crate::parts::choice::{Choice, choices};
 use crate::parts::el::{El, button, el, place, truth};
 use crate::parts::field;
 use crate::parts::well::{Filament, Well, lone};
-use crate::seen::{Deed, meanings};
+use crate::seen::Deed;
 
 const LAMP: Well = Well { x: 0.0, y: 0.0, width: 64.0, height: 44.0 };
 
