@@ -84,6 +84,13 @@ fn look(browser: &Browser, tag: &str, screen: &str, english: &[String]) -> Resul
         "{tag}, {screen}: does not fit where it stands: {}",
         widths[2]
     );
+    // What sticks under the header knows how high that is.
+    let lines = browser.script(
+        "const e = document.querySelector('[data-testid=reminder]'); if (!e || !e.checkVisibility()) return 1; \
+         const range = document.createRange(); range.selectNodeContents(e); \
+         return new Set([...range.getClientRects()].map((box) => Math.round(box.top))).size",
+    )?;
+    ensure!(lines == 1, "{tag}, {screen}: the reminder takes {lines} lines");
     let broken = browser.script(BROKEN)?;
     ensure!(broken.as_array().is_some_and(Vec::is_empty), "{tag}, {screen}: broken words: {broken}");
     browser.picture(&format!("{tag}-{screen}"))
