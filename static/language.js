@@ -3,7 +3,8 @@
 // program fetches its texts by the document's language and hears of a change by the event "reword".
 "use strict";
 (() => {
-  const KEY = "lampladder.language";
+  // Storage belongs to a whole host: the name has the page's folder in it, as all names have.
+  const KEY = `lampladder.language ${location.pathname.replace(/[^/]*$/, "")}`;
   const root = document.documentElement;
   const words = (tag) => document.querySelector(`meta[name="words-${CSS.escape(tag)}"]`);
   const spoken = (tag) => {
