@@ -110,7 +110,7 @@ async fn nothing_shows_before_the_cautions_are_accepted() {
     click("accept").await;
     assert!(find("result-amps").is_some() && find("reminder").is_some());
     assert_eq!(stage().as_deref(), Some("bench"));
-    assert!(storage::has_for_visit(storage::ACCEPTED));
+    assert!(storage::read_for_visit(storage::ACCEPTED).is_some());
     click("open-cautions").await;
     assert_eq!(stage().as_deref(), Some("cautions"));
 }
