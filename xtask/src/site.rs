@@ -1,7 +1,8 @@
 //! A server for the built page, on this machine only, at a path below the host's root.
 //!
-//! Every answer closes its connection, so that a stopped server is gone at once: the end-to-end tests stop it to
-//! prove that the page works without one.
+//! Connections are kept open between answers, as every static host does it. A stopped server is gone at once all the
+//! same, since it answers nothing more on those that are open: the end-to-end tests stop it to prove that the page works
+//! without one.
 
 use std::fs;
 use std::io::{self, BufRead, BufReader, Read, Write};
@@ -100,9 +101,18 @@ impl Drop for Site {
 impl Shared {
     fn serve(&self, stream: &TcpStream) -> io::Result<()> {
         stream.set_read_timeout(Some(Duration::from_secs(10)))?;
-        let mut lines = BufReader::new(stream.try_clone()?.take(64 * 1024)).lines();
-        let Some(first) = lines.next().transpose()? else { return Ok(()) };
-        let mut gzip = false;
+        // Headers and bodies go out as they are written: waiting for more would hold them back.
+        stream.set_nodelay(true)?;
+        let mut reader = BufReader::new(stream.try_clone()?);
+        while self.answer(&mut reader, stream)? {}
+        Ok(())
+    }
+
+    /// Answers one request; whether there may be another.
+    fn answer(&self, reader: &mut BufReader<TcpStream>, stream: &TcpStream) -> io::Result<bool> {
+        let mut lines = reader.take(64 * 1024).lines();
+        let Some(first) = lines.next().transpose()? else { return Ok(false) };
+        let (mut gzip, mut last) = (false, false);
         for line in lines {
             let line = line?;
             if line.is_empty() {
@@ -110,6 +120,10 @@ impl Shared {
             }
             let line = line.to_ascii_lowercase();
             gzip |= line.starts_with("accept-encoding:") && line.contains("gzip");
+            last |= line.starts_with("connection:") && line.contains("close");
+        }
+        if self.stopped.load(Ordering::SeqCst) {
+            return Ok(false);
         }
         let mut words = first.split(' ');
         let (method, target) = (words.next().unwrap_or_default(), words.next().unwrap_or_default());
@@ -119,7 +133,8 @@ impl Shared {
             "GET" | "HEAD" => self.find(path, gzip),
             _ => Answer::plain("405 Method Not Allowed", "only GET"),
         };
-        answer.write(stream, method == "HEAD")
+        answer.write(stream, method == "HEAD", last)?;
+        Ok(!last)
     }
 
     fn find(&self, path: &str, gzip: bool) -> Answer {
@@ -171,17 +186,18 @@ impl Answer {
         Self { status: "200 OK", headers, body }
     }
 
-    fn write(&self, mut stream: &TcpStream, head_only: bool) -> io::Result<()> {
+    fn write(&self, mut stream: &TcpStream, head_only: bool, last: bool) -> io::Result<()> {
         let length = self.body.len();
-        write!(
-            stream,
-            "HTTP/1.1 {}\r\n{}Content-Length: {length}\r\nConnection: close\r\n\r\n",
+        let connection = if last { "close" } else { "keep-alive" };
+        let mut all = format!(
+            "HTTP/1.1 {}\r\n{}Content-Length: {length}\r\nConnection: {connection}\r\n\r\n",
             self.status, self.headers
-        )?;
+        )
+        .into_bytes();
         if !head_only {
-            stream.write_all(&self.body)?;
+            all.extend_from_slice(&self.body);
         }
-        stream.flush()
+        stream.write_all(&all)
     }
 }
 
@@ -225,7 +241,7 @@ mod tests {
 
     fn get(site: &Site, path: &str) -> String {
         let mut stream = TcpStream::connect(site.address).expect("the site answers");
-        write!(stream, "GET {path} HTTP/1.1\r\nHost: localhost\r\n\r\n").expect("sent");
+        write!(stream, "GET {path} HTTP/1.1\r\nHost: localhost\r\nConnection: close\r\n\r\n").expect("sent");
         let mut answer = String::new();
         stream.read_to_string(&mut answer).expect("answered");
         answer
@@ -242,7 +258,18 @@ mod tests {
         }
         assert_eq!(site.asked().first().map(String::as_str), Some("/some/where/Cargo.toml"));
         let address = site.address;
+        // A connection that is open is no way around it: one answer before, none after.
+        let mut open = TcpStream::connect(address).expect("the site answers");
+        let ask = b"HEAD /some/where/Cargo.toml HTTP/1.1\r\n\r\n";
+        open.write_all(ask).expect("sent");
+        let mut head = [0; 12];
+        open.read_exact(&mut head).expect("answered");
+        assert_eq!(&head, b"HTTP/1.1 200");
         site.stop();
+        open.write_all(ask).expect("sent");
+        let mut rest = String::new();
+        open.read_to_string(&mut rest).expect("closed");
+        assert_eq!(rest.matches("HTTP/1.1").count(), 0, "answered after it was stopped: {rest}");
         assert!(TcpStream::connect(address).is_err(), "a stopped site must refuse");
     }
 
