@@ -4,10 +4,16 @@
 use std::collections::HashSet;
 
 use anyhow::{Context, Result, ensure};
+use base64::Engine;
+use base64::engine::general_purpose::STANDARD;
 use lampladder_tests::accessibility;
 use lampladder_tests::browser::Browser;
+use lampladder_tests::folder::Folder;
 use lampladder_tests::walk::every_screen;
 use lampladder_tests::{page, surroundings};
+use serde_json::json;
+use xtask::files;
+use xtask::site::Site;
 use xtask::words::catalogue;
 
 /// The languages beside English.
@@ -124,6 +130,7 @@ fn every_screen_in(tag: &str) -> Result<()> {
     })?;
     browser.tap("[data-testid=tab-hand-on]")?;
     look(&browser, tag, "hand-on", &english)?;
+    ensure_card(&browser, tag)?;
     page::no_complaints(&browser)
 }
 
@@ -182,4 +189,100 @@ fn another_language_takes_effect_at_once_and_loses_nothing_that_was_typed() -> R
     let css = page::open_field(&browser, "lamp-watts")?;
     ensure!(browser.value(&css)?.replace(',', ".") == "62.5");
     Ok(())
+}
+
+/// The printed card keeps to one page.
+fn ensure_card(browser: &Browser, tag: &str) -> Result<()> {
+    browser.see("[data-testid=code]")?;
+    let printed =
+        browser.devtools("Page.printToPDF", json!({"preferCSSPageSize": true, "printBackground": true}))?;
+    let bytes = STANDARD.decode(printed["data"].as_str().context("a document")?)?;
+    if let Some(folder) = std::env::var_os("LAMPLADDER_SHOTS") {
+        std::fs::write(std::path::Path::new(&folder).join(format!("{tag}-card.pdf")), &bytes)?;
+    }
+    // Chromium leaves the tree of pages uncompressed.
+    let pages = String::from_utf8_lossy(&bytes).matches("/Type /Page\n").count();
+    ensure!(pages == 1, "{tag}: the card has {pages} pages");
+    Ok(())
+}
+
+#[test]
+fn a_first_visit_is_in_the_language_of_the_browser() -> Result<()> {
+    let site = surroundings::site()?;
+    let browser = Browser::start()?;
+    let agent = browser.script("return navigator.userAgent")?;
+    for (asked, tag) in [("pt-BR,fr-CH,de", "fr"), ("de-AT", "de"), ("ja,pt", "en")] {
+        browser.devtools(
+            "Emulation.setUserAgentOverride",
+            json!({"userAgent": agent, "acceptLanguage": asked}),
+        )?;
+        browser.open("about:blank")?;
+        browser.open(&site.url())?;
+        browser.see(page::ACCEPT)?;
+        let told = browser.script("return [document.documentElement.lang, ...navigator.languages]")?;
+        ensure!(told[0] == tag, "{asked}: {told}");
+        let expected = catalogue_of(tag)?.into_iter().find(|(key, _)| key == "accept").context("a text")?.1;
+        let text = browser.text(page::ACCEPT)?;
+        // The driver tells every space as a plain one.
+        ensure!(text == expected.replace('\u{a0}', " "), "{asked}: {text}");
+    }
+    Ok(())
+}
+
+#[test]
+fn without_the_program_each_language_of_the_cautions_is_a_link_away() -> Result<()> {
+    let site = surroundings::site()?;
+    let browser = Browser::start()?;
+    browser.forbid_scripts(true)?;
+    browser.open(&site.url())?;
+    let english = browser.words(page::CAUTIONS)?;
+    ensure!(english.contains("It limits; it does not protect."), "{english}");
+    for (tag, caution) in [
+        ("de", "Sie begrenzt; sie schützt nicht."),
+        ("fr", "elle ne protège pas."),
+        ("es", "Limita; no protege."),
+    ] {
+        ensure!(!browser.words(page::CAUTIONS)?.contains(caution), "{tag} stands there unasked");
+        browser.tap(&format!("[data-language={tag}]"))?;
+        let text = browser.words(page::CAUTIONS)?;
+        ensure!(text.contains(caution), "{tag} is not a link away: {text}");
+    }
+    Ok(())
+}
+
+/// A server of the page without the texts of a language.
+fn site_without(tag: &str) -> Result<(Folder, Site)> {
+    let folder = Folder::new("wordless")?;
+    for (name, path) in files::below(&surroundings::page()?)? {
+        if !name.starts_with(&format!("words-{tag}-")) {
+            let copy = folder.path().join(name);
+            std::fs::create_dir_all(copy.parent().context("a folder")?)?;
+            std::fs::copy(path, copy)?;
+        }
+    }
+    let site = Site::start(folder.path(), surroundings::PREFIX, 0)?;
+    Ok((folder, site))
+}
+
+#[test]
+fn texts_that_cannot_be_fetched_leave_the_cautions_and_what_was_there() -> Result<()> {
+    let (_folder, site) = site_without("en")?;
+    let browser = Browser::start()?;
+    browser.open(&site.url())?;
+    browser.see(".starting.is-lost .late")?;
+    let text = browser.text(page::CAUTIONS)?;
+    ensure!(text.contains("It has not started.") && text.contains("It limits"), "{text}");
+    ensure!(!browser.sees(page::ACCEPT)?, "a program without texts has started");
+
+    let (_folder, site) = site_without("fr")?;
+    let browser = Browser::start()?;
+    page::enter(&browser, &site.url())?;
+    let reminder = browser.text(page::REMINDER)?;
+    browser.choose(LIST, "fr")?;
+    browser.see(page::NOTE)?;
+    ensure!(browser.text(page::NOTE)?.contains("could not be loaded"), "{}", browser.text(page::NOTE)?);
+    ensure!(browser.text(page::REMINDER)? == reminder && browser.value(LIST)? == "en");
+    // Another one is still to be had.
+    browser.choose(LIST, "de")?;
+    browser.not_see(page::NOTE)
 }
