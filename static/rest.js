@@ -1,7 +1,8 @@
 // The end of the page's own script, put there by `cargo xtask stamp`: fetches the rest of the program, which the first
-// part calls through its table of functions. `wasm` is wasm-bindgen's name for the first part.
+// part calls through its table of functions, and its styles. `wasm` is wasm-bindgen's name for the first part.
 
 const REST = new URL("rest.wasm", import.meta.url);
+const STYLE = new URL("rest.css", import.meta.url);
 const ROOT = document.documentElement;
 let fetching;
 
@@ -10,20 +11,37 @@ function tell(state) {
   dispatchEvent(new Event("rest"));
 }
 
-/** Fetches it, once; after a failure, once more. */
+/** Resolves when the styles apply, too. */
+function fetchStyle() {
+  const link = document.createElement("link");
+  link.rel = "stylesheet";
+  link.href = STYLE;
+  return new Promise((resolve, reject) => {
+    link.onload = resolve;
+    link.onerror = () => {
+      link.remove();
+      reject(STYLE);
+    };
+    document.head.append(link);
+  });
+}
+
+async function fetchProgram() {
+  const answer = await fetch(REST);
+  if (!answer.ok) throw answer.status;
+  await WebAssembly.instantiate(await answer.arrayBuffer(), { f: wasm });
+}
+
+/** Fetches both, once; after a failure, once more. */
 function fetchRest() {
-  fetching ??= fetch(REST)
-    .then((answer) => answer.ok ? answer.arrayBuffer() : Promise.reject(answer.status))
-    .then((bytes) => WebAssembly.instantiate(bytes, { f: wasm }))
-    .then(() => tell("whole"), () => {
-      fetching = undefined;
-      tell("lost");
-    });
+  fetching ??= Promise.all([fetchProgram(), fetchStyle()]).then(() => tell("whole"), () => {
+    fetching = undefined;
+    tell("lost");
+  });
 }
 
 /** Something of the rest is wanted before it has come: whoever wants it waits. */
 function waitForRest() {
-  if (ROOT.dataset.rest === "whole") return;
   const request = new XMLHttpRequest();
   request.open("GET", REST, false);
   // The only way to bytes without a promise.

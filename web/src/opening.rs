@@ -71,6 +71,7 @@ impl Bench {
     }
 
     /// What stood behind the set-up of the link.
+    #[inline(never)]
     pub(crate) fn take_over(mut self, opened: Opened) -> Self {
         let Opened { stock, climb, log } = opened;
         let ladder = stock.is_some() || climb.is_some();
@@ -108,6 +109,7 @@ impl Bench {
     }
 
     /// The person's own again.
+    #[inline(never)]
     pub(crate) fn reclaim(self, mine: Mine) -> Self {
         let Mine { setup, stock, climb } = mine;
         // Who has never changed the set-up has the example.

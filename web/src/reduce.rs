@@ -45,13 +45,30 @@ impl Bench {
         match msg {
             Msg::Show(condition) => self.condition = condition,
             Msg::Open(part) => self.turn_to(Some(part)),
-            Msg::Close => self.turn_to(None),
-            Msg::ChooseFamily => self.choosing = !self.choosing,
             Msg::Why => self.why = !self.why,
             Msg::Go(tab) => {
                 self.tab = tab;
                 self.seen.log.look_again();
             }
+            Msg::Light(theme) => self.theme = theme,
+            Msg::Speak(words) => self.speak(words),
+            Msg::Completed => self.notes.retain(|note| *note != Note::Wordless),
+            Msg::Accept => self.stage = Stage::Bench,
+            Msg::Cautions => self.stage = Stage::Reread,
+            Msg::Link(text) => return self.open_link(&text),
+            Msg::Tell(note) => self.tell(note),
+            Msg::Dismiss(note) => self.notes.retain(|other| *other != note),
+            further => return self.further(further),
+        }
+        self
+    }
+
+    /// The state after a message of the editors, the panels or the reckoner, none of which is there at the first answer.
+    #[inline(never)]
+    fn further(mut self, msg: Msg) -> Self {
+        match msg {
+            Msg::Close => self.turn_to(None),
+            Msg::ChooseFamily => self.choosing = !self.choosing,
             Msg::Wish(wish) => self.wish = wish,
             Msg::Seen(deed) => {
                 let numerals = self.words().numerals;
@@ -79,11 +96,6 @@ impl Bench {
                 self.reread();
             }
             Msg::Climb(step) => self.climb(step),
-            Msg::Light(theme) => self.theme = theme,
-            Msg::Speak(words) => self.speak(words),
-            Msg::Completed => self.notes.retain(|note| *note != Note::Wordless),
-            Msg::Accept => self.stage = Stage::Bench,
-            Msg::Cautions => self.stage = Stage::Reread,
             Msg::Choose(place) => {
                 self.lamp = place;
                 self.refused = None;
@@ -100,8 +112,6 @@ impl Bench {
                 }
             }
             Msg::Refuse(kind) => self.refused = Some(kind),
-            Msg::Link(text) => return self.open_link(&text),
-            Msg::Tell(note) => self.tell(note),
             Msg::Emptied => {
                 self.emptied += 1;
                 self.edited = true;
@@ -112,7 +122,6 @@ impl Bench {
             }
             Msg::Restore(text) => return visit::restored(self, &text),
             Msg::Elsewhere(shared, text) => self.hear(shared, &text),
-            Msg::Dismiss(note) => self.notes.retain(|other| *other != note),
             edit => {
                 self.edit(edit);
                 self.reread();

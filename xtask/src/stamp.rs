@@ -43,8 +43,8 @@ pub fn finish(folder: &Path, sources: &Sources, light: bool) -> Result<usize> {
     let mut html =
         fs::read_to_string(&index).with_context(|| format!("{} cannot be read", index.display()))?;
     if light {
-        html = join_styles(folder, &html)?;
-        html = pack_page(folder, &html, sources)?;
+        let (page, style) = join_styles(folder, &html)?;
+        html = pack_page(folder, &page, &style, sources)?;
         pack_pair(&folder.join("reckoner_bg.wasm"), &folder.join("reckoner.js"))?;
     }
     let (html, scripts) = externalise(&html)?;
@@ -100,21 +100,25 @@ fn externalise(html: &str) -> Result<(String, Vec<Script>)> {
     Ok((out, scripts))
 }
 
-/// Makes one style sheet of all, in their order: each is a request of its own, and they pack better together.
-fn join_styles(folder: &Path, html: &str) -> Result<String> {
+/// Makes two style sheets of all, in their order: each is a request of its own, and they pack better together. Gives the
+/// page with the first, and the name of the other, of those that are marked `data-rest`: it comes with the rest of the
+/// program.
+fn join_styles(folder: &Path, html: &str) -> Result<(String, String)> {
     let mut out = String::new();
-    let mut style = String::new();
+    let (mut first, mut later) = (String::new(), String::new());
     let mut place = None;
     let mut rest = html;
     while let Some(start) = rest.find("<link rel=\"stylesheet\"") {
         let length = rest[start..].find('>').context("index.html ends inside a link")? + 1;
         out.push_str(rest[..start].trim_end());
-        let name = rest[start..start + length]
+        let link = &rest[start..start + length];
+        let name = link
             .split_once("href=\"./")
             .and_then(|(_, after)| after.split('"').next())
             .context("a style sheet without an address")?;
         place.get_or_insert(out.len());
         let file = folder.join(name);
+        let style = if link.contains("data-rest") { &mut later } else { &mut first };
         style.push_str(
             &fs::read_to_string(&file).with_context(|| format!("{} cannot be read", file.display()))?,
         );
@@ -122,13 +126,16 @@ fn join_styles(folder: &Path, html: &str) -> Result<String> {
         rest = &rest[start + length..];
     }
     out.push_str(rest);
-    if let Some(place) = place {
-        let style = squeezed(&style);
-        let name = format!("style-{:016x}.css", hash(style.as_bytes()));
+    let write = |stem: &str, style: &str| -> Result<String> {
+        let style = squeezed(style);
+        let name = format!("{stem}-{:016x}.css", hash(style.as_bytes()));
         fs::write(folder.join(&name), style)?;
-        out.insert_str(place, &format!("\n  <link rel=\"stylesheet\" href=\"./{name}\">"));
-    }
-    Ok(out)
+        Ok(name)
+    };
+    let Some(place) = place else { return Ok((out, String::new())) };
+    let name = write("style", &first)?;
+    out.insert_str(place, &format!("\n  <link rel=\"stylesheet\" href=\"./{name}\">"));
+    Ok((out, write("rest", &later)?))
 }
 
 /// A style sheet without its comments and most of its spaces. Ours have neither of these characters inside quotes.
@@ -155,11 +162,12 @@ fn squeezed(style: &str) -> String {
 }
 
 /// The program and the script that loads it, cut, packed, and named anew by what they are now.
-fn pack_page(folder: &Path, html: &str, sources: &Sources) -> Result<String> {
+fn pack_page(folder: &Path, html: &str, style: &str, sources: &Sources) -> Result<String> {
     let Some((_, start)) = html.split_once("module_or_path: './") else { return Ok(html.to_owned()) };
     let wasm = start.split('\'').next().unwrap_or_default();
     let script = wasm.replace("_bg.wasm", ".js");
-    cut(folder, wasm, &script, sources)?;
+    let script_of_rest = sources.rest.replace("rest.css", style);
+    cut(folder, wasm, &script, &script_of_rest, &sources.marks)?;
     pack_pair(&folder.join(wasm), &folder.join(&script))?;
     let stem = script.rsplit_once('-').map_or("page", |(stem, _)| stem);
     let mut renamed = Vec::new();
@@ -177,9 +185,9 @@ fn pack_page(folder: &Path, html: &str, sources: &Sources) -> Result<String> {
 const IMPORTS: &str = "const import0 = {";
 
 /// Cuts the program in two, and lets the script fetch the second part.
-fn cut(folder: &Path, wasm: &str, script: &str, sources: &Sources) -> Result<()> {
+fn cut(folder: &Path, wasm: &str, script: &str, script_of_rest: &str, marks: &str) -> Result<()> {
     let (wasm, script) = (folder.join(wasm), folder.join(script));
-    let Some(parts) = split::split(&fs::read(&wasm)?, &split::Marks::of(&sources.marks))? else {
+    let Some(parts) = split::split(&fs::read(&wasm)?, &split::Marks::of(marks))? else {
         bail!("nothing in {} bears a mark of web/rest.txt: has it no names?", wasm.display());
     };
     let rest = pack::pack_alone(&parts.rest)?;
@@ -191,7 +199,7 @@ fn cut(folder: &Path, wasm: &str, script: &str, sources: &Sources) -> Result<()>
     let text = text.replace(IMPORTS, &format!("{IMPORTS}\n{}: () => waitForRest(),", split::WAIT));
     fs::write(wasm, parts.first)?;
     fs::write(folder.join(&name), rest)?;
-    fs::write(script, text + &sources.rest.replace("rest.wasm", &name))?;
+    fs::write(script, text + &script_of_rest.replace("rest.wasm", &name))?;
     Ok(())
 }
 
@@ -341,21 +349,23 @@ mod tests {
     }
 
     #[test]
-    fn styles_become_one_and_keep_their_order() {
+    fn styles_become_two_and_keep_their_order() {
         let folder = std::env::temp_dir().join(format!("lampladder-styles-{}", std::process::id()));
         std::fs::create_dir_all(&folder).expect("a folder");
-        std::fs::write(folder.join("a.css"), "/* one */\n.a > .b,\n.c :hover {\n  margin: 0 auto;\n}\n")
-            .expect("written");
-        std::fs::write(folder.join("b.css"), "@media (width > 40em) {\n  .d::after { content: \"+\"; }\n}\n")
-            .expect("written");
+        let write = |name: &str, text: &str| std::fs::write(folder.join(name), text).expect("written");
+        write("a.css", "/* one */\n.a > .b,\n.c :hover {\n  margin: 0 auto;\n}\n");
+        write("r.css", ".r {\n  top: 0;\n}\n");
+        write("b.css", "@media (width > 40em) {\n  .d::after { content: \"+\"; }\n}\n");
         let link = |name: &str| format!("\n  <link rel=\"stylesheet\" href=\"./{name}.css\"/>");
-        let html =
-            join_styles(&folder, &format!("<head>{}{}\n</head>", link("a"), link("b"))).expect("joined");
+        let rest = link("r").replace("/>", " data-rest/>");
+        let (html, other) = join_styles(&folder, &format!("<head>{}{rest}{}\n</head>", link("a"), link("b")))
+            .expect("joined");
         let name = html.split("./").nth(1).and_then(|text| text.split('"').next()).expect("a name");
         assert_eq!(html, format!("<head>\n  <link rel=\"stylesheet\" href=\"./{name}\">\n</head>"));
-        let style = std::fs::read_to_string(folder.join(name)).expect("the style sheet");
-        assert_eq!(style, ".a > .b,.c :hover{margin:0 auto}@media (width > 40em){.d::after{content:\"+\"}}");
-        assert!(!folder.join("a.css").exists() && !folder.join("b.css").exists());
+        let read = |name: &str| std::fs::read_to_string(folder.join(name)).expect("a style sheet");
+        let style = ".a > .b,.c :hover{margin:0 auto}@media (width > 40em){.d::after{content:\"+\"}}";
+        assert_eq!((read(name).as_str(), read(&other).as_str()), (style, ".r{top:0}"));
+        assert!(["a.css", "b.css", "r.css"].iter().all(|name| !folder.join(name).exists()));
         std::fs::remove_dir_all(folder).expect("removed");
     }
 
