@@ -48,8 +48,9 @@ fn smaller(wasm: &[u8], module: &str, names: &Names) -> Result<Vec<u8>> {
 
 /// A script without the spaces at the beginning of its lines, empty lines and whole lines of comment. wasm-bindgen
 /// writes no text over several lines.
-fn unindented(script: &str) -> String {
-    let lines = script.lines().map(str::trim).filter(|line| !line.is_empty() && !line.starts_with("//"));
+pub fn unindented(script: &str) -> String {
+    let remark = |line: &str| line.starts_with("//") || (line.starts_with("/**") && line.ends_with("*/"));
+    let lines = script.lines().map(str::trim).filter(|line| !line.is_empty() && !remark(line));
     lines.fold(String::new(), |text, line| text + line + "\n")
 }
 

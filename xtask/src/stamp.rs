@@ -52,7 +52,7 @@ pub fn finish(folder: &Path, sources: &Sources, light: bool) -> Result<usize> {
     for script in &scripts {
         fs::write(folder.join(&script.name), &script.text)?;
     }
-    fs::write(&index, html)?;
+    fs::write(&index, if light { without_remarks(&html) } else { html })?;
     let mut contents = Vec::new();
     for (name, path) in files::below(folder)? {
         // The worker itself is looked after by the browser, not by its own cache.
@@ -62,6 +62,17 @@ pub fn finish(folder: &Path, sources: &Sources, light: bool) -> Result<usize> {
     }
     fs::write(folder.join("sw.js"), worker(&sources.worker, &contents)?)?;
     Ok(contents.len())
+}
+
+/// A page without its remarks, which are for the reader of static/index.html.
+fn without_remarks(html: &str) -> String {
+    let mut out = String::new();
+    let mut rest = html;
+    while let Some((before, after)) = rest.split_once("<!--") {
+        out.push_str(before.trim_end_matches(' '));
+        rest = after.split_once("-->").map_or("", |(_, after)| after.trim_start_matches('\n'));
+    }
+    out + rest
 }
 
 /// A script taken out of the page.
@@ -290,7 +301,7 @@ pub(crate) fn hash(bytes: &[u8]) -> u64 {
 
 #[cfg(test)]
 mod tests {
-    use super::{externalise, hash, join_styles, rename_reckoner, worker};
+    use super::{externalise, hash, join_styles, rename_reckoner, without_remarks, worker};
 
     #[test]
     fn hash_agrees_with_the_published_test_vectors() {
@@ -346,6 +357,12 @@ mod tests {
         assert_eq!(rename_reckoner(&folder, String::from("<p>")).expect("nothing to do"), "<p>");
         assert!(rename_reckoner(&folder, String::from("reckoner_loader.js")).is_err());
         std::fs::remove_dir_all(folder).expect("removed");
+    }
+
+    #[test]
+    fn remarks_go_and_nothing_else() {
+        assert_eq!(without_remarks("<p>a</p>\n  <!-- b\n c -->\n  <p>d</p>"), "<p>a</p>\n  <p>d</p>");
+        assert_eq!(without_remarks("<p>a</p><!-- b -->c"), "<p>a</p>c");
     }
 
     #[test]

@@ -6,7 +6,7 @@ use std::path::Path;
 
 use anyhow::{Context, Result, anyhow, bail, ensure};
 
-use crate::{files, stamp};
+use crate::{files, pack, stamp};
 
 // The form of a catalogue is the page's own business; this is the very same file.
 #[path = "../../web/src/words/catalogue.rs"]
@@ -44,9 +44,11 @@ pub fn publish(folder: &Path, source: &Path) -> Result<()> {
         }
     }
     html = html.replace(PLACE, &metas.join("\n  "));
-    let script = fs::read(folder.join(SCRIPT)).with_context(|| format!("{SCRIPT} is not there"))?;
-    let name = format!("language-{:016x}.js", stamp::hash(&script));
-    fs::rename(folder.join(SCRIPT), folder.join(&name))?;
+    let script = fs::read_to_string(folder.join(SCRIPT)).with_context(|| format!("{SCRIPT} is not there"))?;
+    let script = pack::unindented(&script);
+    let name = format!("language-{:016x}.js", stamp::hash(script.as_bytes()));
+    fs::remove_file(folder.join(SCRIPT))?;
+    fs::write(folder.join(&name), script)?;
     fs::write(index, html.replace(SCRIPT, &name))?;
     Ok(())
 }
@@ -108,7 +110,7 @@ mod tests {
             html.split("name=\"words-de\" content=\"./").nth(1).and_then(|rest| rest.split('"').next());
         assert_eq!(fs::read_to_string(folder.join(name.expect("named"))).expect("texts"), "eins");
         let script = html.split("src=\"./").nth(1).and_then(|rest| rest.split('"').next()).expect("a script");
-        assert_eq!(fs::read_to_string(folder.join(script)).expect("the script"), "choose()");
+        assert_eq!(fs::read_to_string(folder.join(script)).expect("the script"), "choose()\n");
         fs::remove_dir_all(folder).expect("removed");
     }
 }
