@@ -6,14 +6,12 @@ use std::convert::Infallible;
 use anyhow::Result;
 use wasm_encoder::reencode::{self, Reencode};
 use wasm_encoder::{
-    CodeSection, ElementSection, EntityType, ExportKind, ExportSection, Function, FunctionSection,
-    ImportSection, Instruction, Module, TableSection, TypeSection,
+    CodeSection, ElementSection, EntityType, ExportSection, Function, FunctionSection, ImportSection,
+    Instruction, Module, TableSection, TypeSection,
 };
-use wasmparser::{
-    CodeSectionReader, ElementSectionReader, FunctionBody, FunctionSectionReader, Operator, Parser,
-};
+use wasmparser::{CodeSectionReader, ElementSectionReader, FunctionBody, FunctionSectionReader, Parser};
 
-use super::border::{active, runs, short, through};
+use super::border::{active, body_reaching, runs, short, through};
 use super::plan::Plan;
 use super::program::Program;
 use super::{Outcome, WAIT, told};
@@ -103,9 +101,6 @@ impl Reencode for First<'_> {
             exports.export(&short(nth), *kind, *index);
             *index += 1;
         }
-        for (nth, function) in (self.program.shared.len()..).zip(&self.plan.needed) {
-            exports.export(&short(nth), ExportKind::Func, self.function_index(*function)?);
-        }
         Ok(())
     }
 
@@ -115,7 +110,9 @@ impl Reencode for First<'_> {
         _: ElementSectionReader<'_>,
     ) -> Outcome<()> {
         let mut places = self.program.places.clone();
-        places.extend(self.plan.gates.iter().map(|(&function, &place)| (place, function)));
+        places.extend(
+            self.plan.gates.iter().chain(&self.plan.lent).map(|(&function, &place)| (place, function)),
+        );
         for (start, functions) in runs(&places) {
             let functions: Vec<u32> =
                 functions.into_iter().map(|old| self.function_index(old)).collect::<Outcome<_>>()?;
@@ -145,21 +142,9 @@ impl Reencode for First<'_> {
     }
 
     fn parse_function_body(&mut self, code: &mut CodeSection, body: FunctionBody<'_>) -> Outcome<()> {
-        let mut function = self.new_function_with_parsed_locals(&body)?;
-        let mut operators = body.get_operators_reader()?;
-        while !operators.eof() {
-            match operators.read()? {
-                Operator::Call { function_index } if self.plan.moved[function_index as usize] => {
-                    let kind = self.program.functions[function_index as usize];
-                    let place = self.plan.gates.get(&function_index).copied().unwrap_or_default();
-                    through(&mut function, self.program.table, place, kind);
-                }
-                operator => {
-                    function.instruction(&self.instruction(operator)?);
-                }
-            }
-        }
-        code.function(&function);
+        let (program, plan) = (self.program, self.plan);
+        let far = |function: u32| plan.moved[function as usize];
+        code.function(&body_reaching(self, &body, program, plan, far)?);
         Ok(())
     }
 

@@ -9,7 +9,7 @@ use wasm_encoder::{
     CodeSection, ElementSection, EntityType, FunctionSection, ImportSection, Module, TypeSection,
 };
 
-use super::border::{active, runs, short};
+use super::border::{active, body_reaching, runs, short};
 use super::plan::Plan;
 use super::program::Program;
 use super::{FIRST, Outcome, told};
@@ -28,7 +28,7 @@ impl Reencode for Rest {
 }
 
 pub(super) fn rest(program: &Program<'_>, plan: &Plan) -> Result<Vec<u8>> {
-    let numbers = plan.needed.iter().chain(&plan.moving).copied().zip(0..).collect();
+    let numbers = plan.moving.iter().copied().zip(0..).collect();
     let mut writer = Rest { numbers };
     let (mut types, mut imports) = (TypeSection::new(), ImportSection::new());
     for kind in &program.types {
@@ -43,14 +43,12 @@ pub(super) fn rest(program: &Program<'_>, plan: &Plan) -> Result<Vec<u8>> {
         }
         imports.import(FIRST, &short(nth), kind);
     }
-    for (nth, &function) in (program.shared.len()..).zip(&plan.needed) {
-        imports.import(FIRST, &short(nth), EntityType::Function(program.functions[function as usize]));
-    }
     let (mut functions, mut code) = (FunctionSection::new(), CodeSection::new());
     for &function in &plan.moving {
         functions.function(program.functions[function as usize]);
         let body = program.body(function).context("an imported function stays where it is")?;
-        writer.parse_function_body(&mut code, body.clone()).map_err(told)?;
+        let far = |function: u32| !plan.moved[function as usize];
+        code.function(&body_reaching(&mut writer, body, program, plan, far).map_err(told)?);
     }
     let mut places: BTreeMap<u32, u32> =
         plan.gates.iter().map(|(&function, &place)| (place, function)).collect();
