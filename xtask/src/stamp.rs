@@ -97,7 +97,7 @@ fn externalise(html: &str) -> Result<(String, Vec<Script>)> {
         let inline = !attributes.split_whitespace().any(|attribute| attribute.starts_with("src="));
         // Data in a script tag is not run, and no policy forbids it.
         if inline && !attributes.contains("json") {
-            let text = tag[open + 1..end].trim().to_owned() + "\n";
+            let text = pack::unindented(&tag[open + 1..end]);
             let name = format!("start-{:016x}.js", hash(text.as_bytes()));
             let space = if attributes.is_empty() { "" } else { " " };
             out.extend(["<script", space, attributes, " src=\"./", &name, "\"></script>"]);

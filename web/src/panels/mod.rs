@@ -41,5 +41,25 @@ use crate::bench::{BenchHandle, Msg};
 /// A click that sends a message.
 pub(crate) fn send(bench: &BenchHandle, msg: Msg) -> Callback<MouseEvent> {
     let dispatcher = bench.dispatcher();
-    Callback::from(move |_| dispatcher.dispatch(msg.clone()))
+    Callback::from(move |_| dispatcher.dispatch(once_more(&msg)))
+}
+
+/// A copy of a message. Those of the first screen are copied here; a button of the panels finds [`any`] beside it.
+fn once_more(msg: &Msg) -> Msg {
+    match *msg {
+        Msg::Show(condition) => Msg::Show(condition),
+        Msg::Open(part) => Msg::Open(part),
+        Msg::Why => Msg::Why,
+        Msg::Go(tab) => Msg::Go(tab),
+        Msg::Light(theme) => Msg::Light(theme),
+        Msg::Accept => Msg::Accept,
+        Msg::Cautions => Msg::Cautions,
+        Msg::Dismiss(note) => Msg::Dismiss(note),
+        _ => any(msg),
+    }
+}
+
+#[inline(never)]
+fn any(msg: &Msg) -> Msg {
+    msg.clone()
 }
