@@ -2,16 +2,20 @@
 #![cfg(not(target_arch = "wasm32"))]
 
 use std::fs;
-use std::path::Path;
 
 use lampladder_core::condition::Condition;
-use lampladder_core::detail::Detail;
+use lampladder_core::detail::{Detail, Standing};
 use lampladder_core::family::{Family, Unsuitable, Warning};
 use lampladder_core::fuse::{Status, Verdict};
 use lampladder_core::glow::GlowWord;
+use lampladder_core::ladder::FirstFrom;
 use lampladder_core::load::Mode;
-use lampladder_core::precheck::{Class, DischargePlace, PlugFinding};
+use lampladder_core::precheck::{Class, DischargePlace, Path, PlugFinding};
 use lampladder_core::readings::{Behaviour, Kind};
+use lampladder_web::bench::{Part, Tab, Theme};
+use lampladder_web::log::Trouble;
+use lampladder_web::replay::Closing;
+use lampladder_web::words::ladder::Progress;
 use lampladder_web::words::{LANGUAGES, catalogue, english, keys, read};
 
 /// Words that are the same in another language, by key; what has no letters is the same in all.
@@ -42,8 +46,8 @@ const PROMISES: [(&str, &[&str]); 4] = [
     ("es", &["seguro", "segura", "seguros", "seguras", "seguridad"]),
 ];
 
-fn root() -> &'static Path {
-    Path::new(env!("CARGO_MANIFEST_DIR"))
+fn root() -> &'static std::path::Path {
+    std::path::Path::new(env!("CARGO_MANIFEST_DIR"))
 }
 
 /// The text of a catalogue, and its keys with their texts.
@@ -248,6 +252,46 @@ fn keys_of_enumerations_stand_in_the_order_of_their_variants() {
     }
     for finding in [PlugFinding::Healthy, PlugFinding::ShortedInput, PlugFinding::OpenPath] {
         holds("ladder.finding", finding as usize, &snake(format!("{finding:?}")));
+    }
+    let path = [
+        Path::Primary,
+        Path::Motor,
+        Path::ColdHeaters,
+        Path::Element,
+        Path::ColdFilament,
+        Path::Degauss,
+        Path::Rectifier,
+        Path::Measured,
+        Path::Unknown,
+    ];
+    for path in path {
+        holds("ladder.path", path as usize, &snake(format!("{path:?}")));
+    }
+    for from in [FirstFrom::Plate, FirstFrom::Least, FirstFrom::Most] {
+        holds("ladder.first_from", from as usize, &snake(format!("{from:?}")));
+    }
+    for standing in [Standing::Published, Standing::Memory, Standing::Design] {
+        holds("ladder.quoted", standing as usize, &snake(format!("{standing:?}")));
+    }
+    for progress in [Progress::Done, Progress::LeftOut, Progress::Now, Progress::Next] {
+        holds("ladder.progress", progress as usize, &snake(format!("{progress:?}")));
+    }
+    for tab in [Tab::Expect, Tab::Seen, Tab::Ladder, Tab::SwitchOn, Tab::Curve, Tab::HandOn] {
+        holds("tab", tab as usize, &snake(format!("{tab:?}")));
+    }
+    for theme in [Theme::Auto, Theme::Paper, Theme::Dusk] {
+        holds("theme", theme as usize, &snake(format!("{theme:?}")));
+    }
+    for part in [Part::Supply, Part::Bank, Part::Equipment] {
+        holds("part", part as usize, &snake(format!("{part:?}")));
+        holds("change", part as usize, &snake(format!("{part:?}")));
+    }
+    for closing in Closing::ALL {
+        holds("replay.closing", closing as usize, &snake(format!("{closing:?}")));
+        holds("replay.assumes_when", closing as usize, &snake(format!("{closing:?}")));
+    }
+    for trouble in [Trouble::Forbidden, Trouble::Full, Trouble::Lost] {
+        holds("seen.trouble", trouble as usize, &snake(format!("{trouble:?}")));
     }
     for (at, tag) in LANGUAGES.into_iter().enumerate() {
         holds("language", at, tag);
