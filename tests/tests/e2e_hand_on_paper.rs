@@ -156,6 +156,15 @@ fn the_card_is_one_page_with_cautions_set_up_rungs_and_code() -> Result<()> {
     browser.until("return document.querySelectorAll('[data-testid=card] tbody tr').length === 6")?;
     browser.see(&id("code"))?;
     ensure_one_page(&browser, "card-long")?;
+    // Other languages take more room.
+    for tag in ["de", "fr", "es"] {
+        browser.choose(&id("language"), tag)?;
+        browser.until(&format!("return document.documentElement.lang === '{tag}'"))?;
+        browser.until("return document.querySelectorAll('[data-testid=card] tbody tr').length === 6")?;
+        ensure_one_page(&browser, &format!("card-long-{tag}"))?;
+        browser.script("window.scrollTo(0, 0); return 1")?;
+        browser.picture(&format!("hand-on-{tag}"))?;
+    }
     page::no_complaints(&browser)
 }
 

@@ -16,6 +16,8 @@ pub(super) fn card(bench: &BenchHandle, code: Option<&Code>) -> El {
     let words = bench.words();
     let texts = &words.hand_on().card_words;
     let cautions = el("ul").each(texts.caution.iter().map(|text| el("li").text(*text)));
+    let assumes = words.assumes(&describe::assumed(&bench.setup, words));
+    let left = el("div").with(el("p").text(texts.notes)).with(el("p").class("card-assumes").text(assumes));
     let code = code.map(|code| {
         el("div")
             .class("card-code")
@@ -30,8 +32,7 @@ pub(super) fn card(bench: &BenchHandle, code: Option<&Code>) -> El {
         .with(el("p").class("card-for").text(equipment(bench)))
         .with(el("p").class("card-checks").with(el("b").text(texts.checks)).each(boxes(bench)))
         .with(rungs(bench))
-        .with(el("div").class("card-foot").with(el("p").text(texts.notes)).maybe(code))
-        .with(el("p").class("card-assumes").text(words.assumes(&describe::assumed(&bench.setup, words))))
+        .with(el("div").class("card-foot").with(left).maybe(code))
 }
 
 fn equipment(bench: &Bench) -> String {

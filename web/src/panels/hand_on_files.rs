@@ -56,6 +56,8 @@ pub(super) fn files(bench: &BenchHandle, told: &UseStateHandle<Option<Told>>) ->
     el("div")
         .with(el("h2").text(texts.readings))
         .maybe(none.then(|| el("p").class("hint").text(texts.none)))
+        // Above the buttons: what stands at the end of the page is under the list of panels.
+        .with(el("div").set("role", "status").test("file-told").each(lines(bench, told.as_ref())))
         .with(
             el("div")
                 .class("deeds")
@@ -64,7 +66,6 @@ pub(super) fn files(bench: &BenchHandle, told: &UseStateHandle<Option<Told>>) ->
                 .with(read)
                 .with(input),
         )
-        .with(el("div").set("role", "status").test("file-told").each(lines(bench, told.as_ref())))
 }
 
 fn lines(bench: &Bench, told: Option<&Told>) -> Vec<El> {
