@@ -6,7 +6,7 @@ use lampladder_core::lamp::Lamp;
 use lampladder_core::link;
 use lampladder_core::readings::Kind;
 use lampladder_core::stock::Stock;
-use lampladder_tests::browser::Browser;
+use lampladder_tests::browser::{Browser, PATIENCE};
 use lampladder_tests::page::{self, NOTE, field};
 use lampladder_tests::{accessibility, surroundings};
 use serde_json::json;
@@ -53,7 +53,8 @@ fn keep_a_reading(browser: &Browser, volts: &str) -> Result<()> {
     browser.fill(&field(&format!("read-{}", Kind::BankVolts.field().name().replace('_', "-"))), volts)?;
     browser.until("return document.querySelector('[data-testid=seen]').dataset.busy === 'false'")?;
     browser.tap(&id("keep"))?;
-    browser.see(KEPT)
+    browser.see(KEPT)?;
+    until_stored(browser)
 }
 
 /// The link on the panel, once it is the newest.
@@ -95,8 +96,26 @@ fn scanned(browser: &Browser) -> Result<String> {
     Ok(read.remove(0).remove(0))
 }
 
+/// What the phone keeps under a name, once it does.
 fn stored(browser: &Browser, name: &str) -> Result<serde_json::Value> {
-    browser.script(&format!("return localStorage.getItem('lampladder.{name}')"))
+    let kept = format!("return localStorage.getItem('lampladder.{name}')");
+    browser.until(&kept)?;
+    browser.script(&kept)
+}
+
+/// Waits until the database holds a reading; it must not be opened before the page has made it.
+fn until_stored(browser: &Browser) -> Result<()> {
+    let count = "const done = arguments[arguments.length - 1]; indexedDB.databases().then((all) => { \
+        if (!all.some((one) => one.name === 'lampladder.log')) return done(0); \
+        const open = indexedDB.open('lampladder.log'); open.onsuccess = () => { const db = open.result; \
+          if (!db.objectStoreNames.contains('readings')) { db.close(); return done(0); } \
+          const all = db.transaction('readings').objectStore('readings').count(); \
+          all.onsuccess = () => { db.close(); done(all.result) } } })";
+    let begun = std::time::Instant::now();
+    while browser.script_later(count, Vec::new())? == 0 {
+        ensure!(begun.elapsed() < PATIENCE, "no reading is stored");
+    }
+    Ok(())
 }
 
 #[test]
