@@ -96,18 +96,23 @@ fn scanned(browser: &Browser) -> Result<String> {
     Ok(read.remove(0).remove(0))
 }
 
+/// The name under which the phone keeps something, in JavaScript.
+fn key(name: &str) -> String {
+    format!("'lampladder.{name} ' + new URL('./', location.href).pathname")
+}
+
 /// What the phone keeps under a name, once it does.
 fn stored(browser: &Browser, name: &str) -> Result<serde_json::Value> {
-    let kept = format!("return localStorage.getItem('lampladder.{name}')");
+    let kept = format!("return localStorage.getItem({})", key(name));
     browser.until(&kept)?;
     browser.script(&kept)
 }
 
 /// Waits until the database holds a reading; it must not be opened before the page has made it.
 fn until_stored(browser: &Browser) -> Result<()> {
-    let count = "const done = arguments[arguments.length - 1]; indexedDB.databases().then((all) => { \
-        if (!all.some((one) => one.name === 'lampladder.log')) return done(0); \
-        const open = indexedDB.open('lampladder.log'); open.onsuccess = () => { const db = open.result; \
+    let count = "const done = arguments[arguments.length - 1]; const name = 'lampladder.log ' + new URL('./', location.href).pathname; indexedDB.databases().then((all) => { \
+        if (!all.some((one) => one.name === name)) return done(0); \
+        const open = indexedDB.open(name); open.onsuccess = () => { const db = open.result; \
           if (!db.objectStoreNames.contains('readings')) { db.close(); return done(0); } \
           const all = db.transaction('readings').objectStore('readings').count(); \
           all.onsuccess = () => { db.close(); done(all.result) } } })";
@@ -187,7 +192,9 @@ fn a_bench_is_handed_on_without_a_server_and_is_the_same_elsewhere() -> Result<(
     page::accept(&other)?;
     opened(&other)?;
     other.tap(GO_ON)?;
-    other.until(&format!("return localStorage.getItem('lampladder.stock') !== {own_stock}"))?;
+    other.until(&format!("return localStorage.getItem({}) !== {own_stock}", key("stock")))?;
+    // The address follows with the next frame.
+    other.until("return location.hash.startsWith('#1')")?;
     other.reload()?;
     page::accept(&other)?;
     other.tap(LADDER)?;
@@ -312,7 +319,7 @@ fn a_link_with_many_readings_is_said_to_be_too_long() -> Result<()> {
     // The same reading a hundred and then ten thousand times, each with a note.
     let many = |count: u32| {
         format!(
-            "const done = arguments[arguments.length - 1]; const open = indexedDB.open('lampladder.log'); \
+            "const done = arguments[arguments.length - 1]; const open = indexedDB.open('lampladder.log ' + new URL('./', location.href).pathname); \
              open.onsuccess = () => {{ const db = open.result; const t = db.transaction('readings', 'readwrite'); \
                const s = t.objectStore('readings'); const all = s.getAll(); all.onsuccess = () => {{ const one = all.result[0]; \
                  for (let i = 0; i < {count}; i++) s.put({{...one, id: 1000 + i, note: 'hums a little ' + i}}); }}; \

@@ -14,7 +14,7 @@ use crate::parts::field::slug;
 
 /// What the text begins with.
 const VERSION: &str = "1";
-const TABS: [Tab; 5] = [Tab::Expect, Tab::Ladder, Tab::Seen, Tab::SwitchOn, Tab::Curve];
+const TABS: [Tab; 6] = [Tab::Expect, Tab::Ladder, Tab::Seen, Tab::SwitchOn, Tab::Curve, Tab::HandOn];
 const PLAIN: [Slot; 8] = [
     Slot::SupplyVolts,
     Slot::SupplyHertz,
