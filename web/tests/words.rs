@@ -164,25 +164,27 @@ fn every_text_is_used() {
     }
 }
 
+/// Fails unless a field's key at a place bears the name of the variant that is picked there.
+fn holds(field: &str, at: usize, name: &str) {
+    let prefix = format!("{field}.");
+    let key = keys().into_iter().filter_map(|key| key.strip_prefix(&prefix)).nth(at);
+    assert_eq!(key, Some(name.replace(['-', ' '], "_").as_str()), "{field}");
+}
+
+/// A variant as keys are written: `SlowRise` as `slow_rise`.
+fn snake(debug: &str) -> String {
+    let mut name = String::new();
+    for letter in debug.chars() {
+        if letter.is_uppercase() && !name.is_empty() {
+            name.push('_');
+        }
+        name.extend(letter.to_lowercase());
+    }
+    name
+}
+
 #[test]
 fn keys_of_enumerations_stand_in_the_order_of_their_variants() {
-    let all = keys();
-    let holds = |field: &str, at: usize, name: &str| {
-        let prefix = format!("{field}.");
-        let key = all.iter().filter_map(|key| key.strip_prefix(&prefix)).nth(at);
-        assert_eq!(key, Some(name.replace(['-', ' '], "_").as_str()), "{field}");
-    };
-    // "SlowRise" as "slow_rise".
-    let snake = |debug: String| {
-        let mut name = String::new();
-        for letter in debug.chars() {
-            if letter.is_uppercase() && !name.is_empty() {
-                name.push('_');
-            }
-            name.extend(letter.to_lowercase());
-        }
-        name
-    };
     for condition in Condition::ALL {
         for field in ["condition", "if_condition", "said", "means"] {
             holds(field, condition as usize, condition.name());
@@ -214,20 +216,20 @@ fn keys_of_enumerations_stand_in_the_order_of_their_variants() {
         holds("mode_decides", mode as usize, mode.name());
     }
     for class in Class::ALL {
-        holds("ladder.class_name", class as usize, &snake(format!("{class:?}")));
-        holds("ladder.class_means", class as usize, &snake(format!("{class:?}")));
+        holds("ladder.class_name", class as usize, &snake(&format!("{class:?}")));
+        holds("ladder.class_means", class as usize, &snake(&format!("{class:?}")));
     }
     for verdict in [Verdict::Holds, Verdict::MayOpen, Verdict::Opens] {
         holds("replay.verdict", verdict as usize, verdict.name());
     }
     for status in [Status::Declared, Status::SecondHand, Status::Memory] {
-        holds("replay.fuse_note", status as usize, &snake(format!("{status:?}")));
+        holds("replay.fuse_note", status as usize, &snake(&format!("{status:?}")));
     }
     let refused =
         [Unsuitable::MicrowaveOven, Unsuitable::Medical, Unsuitable::ThreePhase, Unsuitable::TooPowerful];
     for kind in refused {
-        holds("unsuitable_equipment", kind as usize, &snake(format!("{kind:?}")));
-        holds("refuse_equipment", kind as usize, &snake(format!("{kind:?}")));
+        holds("unsuitable_equipment", kind as usize, &snake(&format!("{kind:?}")));
+        holds("refuse_equipment", kind as usize, &snake(&format!("{kind:?}")));
     }
     let warnings = [
         Warning::Hunts,
@@ -239,7 +241,7 @@ fn keys_of_enumerations_stand_in_the_order_of_their_variants() {
         Warning::MovingParts,
     ];
     for warning in warnings {
-        holds("warning", warning as usize, &snake(format!("{warning:?}")));
+        holds("warning", warning as usize, &snake(&format!("{warning:?}")));
     }
     let places = [
         DischargePlace::PlugPins,
@@ -248,11 +250,15 @@ fn keys_of_enumerations_stand_in_the_order_of_their_variants() {
         DischargePlace::Accessible,
     ];
     for place in places {
-        holds("ladder.place", place as usize, &snake(format!("{place:?}")));
+        holds("ladder.place", place as usize, &snake(&format!("{place:?}")));
     }
     for finding in [PlugFinding::Healthy, PlugFinding::ShortedInput, PlugFinding::OpenPath] {
-        holds("ladder.finding", finding as usize, &snake(format!("{finding:?}")));
+        holds("ladder.finding", finding as usize, &snake(&format!("{finding:?}")));
     }
+}
+
+#[test]
+fn keys_of_choices_stand_in_the_order_of_their_variants() {
     let path = [
         Path::Primary,
         Path::Motor,
@@ -265,33 +271,33 @@ fn keys_of_enumerations_stand_in_the_order_of_their_variants() {
         Path::Unknown,
     ];
     for path in path {
-        holds("ladder.path", path as usize, &snake(format!("{path:?}")));
+        holds("ladder.path", path as usize, &snake(&format!("{path:?}")));
     }
     for from in [FirstFrom::Plate, FirstFrom::Least, FirstFrom::Most] {
-        holds("ladder.first_from", from as usize, &snake(format!("{from:?}")));
+        holds("ladder.first_from", from as usize, &snake(&format!("{from:?}")));
     }
     for standing in [Standing::Published, Standing::Memory, Standing::Design] {
-        holds("ladder.quoted", standing as usize, &snake(format!("{standing:?}")));
+        holds("ladder.quoted", standing as usize, &snake(&format!("{standing:?}")));
     }
     for progress in [Progress::Done, Progress::LeftOut, Progress::Now, Progress::Next] {
-        holds("ladder.progress", progress as usize, &snake(format!("{progress:?}")));
+        holds("ladder.progress", progress as usize, &snake(&format!("{progress:?}")));
     }
     for tab in [Tab::Expect, Tab::Seen, Tab::Ladder, Tab::SwitchOn, Tab::Curve, Tab::HandOn] {
-        holds("tab", tab as usize, &snake(format!("{tab:?}")));
+        holds("tab", tab as usize, &snake(&format!("{tab:?}")));
     }
     for theme in [Theme::Auto, Theme::Paper, Theme::Dusk] {
-        holds("theme", theme as usize, &snake(format!("{theme:?}")));
+        holds("theme", theme as usize, &snake(&format!("{theme:?}")));
     }
     for part in [Part::Supply, Part::Bank, Part::Equipment] {
-        holds("part", part as usize, &snake(format!("{part:?}")));
-        holds("change", part as usize, &snake(format!("{part:?}")));
+        holds("part", part as usize, &snake(&format!("{part:?}")));
+        holds("change", part as usize, &snake(&format!("{part:?}")));
     }
     for closing in Closing::ALL {
-        holds("replay.closing", closing as usize, &snake(format!("{closing:?}")));
-        holds("replay.assumes_when", closing as usize, &snake(format!("{closing:?}")));
+        holds("replay.closing", closing as usize, &snake(&format!("{closing:?}")));
+        holds("replay.assumes_when", closing as usize, &snake(&format!("{closing:?}")));
     }
     for trouble in [Trouble::Forbidden, Trouble::Full, Trouble::Lost] {
-        holds("seen.trouble", trouble as usize, &snake(format!("{trouble:?}")));
+        holds("seen.trouble", trouble as usize, &snake(&format!("{trouble:?}")));
     }
     for (at, tag) in LANGUAGES.into_iter().enumerate() {
         holds("language", at, tag);
