@@ -161,3 +161,19 @@ fn the_main_answer_needs_no_scrolling_on_a_small_phone() -> Result<()> {
     ensure!(wide == false, "the page is wider than the phone");
     Ok(())
 }
+
+#[test]
+fn a_panel_is_shown_from_its_beginning() -> Result<()> {
+    let site = surroundings::site()?;
+    let browser = Browser::start()?;
+    page::enter(&browser, &site.url())?;
+    // Every panel is longer than the screen.
+    for tab in ["ladder", "seen", "switch-on", "curve", "hand-on", "expect"] {
+        browser.until("return document.documentElement.scrollHeight > innerHeight + 100")?;
+        browser.script("scrollTo(0, 100); return true")?;
+        browser.until("return scrollY > 0")?;
+        browser.script(&format!("document.querySelector('[data-testid=tab-{tab}]').click(); return true"))?;
+        browser.until("return scrollY === 0")?;
+    }
+    Ok(())
+}

@@ -3,10 +3,10 @@
 //! The release page fetches it after that answer ([`crate::browser::rest`] tells when it is there). Nothing but the
 //! name of [`Rest`] stands in the first part of the program; what goes where is said in web/rest.txt.
 
-use yew::{Html, Properties, function_component, hook, html, use_effect_with};
+use yew::{Html, Properties, function_component, hook, html, use_effect_with, use_mut_ref};
 
 use crate::bench::{BenchHandle, Msg, Note, Tab};
-use crate::browser::window::{EverySecond, NextFrame, clock};
+use crate::browser::window::{EverySecond, NextFrame, clock, to_top};
 use crate::browser::{fresh, language, reckoner, storage};
 use crate::climb::{Move, equipment};
 use crate::custody::use_custody;
@@ -44,6 +44,7 @@ pub fn Rest(props: &RestProps) -> Html {
     use_keeper(bench);
     use_custody(bench);
     use_opening(bench);
+    use_top(bench.tab);
     use_texts(bench);
     if !bench.words.is_whole() {
         return el("p").class("panel told").set("role", "status").text(bench.words.coming).html();
@@ -62,6 +63,17 @@ pub fn Rest(props: &RestProps) -> Html {
             { el("div").class("panel").with(panel).html() }
         </>
     }
+}
+
+/// Shows a panel from its beginning, wherever the one before was left.
+#[hook]
+fn use_top(tab: Tab) {
+    let before = use_mut_ref(|| tab);
+    use_effect_with(tab, move |tab| {
+        if before.replace(*tab) != *tab {
+            to_top();
+        }
+    });
 }
 
 /// Completes the texts of a language, since the panels have more to say than the first screen.

@@ -46,8 +46,6 @@ pub fn show(cautions: bool) {
     let stage = if cautions { "cautions" } else { "bench" };
     if root.get_attribute("data-stage").as_deref() != Some(stage) {
         let _ = root.set_attribute("data-stage", stage);
-        if let Some(window) = web_sys::window() {
-            window.scroll_to_with_x_and_y(0.0, 0.0);
-        }
+        super::window::to_top();
     }
 }

@@ -94,6 +94,13 @@ pub fn clock() -> f64 {
     js_sys::Date::now()
 }
 
+/// Shows the page from its beginning.
+pub fn to_top() {
+    if let Some(window) = web_sys::window() {
+        window.scroll_to_with_x_and_y(0.0, 0.0);
+    }
+}
+
 /// Width of the window, CSS pixels; 360 where it cannot be had.
 pub fn width() -> f64 {
     let width = web_sys::window().and_then(|window| window.inner_width().ok()?.as_f64());
