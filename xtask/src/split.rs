@@ -15,7 +15,7 @@ use anyhow::{Context, Result, anyhow};
 use wasm_encoder::reencode::Error;
 
 use plan::Plan;
-use program::{Program, without_hashes};
+use program::Program;
 
 /// What the script calls to wait for the rest.
 pub const WAIT: &str = "__wbg_later";
@@ -76,22 +76,6 @@ pub fn split(wasm: &[u8], marks: &Marks<'_>) -> Result<Option<Parts>> {
     Ok(Some(parts))
 }
 
-/// Every function that the program defines, in its order: whether it goes to the rest, its bytes, its name.
-///
-/// # Errors
-/// When the program is none.
-pub fn listed(wasm: &[u8], marks: &Marks<'_>) -> Result<Vec<(bool, usize, String)>> {
-    let program = Program::read(wasm)?;
-    let moved = program.moved(marks);
-    let bodies = (program.imported..).zip(&program.bodies);
-    Ok(bodies
-        .map(|(function, body)| {
-            let name = program.names.get(&function).map_or("", String::as_str);
-            (moved[function as usize], body.range().len(), without_hashes(name).into_owned())
-        })
-        .collect())
-}
-
 type Outcome<T> = Result<T, Error<Infallible>>;
 
 #[expect(clippy::needless_pass_by_value, reason = "for `map_err`")]
@@ -102,6 +86,7 @@ fn told(error: Error<Infallible>) -> anyhow::Error {
 #[cfg(test)]
 mod tests {
     use super::border::{active, short};
+    use super::program::without_hashes;
     use super::*;
     use wasm_encoder::{
         CodeSection, ElementSection, EntityType, ExportKind, ExportSection, Function, FunctionSection,
