@@ -7,6 +7,7 @@ use lampladder_core::condition::Condition;
 use lampladder_core::error::InputError;
 use lampladder_core::expect::{LampShown, Prospect, Shown, prospect};
 use lampladder_core::family::Family;
+use lampladder_core::glow::Glow;
 use lampladder_core::load::Mode;
 use lampladder_core::setup::Setup;
 use lampladder_core::steady::{Equilibrium, Outcome, SteadyError};
@@ -124,9 +125,10 @@ pub fn brightest(shown: &Shown) -> Option<(Place, &LampShown)> {
     let lamps = shown.lamps.iter().enumerate().flat_map(|(group, lamps)| {
         lamps.iter().enumerate().map(move |(lamp, shown)| (Place { group, lamp }, shown))
     });
-    lamps.reduce(
-        |best, other| {
-            if other.1.glow.relative_luminance > best.1.glow.relative_luminance { other } else { best }
-        },
-    )
+    lamps.reduce(|best, other| brighter(best, other, |(_, lamp)| lamp.glow))
+}
+
+/// The brighter of two, each against its own rating; the first where they are alike.
+pub fn brighter<T>(best: T, other: T, glow: impl Fn(&T) -> Glow) -> T {
+    if glow(&other).relative_luminance > glow(&best).relative_luminance { other } else { best }
 }

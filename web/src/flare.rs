@@ -4,6 +4,7 @@ use lampladder_core::bank::Bank;
 use lampladder_core::condition::Condition;
 use lampladder_core::glow::Glow;
 
+use crate::answers::brighter;
 use crate::bench::Bench;
 use crate::draft::Place;
 use crate::parts::well::Filament;
@@ -20,9 +21,7 @@ pub fn flare(bench: &Bench, condition: Condition, place: Place) -> Option<(Glow,
 /// The flare of the lamp that becomes the brightest.
 pub fn brightest(bench: &Bench, condition: Condition) -> Option<(Glow, f64)> {
     let flares = places(&bench.setup.bank).filter_map(|place| flare(bench, condition, place));
-    flares.reduce(
-        |best, other| if other.0.relative_luminance > best.0.relative_luminance { other } else { best },
-    )
+    flares.reduce(|best, other| brighter(best, other, |(glow, _)| *glow))
 }
 
 /// A flare as a filament: still for those who want stillness.

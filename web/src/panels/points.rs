@@ -3,6 +3,7 @@
 use lampladder_core::glow::Glow;
 use lampladder_core::steady::Equilibrium;
 
+use crate::answers::brighter;
 use crate::bench::Bench;
 use crate::describe::full;
 use crate::parts::el::{El, el};
@@ -46,5 +47,5 @@ fn brightest(bench: &Bench, point: &Equilibrium) -> Option<Glow> {
     let groups = bench.setup.bank.groups().iter().zip(&point.lamps);
     let glows = groups
         .flat_map(|(group, states)| group.iter().zip(states).map(|(lamp, state)| lamp.glow(state.kelvin)));
-    glows.reduce(|best, other| if other.relative_luminance > best.relative_luminance { other } else { best })
+    glows.reduce(|best, other| brighter(best, other, |glow| *glow))
 }
