@@ -1,6 +1,6 @@
 //! How a lamp pulses in front of a switch-mode supply that starts, pulls its own input down, stops and starts again.
 //!
-//! By the time domain itself ([`crate::switch_on`]), from cold until two pulses in a row take the same time. Close to the
+//! By the time domain itself ([`crate::switch_on`]), from cold until pulses no longer change. Close to the
 //! point at which a supply would just keep running, any average over the mains cycle is off by whole seconds: there the
 //! reservoir sinks ever more slowly, and the ripple decides.
 
@@ -20,8 +20,12 @@ const MOST_STEPS: u32 = 20_000;
 /// Steps between two looks at the record.
 const SLICE: u32 = 200;
 
-/// Two pulses this close, relatively, are alike.
+/// Pulses this close, relatively, are alike.
 const ALIKE: f64 = 0.02;
+
+/// Short pulses hardly differ from the one before while the filament still warms: a pulse must be like the one so many
+/// seconds earlier, too.
+const SETTLING_SECONDS: f64 = 1.0;
 
 /// Pulses that beat with the mains are never alike: then the mean of so many is taken.
 const MANY: usize = 8;
@@ -78,11 +82,14 @@ pub fn pulse(supply: &Supply, bank: &Bank, load: &Load) -> Option<Pulse> {
         let starts = run.starts();
         if let [.., first, second, third] = *starts {
             let (before, last) = (second - first, third - second);
-            if libm::fabs(last / before - 1.0) < ALIKE {
+            let alike = |other: f64| libm::fabs(last / other - 1.0) < ALIKE;
+            let earlier = starts.windows(2).rev().find(|pair| pair[1] <= third - SETTLING_SECONDS);
+            if alike(before) && earlier.is_some_and(|pair| alike(pair[1] - pair[0])) {
                 return Some(Pulse::between(run.samples(), second, third, 0.5 * (before + last)));
             }
         }
-        if let Some(from) = starts.len().checked_sub(MANY + 1).filter(|from| *from > 0) {
+        if let Some(from) = starts.len().checked_sub(MANY + 1).filter(|from| starts[*from] > SETTLING_SECONDS)
+        {
             let (first, last) = (starts[from], starts[from + MANY]);
             #[expect(clippy::cast_precision_loss, reason = "eight")]
             let mean = (last - first) / MANY as f64;

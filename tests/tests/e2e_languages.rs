@@ -102,6 +102,16 @@ fn look(browser: &Browser, tag: &str, screen: &str, english: &[String]) -> Resul
     browser.picture(&format!("{tag}-{screen}"))
 }
 
+fn check_in_both_lights(browser: &Browser, tag: &str, screen: &str) -> Result<()> {
+    // High enough that no bar at its edge covers half a button, which axe-core takes for a small one.
+    browser.resize(360, 4000)?;
+    for scheme in ["light", "dark"] {
+        browser.prefer(scheme)?;
+        accessibility::check(browser, &format!("{tag}, {screen}, {scheme}"))?;
+    }
+    browser.prefer("light")
+}
+
 fn every_screen_in(tag: &str) -> Result<()> {
     let mut site = surroundings::site()?;
     let browser = Browser::start()?;
@@ -115,13 +125,7 @@ fn every_screen_in(tag: &str) -> Result<()> {
     ensure!(english.len() > 300, "only {} texts to look for", english.len());
     every_screen(&browser, &site.url(), &mut |screen| {
         look(&browser, tag, screen, &english)?;
-        // High enough that no bar at its edge covers half a button, which axe-core takes for a small one.
-        browser.resize(360, 4000)?;
-        for scheme in ["light", "dark"] {
-            browser.prefer(scheme)?;
-            accessibility::check(&browser, &format!("{tag}, {screen}, {scheme}"))?;
-        }
-        browser.prefer("light")?;
+        check_in_both_lights(&browser, tag, screen)?;
         if ["expect", "seen", "ladder-lamps", "switch-on"].contains(&screen) {
             browser.resize(1280, 800)?;
             look(&browser, tag, &format!("{screen}-wide"), &english)?;
@@ -130,6 +134,8 @@ fn every_screen_in(tag: &str) -> Result<()> {
     })?;
     browser.tap("[data-testid=tab-hand-on]")?;
     look(&browser, tag, "hand-on", &english)?;
+    check_in_both_lights(&browser, tag, "hand-on")?;
+    browser.resize(360, 640)?;
     ensure_card(&browser, tag)?;
     page::no_complaints(&browser)
 }

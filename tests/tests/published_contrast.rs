@@ -114,6 +114,10 @@ fn token(value: &str) -> Option<&str> {
     value.strip_prefix("var(--")?.split(')').next()
 }
 
+/// The bench card is printed black on white, whatever the light of the screen.
+const PRINTED: &str = "#000";
+const PAPER: &str = "#fff";
+
 #[test]
 fn the_style_sheets_use_no_other_colours() -> Result<()> {
     let mut seen = BTreeSet::new();
@@ -122,13 +126,13 @@ fn the_style_sheets_use_no_other_colours() -> Result<()> {
             let known = token(value).is_some_and(|text| {
                 TEXTS.contains(&text) || FILLED.iter().any(|(filled, _)| *filled == text)
             });
-            ensure!(known || value == "inherit", "{name}: text in `{value}`");
+            ensure!(known || ["inherit", PRINTED].contains(&value), "{name}: text in `{value}`");
             seen.extend(token(value).map(ToOwned::to_owned));
         }
         for value in values(sheet, "background") {
             let known =
                 token(value).is_some_and(|ground| GROUNDS.contains(&ground) || NO_GROUNDS.contains(&ground));
-            ensure!(known || value == "none", "{name}: background `{value}`");
+            ensure!(known || ["none", PAPER].contains(&value), "{name}: background `{value}`");
             seen.extend(token(value).map(ToOwned::to_owned));
         }
         for (at, _) in sheet.match_indices('#') {
@@ -155,6 +159,10 @@ fn what_is_faded_can_still_be_read() -> Result<()> {
                 continue;
             }
             let opacity: f64 = opacity.parse()?;
+            // What is not seen at all lies over what is: a list over the button that opens it.
+            if opacity == 0.0 {
+                continue;
+            }
             count += 1;
             for (light, tokens) in lights()? {
                 for text in ["ink", "dim", "alarm"] {
