@@ -13,8 +13,8 @@ use crate::panels::advice::advice_panel;
 use crate::panels::circuit::circuit;
 use crate::panels::comparison::comparison;
 use crate::panels::frame::{CAUTIONS_BUTTON, header, notes, tabs};
-use crate::panels::send;
 use crate::panels::voltage_bar::voltage_bar;
+use crate::panels::{send, told};
 use crate::parts::el::{button, el, several};
 use crate::rest::Rest;
 use lampladder_core::link;
@@ -174,8 +174,4 @@ fn page(bench: &BenchHandle, arrival: Arrival) -> Html {
         .with(el("main").class("bench").with(answer_side).with(panel_side))
         .with(tabs(bench))
         .html()
-}
-
-fn told(text: &'static str) -> Html {
-    el("p").class("panel told").set("role", "status").text(text).html()
 }

@@ -21,6 +21,7 @@ use crate::panels::ladder::ladder;
 use crate::panels::seen::seen;
 use crate::panels::sheet::Sheet;
 use crate::panels::switch_on::switch_on;
+use crate::panels::told;
 use crate::parts::el::el;
 use crate::reckoner::pulses::Wanted;
 use crate::reckoner::{Answer, Ask};
@@ -47,7 +48,7 @@ pub fn Rest(props: &RestProps) -> Html {
     use_top(bench.tab);
     use_texts(bench);
     if !bench.words.is_whole() {
-        return el("p").class("panel told").set("role", "status").text(bench.words.coming).html();
+        return told(bench.words.coming);
     }
     let panel = match bench.tab {
         Tab::Expect => details(bench),

@@ -3,7 +3,9 @@
 //! The document's `data-stage` says which of the two is shown; the style sheets hide the other, and every language but
 //! the document's.
 
-use web_sys::{Document, Element};
+use web_sys::Element;
+
+use super::window::{document, root, to_top};
 
 /// The element that the program is drawn in.
 pub const APP: &str = "app";
@@ -11,10 +13,6 @@ pub const APP: &str = "app";
 pub const FOOT: &str = "cautions-foot";
 /// The line that says that the program is starting.
 const STARTING: &str = "starting";
-
-fn document() -> Option<Document> {
-    web_sys::window()?.document()
-}
 
 /// An element of static/index.html.
 pub fn element(id: &str) -> Option<Element> {
@@ -42,10 +40,10 @@ pub fn started() {
 
 /// Shows the cautions, or the bench.
 pub fn show(cautions: bool) {
-    let Some(root) = document().and_then(|document| document.document_element()) else { return };
+    let Some(root) = root() else { return };
     let stage = if cautions { "cautions" } else { "bench" };
     if root.get_attribute("data-stage").as_deref() != Some(stage) {
         let _ = root.set_attribute("data-stage", stage);
-        super::window::to_top();
+        to_top();
     }
 }

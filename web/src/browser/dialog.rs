@@ -1,9 +1,9 @@
 //! Editors as dialogs: over the page on a phone, beside it on a wide screen.
 
 use web_sys::wasm_bindgen::JsCast;
-use web_sys::{Document, Element, HtmlDialogElement, HtmlElement};
+use web_sys::{Element, HtmlDialogElement, HtmlElement};
 
-use super::window::Listener;
+use super::window::{Listener, document};
 
 /// Width from which an editor stands beside the loop, as in static/frame.css.
 const WIDE: f64 = 860.0;
@@ -15,10 +15,6 @@ pub struct Opened {
     listener: Option<Listener>,
     /// What had the keyboard before.
     before: Option<HtmlElement>,
-}
-
-fn document() -> Option<Document> {
-    web_sys::window()?.document()
 }
 
 impl Opened {

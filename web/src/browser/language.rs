@@ -5,9 +5,9 @@ use std::cell::RefCell;
 
 use wasm_bindgen::JsCast;
 use wasm_bindgen_futures::{JsFuture, spawn_local};
-use web_sys::{Document, Element, Response, Window};
+use web_sys::{Response, Window};
 
-use super::window::Listener;
+use super::window::{Listener, document, root};
 use crate::words::{self, Words};
 
 /// The event that tells of another choice.
@@ -16,14 +16,6 @@ const REWORD: &str = "reword";
 thread_local! {
     /// What has been read so far: a language that comes back is the very same words.
     static READ: RefCell<Vec<&'static Words>> = const { RefCell::new(Vec::new()) };
-}
-
-fn document() -> Option<Document> {
-    web_sys::window()?.document()
-}
-
-fn root() -> Option<Element> {
-    document()?.document_element()
 }
 
 /// The language that is asked for.

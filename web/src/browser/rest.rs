@@ -2,7 +2,7 @@
 //! static/rest.js, which fetches the second part and tells how far it is by the document's `data-rest`. A page that is
 //! not cut has no such attribute, and is whole.
 
-use web_sys::Event;
+use super::window::{root, say};
 
 /// How far the rest is.
 #[derive(Debug, Clone, Copy, PartialEq, Eq)]
@@ -22,8 +22,7 @@ const AGAIN: &str = "rest-again";
 
 /// How far it is.
 pub fn arrival() -> Arrival {
-    let root = web_sys::window().and_then(|window| window.document()?.document_element());
-    match root.and_then(|root| root.get_attribute("data-rest")).as_deref() {
+    match root().and_then(|root| root.get_attribute("data-rest")).as_deref() {
         Some("coming") => Arrival::Coming,
         Some("lost") => Arrival::Lost,
         _ => Arrival::Whole,
@@ -32,7 +31,5 @@ pub fn arrival() -> Arrival {
 
 /// Asks for it once more.
 pub fn ask_again() {
-    if let (Some(window), Ok(event)) = (web_sys::window(), Event::new(AGAIN)) {
-        let _ = window.dispatch_event(&event);
-    }
+    say(AGAIN);
 }

@@ -45,5 +45,5 @@ pub fn phone_is_dark() -> bool {
 }
 
 fn root() -> Option<HtmlElement> {
-    web_sys::window()?.document()?.document_element()?.dyn_into().ok()
+    super::window::root()?.dyn_into().ok()
 }

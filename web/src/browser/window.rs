@@ -2,7 +2,7 @@
 
 use wasm_bindgen::JsCast;
 use wasm_bindgen::closure::Closure;
-use web_sys::{Event, EventTarget};
+use web_sys::{Document, Element, Event, EventTarget};
 
 /// A listener that is removed when dropped.
 #[derive(Debug)]
@@ -92,6 +92,23 @@ impl Drop for EverySecond {
 /// Milliseconds since 1970 by the phone's clock, which goes on while it sleeps.
 pub fn clock() -> f64 {
     js_sys::Date::now()
+}
+
+/// The document.
+pub fn document() -> Option<Document> {
+    web_sys::window()?.document()
+}
+
+/// The document's own element.
+pub fn root() -> Option<Element> {
+    document()?.document_element()
+}
+
+/// Sends an event of the window to whoever listens.
+pub fn say(name: &str) {
+    if let (Some(window), Ok(event)) = (web_sys::window(), Event::new(name)) {
+        let _ = window.dispatch_event(&event);
+    }
 }
 
 /// Shows the page from its beginning.

@@ -34,9 +34,15 @@ pub mod surge;
 pub mod switch_on;
 pub mod voltage_bar;
 
-use yew::{Callback, MouseEvent};
+use yew::{Callback, Html, MouseEvent};
 
 use crate::bench::{BenchHandle, Msg};
+use crate::parts::el::el;
+
+/// What stands in the place of a panel that is not there.
+pub(crate) fn told(text: &'static str) -> Html {
+    el("p").class("panel told").set("role", "status").text(text).html()
+}
 
 /// A click that sends a message.
 pub(crate) fn send(bench: &BenchHandle, msg: Msg) -> Callback<MouseEvent> {
